@@ -1,0 +1,83 @@
+import type { DomainError } from '@cresthold/shared';
+import type { z } from 'zod';
+
+/** Version of this contract; a plug-in states the range that it was written for. */
+export const contractVersion = '1.0.0';
+
+/** What an adapter is and what it must be told. */
+export interface AdapterManifest<Configuration, Address> {
+  /** E.g. `modbus-tcp`; unique among installed adapters. */
+  readonly id: string;
+  readonly title: string;
+  /** Semver range of the contract, e.g. `^1.0.0`. */
+  readonly contract: string;
+  readonly configurationSchema: z.ZodType<Configuration>;
+  readonly addressSchema: z.ZodType<Address>;
+}
+
+/** Facts of one address that guard and screens need. */
+export interface AddressFacts {
+  isWritable: boolean;
+  /** Step of the values that the wire can carry, engineering unit; 0 for floating point. */
+  quantum: number;
+  /** One value of that grid, engineering unit. */
+  quantumOrigin: number;
+  /** Least and greatest value that the wire can carry, engineering unit. */
+  min: number;
+  max: number;
+}
+
+/** Reads joined into the fewest requests; made once, read each scan. */
+export interface ReadPlan {
+  /** Number of addresses. */
+  readonly count: number;
+  /** Number of requests that one read costs. */
+  readonly requests: number;
+}
+
+/**
+ * The outcome of one read, owned by the plan and overwritten by its next read. `faults[i]` is null
+ * where `values[i]` is a fresh engineering value.
+ */
+export interface ReadOutcome {
+  readonly values: Float64Array;
+  readonly faults: (DomainError | null)[];
+  /** Set where the connection is gone and nothing was read: the session is of no more use. */
+  lost: DomainError | null;
+}
+
+/** Null where the device accepted the write. */
+export interface WriteOutcome {
+  readonly faults: (DomainError | null)[];
+  lost: DomainError | null;
+}
+
+/**
+ * One open connection. Duties:
+ * - `read` and `write` settle within the configured timeout and never throw for what a device does:
+ *   outcomes are values; a throw is a bug.
+ * - one request is on the wire at a time; calls while another is under way wait in order.
+ * - codes: `adapter.timeout`, `adapter.refused` (the device answered with an exception),
+ *   `adapter.corrupt`, `adapter.disconnected`, `adapter.misconfigured`, `adapter.cancelled`.
+ * - after `lost` the session is dead: only `close` may follow.
+ * - `close` may be called at any time and more than once; it resolves when socket or port is released,
+ *   and calls under way end with `adapter.cancelled`.
+ */
+export interface AdapterSession<Address> {
+  describe(address: Address): AddressFacts;
+  /** @throws adapter.misconfigured naming the address at fault */
+  planRead(addresses: readonly Address[]): ReadPlan;
+  read(plan: ReadPlan): Promise<ReadOutcome>;
+  /** Writes engineering values, joined where neighbours allow, in the given order. */
+  write(addresses: readonly Address[], values: ArrayLike<number>): Promise<WriteOutcome>;
+  close(): Promise<void>;
+}
+
+export interface Adapter<Configuration = unknown, Address = unknown> {
+  readonly manifest: AdapterManifest<Configuration, Address>;
+  /**
+   * Opens the wire. Rejects with a DomainError of the codes above within the configured timeout;
+   * aborting the signal rejects with `adapter.cancelled` and leaves nothing open.
+   */
+  open(configuration: Configuration, signal: AbortSignal): Promise<AdapterSession<Address>>;
+}

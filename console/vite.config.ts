@@ -1,0 +1,12 @@
+import react from '@vitejs/plugin-react';
+import { defineConfig } from 'vitest/config';
+
+const target = process.env['CRESTHOLD_SERVER'] ?? 'http://127.0.0.1:4380';
+
+export default defineConfig({
+  plugins: [react()],
+  resolve: { conditions: ['source', 'module', 'browser', 'development|production'] },
+  server: { host: '127.0.0.1', proxy: { '/api': { target, ws: true } } },
+  build: { chunkSizeWarningLimit: 700 },
+  test: { name: 'console', environment: 'jsdom', include: ['src/**/*.test.{ts,tsx}'] },
+});

@@ -1,0 +1,123 @@
+/**
+ * Every error that a person or a script can meet. HTTP status and log level follow from `kind`;
+ * `docs/errors.md` has one entry per code and a test compares the two.
+ */
+export type ErrorKind =
+  | 'invalid'
+  | 'unauthenticated'
+  | 'forbidden'
+  | 'not-found'
+  | 'conflict'
+  | 'not-allowed-now'
+  | 'too-many'
+  | 'unavailable'
+  | 'timeout'
+  | 'device-fault'
+  | 'bug';
+
+interface CatalogueEntry {
+  kind: ErrorKind;
+  /** The default text: what is wrong and what to do. */
+  message: string;
+}
+
+const entry = (kind: ErrorKind, message: string): CatalogueEntry => ({ kind, message });
+
+export const errorCatalogue = {
+  'request.invalid': entry('invalid', 'The request has faults: mend the fields named in "details".'),
+  'request.not-found': entry('not-found', 'Nothing is at this address.'),
+  'request.precondition': entry(
+    'conflict',
+    'The document has changed since you read it: load it again and repeat your change.',
+  ),
+  'request.too-many': entry(
+    'too-many',
+    'Too many requests: wait for the time that the Retry-After header gives.',
+  ),
+  'auth.required': entry('unauthenticated', 'Sign in first.'),
+  'auth.failed': entry('unauthenticated', 'Account or password is wrong.'),
+  'auth.forbidden': entry('forbidden', 'Your role may not do this.'),
+  'auth.setup-code': entry(
+    'forbidden',
+    'The set-up code is wrong: use the one that the server printed at its start.',
+  ),
+  'auth.setup-done': entry('conflict', 'The first administrator exists already: sign in.'),
+  'user.not-found': entry('not-found', 'No such account.'),
+  'user.exists': entry('conflict', 'An account with this name exists already: choose another.'),
+  'user.weak-password': entry(
+    'invalid',
+    'Choose a password of 8 to 128 characters that is not on the list of common passwords.',
+  ),
+  'rig.not-found': entry('not-found', 'No such rig.'),
+  'rig.exists': entry('conflict', 'A rig with this id exists already: choose another.'),
+  'rig.busy': entry('conflict', 'The rig is busy: wait for its run to end, or stop it.'),
+  'rig.offline': entry(
+    'unavailable',
+    'The rig is offline: check power, cable and address of its connection.',
+  ),
+  'rig.not-armed': entry('not-allowed-now', 'The rig is not armed: arm it first.'),
+  'rig.cannot-arm': entry('not-allowed-now', 'The rig cannot be armed: clear the points named in "details".'),
+  'rig.tripped': entry(
+    'not-allowed-now',
+    'The rig is tripped: have the cause cleared and the trip reset first.',
+  ),
+  'rig.not-tripped': entry('not-allowed-now', 'The rig is not tripped: there is nothing to reset.'),
+  'rig.cause-present': entry('not-allowed-now', 'The cause of the trip is still there: clear it first.'),
+  'rig.locked-out': entry(
+    'not-allowed-now',
+    'The rig is locked out: the person named on the lockout must lift it.',
+  ),
+  'rig.illegal-move': entry('not-allowed-now', 'The rig cannot do this in its present state.'),
+  'envelope.not-found': entry('not-found', 'No such envelope.'),
+  'envelope.none-in-force': entry(
+    'not-allowed-now',
+    'No approved envelope is in force for this rig: have one approved first.',
+  ),
+  'envelope.own-draft': entry(
+    'forbidden',
+    'The author of an envelope cannot approve it: somebody else with the role must.',
+  ),
+  'envelope.wrong-status': entry('not-allowed-now', 'The envelope is not at the stage that this needs.'),
+  'channel.not-found': entry('invalid', 'The rig has no such channel.'),
+  'channel.no-limit': entry(
+    'not-allowed-now',
+    'This actuator has no approved limit, so it cannot be written.',
+  ),
+  'objective.not-found': entry('not-found', 'No such objective.'),
+  'expression.invalid': entry('invalid', 'The expression cannot be understood.'),
+  'experiment.not-found': entry('not-found', 'No such experiment or version.'),
+  'experiment.preflight-failed': entry(
+    'invalid',
+    'Preflight found errors: mend the steps named in "details".',
+  ),
+  'run.not-found': entry('not-found', 'No such run.'),
+  'run.ended': entry('not-allowed-now', 'The run has ended.'),
+  'run.not-running': entry('not-allowed-now', 'The run is not in a state in which this can be done.'),
+  'run.no-samples': entry(
+    'not-found',
+    'The run has no samples: its file is missing or it ended before its first scan.',
+  ),
+  'adapter.unknown': entry('invalid', 'No adapter with this id is installed.'),
+  'adapter.timeout': entry(
+    'timeout',
+    'The device did not answer in time: check unit number, cable and timeout.',
+  ),
+  'adapter.refused': entry(
+    'device-fault',
+    'The device refused the request: check the address and type of the channel.',
+  ),
+  'adapter.corrupt': entry('device-fault', 'The device sent something that is no valid answer.'),
+  'adapter.disconnected': entry(
+    'unavailable',
+    'The connection is lost or cannot be made: check host, port, power and cable.',
+  ),
+  'adapter.misconfigured': entry('invalid', 'The connection or channel is configured wrongly.'),
+  'adapter.cancelled': entry('not-allowed-now', 'The request was cancelled.'),
+  'host.unavailable': entry('unavailable', 'The rig host is starting or has ended: try again in a moment.'),
+  'host.timeout': entry('timeout', 'The rig host did not answer in time.'),
+  'server.bug': entry('bug', 'The server met a fault of its own; it is in the log.'),
+} as const satisfies Record<string, CatalogueEntry>;
+
+export type ErrorCode = keyof typeof errorCatalogue;
+
+export const errorCodes = Object.keys(errorCatalogue) as ErrorCode[];

@@ -1,0 +1,86 @@
+import { z } from 'zod';
+import { envelopeInForceSchema } from '../envelopes/envelope.schema.js';
+import type { ErrorRecord } from '../errors/domain-error.js';
+import { experimentGraphSchema } from '../experiments/experiment.schema.js';
+import { objectiveContentSchema } from '../objectives/objective.schema.js';
+import { rigSchema } from '../rigs/rig.schema.js';
+import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
+import { rigStatusSchema, tripSchema } from './rig-status.schema.js';
+import { telemetrySchema } from './telemetry.schema.js';
+
+/** What a run needs to be executed; all of it goes into the manifest of its file. */
+export const runOrderSchema = z.object({
+  runId: z.string(),
+  /** Path of the run file that the recorder creates. */
+  file: z.string(),
+  by: z.string(),
+  experiment: z.object({
+    id: z.string(),
+    title: z.string(),
+    version: z.int(),
+    graph: experimentGraphSchema,
+  }),
+  objective: objectiveContentSchema.nullable(),
+  /** Warnings of preflight and whatever else the record should carry. */
+  manifest: z.record(z.string(), z.unknown()),
+});
+export type RunOrder = z.infer<typeof runOrderSchema>;
+
+/** What the server asks of a rig host; each is answered by one `reply` with the same `requestId`. */
+export const hostCommandSchema = z.discriminatedUnion('type', [
+  z.object({
+    type: z.literal('configure'),
+    rig: rigSchema,
+    envelope: envelopeInForceSchema.nullable(),
+    /** A trip that was latched before this host began. */
+    trip: tripSchema.nullable(),
+    isLockedOut: z.boolean(),
+  }),
+  z.object({ type: z.literal('set-envelope'), envelope: envelopeInForceSchema }),
+  z.object({ type: z.literal('set-lockout'), isLockedOut: z.boolean() }),
+  z.object({ type: z.literal('arm'), by: z.string() }),
+  z.object({ type: z.literal('disarm'), by: z.string() }),
+  z.object({ type: z.literal('move'), channel: z.string(), value: z.number(), by: z.string() }),
+  z.object({ type: z.literal('start-run'), order: runOrderSchema }),
+  z.object({ type: z.literal('pause'), by: z.string(), reason: z.string() }),
+  z.object({ type: z.literal('resume'), by: z.string() }),
+  z.object({ type: z.literal('stop'), by: z.string(), reason: z.string() }),
+  z.object({ type: z.literal('emergency-stop'), by: z.string(), reason: z.string() }),
+  z.object({ type: z.literal('reset'), by: z.string(), reason: z.string() }),
+  /** Stops in order, brings the rig to rest, closes the wire and ends the process. */
+  z.object({ type: z.literal('shut-down') }),
+]);
+export type HostCommand = z.infer<typeof hostCommandSchema>;
+
+export const toHostSchema = z.discriminatedUnion('type', [
+  z.object({ type: z.literal('command'), requestId: z.int(), command: hostCommandSchema }),
+  /** The server lives; sent every 500 ms. */
+  z.object({ type: z.literal('server-alive') }),
+]);
+export type ToHost = z.infer<typeof toHostSchema>;
+
+const errorRecordSchema = z.custom<ErrorRecord>(
+  (value) => typeof value === 'object' && value !== null && 'code' in value,
+);
+
+export const fromHostSchema = z.discriminatedUnion('type', [
+  /** The program runs and waits for `configure`. */
+  z.object({ type: z.literal('ready'), pid: z.int() }),
+  z.object({ type: z.literal('reply'), requestId: z.int(), error: errorRecordSchema.nullable() }),
+  /** On every change and once a second; also the sign that the host lives. */
+  z.object({ type: z.literal('status'), status: rigStatusSchema }),
+  z.object({ type: z.literal('telemetry'), telemetry: telemetrySchema }),
+  z.object({ type: z.literal('run-event'), runId: z.string(), event: runEventSchema }),
+  z.object({ type: z.literal('run-status'), runId: z.string(), status: runStatusSchema }),
+  z.object({
+    type: z.literal('run-ended'),
+    runId: z.string(),
+    status: runStatusSchema,
+    verdict: verdictSchema,
+    reason: z.string(),
+    results: z.record(z.string(), z.number()),
+    scans: z.int(),
+  }),
+  z.object({ type: z.literal('log'), level: z.enum(['info', 'warn', 'error']), text: z.string() }),
+]);
+export type FromHost = z.infer<typeof fromHostSchema>;

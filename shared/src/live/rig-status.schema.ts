@@ -1,0 +1,50 @@
+import { z } from 'zod';
+
+/** Where a rig is; lockout is beside it, not among it. */
+export const rigPhaseSchema = z.enum(['offline', 'idle', 'armed', 'running', 'stopping', 'tripped']);
+export type RigPhase = z.infer<typeof rigPhaseSchema>;
+
+/** A latched stop with its first cause. */
+export const tripSchema = z.object({
+  /** What came first: `emergency-stop`, `interlock:<id>`, `stale:<channel>`, `read-back:<channel>`, `overrun`,
+   * `connection:<id>`, `non-finite:<channel>`, `server-silent`, `host-lost`. */
+  cause: z.string(),
+  message: z.string(),
+  at: z.string(),
+  /** Who pressed, for an emergency stop. */
+  by: z.string().nullable(),
+  /** What followed while it was latched, oldest first; never overwrites the cause. */
+  later: z.array(z.object({ cause: z.string(), at: z.string() })).max(50),
+});
+export type Trip = z.infer<typeof tripSchema>;
+
+export const interlockStatusSchema = z.object({
+  id: z.string(),
+  state: z.enum(['clear', 'pending', 'acted']),
+});
+
+export const rigStatusSchema = z.object({
+  rigId: z.string(),
+  phase: rigPhaseSchema,
+  isLockedOut: z.boolean(),
+  trip: tripSchema.nullable(),
+  runId: z.string().nullable(),
+  activeSteps: z.array(z.string()),
+  isPaused: z.boolean(),
+  envelopeVersion: z.int().nullable(),
+  connections: z.array(z.object({ id: z.string(), isConnected: z.boolean(), error: z.string().nullable() })),
+  interlocks: z.array(interlockStatusSchema),
+  /** What forbids arming, in words; empty where nothing does. */
+  armingObstacles: z.array(z.string()),
+  /** Best-known point of the run so far, by actuator. */
+  bestPoint: z.record(z.string(), z.number()),
+  scan: z.object({
+    count: z.int(),
+    overruns: z.int(),
+    /** 99th percentile over the last scans, ms. */
+    latenessP99Ms: z.number(),
+    /** Mean time on the wire, ms. */
+    wireMeanMs: z.number(),
+  }),
+});
+export type RigStatus = z.infer<typeof rigStatusSchema>;

@@ -1,0 +1,38 @@
+import { z } from 'zod';
+import type { Rig } from '../rigs/rig.schema.js';
+
+/** What a column of a run file's `scan` table holds. */
+export const runColumnSchema = z.object({
+  /** Column name: `o2`, `airTrim`, `airTrim.requested`, `airTrim.applied`, `objective`, `seek.estimate`. */
+  name: z.string(),
+  title: z.string(),
+  unit: z.string(),
+  kind: z.enum(['reading', 'requested', 'applied', 'objective', 'signal']),
+});
+export type RunColumn = z.infer<typeof runColumnSchema>;
+
+/**
+ * The value columns of a run in their order: every channel; requested and applied value of each
+ * actuator; the objective; the sequencer's signals. NULL in a row means not good in that scan.
+ */
+export function runColumns(rig: Rig, objectiveUnit: string, signalNames: readonly string[]): RunColumn[] {
+  const columns: RunColumn[] = rig.channels.map((c) => ({
+    name: c.id,
+    title: c.title,
+    unit: c.unit,
+    kind: 'reading',
+  }));
+  for (const c of rig.channels) {
+    if (c.kind !== 'actuator') continue;
+    columns.push({
+      name: `${c.id}.requested`,
+      title: `${c.title}, requested`,
+      unit: c.unit,
+      kind: 'requested',
+    });
+    columns.push({ name: `${c.id}.applied`, title: `${c.title}, applied`, unit: c.unit, kind: 'applied' });
+  }
+  columns.push({ name: 'objective', title: 'Objective', unit: objectiveUnit, kind: 'objective' });
+  for (const name of signalNames) columns.push({ name, title: name, unit: '', kind: 'signal' });
+  return columns;
+}

@@ -1,0 +1,73 @@
+import { z } from 'zod';
+
+export const verdictSchema = z.enum(['pass', 'fail', 'inconclusive']);
+export type Verdict = z.infer<typeof verdictSchema>;
+
+/** Life of a run. The last four are ends. */
+export const runStatusSchema = z.enum([
+  'starting',
+  'running',
+  'paused',
+  'stopping',
+  'finished',
+  'stopped',
+  'tripped',
+  'interrupted',
+]);
+export type RunStatus = z.infer<typeof runStatusSchema>;
+export const endedStatuses: readonly RunStatus[] = ['finished', 'stopped', 'tripped', 'interrupted'];
+
+const event = <T extends string, S extends z.ZodRawShape>(type: T, shape: S) =>
+  z.object({ type: z.literal(type), ...shape });
+
+/** What happened in a run, in the past tense; time is added by whoever records it. */
+export const runEventBodySchema = z.discriminatedUnion('type', [
+  event('run.started', { by: z.string() }),
+  event('run.paused', { reason: z.string() }),
+  event('run.resumed', { by: z.string() }),
+  event('run.stopping', { reason: z.string() }),
+  event('run.ended', { status: runStatusSchema, verdict: verdictSchema, reason: z.string() }),
+  event('step.started', { step: z.string(), kind: z.string() }),
+  event('step.ended', { step: z.string(), port: z.string(), results: z.record(z.string(), z.number()) }),
+  event('survey.point-measured', {
+    step: z.string(),
+    actuator: z.string(),
+    /** Applied value, channel unit. */
+    value: z.number(),
+    /** Mean objective over the averaging time. */
+    objective: z.number(),
+    /** Standard error of that mean. */
+    standardError: z.number(),
+    branch: z.enum(['up', 'down']),
+    isValid: z.boolean(),
+  }),
+  event('seek.retreated', { step: z.string(), to: z.number(), reason: z.string() }),
+  event('check.decided', { step: z.string(), criterion: z.string(), isMet: z.boolean().nullable() }),
+  event('guard.intervened', {
+    channel: z.string(),
+    rule: z.enum(['range', 'dither', 'slew', 'non-finite']),
+    requested: z.number().nullable(),
+    applied: z.number(),
+    /** Interventions of this rule on this channel in the run so far. */
+    count: z.int(),
+  }),
+  event('interlock.acted', { interlock: z.string(), action: z.string(), message: z.string() }),
+  event('interlock.cleared', { interlock: z.string() }),
+  event('connection.lost', { connection: z.string(), code: z.string(), message: z.string() }),
+  event('connection.restored', { connection: z.string() }),
+  event('scan.overran', { latenessMs: z.number(), consecutive: z.int() }),
+  event('rig.tripped', { cause: z.string(), message: z.string() }),
+]);
+export type RunEventBody = z.infer<typeof runEventBodySchema>;
+export type RunEventType = RunEventBody['type'];
+
+export const runEventSchema = z.object({
+  /** Number of the event in its run, from 1. */
+  sequence: z.int(),
+  /** Time since the run began, s. */
+  tS: z.number(),
+  /** Wall time, ISO 8601 with milliseconds, UTC. */
+  at: z.string(),
+  body: runEventBodySchema,
+});
+export type RunEvent = z.infer<typeof runEventSchema>;
