@@ -36,7 +36,6 @@ module.exports = {
     enhancedResolveOptions: {
       exportsFields: ['exports'],
       conditionNames: ['source', 'import', 'node', 'default', 'types'],
-      extensionAlias: { '.js': ['.ts', '.tsx', '.js'] },
     },
     tsConfig: { fileName: 'tsconfig.base.json' },
   },

@@ -18,4 +18,5 @@ export * from './rigs/rig.schema.js';
 export * from './runs/run-columns.js';
 export * from './runs/run-event.schema.js';
 export * from './scan/readings.js';
+export * from './scan/scan-engine.types.js';
 export * from './seeking/seeking-law.js';
