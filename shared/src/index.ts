@@ -19,4 +19,8 @@ export * from './runs/run-columns.js';
 export * from './runs/run-event.schema.js';
 export * from './scan/readings.js';
 export * from './scan/scan-engine.types.js';
+export * from './scenario/scenario.schema.js';
+export * from './seeking/gradient-law.js';
 export * from './seeking/seeking-law.js';
+export * from './signals/first-order-filter.js';
+export * from './signals/running-statistics.js';

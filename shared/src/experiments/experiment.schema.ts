@@ -88,7 +88,7 @@ export const seekStepSchema = z.object({
     lowPassRatio: z.number().positive().max(2),
     /** Integrator gain: actuator unit per second per (objective unit per actuator unit); always positive. */
     gain: numericParameterSchema,
-    /** Phase lead of the demodulation that makes up for the plant's lag at the dither frequency, degrees. */
+    /** Lag of the demodulating sine that makes up for the plant's lag at the dither frequency, degrees. */
     phaseDeg: z.number().min(-180).max(180),
     /** Box within which the estimate may move, in the actuator's unit; null leaves it to the envelope. */
     min: z.number().nullable(),
