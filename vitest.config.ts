@@ -5,7 +5,7 @@ const node = (name: string) => ({
   test: {
     name,
     include: [`${name}/src/**/*.test.ts`],
-    exclude: ['**/*.long.test.ts', '**/node_modules/**'],
+    exclude: [...(process.env['CRESTHOLD_LONG'] ? [] : ['**/*.long.test.ts']), '**/node_modules/**'],
     environment: 'node' as const,
   },
 });

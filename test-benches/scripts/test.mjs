@@ -1,0 +1,108 @@
+// `npm test`: installs what it needs, builds, and runs every check. The last line is `N passed, N failed`.
+// `--long` adds the suites that repeat kills and run full property counts.
+import { spawn } from 'node:child_process';
+import { existsSync, mkdtempSync, readFileSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join, resolve } from 'node:path';
+import { fileURLToPath } from 'node:url';
+import { installDependencies } from './prepare.mjs';
+
+const root = resolve(fileURLToPath(import.meta.url), '../../..');
+const isLong = process.argv.includes('--long');
+const reports = mkdtempSync(join(tmpdir(), 'cresthold-test-'));
+const totals = { passed: 0, failed: 0 };
+
+/** Runs a program to its end with its output shown; resolves to its exit code. */
+function run(command, args, { cwd = root, env = {} } = {}) {
+  return new Promise((done) => {
+    const child = spawn(command, args, {
+      cwd,
+      stdio: ['ignore', 'inherit', 'inherit'],
+      env: { ...process.env, ...env },
+    });
+    child.on('error', (error) => {
+      console.error(`${command}: ${error.message}`);
+      done(1);
+    });
+    child.on('exit', (code) => done(code ?? 1));
+  });
+}
+
+function heading(text) {
+  console.log(`\n== ${text}`);
+}
+
+/** A check that passes or fails as a whole. */
+async function check(title, command, args, options) {
+  heading(title);
+  const isPassed = (await run(command, args, options)) === 0;
+  totals[isPassed ? 'passed' : 'failed'] += 1;
+  return isPassed;
+}
+
+/** A test runner that leaves counts in a JSON report of Jest's form. A report that is missing is a failure. */
+async function suite(title, command, args, options) {
+  heading(title);
+  const report = join(reports, `${title.replace(/\W+/g, '-')}.json`);
+  const code = await run(command, [...args, report], options);
+  if (!existsSync(report)) {
+    totals.failed += 1;
+    return;
+  }
+  const counts = JSON.parse(readFileSync(report, 'utf8'));
+  totals.passed += counts.numPassedTests;
+  totals.failed += counts.numFailedTests;
+  // A suite that broke outside its tests, or a runner that failed without a failed test.
+  if (code !== 0 && counts.numFailedTests === 0) totals.failed += 1;
+}
+
+async function ensureChromium() {
+  if (existsSync(process.env.CRESTHOLD_CHROMIUM ?? '/usr/bin/chromium')) return;
+  heading('Chromium for the browser tests');
+  const install = 'apt-get install -y --no-install-recommends chromium';
+  const code = await run('sh', ['-c', `${install} || (apt-get update && ${install})`]);
+  if (code !== 0) {
+    console.error('Could not install Chromium. Install it by hand, or name a binary in CRESTHOLD_CHROMIUM.');
+  }
+}
+
+function finish() {
+  rmSync(reports, { recursive: true, force: true });
+  console.log(`\n${totals.passed} passed, ${totals.failed} failed`);
+  process.exit(totals.failed === 0 ? 0 : 1);
+}
+
+await installDependencies();
+await ensureChromium();
+const isBuilt =
+  (await check('Types', 'npm', ['run', '--silent', 'build:types'])) &&
+  (await check('OpenAPI document and client', 'npm', ['run', '--silent', 'build:api'])) &&
+  (await check('Console build', 'npm', ['run', '--silent', 'build:console']));
+if (!isBuilt) finish();
+await check('OpenAPI document and client as committed', 'git', [
+  'diff',
+  '--exit-code',
+  '--stat',
+  '--',
+  'orchestrator/openapi.json',
+  'console/src/api/schema.d.ts',
+]);
+await check('Lint', 'npm', ['run', '--silent', 'lint']);
+await check('Format', 'npm', ['run', '--silent', 'format:check']);
+
+const long = isLong ? { CRESTHOLD_LONG: '1' } : {};
+const vitest = ['vitest', 'run', '--reporter=default', '--reporter=json'];
+await suite('Unit tests', 'npx', [...vitest, '--outputFile.json'], { env: long });
+await suite('Server tests', 'npx', ['jest', '--json', '--outputFile'], {
+  cwd: join(root, 'orchestrator'),
+  env: long,
+});
+await suite(
+  'Browser tests',
+  'npx',
+  [...vitest, '--config', 'console/e2e/vitest.config.ts', '--outputFile.json'],
+  {
+    env: long,
+  },
+);
+finish();
