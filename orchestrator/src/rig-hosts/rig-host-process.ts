@@ -1,0 +1,158 @@
+import { setTimeout as sleep } from 'node:timers/promises';
+import { DomainError, type FromHost, type HostCommand } from '@cresthold/shared';
+import { HostLife, type HostDeath, type HostProgram } from './supervision/host-life.js';
+import { RestartBudget } from './supervision/restart-budget.js';
+import type { RestartPolicy, SupervisionTiming } from './supervision/supervision-options.js';
+
+/** What the owner of a rig host must do and is told. None of these may throw but `configuration`. */
+export interface RigHostOwner {
+  /** Called before each fork: what the program is, once nothing else owns the rig. Rejecting forbids the fork. */
+  prepare(signal: AbortSignal): Promise<HostProgram>;
+  /** Called right after a fork. */
+  onForked(pid: number): void;
+  /** Called after each READY: the command that configures the host. */
+  configuration(): Promise<Extract<HostCommand, { type: 'configure' }>>;
+  onMessage(message: FromHost): void;
+  /** A host died; awaited before it is begun again. Not called when the host ended as asked. */
+  onDeath(death: HostDeath): Promise<void>;
+  onLog(level: 'info' | 'warn' | 'error', text: string): void;
+}
+
+export type SupervisorState =
+  | { name: 'down' }
+  | { name: 'starting' }
+  | { name: 'up' }
+  | { name: 'restarting'; because: string }
+  /** No further attempt is made until a person begins again. */
+  | { name: 'failed'; because: string }
+  | { name: 'ending' };
+
+/**
+ * Keeps one rig host alive: begins it, begins it again within a budget when it dies after READY, and ends
+ * it. A host that dies before READY is not begun again: it would only die again.
+ */
+export class RigHostProcess {
+  private life: HostLife | null = null;
+  private current: SupervisorState = { name: 'down' };
+  private readonly budget: RestartBudget;
+  private readonly abort = new AbortController();
+  /** Settles when the keeping of the present series of lives is over. */
+  private keeping: Promise<void> = Promise.resolve();
+
+  constructor(
+    private readonly owner: RigHostOwner,
+    private readonly timing: SupervisionTiming,
+    restartPolicy: RestartPolicy,
+  ) {
+    this.budget = new RestartBudget(restartPolicy);
+  }
+
+  get state(): SupervisorState {
+    return this.current;
+  }
+
+  get pid(): number | undefined {
+    return this.life?.pid;
+  }
+
+  /**
+   * Begins the host, by hand or at start of the server.
+   *
+   * @returns when the host is configured
+   * @throws host.unavailable when it could not be brought up
+   */
+  async start(): Promise<void> {
+    if (this.current.name !== 'down' && this.current.name !== 'failed') return;
+    this.budget.refill();
+    this.current = { name: 'starting' };
+    await this.bringUp();
+    if (this.state.name !== 'up') throw this.unavailable();
+  }
+
+  /** @throws host.unavailable, host.timeout, or whatever the host answers */
+  async request(command: HostCommand): Promise<void> {
+    if (this.current.name !== 'up' || !this.life) throw this.unavailable();
+    return this.life.request(command);
+  }
+
+  /** Ends the host in order, by force after the bound, and begins it no more. */
+  async stop(): Promise<void> {
+    this.current = { name: 'ending' };
+    this.abort.abort();
+    await this.life?.shutDown();
+    await this.keeping;
+  }
+
+  /** One attempt. Ends in `up` or `failed`, or, when the host dies while it is configured, in `outlive`. */
+  private async bringUp(): Promise<void> {
+    let life: HostLife;
+    try {
+      const program = await this.owner.prepare(this.abort.signal);
+      if (this.isEnding()) return;
+      life = this.begin(program);
+      await life.ready;
+    } catch (error) {
+      this.fail(`It could not be begun: ${textOf(error)}`);
+      return;
+    }
+    this.keeping = life.ended.then((death) => this.outlive(life, death));
+    try {
+      await life.request(await this.owner.configuration());
+      if (!this.isEnding()) this.current = { name: 'up' };
+    } catch (error) {
+      // A refusal would come again; a death on the way is one like any other.
+      if (!life.isDead) {
+        this.fail(`It refused its configuration: ${textOf(error)}`);
+        await life.shutDown();
+      }
+    }
+  }
+
+  private begin(program: HostProgram): HostLife {
+    const life = new HostLife(program, this.timing, {
+      onMessage: (message) => this.owner.onMessage(message),
+      onFault: (text) => this.owner.onLog('error', text),
+    });
+    this.life = life;
+    if (life.pid !== undefined) this.owner.onForked(life.pid);
+    return life;
+  }
+
+  private fail(because: string): void {
+    if (this.isEnding()) return;
+    this.current = { name: 'failed', because };
+    this.owner.onLog('error', `The rig host has failed and is not begun again. ${because}`);
+  }
+
+  /** A host that had been READY is gone. */
+  private async outlive(life: HostLife, death: HostDeath): Promise<void> {
+    if (this.life === life) this.life = null;
+    if (death.kind === 'asked' || this.isEnding()) return;
+    this.current = { name: 'restarting', because: death.message };
+    await this.owner.onDeath(death).catch((error: unknown) => {
+      this.owner.onLog('error', `Its death could not be recorded: ${textOf(error)}`);
+    });
+    if (this.isEnding()) return;
+    const delayMs = this.budget.take(performance.now());
+    if (delayMs === null) {
+      this.fail(`It died too often. Last: ${death.message}`);
+      return;
+    }
+    this.owner.onLog('warn', `${death.message} It is begun again in ${delayMs} ms.`);
+    await sleep(delayMs, undefined, { signal: this.abort.signal }).catch(() => undefined);
+    if (!this.isEnding()) await this.bringUp();
+  }
+
+  private isEnding(): boolean {
+    return this.current.name === 'ending';
+  }
+
+  private unavailable(): DomainError {
+    const because = 'because' in this.current ? ` ${this.current.because}` : '';
+    return new DomainError('host.unavailable', `The rig host is ${this.current.name}.${because}`);
+  }
+}
+
+function textOf(error: unknown): string {
+  return error instanceof Error ? error.message : String(error);
+}
