@@ -25,6 +25,12 @@ const entry = (kind: ErrorKind, message: string): CatalogueEntry => ({ kind, mes
 
 export const errorCatalogue = {
   'request.invalid': entry('invalid', 'The request has faults: mend the fields named in "details".'),
+  'request.media-type': entry('invalid', 'Send the body as JSON, with "Content-Type: application/json".'),
+  'request.too-large': entry('invalid', 'The request is larger than the server takes: send less at a time.'),
+  'request.cross-origin': entry(
+    'forbidden',
+    'The request comes from a page of another address: open the console at the address of this server.',
+  ),
   'request.not-found': entry('not-found', 'Nothing is at this address.'),
   'request.precondition': entry(
     'conflict',
@@ -44,6 +50,10 @@ export const errorCatalogue = {
   'auth.setup-done': entry('conflict', 'The first administrator exists already: sign in.'),
   'user.not-found': entry('not-found', 'No such account.'),
   'user.exists': entry('conflict', 'An account with this name exists already: choose another.'),
+  'user.last-administrator': entry(
+    'conflict',
+    'This is the last enabled administrator: give the role to somebody else first.',
+  ),
   'user.weak-password': entry(
     'invalid',
     'Choose a password of 8 to 128 characters that is not on the list of common passwords.',
@@ -115,6 +125,7 @@ export const errorCatalogue = {
   'adapter.cancelled': entry('not-allowed-now', 'The request was cancelled.'),
   'host.unavailable': entry('unavailable', 'The rig host is starting or has ended: try again in a moment.'),
   'host.timeout': entry('timeout', 'The rig host did not answer in time.'),
+  'server.unhealthy': entry('unavailable', 'A part of the server does not work: see "details" for which.'),
   'server.bug': entry('bug', 'The server met a fault of its own; it is in the log.'),
 } as const satisfies Record<string, CatalogueEntry>;
 
