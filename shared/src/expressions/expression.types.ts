@@ -9,6 +9,8 @@ export interface CompiledExpression {
   readonly text: string;
   /** The symbols it reads, each once. */
   readonly symbols: readonly string[];
+  /** Its result is a truth value: a comparison, `and or not`, or a choice between such. */
+  readonly isCondition: boolean;
   evaluate(lookup: Lookup): number;
 }
 
