@@ -13,6 +13,7 @@ export * from './live/host-message.schema.js';
 export * from './live/live-message.schema.js';
 export * from './live/rig-status.schema.js';
 export * from './live/telemetry.schema.js';
+export * from './objectives/objective-evaluator.js';
 export * from './objectives/objective.schema.js';
 export * from './people/role.js';
 export * from './rigs/channel-id.js';

@@ -21,6 +21,8 @@ export interface ObjectiveSample {
   isGood: boolean;
   /** Good, and every validity condition true. */
   isValid: boolean;
+  /** Why it is not valid, in words: the message of the first condition that is not true; null where valid. */
+  whyInvalid?: string | null;
 }
 
 export interface SequencerContext {

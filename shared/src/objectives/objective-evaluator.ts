@@ -1,0 +1,91 @@
+import type { FieldFault } from '../errors/domain-error.js';
+import type { ObjectiveSample } from '../experiments/sequencer.types.js';
+import { compileExpression } from '../expressions/compile-expression.js';
+import type { CompiledExpression, Lookup } from '../expressions/expression.types.js';
+import type { Rig } from '../rigs/rig.schema.js';
+import type { Readings } from '../scan/readings.js';
+import type { ObjectiveContent } from './objective.schema.js';
+
+/** An objective made ready for the scan. */
+export interface ObjectiveEvaluator {
+  readonly content: ObjectiveContent;
+  /** Channels that the objective and its validity conditions read, each once. */
+  readonly channels: readonly string[];
+  /**
+   * The objective in one scan, with the sign that its expression gives it: the direction is not applied.
+   *
+   * @returns the same object each time, overwritten by the next call
+   * @realtime safe: allocates nothing
+   */
+  evaluate(readings: Readings): Readonly<ObjectiveSample>;
+}
+
+export type ObjectiveOutcome =
+  | { isOk: true; objective: ObjectiveEvaluator }
+  /** Fields as in ObjectiveContent: `expression`, `validity[0].condition`. */
+  | { isOk: false; faults: FieldFault[] };
+
+/** Names of every channel of a rig: what an expression over readings may use. */
+export function channelSymbols(rig: Rig): ReadonlySet<string> {
+  return new Set(rig.channels.map((channel) => channel.id));
+}
+
+/** Compiles an objective for a rig, or says which fields are at fault and what to do. */
+export function compileObjective(content: ObjectiveContent, rig: Rig): ObjectiveOutcome {
+  const known = channelSymbols(rig);
+  const faults: FieldFault[] = [];
+  const compile = (text: string, field: string): CompiledExpression | null => {
+    const outcome = compileExpression(text, known);
+    if (outcome.isOk) return outcome.expression;
+    faults.push({ field, message: outcome.message });
+    return null;
+  };
+  const value = compile(content.expression, 'expression');
+  const conditions = content.validity.map(({ condition, message }, index) => {
+    const field = `validity[${index}].condition`;
+    const expression = compile(condition, field);
+    if (expression && !expression.isCondition) {
+      faults.push({ field, message: 'This is no condition: compare with something, e.g. "co < 400".' });
+    }
+    return { expression, message };
+  });
+  if (faults.length > 0 || !value) return { isOk: false, faults };
+  return { isOk: true, objective: evaluatorOf(content, value, conditions) };
+}
+
+interface Condition {
+  expression: CompiledExpression | null;
+  message: string;
+}
+
+function evaluatorOf(
+  content: ObjectiveContent,
+  value: CompiledExpression,
+  conditions: readonly Condition[],
+): ObjectiveEvaluator {
+  const sample: ObjectiveSample = { value: NaN, isGood: false, isValid: false, whyInvalid: null };
+  let current: Readings | null = null;
+  const lookup: Lookup = (channel) => (current ? current.goodValue(current.indexOf(channel)) : NaN);
+  const firstViolated = (): string | null => {
+    for (const condition of conditions) {
+      // A condition over a bad reading is NaN: not known to be true is not valid.
+      if (condition.expression?.evaluate(lookup) !== 1) return condition.message;
+    }
+    return null;
+  };
+  const symbols = [value, ...conditions.flatMap(({ expression }) => expression ?? [])].flatMap(
+    (e) => e.symbols,
+  );
+  return {
+    content,
+    channels: [...new Set(symbols)],
+    evaluate(readings) {
+      current = readings;
+      sample.value = value.evaluate(lookup);
+      sample.isGood = Number.isFinite(sample.value);
+      sample.whyInvalid = sample.isGood ? firstViolated() : 'A reading that the objective needs is not good.';
+      sample.isValid = sample.whyInvalid === null;
+      return sample;
+    },
+  };
+}
