@@ -1,0 +1,52 @@
+import { Body, Controller, Get, HttpCode, Inject, Ip, Post, Res } from '@nestjs/common';
+import { ApiNoContentResponse, ApiOkResponse, ApiTags } from '@nestjs/swagger';
+import type { Response } from 'express';
+import { CONFIG } from '../config/config.module.js';
+import type { Config } from '../config/config.schema.js';
+import { Roles } from './access.decorator.js';
+import { AuthService } from './auth.service.js';
+import { sessionSchema, signInSchema, type Session, type SignIn } from './dto/session.dto.js';
+import { sessionCookieName, sessionCookieOptions } from './session-cookie.js';
+import { CurrentUser, type SignedInUser } from './signed-in-user.js';
+
+@ApiTags('auth')
+@Controller('auth')
+export class AuthController {
+  constructor(
+    private readonly auth: AuthService,
+    @Inject(CONFIG) private readonly config: Config,
+  ) {}
+
+  /** Signs in: answers who it is and sets the session cookie. */
+  @Post('sign-in')
+  @HttpCode(200)
+  @Roles('anyone')
+  @ApiOkResponse({ standardSchema: sessionSchema })
+  async signIn(
+    @Body({ schema: signInSchema }) body: SignIn,
+    @Ip() address: string,
+    @Res({ passthrough: true }) response: Response,
+  ): Promise<Session> {
+    const { session, token } = await this.auth.signIn(body, address);
+    response.cookie(sessionCookieName, token, sessionCookieOptions(this.config.isHttps));
+    return session;
+  }
+
+  /** Signs out this browser. */
+  @Post('sign-out')
+  @HttpCode(204)
+  @Roles('signed-in')
+  @ApiNoContentResponse()
+  signOut(@Res({ passthrough: true }) response: Response): void {
+    const { maxAge: _, ...options } = sessionCookieOptions(this.config.isHttps);
+    response.clearCookie(sessionCookieName, options);
+  }
+
+  /** Says who is signed in. */
+  @Get('session')
+  @Roles('signed-in')
+  @ApiOkResponse({ standardSchema: sessionSchema })
+  session(@CurrentUser() user: SignedInUser): Session {
+    return user;
+  }
+}

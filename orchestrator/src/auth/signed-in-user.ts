@@ -1,0 +1,17 @@
+import { createParamDecorator, type ExecutionContext } from '@nestjs/common';
+import { DomainError, type Role } from '@cresthold/shared';
+import type { Request } from 'express';
+
+/** Who sent a request. */
+export interface SignedInUser {
+  account: string;
+  title: string;
+  roles: Role[];
+}
+
+/** The person who sent the request, in a controller's method. */
+export const CurrentUser = createParamDecorator((_: unknown, context: ExecutionContext): SignedInUser => {
+  const { user } = context.switchToHttp().getRequest<Request & { user?: SignedInUser }>();
+  if (user === undefined) throw new DomainError('auth.required');
+  return user;
+});

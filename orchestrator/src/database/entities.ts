@@ -1,0 +1,20 @@
+import { AuditEntry } from '../audit/entities/audit-entry.entity.js';
+import { EnvelopeEntity } from '../envelopes/entities/envelope.entity.js';
+import { ExperimentVersionEntity } from '../experiments/entities/experiment-version.entity.js';
+import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
+import { ObjectiveEntity } from '../objectives/entities/objective.entity.js';
+import { RigStateEntity } from '../rigs/entities/rig-state.entity.js';
+import { RigEntity } from '../rigs/entities/rig.entity.js';
+import { UserEntity } from '../users/entities/user.entity.js';
+
+/** Every table of the main database; a new entity is listed here and gets a migration. */
+export const entities = [
+  AuditEntry,
+  EnvelopeEntity,
+  ExperimentEntity,
+  ExperimentVersionEntity,
+  ObjectiveEntity,
+  RigEntity,
+  RigStateEntity,
+  UserEntity,
+];
