@@ -1,3 +1,4 @@
+import { benchClock } from './bench-clock.js';
 import { openBenchLog, type BenchLogEntry } from './bench-log.js';
 import type { BurnerOptions } from './burner-options.js';
 import { burnerRegisterMap } from './burner-registers.js';
@@ -7,6 +8,8 @@ import { openModbusFace, type RegisterMap } from './modbus-face.js';
 /** How often the model runs on by itself: short beside the watchdog, ms. */
 const tickMs = 10;
 const truthEveryMs = 100;
+/** Longer than this without a turn is a hold-up of the bench itself, ms. */
+const stallMs = 60;
 
 export interface BurnerBench {
   readonly port: number;
@@ -21,8 +24,8 @@ export async function openBurnerBench(options: BurnerOptions): Promise<BurnerBen
     isNoisy: options.noise,
     isDrifting: options.drift,
   });
-  const startMs = performance.now();
-  const catchUp = () => simulation.advanceTo(((performance.now() - startMs) / 1000) * options.speed);
+  const benchS = benchClock(() => performance.now(), options.speed, stallMs);
+  const catchUp = () => simulation.advanceTo(benchS());
   simulation.onWatchdog = (isTripped, count) =>
     log.add(simulation.now.tS, { event: 'watchdog', isTripped, count });
 
