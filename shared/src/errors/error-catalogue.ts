@@ -107,6 +107,10 @@ export const errorCatalogue = {
     'not-found',
     'The run has no samples: its file is missing or it ended before its first scan.',
   ),
+  'recorder.failed': entry(
+    'unavailable',
+    'The samples cannot be recorded: free disk space, and check the data folder and its rights.',
+  ),
   'adapter.unknown': entry('invalid', 'No adapter with this id is installed.'),
   'adapter.timeout': entry(
     'timeout',

@@ -7,7 +7,7 @@ export type RigPhase = z.infer<typeof rigPhaseSchema>;
 /** A latched stop with its first cause. */
 export const tripSchema = z.object({
   /** What came first: `emergency-stop`, `interlock:<id>`, `stale:<channel>`, `read-back:<channel>`, `overrun`,
-   * `connection:<id>`, `non-finite:<channel>`, `server-silent`, `host-lost`. */
+   * `connection:<id>`, `non-finite:<channel>`, `server-silent`, `host-lost`, `host-fault`, `recorder`. */
   cause: z.string(),
   message: z.string(),
   at: z.string(),
