@@ -1,0 +1,6 @@
+export * from './run-file.types.js';
+export { closeInterrupted, sealFile } from './run-file-end.js';
+export { RunFileReader, type LastScan } from './run-file-reader.js';
+export type { Samples, SamplesQuery } from './run-file-samples.js';
+export { RunFileWriter } from './run-file-writer.js';
+export { rowLead, type ScanBatch } from './scan-batch.js';
