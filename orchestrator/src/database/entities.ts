@@ -3,6 +3,7 @@ import { EnvelopeEntity } from '../envelopes/entities/envelope.entity.js';
 import { ExperimentVersionEntity } from '../experiments/entities/experiment-version.entity.js';
 import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
 import { ObjectiveEntity } from '../objectives/entities/objective.entity.js';
+import { RunEntity } from '../recordings/entities/run.entity.js';
 import { RigStateEntity } from '../rigs/entities/rig-state.entity.js';
 import { RigEntity } from '../rigs/entities/rig.entity.js';
 import { UserEntity } from '../users/entities/user.entity.js';
@@ -16,5 +17,6 @@ export const entities = [
   ObjectiveEntity,
   RigEntity,
   RigStateEntity,
+  RunEntity,
   UserEntity,
 ];

@@ -75,6 +75,18 @@ export class RigHostProcess {
     return this.life.request(command);
   }
 
+  /**
+   * Configures the host that is up anew; begins one that is down or has failed.
+   *
+   * @throws host.unavailable, host.timeout, or whatever the host answers
+   */
+  async reconfigure(): Promise<void> {
+    if (this.current.name === 'down' || this.current.name === 'failed') return this.start();
+    // A host that is just being brought up reads its documents when it is READY.
+    if (this.current.name !== 'up' || !this.life) return;
+    await this.life.configure(await this.owner.configuration());
+  }
+
   /** Ends the host in order, by force after the bound, and begins it no more. */
   async stop(): Promise<void> {
     this.current = { name: 'ending' };
@@ -97,7 +109,7 @@ export class RigHostProcess {
     }
     this.keeping = life.ended.then((death) => this.outlive(life, death));
     try {
-      await life.request(await this.owner.configuration());
+      await life.configure(await this.owner.configuration());
       if (!this.isEnding()) this.current = { name: 'up' };
     } catch (error) {
       // A refusal would come again; a death on the way is one like any other.

@@ -7,6 +7,7 @@ import type { SupervisionTiming } from '../../src/rig-hosts/supervision/supervis
 const timing: SupervisionTiming = {
   readyMs: 4_000,
   requestMs: 400,
+  configureMs: 1_000,
   silenceMs: 600,
   shutDownMs: 500,
   aliveEveryMs: 100,
@@ -24,7 +25,7 @@ class RecordingOwner implements RigHostOwner {
 
   prepare() {
     const file = join(__dirname, 'fixtures', `${this.fixture}.mjs`);
-    return Promise.resolve({ file, args: [], outputFd: 'ignore' as const });
+    return Promise.resolve({ file, args: [], outputFile: null });
   }
 
   onForked(pid: number) {

@@ -1,7 +1,9 @@
+import { closeSync } from 'node:fs';
 import { fork, type ChildProcess } from 'node:child_process';
 import { DomainError, type FromHost, type HostCommand, type ToHost } from '@cresthold/shared';
 import { FloodGauge } from './flood-gauge.js';
 import { checkHostMessage } from './host-message-check.js';
+import { openOutput } from './host-output.js';
 import { PendingRequests } from './pending-requests.js';
 import type { SupervisionTiming } from './supervision-options.js';
 
@@ -20,8 +22,8 @@ export interface HostProgram {
   /** Path of the program that is forked. */
   file: string;
   args: string[];
-  /** Open file descriptor for what it prints: a file outlives the server, a pipe would break with it. */
-  outputFd: number | 'ignore';
+  /** File for what it prints, null for none: a file outlives the server, a pipe would break with it. */
+  outputFile: string | null;
 }
 
 export interface HostLifeListener {
@@ -46,6 +48,8 @@ export class HostLife {
   private readonly requests = new PendingRequests();
   private readonly flood: FloodGauge;
   private readonly timers: NodeJS.Timeout[] = [];
+  /** Configurations under way. */
+  private configuring = 0;
   private stage: Stage = 'starting';
   private lastHeardMs = performance.now();
   /** Set where we know better than the exit code why it died. */
@@ -66,12 +70,7 @@ export class HostLife {
     });
     this.ready.catch(() => undefined);
     this.ended = new Promise((resolve) => (this.resolveEnded = resolve));
-    const { file, args, outputFd } = program;
-    this.child = fork(file, args, {
-      serialization: 'advanced',
-      stdio: ['ignore', outputFd, outputFd, 'ipc'],
-      execArgv: [],
-    });
+    this.child = forkProgram(program);
     this.listen();
   }
 
@@ -93,6 +92,17 @@ export class HostLife {
     const { requestId, reply } = this.requests.open(command.type, timeoutMs);
     this.send({ type: 'command', requestId, command });
     return reply;
+  }
+
+  /** As `request`, with a bound of its own: a host that opens its wires has no scan to tell of meanwhile. */
+  async configure(command: Extract<HostCommand, { type: 'configure' }>): Promise<void> {
+    this.configuring += 1;
+    try {
+      await this.request(command, this.timing.configureMs);
+    } finally {
+      this.configuring -= 1;
+      this.lastHeardMs = performance.now();
+    }
   }
 
   /** Asks the host to end in order, and ends it by force when it has not within the bound. */
@@ -164,7 +174,7 @@ export class HostLife {
   /** A busy server reads late: what already waits in the pipe is read before the host is called silent. */
   private watchSilence(): void {
     const isSilent = () => performance.now() - this.lastHeardMs > this.timing.silenceMs;
-    if (!isSilent() || this.known?.kind === 'asked') return;
+    if (!isSilent() || this.configuring > 0 || this.known?.kind === 'asked') return;
     setTimeout(() => {
       if (this.stage === 'ready' && isSilent()) {
         this.kill('hung', `Nothing was heard of it for ${this.timing.silenceMs} ms.`);
@@ -196,5 +206,20 @@ export class HostLife {
     this.requests.failAll(message);
     this.rejectReady(new DomainError('host.unavailable', message));
     this.resolveEnded({ kind, exitCode, signal, message });
+  }
+}
+
+function forkProgram({ file, args, outputFile }: HostProgram): ChildProcess {
+  const outputFd = outputFile === null ? null : openOutput(outputFile);
+  try {
+    const output = outputFd ?? 'ignore';
+    return fork(file, args, {
+      serialization: 'advanced',
+      stdio: ['ignore', output, output, 'ipc'],
+      execArgv: [],
+    });
+  } finally {
+    // The child has a copy of its own.
+    if (outputFd !== null) closeSync(outputFd);
   }
 }

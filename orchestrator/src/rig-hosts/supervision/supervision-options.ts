@@ -4,6 +4,8 @@ export interface SupervisionTiming {
   readyMs: number;
   /** From a command to its reply. */
   requestMs: number;
+  /** From `configure` to its reply: time to open every wire. */
+  configureMs: number;
   /** Longest time without a valid message of a host that is READY; longer is taken as hung. */
   silenceMs: number;
   /** From `shut-down` to the end of the process: time to ramp the rig to rest. */
@@ -27,6 +29,7 @@ export interface RestartPolicy {
 export const defaultTiming: SupervisionTiming = {
   readyMs: 15_000,
   requestMs: 5_000,
+  configureMs: 20_000,
   silenceMs: 4_000,
   shutDownMs: 30_000,
   aliveEveryMs: 500,

@@ -1,0 +1,43 @@
+import { Injectable } from '@nestjs/common';
+import type { FromLive, Telemetry } from '@cresthold/shared';
+import type { LiveClient } from './live-client.js';
+
+/** Everybody who listens, and who of them hears what. */
+@Injectable()
+export class LiveHub {
+  private readonly clients = new Set<LiveClient>();
+
+  add(client: LiveClient): void {
+    this.clients.add(client);
+  }
+
+  remove(client: LiveClient): void {
+    this.clients.delete(client);
+  }
+
+  all(): LiveClient[] {
+    return [...this.clients];
+  }
+
+  toAll(message: FromLive): void {
+    const text = JSON.stringify(message);
+    for (const client of this.clients) client.send(text);
+  }
+
+  /** To those who subscribed to the rig; never dropped. */
+  toSubscribers(rigId: string, message: FromLive): void {
+    let text: string | null = null;
+    for (const client of this.clients) {
+      if (client.isSubscribed(rigId)) client.send((text ??= JSON.stringify(message)));
+    }
+  }
+
+  /** To those who subscribed to the rig and can take it. Made into text once, and only where somebody listens. */
+  telemetry(telemetry: Telemetry): void {
+    let text: string | null = null;
+    for (const client of this.clients) {
+      if (!client.isSubscribed(telemetry.rigId)) continue;
+      client.sendIfRoom((text ??= JSON.stringify({ type: 'telemetry', telemetry } satisfies FromLive)));
+    }
+  }
+}

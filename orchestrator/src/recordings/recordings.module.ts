@@ -1,0 +1,11 @@
+import { Module } from '@nestjs/common';
+import { RunReader } from './run-reader.service.js';
+import { RunRecords } from './run-records.service.js';
+import { RunSealer } from './run-sealer.service.js';
+
+/** The records of runs: rows in the main database and a file for each. */
+@Module({
+  providers: [RunRecords, RunReader, RunSealer],
+  exports: [RunRecords, RunReader],
+})
+export class RecordingsModule {}

@@ -1,0 +1,30 @@
+import { channelIdSchema, rigStatusSchema } from '@cresthold/shared';
+import { z } from 'zod';
+
+const reasonSchema = z.string().trim().min(1, 'Give a reason.').max(300, 'At most 300 characters.');
+
+export const rigStatusResponseSchema = rigStatusSchema.meta({ id: 'RigStatus' });
+export const rigStatusListSchema = z.array(rigStatusResponseSchema);
+
+export const moveSchema = z
+  .object({
+    channel: channelIdSchema,
+    /** Where to, in the channel's unit. */
+    value: z.number(),
+  })
+  .meta({ id: 'Move' });
+export type Move = z.infer<typeof moveSchema>;
+
+export const emergencyStopSchema = z
+  .object({ reason: z.string().trim().max(300, 'At most 300 characters.').optional() })
+  .optional()
+  .meta({ id: 'EmergencyStop' });
+export type EmergencyStop = z.infer<typeof emergencyStopSchema>;
+
+export const reasonedSchema = z.object({ reason: reasonSchema }).meta({ id: 'Reasoned' });
+export type Reasoned = z.infer<typeof reasonedSchema>;
+
+export const lockoutSchema = z
+  .object({ isLockedOut: z.boolean(), reason: reasonSchema })
+  .meta({ id: 'LockoutChange' });
+export type LockoutChange = z.infer<typeof lockoutSchema>;

@@ -1,0 +1,76 @@
+import { Injectable } from '@nestjs/common';
+import type { RigStatus } from '@cresthold/shared';
+import { AuditService } from '../audit/audit.service.js';
+import { RigStore } from '../rigs/rig-store.js';
+import type { EmergencyStop, LockoutChange, Move } from './dto/rig-commands.dto.js';
+import { RigHostsService } from './rig-hosts.service.js';
+
+const noReason = 'Emergency stop pressed.';
+
+/** What people do to a rig by hand; each act is kept with who did it. */
+@Injectable()
+export class RigCommandsService {
+  constructor(
+    private readonly hosts: RigHostsService,
+    private readonly rigs: RigStore,
+    private readonly audit: AuditService,
+  ) {}
+
+  status(rigId: string): Promise<RigStatus> {
+    return this.hosts.currentStatus(rigId);
+  }
+
+  async arm(rigId: string, by: string): Promise<RigStatus> {
+    const status = await this.hosts.commandForStatus(rigId, { type: 'arm', by });
+    await this.audit.record({ account: by, action: 'rig.armed', rigId });
+    return status;
+  }
+
+  async disarm(rigId: string, by: string): Promise<RigStatus> {
+    const status = await this.hosts.commandForStatus(rigId, { type: 'disarm', by });
+    await this.audit.record({ account: by, action: 'rig.disarmed', rigId });
+    return status;
+  }
+
+  async move(rigId: string, { channel, value }: Move, by: string): Promise<RigStatus> {
+    const status = await this.hosts.commandForStatus(rigId, { type: 'move', channel, value, by });
+    const subject = `${channel} to ${value}`;
+    await this.audit.record({ account: by, action: 'rig.moved-by-hand', rigId, subject });
+    return status;
+  }
+
+  /** The stop comes first, its entry in the audit log after it. */
+  async emergencyStop(rigId: string, request: EmergencyStop, by: string): Promise<RigStatus> {
+    const reason = reasonOf(request);
+    const status = await this.hosts.emergencyStop(rigId, by, reason);
+    await this.audit.record({ account: by, action: 'rig.emergency-stopped', rigId, reason });
+    return status;
+  }
+
+  async emergencyStopAll(request: EmergencyStop, by: string): Promise<RigStatus[]> {
+    const reason = reasonOf(request);
+    const statuses = await this.hosts.emergencyStopAll(by, reason);
+    await this.audit.record({ account: by, action: 'rig.all-emergency-stopped', reason });
+    return statuses;
+  }
+
+  async reset(rigId: string, reason: string, by: string): Promise<RigStatus> {
+    const status = await this.hosts.reset(rigId, by, reason);
+    await this.audit.record({ account: by, action: 'rig.trip-reset', rigId, reason });
+    return status;
+  }
+
+  /** Kept on disk first: a lockout holds even where no host is there to hear of it. */
+  async setLockout(rigId: string, { isLockedOut, reason }: LockoutChange, by: string): Promise<RigStatus> {
+    await this.rigs.get(rigId);
+    const at = new Date().toISOString();
+    await this.rigs.saveLockout(rigId, isLockedOut ? { by, reason, at } : null);
+    const action = isLockedOut ? 'rig.locked-out' : 'rig.lockout-lifted';
+    await this.audit.record({ account: by, action, rigId, reason });
+    return this.hosts.setLockout(rigId, isLockedOut);
+  }
+}
+
+function reasonOf(request: EmergencyStop): string {
+  return request?.reason || noReason;
+}
