@@ -1,3 +1,5 @@
+export * from './conformance/conformance-fixture.js';
+export { describeAdapterConformance } from './conformance/describe-adapter-conformance.js';
 export * from './contract.js';
 export { inMemoryAdapter } from './in-memory/in-memory.adapter.js';
 export type { InMemoryAddress, InMemoryConfiguration } from './in-memory/in-memory.schema.js';

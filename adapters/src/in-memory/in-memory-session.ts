@@ -26,6 +26,7 @@ const ignore = (): void => undefined;
 /** A session on a store of this process; the reference for what the contract asks. */
 export class InMemorySession implements AdapterSession<InMemoryAddress> {
   private tail: Promise<unknown> = Promise.resolve();
+  private readonly generation: number;
   private ended: DomainError | null = null;
   private cancelWait: (() => void) | null = null;
 
@@ -33,7 +34,9 @@ export class InMemorySession implements AdapterSession<InMemoryAddress> {
     private readonly store: MemoryStore,
     private readonly storeName: string,
     private readonly timeoutMs: number,
-  ) {}
+  ) {
+    this.generation = store.sessionGeneration;
+  }
 
   describe(address: InMemoryAddress): AddressFacts {
     const { isWritable, quantum, min, max } = parseOrMisconfigured(inMemoryAddressSchema, address, 'address');
@@ -106,7 +109,8 @@ export class InMemorySession implements AdapterSession<InMemoryAddress> {
   /** Null where the store answers; the session ends where the store is gone. */
   private async answer(): Promise<DomainError | null> {
     if (!this.ended && this.store.mood === 'silent') await this.waitInVain();
-    if (!this.ended && this.store.mood === 'gone') {
+    const isGone = this.store.mood === 'gone' || this.store.sessionGeneration !== this.generation;
+    if (isGone && !this.ended) {
       this.ended = new DomainError('adapter.disconnected', `Store "${this.storeName}" is gone.`);
     }
     if (this.ended) return this.ended;

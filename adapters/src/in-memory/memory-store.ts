@@ -19,6 +19,17 @@ export class MemoryStore {
   /** Called after each accepted write. */
   onWrite: ((name: string, value: number) => void) | null = null;
   private readonly values = new Map<string, number>();
+  private generation = 0;
+
+  /** Ends the open sessions as a broken wire would; new ones are welcome. */
+  endSessions(): void {
+    this.generation += 1;
+  }
+
+  /** What a session remembers to see that it was ended. */
+  get sessionGeneration(): number {
+    return this.generation;
+  }
 
   set(name: string, value: number): void {
     this.values.set(name, value);

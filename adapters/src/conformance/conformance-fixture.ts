@@ -1,0 +1,58 @@
+import type { Adapter } from '../contract.js';
+
+/** A value of the peer that can be read and written through the adapter. */
+export interface ConformanceCell<Address> {
+  readonly address: Address;
+  /** Two different engineering values that the wire carries exactly. */
+  readonly values: readonly [number, number];
+}
+
+/** What the peer of a fixture can be made to do; the kit checks the duties that go with it. */
+export type Provocation =
+  /** It has an address that it refuses: `peer.refused`. */
+  | 'refuse'
+  /** It has an address that can only be read: `peer.readOnly`. */
+  | 'read-only'
+  /** `peer.silence()` and `peer.recover()`. */
+  | 'silence'
+  /** `peer.garble()` and `peer.recover()`. */
+  | 'garble'
+  /** `peer.cut()`; it takes new connections afterwards. */
+  | 'cut'
+  /** It knows a configuration that nobody answers at: `peer.unreachable`. */
+  | 'unreachable';
+
+/** The device end of one test, started afresh for each. */
+export interface ConformancePeer<Configuration, Address> {
+  /** With a timeout of at most 300 ms. */
+  readonly configuration: Configuration;
+  /** At least three. */
+  readonly cells: readonly ConformanceCell<Address>[];
+  /** What the device itself holds at a cell, engineering value, seen past the adapter. */
+  peek(address: Address): number;
+  readonly refused?: Address;
+  readonly readOnly?: Address;
+  readonly unreachable?: Configuration;
+  silence?(): void;
+  garble?(): void;
+  recover?(): void;
+  cut?(): void;
+  stop(): Promise<void>;
+}
+
+export interface ConformanceFixture<Configuration, Address> {
+  readonly title: string;
+  readonly adapter: Adapter<Configuration, Address>;
+  /** Longest time that a read or write of `configuration` may take, ms. */
+  readonly timeoutMs: number;
+  readonly provokes: readonly Provocation[];
+  readonly malformedConfiguration: unknown;
+  readonly malformedAddress: unknown;
+  start(): Promise<ConformancePeer<Configuration, Address>>;
+}
+
+/** The two functions that every test runner has; the kit brings its own assertions. */
+export interface TestRunner {
+  describe(title: string, body: () => void): void;
+  it(title: string, body: () => Promise<void>): void;
+}
