@@ -1,4 +1,9 @@
 export * from './envelopes/envelope.schema.js';
+export * from './envelopes/guard.js';
+export * from './envelopes/interlock-judge.js';
+export * from './envelopes/rig-moves.js';
+export * from './envelopes/rig-state-machine.js';
+export * from './envelopes/staleness-judge.js';
 export * from './errors/domain-error.js';
 export * from './errors/error-catalogue.js';
 export * from './experiments/experiment.schema.js';
@@ -25,6 +30,7 @@ export * from './rigs/rig.schema.js';
 export * from './runs/run-columns.js';
 export * from './runs/run-event.schema.js';
 export * from './scan/readings.js';
+export * from './scan/scan-engine.js';
 export * from './scan/scan-engine.types.js';
 export * from './scenario/scenario.schema.js';
 export * from './seeking/gradient-law.js';

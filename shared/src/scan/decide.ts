@@ -1,0 +1,131 @@
+import { freshSlew, guardRequest } from '../envelopes/guard.js';
+import type { SequencerOutput } from '../experiments/sequencer.types.js';
+import { type HeldActuator, moveTowards } from './actuator-bank.js';
+import {
+  actuatorsOf,
+  applyRigEvent,
+  type EngineState,
+  letGo,
+  orderStop,
+  tripIfInMotion,
+} from './engine-state.js';
+import type { RunKeeper } from './run-keeper.js';
+import type { ScanInput } from './scan-engine.types.js';
+import { isStopComplete, noteStopped, stepStopAction } from './stop-action.js';
+
+/** Decides what every actuator is asked for in this scan, and takes it through the guard. */
+export function decide(engine: EngineState, input: ScanInput): void {
+  const actuators = actuatorsOf(engine);
+  for (const actuator of actuators) {
+    actuator.isWritten = false;
+    actuator.requested = NaN;
+    actuator.requestedBase = actuator.base;
+    actuator.requestedDither = 0;
+  }
+  if (engine.rigState.phase === 'running') ask(engine, input);
+  if (engine.rigState.phase === 'armed') followTargets(actuators, input.dtS);
+  switch (engine.rigState.phase) {
+    case 'armed':
+    case 'running':
+      guardAll(engine, input);
+      break;
+    case 'stopping':
+    case 'tripped':
+      stopOn(engine, input);
+      break;
+    case 'idle':
+    case 'offline':
+      break;
+  }
+}
+
+/** Asks the experiment what it wants. Whatever goes wrong in it ends in the stop action of this scan. */
+function ask(engine: EngineState, input: ScanInput): void {
+  const { run } = engine;
+  if (!run || run.isPaused) return;
+  const wanted = stepSafely(engine, run, input);
+  if (!wanted) return;
+  noteActiveSteps(engine, run, wanted.activeSteps);
+  for (const event of wanted.events) engine.log.add(event);
+  if (wanted.end) {
+    orderStop(engine, 'stop', { status: 'finished', ...wanted.end });
+    return;
+  }
+  for (const { channel, base, dither } of wanted.requests) {
+    const actuator = findActuator(engine, channel);
+    if (!actuator) {
+      const message = `The experiment asked for "${channel}", which has no approved limit.`;
+      tripIfInMotion(engine, `no-limit:${channel}`, message, input.atMs);
+      return;
+    }
+    actuator.requestedBase = base;
+    actuator.requestedDither = dither;
+  }
+}
+
+function stepSafely(engine: EngineState, run: RunKeeper, input: ScanInput): SequencerOutput | null {
+  try {
+    return run.step(input.dtS);
+  } catch (error) {
+    const why = error instanceof Error ? error.message : String(error);
+    tripIfInMotion(
+      engine,
+      'fault:sequencer',
+      `The experiment failed by a fault of its own: ${why}`,
+      input.atMs,
+    );
+    return null;
+  }
+}
+
+/** Manual moves: the base goes to its target at the slew limit. */
+function followTargets(actuators: readonly HeldActuator[], dtS: number): void {
+  for (const actuator of actuators) {
+    if (Number.isNaN(actuator.target)) continue;
+    actuator.requestedBase = moveTowards(actuator.base, actuator.target, freshSlew(actuator.guarded, dtS));
+    if (actuator.requestedBase === actuator.target) actuator.target = NaN;
+  }
+}
+
+/**
+ * The held base follows what was asked for at no more than the slew limit, so that a pause or the
+ * end of a step finds the actuator about where its base is.
+ */
+function guardAll(engine: EngineState, input: ScanInput): void {
+  for (const actuator of actuatorsOf(engine)) {
+    const { guarded, limit, requestedBase, requestedDither } = actuator;
+    actuator.requested = requestedBase + requestedDither;
+    if (!guardRequest(guarded, requestedBase, requestedDither, input.dtS)) {
+      const message = `Actuator "${actuator.channel}" was asked for a value that is no number.`;
+      tripIfInMotion(engine, `non-finite:${actuator.channel}`, message, input.atMs);
+      continue;
+    }
+    const inRange = Math.min(Math.max(requestedBase, limit.min), limit.max);
+    actuator.base = moveTowards(actuator.base, inRange, freshSlew(guarded, input.dtS));
+    actuator.isWritten = true;
+  }
+}
+
+function stopOn(engine: EngineState, input: ScanInput): void {
+  const actuators = actuatorsOf(engine);
+  noteStopped(actuators, engine.readings, input.tS);
+  if (engine.rigState.phase === 'stopping' && isStopComplete(actuators)) {
+    applyRigEvent(engine, { type: 'came-to-rest' });
+    letGo(engine);
+    return;
+  }
+  stepStopAction(actuators, input.tS, input.dtS);
+}
+
+function noteActiveSteps(engine: EngineState, run: RunKeeper, activeSteps: readonly string[]): void {
+  const before = run.activeSteps;
+  const isSame = before.length === activeSteps.length && before.every((id, i) => id === activeSteps[i]);
+  if (isSame) return;
+  run.activeSteps = [...activeSteps];
+  engine.isStatusChanged = true;
+}
+
+function findActuator(engine: EngineState, channel: string): HeldActuator | null {
+  for (const actuator of actuatorsOf(engine)) if (actuator.channel === channel) return actuator;
+  return null;
+}

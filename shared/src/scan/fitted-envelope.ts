@@ -1,0 +1,74 @@
+import type { EnvelopeInForce } from '../envelopes/envelope.schema.js';
+import { InterlockJudge } from '../envelopes/interlock-judge.js';
+import { StalenessJudge } from '../envelopes/staleness-judge.js';
+import { DomainError, type FieldFault } from '../errors/domain-error.js';
+import type { Rig } from '../rigs/rig.schema.js';
+import { createActuatorBank, type HeldActuator } from './actuator-bank.js';
+import { compileAll } from './compile-all.js';
+import { Heartbeat } from './heartbeat.js';
+import type { Readings } from './readings.js';
+import type { ValueGrid } from './scan-engine.types.js';
+
+/** An envelope made ready for the scans of one rig. */
+export interface FittedEnvelope {
+  readonly inForce: EnvelopeInForce;
+  readonly actuators: readonly HeldActuator[];
+  readonly interlocks: InterlockJudge;
+  readonly staleness: StalenessJudge;
+  readonly heartbeat: Heartbeat | null;
+}
+
+/**
+ * Fits an envelope to a rig.
+ *
+ * @throws channel.not-found where the envelope names what is no actuator or no channel of the rig
+ * @throws expression.invalid where an interlock's condition cannot be understood
+ */
+export function fitEnvelope(
+  inForce: EnvelopeInForce,
+  rig: Rig,
+  grids: ReadonlyMap<string, ValueGrid>,
+  readings: Readings,
+): FittedEnvelope {
+  const { content } = inForce;
+  const faults = channelFaults(inForce, rig);
+  if (faults.length > 0) throw new DomainError('channel.not-found', undefined, faults);
+  const conditions = compileAll(
+    content.interlocks.map(({ condition }, index) => ({
+      field: `interlocks[${index}].condition`,
+      text: condition,
+      isCondition: true,
+    })),
+    new Set(readings.channelIds),
+  );
+  return {
+    inForce,
+    actuators: createActuatorBank(rig, content.limits, grids, readings),
+    interlocks: new InterlockJudge(content.interlocks, conditions),
+    staleness: new StalenessJudge(content.staleness, readings),
+    heartbeat: heartbeatOf(inForce, rig),
+  };
+}
+
+function heartbeatOf({ content }: EnvelopeInForce, rig: Rig): Heartbeat | null {
+  const channel = rig.channels.find(({ id }) => id === content.heartbeat?.channel);
+  if (!content.heartbeat || channel?.kind !== 'actuator') return null;
+  return new Heartbeat(channel.id, channel.connection, content.heartbeat.periodS);
+}
+
+function channelFaults({ content }: EnvelopeInForce, rig: Rig): FieldFault[] {
+  const kinds = new Map(rig.channels.map((channel) => [channel.id, channel.kind]));
+  const faults: FieldFault[] = [];
+  const needActuator = (channel: string, field: string) => {
+    if (kinds.get(channel) === 'actuator') return;
+    faults.push({ field, message: `The rig has no actuator "${channel}": name one of its actuators.` });
+  };
+  content.limits.forEach(({ channel }, index) => needActuator(channel, `limits[${index}].channel`));
+  if (content.heartbeat) needActuator(content.heartbeat.channel, 'heartbeat.channel');
+  content.staleness.forEach(({ channel }, index) => {
+    if (kinds.has(channel)) return;
+    const field = `staleness[${index}].channel`;
+    faults.push({ field, message: `The rig has no channel "${channel}": name one of its channels.` });
+  });
+  return faults;
+}

@@ -1,0 +1,98 @@
+import type { EnvelopeInForce } from '../envelopes/envelope.schema.js';
+import { isInsideRange } from '../envelopes/guard.js';
+import { DomainError } from '../errors/domain-error.js';
+import type { RunEnd } from './run-keeper.js';
+import { takeOverFromReadBack } from './actuator-bank.js';
+import { checkArming } from './arming-checklist.js';
+import {
+  actuatorsOf,
+  applyRigEvent,
+  type EngineState,
+  letGo,
+  orderStop,
+  requireRigEvent,
+} from './engine-state.js';
+import { fitEnvelope } from './fitted-envelope.js';
+import { presentCauses } from './present-causes.js';
+import { beginStopAction } from './stop-action.js';
+
+/**
+ * Puts an envelope in force. While a trip is latched the stop action goes on with the new limits.
+ *
+ * @throws rig.busy while armed, running or stopping
+ * @throws channel.not-found, expression.invalid where it does not fit the rig
+ */
+export function setEnvelope(engine: EngineState, envelope: EnvelopeInForce): void {
+  requireRigEvent(engine, { type: 'set-envelope' });
+  const fitted = fitEnvelope(envelope, engine.rig, engine.grids, engine.readings);
+  const before = actuatorsOf(engine);
+  for (const actuator of fitted.actuators) {
+    const known = before.find(({ channel }) => channel === actuator.channel);
+    if (!known) continue;
+    actuator.guarded.applied = known.guarded.applied;
+    actuator.isTaken = known.isTaken;
+  }
+  beginStopAction(fitted.actuators);
+  engine.fitted = fitted;
+  applyRigEvent(engine, { type: 'set-envelope' });
+}
+
+/** A lockout forbids arming; a rig that is armed or running is stopped in order. */
+export function setLockout(engine: EngineState, isLockedOut: boolean): void {
+  if (isLockedOut) orderStop(engine, 'lock-out', stopped('The rig was locked out.'));
+  else applyRigEvent(engine, { type: 'lift-lockout' });
+}
+
+/** @throws rig.cannot-arm listing what forbids it; rig.tripped, rig.offline, rig.busy, rig.illegal-move */
+export function arm(engine: EngineState): void {
+  const { conditions, obstacles } = checkArming(engine);
+  applyRigEvent(engine, { type: 'arm', ...conditions }, obstacles);
+  for (const actuator of actuatorsOf(engine)) {
+    takeOverFromReadBack(actuator, engine.readings);
+    actuator.isStopped = false;
+  }
+}
+
+/** @throws rig.not-armed, rig.busy, rig.tripped */
+export function disarm(engine: EngineState, by: string): void {
+  orderStop(engine, 'disarm', stopped(`Disarmed by ${by}.`));
+}
+
+/**
+ * @throws rig.not-armed, rig.busy, rig.offline, rig.tripped by the rig's phase
+ * @throws channel.not-found, channel.no-limit, request.invalid by the channel and value
+ */
+export function move(engine: EngineState, channel: string, value: number): void {
+  requireRigEvent(engine, { type: 'manual-move' });
+  const kind = engine.rig.channels.find(({ id }) => id === channel)?.kind;
+  if (kind !== 'actuator')
+    throw new DomainError('channel.not-found', `The rig has no actuator "${channel}".`);
+  const actuator = actuatorsOf(engine).find((held) => held.channel === channel);
+  if (!actuator) throw new DomainError('channel.no-limit');
+  const { limit } = actuator;
+  if (!isInsideRange(limit, value)) {
+    const message = `Give a value from ${limit.min} to ${limit.max}: these are the approved limits.`;
+    throw new DomainError('request.invalid', undefined, [{ field: 'value', message }]);
+  }
+  actuator.target = value;
+}
+
+/** @throws run.not-running, rig.tripped */
+export function stop(engine: EngineState, reason: string): void {
+  orderStop(engine, 'stop', stopped(reason));
+}
+
+/**
+ * @throws rig.not-tripped, rig.cause-present naming what is still there, request.invalid without a reason
+ */
+export function reset(engine: EngineState, reason: string): void {
+  const causes = presentCauses(engine);
+  const hasReason = reason.trim() !== '';
+  const details = hasReason ? causes : [{ field: 'reason', message: 'Say why the trip may be reset.' }];
+  applyRigEvent(engine, { type: 'reset', isCausePresent: causes.length > 0, hasReason }, details);
+  letGo(engine);
+}
+
+function stopped(reason: string): RunEnd {
+  return { status: 'stopped', verdict: 'inconclusive', reason };
+}

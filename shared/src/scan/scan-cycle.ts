@@ -1,0 +1,126 @@
+import type { Interlock } from '../envelopes/envelope.schema.js';
+import { Quality } from '../rigs/quality.js';
+import { noteReachability } from './actuator-bank.js';
+import { bestPoint } from './best-point.js';
+import { decide } from './decide.js';
+import {
+  actuatorsOf,
+  applyRigEvent,
+  type EngineState,
+  latchTrip,
+  orderStop,
+  tripIfInMotion,
+} from './engine-state.js';
+import { pauseRun } from './pause.js';
+import type { ScanInput, ScanOutput } from './scan-engine.types.js';
+import { isoTime } from './wall-time.js';
+import { watch } from './watchdogs.js';
+
+/**
+ * One scan: derived channels, then judged before decided, and guarded after; then what is to be
+ * written and recorded.
+ */
+export function runScan(engine: EngineState, input: ScanInput): ScanOutput {
+  const { output, run, log } = engine;
+  output.writes.length = 0;
+  output.row = null;
+  output.runEnded = null;
+  output.runTS = run ? run.runTS(input.tS) : null;
+  log.beginScan(output.runTS, input.atMs);
+  lookAtWires(engine, input);
+  engine.derived.fill(engine.lookup);
+  judge(engine, input);
+  watch(engine, input);
+  run?.evaluateObjective();
+  decide(engine, input);
+  log.sayInterventions(actuatorsOf(engine), input.tS, false);
+  collectWrites(engine, input.tS);
+  if (run) output.row = run.fillRow();
+  closeRun(engine, input.tS);
+  log.endScan();
+  output.isStatusChanged = engine.isStatusChanged;
+  engine.isStatusChanged = false;
+  return output;
+}
+
+function lookAtWires(engine: EngineState, input: ScanInput): void {
+  const { wires, log } = engine;
+  wires.update(input.lostConnections);
+  for (const connection of wires.restored) {
+    log.add({ type: 'connection.restored', connection });
+    engine.isStatusChanged = true;
+  }
+  for (const { connection, code, message } of wires.newlyLost) {
+    log.add({ type: 'connection.lost', connection, code, message });
+    const note = { cause: `connection:${connection}`, message, at: isoTime(input.atMs), by: null };
+    latchTrip(engine, 'wire-lost', note);
+  }
+  if (wires.isAllUp() && !engine.rigState.isWireUp) applyRigEvent(engine, { type: 'wire-restored' });
+  if (!wires.isAllUp()) blankLostChannels(engine);
+  noteReachability(actuatorsOf(engine), engine.isConnectionLost, input.tS);
+}
+
+/** Whatever the caller left in the readings: nothing can be known through a connection that is down. */
+function blankLostChannels(engine: EngineState): void {
+  const { channels } = engine.rig;
+  for (let i = 0; i < channels.length; i++) {
+    const channel = channels[i];
+    if (channel && channel.kind !== 'derived' && engine.wires.isLost(channel.connection)) {
+      engine.readings.set(i, NaN, Quality.missing);
+    }
+  }
+}
+
+function judge(engine: EngineState, input: ScanInput): void {
+  const { fitted, log } = engine;
+  if (!fitted) return;
+  const { interlocks, staleness } = fitted;
+  interlocks.judge(engine.lookup, input.tS);
+  staleness.judge(engine.readings, input.tS);
+  if (interlocks.hasChanged) engine.isStatusChanged = true;
+  for (const { id } of interlocks.cleared) log.add({ type: 'interlock.cleared', interlock: id });
+  for (const interlock of interlocks.acted) {
+    const { id, action, message } = interlock;
+    log.add({ type: 'interlock.acted', interlock: id, action, message });
+    actOn(engine, interlock, input.atMs);
+  }
+  staleness.forEachStale(({ channel, afterS }) => {
+    const message = `Sensor "${channel}" gave no good value for over ${afterS} s.`;
+    tripIfInMotion(engine, `stale:${channel}`, message, input.atMs);
+  });
+}
+
+/** Warn says so and no more; pause and stop mean something only while there is motion to hold or stop. */
+function actOn(engine: EngineState, { id, action, message }: Interlock, atMs: number): void {
+  const { phase } = engine.rigState;
+  if (action === 'trip') tripIfInMotion(engine, `interlock:${id}`, message, atMs);
+  if (action === 'pause' && phase === 'running') pauseRun(engine, message);
+  if (action === 'stop' && (phase === 'armed' || phase === 'running')) {
+    orderStop(engine, 'stop', { status: 'stopped', verdict: 'inconclusive', reason: message });
+  }
+}
+
+function collectWrites(engine: EngineState, tS: number): void {
+  const { writes } = engine.output;
+  for (const actuator of actuatorsOf(engine)) {
+    if (!actuator.isWritten) continue;
+    actuator.write.value = actuator.guarded.applied;
+    writes.push(actuator.write);
+  }
+  const heartbeat = engine.fitted?.heartbeat;
+  if (heartbeat && !engine.wires.isLost(heartbeat.connection) && heartbeat.beat(tS)) {
+    writes.push(heartbeat.write);
+  }
+}
+
+/** A run ends at once with a trip, else when the rig has come to rest. */
+function closeRun(engine: EngineState, tS: number): void {
+  const { run, rigState, log } = engine;
+  if (!run?.end || rigState.phase === 'stopping' || rigState.phase === 'running') return;
+  log.sayInterventions(actuatorsOf(engine), tS, true);
+  log.add({ type: 'run.ended', ...run.end });
+  engine.output.runEnded = { ...run.end, results: run.results() };
+  engine.lastBestPoint = bestPoint(run.order.experiment.graph, run.sequencer);
+  engine.run = null;
+  engine.isStatusChanged = true;
+}

@@ -1,0 +1,68 @@
+import {
+  actuatorsOf,
+  createEngineState,
+  type EngineState,
+  latchTrip,
+  requireRigEvent,
+} from './engine-state.js';
+import { DomainError } from '../errors/domain-error.js';
+import { pauseRun, resumeRun } from './pause.js';
+import * as commands from './scan-commands.js';
+import { runScan } from './scan-cycle.js';
+import type { ScanEngine, ScanEngineConfiguration } from './scan-engine.types.js';
+import { statusOf } from './scan-status.js';
+import { type ExperimentParts, startRun } from './start-run.js';
+import { isStopComplete } from './stop-action.js';
+import { isoTime } from './wall-time.js';
+
+/**
+ * Makes the engine of one rig.
+ *
+ * @param parts what runs experiments; without it no run can be started
+ * @throws expression.invalid, channel.not-found where rig and envelope do not fit together
+ */
+export function createScanEngine(
+  configuration: ScanEngineConfiguration,
+  parts: ExperimentParts | null = null,
+): ScanEngine {
+  const engine = createEngineState(configuration);
+  return {
+    readings: engine.readings,
+    scan: (input) => runScan(engine, input),
+    setEnvelope: (envelope) => commands.setEnvelope(engine, envelope),
+    setLockout: (isLockedOut) => commands.setLockout(engine, isLockedOut),
+    arm: () => commands.arm(engine),
+    disarm: (by) => commands.disarm(engine, by),
+    move: (channel, value) => commands.move(engine, channel, value),
+    startRun: (order) => {
+      if (!parts)
+        throw new DomainError('server.bug', 'This engine was made without a runner of experiments.');
+      return startRun(engine, order, parts);
+    },
+    pause: (_by, reason) => pause(engine, reason),
+    resume: (by) => resumeRun(engine, by),
+    stop: (_by, reason) => commands.stop(engine, reason),
+    emergencyStop: (by, reason, atMs) => {
+      const note = { cause: 'emergency-stop', message: reason, at: isoTime(atMs), by };
+      latchTrip(engine, 'emergency-stop', note);
+    },
+    trip: (cause, message, atMs) =>
+      latchTrip(engine, 'trip', { cause, message, at: isoTime(atMs), by: null }),
+    reset: (_by, reason) => commands.reset(engine, reason),
+    isAtRest: () => isAtRest(engine),
+    status: () => statusOf(engine),
+  };
+}
+
+function pause(engine: EngineState, reason: string): void {
+  requireRigEvent(engine, { type: 'pause' });
+  if (engine.run?.isPaused) throw new DomainError('run.not-running', 'The run is paused already.');
+  pauseRun(engine, reason);
+}
+
+function isAtRest(engine: EngineState): boolean {
+  if (engine.run) return false;
+  const { phase } = engine.rigState;
+  if (phase === 'idle' || phase === 'offline') return true;
+  return phase === 'tripped' && isStopComplete(actuatorsOf(engine));
+}
