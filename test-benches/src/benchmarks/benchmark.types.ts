@@ -1,0 +1,17 @@
+/** One figure of a benchmark. Nothing is asserted: a ratio is for people and scripts to judge. */
+export interface BenchmarkResult {
+  name: string;
+  value: number;
+  unit: string;
+  /** `value` over that of what it is compared with, measured in the same run. */
+  ratio: number;
+  /** What it is compared with. */
+  against: string;
+}
+
+export interface Benchmark {
+  readonly name: string;
+  /** One line for the list. */
+  readonly purpose: string;
+  run(): Promise<BenchmarkResult>;
+}

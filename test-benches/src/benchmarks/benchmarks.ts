@@ -1,0 +1,6 @@
+import type { Benchmark } from './benchmark.types.js';
+import { engineScan } from './engine-scan.benchmark.js';
+import { scanLoop } from './scan-loop.benchmark.js';
+
+/** Every benchmark that `npm run bench` knows. */
+export const benchmarks: readonly Benchmark[] = [scanLoop, engineScan];
