@@ -29,6 +29,8 @@ export * from './rigs/quality.js';
 export * from './rigs/rig.schema.js';
 export * from './runs/run-columns.js';
 export * from './runs/run-event.schema.js';
+export * from './scan/derived-channels.js';
+export * from './scan/fitted-envelope.js';
 export * from './scan/readings.js';
 export * from './scan/scan-engine.js';
 export * from './scan/scan-engine.types.js';
