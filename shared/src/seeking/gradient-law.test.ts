@@ -3,6 +3,9 @@ import { describe, expect, it } from 'vitest';
 import { gradientLaw, type GradientLawParameters } from './gradient-law.js';
 import { decayRate, simulateSeeking } from './simulate-seeking.fixture.js';
 
+/** The workspace compiles without the types of any platform; the runner of the tests has it. */
+declare const console: { info(text: string): void };
+
 /**
  * The averaged decay rate on y = −f''/2·(θ−θ*)² is κ = k·f''·Re[e^{jφ}F(jω)H(jω)] with the washout
  * H = s/(s+ωh) and F the plant behind the map: averaging analysis of Krstić & Wang (2000); the numbers
