@@ -58,7 +58,7 @@ export const modbusAddressSchema = z
           : `A ${value.table} holds words: use one of u16, i16, u32, i32, f32.`,
       });
     }
-    if (value.address + registersOfType[value.type] > 65_536) {
+    if (value.address <= 65_535 && value.address + registersOfType[value.type] > 65_536) {
       context.addIssue({
         code: 'custom',
         path: ['address'],
