@@ -2,7 +2,7 @@ import { rmSync } from 'node:fs';
 import { Inject, Injectable, Logger } from '@nestjs/common';
 import { DomainError, endedStatuses, type RunStatus, type Verdict } from '@cresthold/shared';
 import { Subject } from 'rxjs';
-import { DataSource, IsNull, Not } from 'typeorm';
+import { DataSource, IsNull, LessThan, Not, type FindOptionsWhere } from 'typeorm';
 import { CONFIG } from '../config/config.module.js';
 import type { Config } from '../config/config.schema.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
@@ -17,6 +17,11 @@ export interface RunChange {
   rigId: string;
   status: RunStatus;
   verdict: Verdict | null;
+}
+
+export interface RunFilter {
+  rigId?: string | undefined;
+  status?: RunStatus | undefined;
 }
 
 /** The rows of runs through their life: opened, followed, ended once, sealed. */
@@ -39,6 +44,28 @@ export class RunRecords {
   /** The run of a rig that has not ended, or null. */
   openRunOf(rigId: string): Promise<RunEntity | null> {
     return this.dataSource.getRepository(RunEntity).findOneBy({ rigId, endedAt: IsNull() });
+  }
+
+  /** @throws run.not-found */
+  async get(runId: string): Promise<RunEntity> {
+    const run = await this.dataSource.getRepository(RunEntity).findOneBy({ id: runId });
+    if (!run) throw new DomainError('run.not-found');
+    return run;
+  }
+
+  /** The run that a person started with this key, or null. */
+  withKey(startedBy: string, idempotencyKey: string): Promise<RunEntity | null> {
+    return this.dataSource.getRepository(RunEntity).findOneBy({ startedBy, idempotencyKey });
+  }
+
+  /** Newest first, older than the run `beforeId`. */
+  list(filter: RunFilter, beforeId: string | null, limit: number): Promise<RunEntity[]> {
+    const { rigId, status } = filter;
+    const where: FindOptionsWhere<RunEntity> = {};
+    if (rigId !== undefined) where.rigId = rigId;
+    if (status !== undefined) where.status = status;
+    if (beforeId !== null) where.id = LessThan(beforeId);
+    return this.dataSource.getRepository(RunEntity).find({ where, order: { id: 'DESC' }, take: limit });
   }
 
   /** @throws rig.busy where the rig has an open run */

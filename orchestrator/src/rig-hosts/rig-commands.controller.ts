@@ -1,15 +1,15 @@
 import { Body, Controller, Get, HttpCode, Param, Post, Put } from '@nestjs/common';
-import { ApiOkResponse, ApiTags } from '@nestjs/swagger';
+import { ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { RigStatus } from '@cresthold/shared';
 import { Roles } from '../auth/access.decorator.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
+import { rigStatusDtoSchema } from '../rigs/dto/rig.dto.js';
 import {
   emergencyStopSchema,
   lockoutSchema,
   moveSchema,
   reasonedSchema,
   rigStatusListSchema,
-  rigStatusResponseSchema,
   type EmergencyStop,
   type LockoutChange,
   type Move,
@@ -23,10 +23,12 @@ import { RigCommandsService } from './rig-commands.service.js';
 export class RigCommandsController {
   constructor(private readonly commands: RigCommandsService) {}
 
-  /** Stops every rig at once and latches it. A software stop: no substitute for the hard-wired one. */
   @Post('emergency-stop')
   @HttpCode(200)
   @Roles('signed-in')
+  @ApiOperation({
+    summary: 'Stops every rig at once and latches it. A software stop: no substitute for the hard-wired one.',
+  })
   @ApiOkResponse({ standardSchema: rigStatusListSchema })
   emergencyStopAll(
     @Body({ schema: emergencyStopSchema }) body: EmergencyStop,
@@ -35,37 +37,37 @@ export class RigCommandsController {
     return this.commands.emergencyStopAll(body, user.account);
   }
 
-  /** Where the rig is. */
   @Get(':rigId/status')
   @Roles('signed-in')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({ summary: 'Where the rig is.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   status(@Param('rigId') rigId: string): Promise<RigStatus> {
     return this.commands.status(rigId);
   }
 
-  /** Readies the rig for motion; moves nothing. */
   @Post(':rigId/arm')
   @HttpCode(200)
   @Roles('test-engineer', 'technician')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({ summary: 'Readies the rig for motion; moves nothing.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   arm(@Param('rigId') rigId: string, @CurrentUser() user: SignedInUser): Promise<RigStatus> {
     return this.commands.arm(rigId, user.account);
   }
 
-  /** Brings the rig to rest and forbids motion. */
   @Post(':rigId/disarm')
   @HttpCode(200)
   @Roles('test-engineer', 'technician')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({ summary: 'Brings the rig to rest and forbids motion.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   disarm(@Param('rigId') rigId: string, @CurrentUser() user: SignedInUser): Promise<RigStatus> {
     return this.commands.disarm(rigId, user.account);
   }
 
-  /** Ramps an actuator to a value, inside the envelope. */
   @Post(':rigId/moves')
   @HttpCode(200)
   @Roles('test-engineer', 'technician')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({ summary: 'Ramps an actuator to a value, inside the envelope.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   move(
     @Param('rigId') rigId: string,
     @Body({ schema: moveSchema }) body: Move,
@@ -74,11 +76,13 @@ export class RigCommandsController {
     return this.commands.move(rigId, body, user.account);
   }
 
-  /** Stops the rig at once and latches it. A software stop: no substitute for the hard-wired one. */
   @Post(':rigId/emergency-stop')
   @HttpCode(200)
   @Roles('signed-in')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({
+    summary: 'Stops the rig at once and latches it. A software stop: no substitute for the hard-wired one.',
+  })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   emergencyStop(
     @Param('rigId') rigId: string,
     @Body({ schema: emergencyStopSchema }) body: EmergencyStop,
@@ -87,11 +91,11 @@ export class RigCommandsController {
     return this.commands.emergencyStop(rigId, body, user.account);
   }
 
-  /** Clears a latched trip whose cause is gone; moves nothing. */
   @Post(':rigId/reset')
   @HttpCode(200)
   @Roles('safety-officer')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({ summary: 'Clears a latched trip whose cause is gone; moves nothing.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   reset(
     @Param('rigId') rigId: string,
     @Body({ schema: reasonedSchema }) body: Reasoned,
@@ -100,10 +104,10 @@ export class RigCommandsController {
     return this.commands.reset(rigId, body.reason, user.account);
   }
 
-  /** Locks the rig out or lifts the lockout. */
   @Put(':rigId/lockout')
   @Roles('safety-officer')
-  @ApiOkResponse({ standardSchema: rigStatusResponseSchema })
+  @ApiOperation({ summary: 'Locks the rig out or lifts the lockout.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   setLockout(
     @Param('rigId') rigId: string,
     @Body({ schema: lockoutSchema }) body: LockoutChange,

@@ -76,15 +76,21 @@ export class RigHostProcess {
   }
 
   /**
-   * Configures the host that is up anew; begins one that is down or has failed.
+   * Configures the host that is up anew; begins one that is down or has failed. A host that refuses is ended.
    *
-   * @throws host.unavailable, host.timeout, or whatever the host answers
+   * @throws rig.busy, and host.unavailable where a host could not be begun
    */
   async reconfigure(): Promise<void> {
     if (this.current.name === 'down' || this.current.name === 'failed') return this.start();
     // A host that is just being brought up reads its documents when it is READY.
-    if (this.current.name !== 'up' || !this.life) return;
-    await this.life.configure(await this.owner.configuration());
+    const { life } = this;
+    if (this.current.name !== 'up' || !life) return;
+    try {
+      await life.configure(await this.owner.configuration());
+    } catch (error) {
+      if (error instanceof DomainError && error.code === 'rig.busy') throw error;
+      await this.giveUp(life, error);
+    }
   }
 
   /** Ends the host in order, by force after the bound, and begins it no more. */
@@ -113,11 +119,14 @@ export class RigHostProcess {
       if (!this.isEnding()) this.current = { name: 'up' };
     } catch (error) {
       // A refusal would come again; a death on the way is one like any other.
-      if (!life.isDead) {
-        this.fail(`It refused its configuration: ${textOf(error)}`);
-        await life.shutDown();
-      }
+      if (!life.isDead) await this.giveUp(life, error);
     }
+  }
+
+  /** A host that drives its rig by other documents than the stored ones is ended: it is brought to rest. */
+  private async giveUp(life: HostLife, error: unknown): Promise<void> {
+    this.fail(`It refused its configuration: ${textOf(error)}`);
+    await life.shutDown();
   }
 
   private begin(program: HostProgram): HostLife {

@@ -1,5 +1,5 @@
 import type { PreflightFault, RunStatus, Verdict } from '@cresthold/shared';
-import { Column, Entity, Index, PrimaryColumn } from 'typeorm';
+import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn } from 'typeorm';
 
 /** One execution of one experiment version on one rig; its samples are in a file of its own. */
 @Entity('run')
@@ -66,4 +66,9 @@ export class RunEntity {
   /** What the client called the request to start; the same key never starts a second run. */
   @Column('text', { nullable: true })
   idempotencyKey!: string | null;
+
+  /** Keeps the database from holding a run of a rig that it does not know. */
+  @ManyToOne('RigEntity', { nullable: false, onDelete: 'RESTRICT' })
+  @JoinColumn({ name: 'rigId', foreignKeyConstraintName: 'rig_of_run' })
+  readonly rig?: { id: string };
 }

@@ -1,10 +1,10 @@
-import { channelIdSchema, rigStatusSchema } from '@cresthold/shared';
+import { channelIdSchema } from '@cresthold/shared';
 import { z } from 'zod';
+import { rigStatusDtoSchema } from '../../rigs/dto/rig.dto.js';
 
 const reasonSchema = z.string().trim().min(1, 'Give a reason.').max(300, 'At most 300 characters.');
 
-export const rigStatusResponseSchema = rigStatusSchema.meta({ id: 'RigStatus' });
-export const rigStatusListSchema = z.array(rigStatusResponseSchema);
+export const rigStatusListSchema = z.array(rigStatusDtoSchema);
 
 export const moveSchema = z
   .object({

@@ -1,0 +1,18 @@
+import { Module } from '@nestjs/common';
+import { AuditModule } from '../audit/audit.module.js';
+import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
+import { RecordingsModule } from '../recordings/recordings.module.js';
+import { RigHostsModule } from '../rig-hosts/rig-hosts.module.js';
+import { RigStoreModule } from '../rigs/rig-store.module.js';
+import { RunDataController } from './run-data.controller.js';
+import { RunOrders } from './run-orders.service.js';
+import { RunStarter } from './run-start.service.js';
+import { RunsController } from './runs.controller.js';
+import { RunsService } from './runs.service.js';
+
+@Module({
+  imports: [AuditModule, EnvelopeStoreModule, RecordingsModule, RigHostsModule, RigStoreModule],
+  controllers: [RunsController, RunDataController],
+  providers: [RunOrders, RunStarter, RunsService],
+})
+export class RunsModule {}
