@@ -1,8 +1,9 @@
 import { execFile } from 'node:child_process';
 import { fileURLToPath } from 'node:url';
 import { promisify } from 'node:util';
-import { scenarioSchema, stepKinds } from '@cresthold/shared';
+import { compileExpression, preflight, scenarioSchema } from '@cresthold/shared';
 import { describe, expect, it } from 'vitest';
+import { efficiencyOf, flueGasAt } from '../burner/burner-physics.js';
 import { demoScenario } from './demo-scenario.js';
 
 const scenario = demoScenario({ benchHost: '127.0.0.1', benchPort: 15_020 });
@@ -22,15 +23,39 @@ describe('the demo scenario', () => {
     expect(entry?.envelope.content.heartbeat?.channel).toBe('heartbeat');
   });
 
-  it('leads every port that needs an edge to a step that is there', () => {
-    const graph = entry?.experiments[0]?.content.graph;
-    const ids = new Set(graph?.steps.map((step) => step.id));
-    for (const step of graph?.steps ?? []) {
-      const { ports, optionalPorts } = stepKinds[step.kind];
-      const led = graph?.edges.filter((edge) => edge.from === step.id).map((edge) => edge.port);
-      expect(led).toEqual(expect.arrayContaining(ports.filter((port) => !optionalPorts.includes(port))));
+  it('passes preflight: only ports that may stay open are noted', () => {
+    const { rig, envelope, objectives, experiments } = scenario.rigs[0]!;
+    const faults = preflight({
+      rig,
+      envelope: envelope.content,
+      objective: objectives[0]?.content ?? null,
+      graph: experiments[0]!.content.graph,
+      grids: new Map([['airTrim', { step: 0.01, origin: 0 }]]),
+    });
+    expect(faults.filter((fault) => fault.severity === 'error')).toEqual([]);
+    expect(new Set(faults.map((fault) => fault.code))).toEqual(new Set(['preflight.open-port']));
+  });
+
+  it('computes from the readings the efficiency that the bench means', () => {
+    for (const trimPct of [14, 20, 60]) {
+      const gas = flueGasAt(trimPct, 1.1);
+      const values = new Map([
+        ['o2', gas.o2Pct],
+        ['co', gas.coPpm],
+        ['flueTemp', gas.flueTempC],
+        ['airTemp', 20],
+      ]);
+      for (const channel of scenario.rigs[0]?.rig.channels ?? []) {
+        if (channel.kind !== 'derived') continue;
+        const outcome = compileExpression(channel.expression, new Set(values.keys()));
+        if (!outcome.isOk) throw new Error(outcome.message);
+        values.set(
+          channel.id,
+          outcome.expression.evaluate((name) => values.get(name) ?? NaN),
+        );
+      }
+      expect(values.get('efficiency')).toBeCloseTo(efficiencyOf(gas), 3);
     }
-    for (const edge of graph?.edges ?? []) expect(ids).toContain(edge.to);
   });
 
   it('is printed as the JSON that the loader reads', async () => {
