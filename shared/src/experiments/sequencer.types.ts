@@ -3,6 +3,7 @@ import type { ObjectiveContent } from '../objectives/objective.schema.js';
 import type { Rig } from '../rigs/rig.schema.js';
 import type { RunEventBody, Verdict } from '../runs/run-event.schema.js';
 import type { Readings } from '../scan/readings.js';
+import type { ValueGrid } from '../scan/scan-engine.types.js';
 import type { ExperimentGraph } from './experiment.schema.js';
 
 /** What a step wants of one actuator in this scan; the guard has the last word. */
@@ -32,6 +33,8 @@ export interface SequencerContext {
   graph: ExperimentGraph;
   /** Nominal time between two scans, s. */
   periodS: number;
+  /** Grid of each actuator's wire, where known: how near to its target an actuator can come. */
+  grids?: ReadonlyMap<string, ValueGrid>;
 }
 
 export interface SequencerInput {
@@ -47,12 +50,13 @@ export interface SequencerInput {
   held: (channel: string) => number;
 }
 
+/** Its lists and requests are reused by the next step: copy what is to be kept. Events are fresh. */
 export interface SequencerOutput {
   /** One per actuator that a step commands; the others hold their base. */
   requests: readonly ActuatorRequest[];
   events: readonly RunEventBody[];
   activeSteps: readonly string[];
-  /** Set in the scan in which the run came to its end. */
+  /** Set from the scan on in which the run came to its end. */
   end: { verdict: Verdict; reason: string } | null;
 }
 

@@ -75,7 +75,8 @@ export function resultNames(step: Step): string[] {
       return [
         name(`best.${step.parameters.actuator}`),
         name('best.objective'),
-        name('hysteresis'),
+        /** Greatest difference between the way up and the way down; only one way shows none. */
+        ...(step.parameters.isUpAndDown ? [name('hysteresis')] : []),
         name('peaks'),
       ];
     case 'seek':

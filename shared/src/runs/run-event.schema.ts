@@ -28,16 +28,22 @@ export const runEventBodySchema = z.discriminatedUnion('type', [
   event('run.stopping', { reason: z.string() }),
   event('run.ended', { status: runStatusSchema, verdict: verdictSchema, reason: z.string() }),
   event('step.started', { step: z.string(), kind: z.string() }),
-  event('step.ended', { step: z.string(), port: z.string(), results: z.record(z.string(), z.number()) }),
+  event('step.ended', {
+    step: z.string(),
+    port: z.string(),
+    results: z.record(z.string(), z.number()),
+    /** Why it left by a port other than the usual one; missing where there is nothing to say. */
+    reason: z.string().optional(),
+  }),
   event('survey.point-measured', {
     step: z.string(),
     actuator: z.string(),
     /** Applied value, channel unit. */
     value: z.number(),
-    /** Mean objective over the averaging time. */
-    objective: z.number(),
-    /** Standard error of that mean. */
-    standardError: z.number(),
+    /** Mean objective over the averaging time; null where no reading of it was good. */
+    objective: z.number().nullable(),
+    /** Standard error of that mean; null below two readings. */
+    standardError: z.number().nullable(),
     branch: z.enum(['up', 'down']),
     isValid: z.boolean(),
   }),
