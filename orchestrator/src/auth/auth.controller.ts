@@ -38,8 +38,10 @@ export class AuthController {
   @Roles('signed-in')
   @ApiNoContentResponse()
   signOut(@Res({ passthrough: true }) response: Response): void {
-    const { maxAge: _, ...options } = sessionCookieOptions(this.config.isHttps);
-    response.clearCookie(sessionCookieName, options);
+    response.clearCookie(sessionCookieName, {
+      ...sessionCookieOptions(this.config.isHttps),
+      maxAge: undefined,
+    });
   }
 
   /** Says who is signed in. */

@@ -1,12 +1,14 @@
 import { Module } from '@nestjs/common';
 import { TypeOrmModule } from '@nestjs/typeorm';
+import { AuditModule } from '../audit/audit.module.js';
 import { EnvelopeEntity } from './entities/envelope.entity.js';
 import { EnvelopeStore } from './envelope-store.js';
+import { EnvelopeWithdrawal } from './envelope-withdrawal.js';
 
-/** Reading of envelopes, apart from `EnvelopesModule` because the rig hosts need it and that module needs the hosts. */
+/** What rigs and rig hosts need of envelopes, apart from `EnvelopesModule`, which needs them in turn. */
 @Module({
-  imports: [TypeOrmModule.forFeature([EnvelopeEntity])],
-  providers: [EnvelopeStore],
-  exports: [EnvelopeStore],
+  imports: [AuditModule, TypeOrmModule.forFeature([EnvelopeEntity])],
+  providers: [EnvelopeStore, EnvelopeWithdrawal],
+  exports: [EnvelopeStore, EnvelopeWithdrawal],
 })
 export class EnvelopeStoreModule {}

@@ -33,8 +33,12 @@ export function securityHeaders(isHttps: boolean) {
   return (request: Request, response: Response, next: NextFunction): void => {
     response.set(headers);
     if (isHttps) response.set('Strict-Transport-Security', 'max-age=31536000');
-    // What people and rigs do is nothing for a shared cache.
-    if (request.path.startsWith('/api/')) response.set('Cache-Control', 'no-store');
+    if (request.path.startsWith('/api/')) {
+      // What people and rigs do is nothing for a cache; and the ETag of a rig is that of its wiring, not of its
+      // state, so a question whether it has changed is always answered in full.
+      response.set('Cache-Control', 'no-store');
+      delete request.headers['if-none-match'];
+    }
     next();
   };
 }

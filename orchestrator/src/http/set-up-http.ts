@@ -14,6 +14,7 @@ export function setUpHttp(app: NestExpressApplication, config: Config): void {
   app.set('trust proxy', config.proxies);
   app.set('query parser', 'simple');
   app.disable('x-powered-by');
+  app.set('etag', false);
   app.use(securityHeaders(config.isHttps));
   app.use(sameOrigin);
   app.useBodyParser('json', { limit: bodyLimit });

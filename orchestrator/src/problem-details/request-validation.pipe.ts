@@ -20,7 +20,7 @@ export class RequestValidationPipe extends StandardSchemaValidationPipe {
     if (metadata.type === 'body' && metadata.schema !== undefined && value === undefined) {
       throw new DomainError('request.media-type');
     }
-    return super.transform(value, metadata) as Promise<T>;
+    return super.transform<T>(value, metadata);
   }
 }
 

@@ -3,6 +3,7 @@ import { DomainError } from '@cresthold/shared';
 import type { EntityManager } from 'typeorm';
 import { AuditService } from '../audit/audit.service.js';
 import { hashPassword } from '../auth/password-hash.js';
+import { insertRow } from '../database/rows.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { afterKey, toPage, type Page, type PageQuery } from '../paging/page.js';
 import type { ChangeUser, CreateUser, User } from './dto/user.dto.js';
@@ -37,7 +38,7 @@ export class UsersService {
           { field: 'account', message: 'This name is taken.' },
         ]);
       }
-      const user = manager.create(UserEntity, {
+      const user: UserEntity = {
         account,
         title,
         roles,
@@ -45,8 +46,8 @@ export class UsersService {
         isEnabled: true,
         sessionGeneration: 1,
         createdAt: new Date().toISOString(),
-      });
-      await manager.insert(UserEntity, user);
+      };
+      await insertRow(manager, UserEntity, user);
       await this.audit.record({ account: by, action: 'user.created', subject: account });
       return toUser(user);
     });

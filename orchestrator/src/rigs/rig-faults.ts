@@ -1,0 +1,36 @@
+import { checkAddress, checkConnection } from '@cresthold/adapters';
+import { DerivedChannels, Readings, type FieldFault, type Rig } from '@cresthold/shared';
+import { faultsOf } from '../documents/prefix-faults.js';
+
+/** What is wrong with a rig beyond its schema: wiring that its adapters refuse, expressions that do not compile. */
+export function rigFaults(rig: Rig): FieldFault[] {
+  return [...connectionFaults(rig), ...addressFaults(rig), ...derivedFaults(rig)];
+}
+
+function connectionFaults(rig: Rig): FieldFault[] {
+  return rig.connections.flatMap((connection, index) => checkConnection(connection, `connections[${index}]`));
+}
+
+function addressFaults(rig: Rig): FieldFault[] {
+  const adapterOf = new Map(rig.connections.map((connection) => [connection.id, connection.adapter]));
+  return rig.channels.flatMap((channel, index) => {
+    if (channel.kind === 'derived') return [];
+    const adapter = adapterOf.get(channel.connection);
+    // A connection that is missing, or an adapter that is not installed, is a fault already.
+    if (adapter === undefined || checkConnection({ adapter, configuration: {} }).some(isUnknownAdapter))
+      return [];
+    return checkAddress(adapter, channel.address, `channels[${index}]`);
+  });
+}
+
+function isUnknownAdapter(fault: FieldFault): boolean {
+  return fault.field === 'adapter';
+}
+
+/** Judged by the code that evaluates them in the scan, so that what is taken here also runs there. */
+function derivedFaults(rig: Rig): FieldFault[] {
+  return faultsOf(
+    () => new DerivedChannels(rig, new Readings(rig.channels.map((channel) => channel.id))),
+    'channels',
+  );
+}

@@ -1,0 +1,14 @@
+import { Module } from '@nestjs/common';
+import { AuditModule } from '../audit/audit.module.js';
+import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
+import { RigStoreModule } from './rig-store.module.js';
+import { RigsController } from './rigs.controller.js';
+import { RigsService } from './rigs.service.js';
+
+@Module({
+  imports: [AuditModule, EnvelopeStoreModule, RigStoreModule],
+  controllers: [RigsController],
+  providers: [RigsService],
+  exports: [RigsService],
+})
+export class RigsModule {}

@@ -1,0 +1,23 @@
+import { isDeepStrictEqual } from 'node:util';
+import type { Channel, Rig } from '@cresthold/shared';
+
+/**
+ * True where a change of wiring gives channels another meaning, so that an envelope approved for the old
+ * wiring says nothing about the new: channels added or taken, or another kind, unit, address, expression or
+ * adapter. Titles, display ranges and where a connection leads (host, port) are no such change.
+ */
+export function changesMeaning(before: Rig, after: Rig): boolean {
+  return !isDeepStrictEqual(meaningOf(before), meaningOf(after));
+}
+
+function meaningOf(rig: Rig) {
+  const adapters = new Map(rig.connections.map((connection) => [connection.id, connection.adapter]));
+  return new Map(rig.channels.map((channel) => [channel.id, channelMeaning(channel, adapters)]));
+}
+
+function channelMeaning(channel: Channel, adapters: ReadonlyMap<string, string>) {
+  const { kind, unit } = channel;
+  if (channel.kind === 'derived') return { kind, unit, expression: channel.expression };
+  const { connection, address } = channel;
+  return { kind, unit, connection, adapter: adapters.get(connection), address };
+}
