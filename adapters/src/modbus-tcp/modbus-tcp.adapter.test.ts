@@ -130,7 +130,10 @@ describe('a device that misbehaves', () => {
   it('sends its answers byte by byte: they are read all the same', async () => {
     const server = await startJsmodbusServer();
     const relay = await startRelay(server.port);
-    cleanups.push(server.stop, relay.stop);
+    cleanups.push(
+      () => server.stop(),
+      () => relay.stop(),
+    );
     for (let address = 0; address < 20; address += 1) server.map.holding.set(address, address * 1000);
     relay.setMode({ kind: 'dribble' });
     const session = await openAt(relay.port, { timeoutMs: 5000 });
@@ -167,7 +170,10 @@ describe('requests', () => {
   it('are learnt: a block that was refused is asked in parts from then on', async () => {
     const server = await startJsmodbusServer();
     const relay = await startRelay(server.port);
-    cleanups.push(server.stop, relay.stop);
+    cleanups.push(
+      () => server.stop(),
+      () => relay.stop(),
+    );
     for (const address of [0, 1, 2, 3, 5, 6, 7]) server.map.holding.set(address, address);
     const session = await openAt(relay.port);
     const plan = session.planRead(Array.from({ length: 8 }, (_, address) => holding(address)));
