@@ -1,0 +1,69 @@
+import type {
+  EnvelopeContent,
+  EnvelopeStatus,
+  ObjectiveContent,
+  Rig,
+  RigStatus,
+  Role,
+  RunStatus,
+  Verdict,
+} from '@cresthold/shared';
+
+/** Documents as the API answers them; docs/api.md is the agreement, the generated schema the check. */
+export interface Page<Item> {
+  items: Item[];
+  nextCursor: string | null;
+}
+
+export interface Session {
+  account: string;
+  title: string;
+  roles: Role[];
+}
+
+export interface User extends Session {
+  isEnabled: boolean;
+}
+
+export interface RigDocument {
+  id: string;
+  revision: number;
+  content: Rig;
+  status: RigStatus | null;
+}
+
+export interface EnvelopeDocument {
+  id: string;
+  rigId: string;
+  version: number;
+  status: EnvelopeStatus;
+  revision: number;
+  author: string;
+  submittedBy: string | null;
+  decidedBy: string | null;
+  reason: string | null;
+  createdAt: string;
+  decidedAt: string | null;
+  content: EnvelopeContent;
+}
+
+export interface ObjectiveDocument {
+  id: string;
+  rigId: string;
+  revision: number;
+  content: ObjectiveContent;
+}
+
+export interface RunSummary {
+  id: string;
+  rigId: string;
+  experimentId: string;
+  experimentVersion: number;
+  experimentTitle: string;
+  status: RunStatus;
+  verdict: Verdict | null;
+  reason: string | null;
+  startedAt: string;
+  endedAt: string | null;
+  startedBy: string;
+}

@@ -1,0 +1,13 @@
+export { Empty } from './empty.js';
+export { alignNumber, formatNumber, missing, plainNumber } from './format-quantity.js';
+export { formatClock, formatMoment } from './format-time.js';
+export { GatedButton } from './gated-button.js';
+export { Loading } from './loading.js';
+export { Notice, type NoticeKind } from './notice.js';
+export { Page } from './page.js';
+export { PanelBoundary } from './panel-boundary.js';
+export { Panel } from './panel.js';
+export { PhaseMark } from './phase-mark.js';
+export { ProblemNotice } from './problem-notice.js';
+export { Quantity } from './quantity.js';
+export { ReasonDialog } from './reason-dialog.js';

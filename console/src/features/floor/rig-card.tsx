@@ -1,0 +1,139 @@
+import { Link as RouterLink } from 'react-router-dom';
+import Box from '@mui/material/Box';
+import Link from '@mui/material/Link';
+import Typography from '@mui/material/Typography';
+import type { RigStatus } from '@cresthold/shared';
+import type { RigDocument } from '../../api/index.js';
+import { Notice, PanelBoundary, PhaseMark } from '../../components/index.js';
+import { useLinkState, useRigStatus } from '../../live/index.js';
+import { useSession } from '../auth/index.js';
+import { useEnvelopes } from '../envelopes/index.js';
+import { BestPoint } from './best-point.js';
+import { needsOf, type Need } from './needs.js';
+
+/** One rig on the floor: how it stands, what it does, what it waits for. */
+export function RigCard({ rig }: { rig: RigDocument }) {
+  const status = useRigStatus(rig.id, rig.status);
+  const session = useSession();
+  const envelopes = useEnvelopes(rig.id);
+  const needs = envelopes.data ? needsOf(rig.id, status, envelopes.data, session) : [];
+  return (
+    <Box
+      component="article"
+      aria-label={rig.content.title}
+      sx={{
+        border: 1,
+        borderColor: status?.trip ? 'paper.trip' : 'text.primary',
+        bgcolor: 'background.paper',
+        display: 'flex',
+        flexDirection: 'column',
+        minWidth: 0,
+      }}
+    >
+      <PanelBoundary name={rig.content.title}>
+        <CardHead rig={rig} status={status} />
+        {status?.trip && (
+          <Notice kind="trip" title={`Tripped: ${status.trip.message}`}>
+            First cause: {status.trip.cause}
+          </Notice>
+        )}
+        <Box sx={{ p: 1.5, flex: 1, display: 'grid', gap: 1.5, alignContent: 'start' }}>
+          <Facts rig={rig} status={status} />
+        </Box>
+        <Needs needs={needs} />
+      </PanelBoundary>
+    </Box>
+  );
+}
+
+function CardHead({ rig, status }: { rig: RigDocument; status: RigStatus | null }) {
+  const isPast = useLinkState() !== 'up';
+  return (
+    <Box
+      sx={{
+        p: 1.5,
+        borderBottom: 1,
+        borderColor: 'divider',
+        display: 'flex',
+        gap: 1,
+        flexWrap: 'wrap',
+        alignItems: 'baseline',
+      }}
+    >
+      <Typography variant="h2" sx={{ fontSize: '1rem', letterSpacing: 0, flex: '1 1 10rem' }}>
+        <Link component={RouterLink} to={`/rigs/${rig.id}`}>
+          {rig.content.title}
+        </Link>
+      </Typography>
+      <Box sx={{ opacity: isPast ? 0.75 : 1 }}>
+        {status ? (
+          <PhaseMark phase={status.phase} isPaused={status.isPaused} isLockedOut={status.isLockedOut} />
+        ) : (
+          'not known'
+        )}
+      </Box>
+      {rig.content.description !== '' && (
+        <Box sx={{ flex: '1 0 100%', fontSize: '0.8125rem', color: 'text.secondary' }}>
+          {rig.content.description}
+        </Box>
+      )}
+    </Box>
+  );
+}
+
+function Facts({ rig, status }: { rig: RigDocument; status: RigStatus | null }) {
+  const label = { color: 'text.secondary', fontSize: '0.75rem', fontWeight: 400 };
+  return (
+    <Box
+      component="dl"
+      sx={{ m: 0, display: 'grid', gridTemplateColumns: 'minmax(0, 1fr)', gap: 1.25, '& dd': { m: 0 } }}
+    >
+      <div>
+        <Box component="dt" sx={label}>
+          Best point of the run
+        </Box>
+        <dd>
+          <BestPoint rig={rig.content} point={status?.bestPoint ?? {}} />
+        </dd>
+      </div>
+      <div>
+        <Box component="dt" sx={label}>
+          Running step
+        </Box>
+        <dd>
+          {status?.runId ? (
+            <Link component={RouterLink} to={`/runs/${status.runId}`}>
+              {status.activeSteps.length > 0 ? status.activeSteps.join(', ') : 'between steps'}
+            </Link>
+          ) : (
+            'no run'
+          )}
+        </dd>
+      </div>
+    </Box>
+  );
+}
+
+function Needs({ needs }: { needs: Need[] }) {
+  if (needs.length === 0) return null;
+  return (
+    <Box sx={{ borderTop: 1, borderColor: 'divider', p: 1.5, bgcolor: 'paper.actWash', color: 'paper.act' }}>
+      <Box sx={{ fontSize: '0.75rem' }}>Needs a person</Box>
+      <Box component="ul" sx={{ m: 0, pl: 2.5, '& li::marker': { content: '"▸ "' } }}>
+        {needs.map((need) => (
+          <li key={need.text}>
+            <Link component={RouterLink} to={need.to} sx={{ fontWeight: need.isYours ? 700 : 400 }}>
+              {need.text}
+            </Link>
+            {!need.isYours && (
+              <Box component="span" sx={{ fontSize: '0.75rem' }}>
+                {' '}
+                — not in your role
+              </Box>
+            )}
+          </li>
+        ))}
+      </Box>
+    </Box>
+  );
+}

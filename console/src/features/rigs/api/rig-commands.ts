@@ -1,0 +1,39 @@
+import { useMutation } from '@tanstack/react-query';
+import { answerOf, client } from '../../../api/index.js';
+import { useLiveHub } from '../../../live/index.js';
+import type { RigStatus } from '@cresthold/shared';
+
+/** A command whose answer is the rig's new status; screens show it at once, ahead of the live link. */
+function useRigCommand<Input>(command: (input: Input) => Promise<RigStatus>) {
+  const { statuses } = useLiveHub();
+  return useMutation({ mutationFn: command, onSuccess: (status) => statuses.take(status) });
+}
+
+const at = (rigId: string) => ({ params: { path: { rigId } } });
+
+export function useArm(rigId: string) {
+  return useRigCommand(() => answerOf(client.POST('/api/v1/rigs/{rigId}/arm', at(rigId))));
+}
+
+export function useDisarm(rigId: string) {
+  return useRigCommand(() => answerOf(client.POST('/api/v1/rigs/{rigId}/disarm', at(rigId))));
+}
+
+/** A manual move through the guard; `value` in the channel's unit. */
+export function useMove(rigId: string) {
+  return useRigCommand((body: { channel: string; value: number }) =>
+    answerOf(client.POST('/api/v1/rigs/{rigId}/moves', { ...at(rigId), body })),
+  );
+}
+
+export function useReset(rigId: string) {
+  return useRigCommand((reason: string) =>
+    answerOf(client.POST('/api/v1/rigs/{rigId}/reset', { ...at(rigId), body: { reason } })),
+  );
+}
+
+export function useLockout(rigId: string) {
+  return useRigCommand((body: { isLockedOut: boolean; reason: string }) =>
+    answerOf(client.PUT('/api/v1/rigs/{rigId}/lockout', { ...at(rigId), body })),
+  );
+}

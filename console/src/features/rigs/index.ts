@@ -1,0 +1,3 @@
+export { rigKeys, rigsQuery, rigQuery, useRig, useRigs } from './api/rig-queries.js';
+export { RigInViewProvider, useRigIdInView, useShowsRig } from './rig-in-view.js';
+export { SafetyStrip } from './safety-strip.js';

@@ -1,0 +1,16 @@
+export { createBrowserHub } from './browser-hub.js';
+export type { LinkState } from './live-client.js';
+export {
+  LiveProvider,
+  useIsStale,
+  useLatestValue,
+  useLinkState,
+  useLiveHub,
+  useRigSamples,
+  useRigStatus,
+  useRigStatuses,
+  useRunMessages,
+} from './live-context.js';
+export { LiveHub, type RunChange, type RunListener } from './live-hub.js';
+export { RingBuffer } from './ring-buffer.js';
+export { RigSamples } from './sample-store.js';

@@ -1,0 +1,11 @@
+import type {} from '@mui/material/themeCssVarsAugmentation';
+import type { Paper } from './papers.js';
+
+declare module '@mui/material/styles' {
+  interface Palette {
+    paper: Paper;
+  }
+  interface PaletteOptions {
+    paper?: Paper;
+  }
+}
