@@ -11,12 +11,14 @@ import { EnvelopesModule } from './envelopes/envelopes.module.js';
 import { ExperimentsModule } from './experiments/experiments.module.js';
 import { HealthModule } from './health/health.module.js';
 import { LiveModule } from './live/live.module.js';
+import { NotificationsModule } from './notifications/notifications.module.js';
 import { ObjectivesModule } from './objectives/objectives.module.js';
 import { ProblemDetailsModule } from './problem-details/problem-details.module.js';
 import { RigHostsModule } from './rig-hosts/rig-hosts.module.js';
 import { NoRigHostsModule } from './rigs/no-rig-hosts.module.js';
 import { RigsModule } from './rigs/rigs.module.js';
 import { RunsModule } from './runs/runs.module.js';
+import { ScenarioModule } from './scenario/scenario.module.js';
 import { SetupModule } from './setup/setup.module.js';
 import { UsersModule } from './users/users.module.js';
 
@@ -33,7 +35,7 @@ const documentModules = [
 ];
 
 /** What drives rigs and follows them: provides `RigHostsPort`. */
-const drivingModules = [RigHostsModule, RunsModule, LiveModule, HealthModule];
+const drivingModules = [RigHostsModule, RunsModule, LiveModule, HealthModule, NotificationsModule];
 
 /** The whole server. Each feature is a module of its own and is listed above. */
 @Module({})
@@ -56,7 +58,13 @@ export class AppModule {
   static registerWithoutRigHosts(config: Config): DynamicModule {
     return {
       module: AppModule,
-      imports: [ConfigModule.register(config), DatabaseModule, ...documentModules, NoRigHostsModule],
+      imports: [
+        ConfigModule.register(config),
+        DatabaseModule,
+        ...documentModules,
+        ScenarioModule,
+        NoRigHostsModule,
+      ],
     };
   }
 }

@@ -65,7 +65,7 @@ export class ExperimentsService {
    * @throws rig.not-found
    * @throws request.invalid where the rig has no such objective
    */
-  async create({ rigId, content }: CreateExperiment, by: string): Promise<Experiment> {
+  async create({ rigId, content }: CreateExperiment, by: string, note = ''): Promise<Experiment> {
     await this.rigs.get(rigId);
     await this.requireObjective(rigId, content);
     return this.queue.transaction(async (manager) => {
@@ -79,7 +79,7 @@ export class ExperimentsService {
         createdBy: by,
       };
       await insertRow(manager, ExperimentEntity, row);
-      const version = { experimentId: row.id, version: 1, basedOn: null, note: '', createdAt, createdBy: by };
+      const version = { experimentId: row.id, version: 1, basedOn: null, note, createdAt, createdBy: by };
       await insertRow(manager, ExperimentVersionEntity, { ...version, content });
       await this.audit.record({ account: by, action: 'experiment.created', rigId, subject: row.id });
       return toExperiment(row);

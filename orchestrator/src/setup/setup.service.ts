@@ -1,17 +1,17 @@
 import { Injectable } from '@nestjs/common';
 import { DomainError } from '@cresthold/shared';
+import { isSameSecret, readableSecret } from '../auth/readable-secret.js';
 import { SignInThrottle } from '../auth/sign-in-throttle.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { UserStore } from '../users/user-store.js';
 import { UsersService } from '../users/users.service.js';
 import type { User } from '../users/dto/user.dto.js';
 import type { Setup } from './dto/setup.dto.js';
-import { isSameCode, newSetupCode } from './setup-code.js';
 
 /** Makes the first administrator, for whoever can read what the server printed at its start. */
 @Injectable()
 export class SetupService {
-  private readonly code = newSetupCode();
+  private readonly code = readableSecret(4);
 
   constructor(
     private readonly store: UserStore,
@@ -38,7 +38,7 @@ export class SetupService {
   async setUp({ code, account, title, password }: Setup, address: string): Promise<User> {
     if (!(await this.isNeeded())) throw new DomainError('auth.setup-done');
     this.throttle.begin('set-up code', address);
-    if (!isSameCode(code, this.code)) {
+    if (!isSameSecret(code, this.code)) {
       throw new DomainError('auth.setup-code', undefined, [
         { field: 'code', message: 'This is not the code that the server printed at its last start.' },
       ]);
