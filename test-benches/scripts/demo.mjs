@@ -57,6 +57,7 @@ async function startServer(base) {
     ...log,
     execArgv: ['--import', join(root, 'test-benches/scripts/demo/end-with-demo.mjs')],
     env: {
+      NO_COLOR: '1',
       CRESTHOLD_DATA: options.data,
       CRESTHOLD_PORT: String(options.port),
       CRESTHOLD_HOST: '127.0.0.1',
@@ -79,13 +80,9 @@ async function openInstallation() {
   const kept = options.isNew ? putAside(options.data) : null;
   const found = foundInstallation(options.data);
   if (found === null) {
-    const { accounts, installation } = await makeInstallation(
-      root,
-      options.data,
-      options.benchPort ?? 15_020,
-    );
-    const width = Math.max(...accounts.map(({ account }) => account.length));
-    const lines = accounts.map(({ account, password }) => `  ${account.padEnd(width)}  ${password}`);
+    const { users, installation } = await makeInstallation(root, options.data, options.benchPort ?? 15_020);
+    const width = Math.max(...users.map(({ account }) => account.length));
+    const lines = users.map(({ account, password }) => `  ${account.padEnd(width)}  ${password}`);
     if (kept !== null) lines.push(`The earlier data are kept in ${kept}.`);
     return { installation, lines: ['Accounts and passwords, shown this once:', ...lines] };
   }
@@ -100,7 +97,7 @@ async function openInstallation() {
 }
 
 async function main() {
-  await prepare();
+  if (!options.isAsBuilt) await prepare();
   await requireFreePort(options.port, 'server', '--port');
   const { installation, lines } = await openInstallation();
   await startBench(installation.benchPort);

@@ -37,20 +37,11 @@ export async function makeInstallation(root, data, benchPort) {
   mkdirSync(data, { recursive: true });
   const printer = join(root, 'test-benches/dist/demo/print-scenario.js');
   const { stdout } = await run(process.execPath, [printer, '--bench-port', String(benchPort)]);
-  const scenario = JSON.parse(stdout);
-  const accounts = await loadScenario(root, data, stdout);
-  const { rigId, experimentKey, by } = scenario.start;
-  const entry = scenario.rigs.find(({ rig }) => rig.id === rigId);
-  const experiment = entry.experiments.find(({ key }) => key === experimentKey);
-  const installation = {
-    benchPort,
-    rigId,
-    experimentTitle: experiment.content.title,
-    account: by,
-    password: accounts.find(({ account }) => account === by).password,
-  };
+  const { users, start } = await loadScenario(root, data, stdout);
+  const { password } = users.find(({ account }) => account === start.by);
+  const installation = { benchPort, ...start, password };
   writeFileSync(join(data, noteName), `${JSON.stringify(installation, null, 2)}\n`, { mode: 0o600 });
-  return { accounts, installation };
+  return { users, installation };
 }
 
 async function loadScenario(root, data, text) {
@@ -61,7 +52,7 @@ async function loadScenario(root, data, text) {
     const loader = join(root, 'orchestrator/dist/load-scenario.js');
     const env = { ...process.env, CRESTHOLD_DATA: data };
     const { stdout } = await run(process.execPath, [loader, file], { env });
-    return JSON.parse(stdout.trim().split('\n').at(-1)).accounts;
+    return JSON.parse(stdout);
   } catch (error) {
     throw new Error(`The demo scenario could not be loaded: ${error.stderr || error.message}`, {
       cause: error,

@@ -6,6 +6,7 @@ const usage = `Usage: npm run demo -- [options]
   --port N           port of console and API (default 4380)
   --bench-port N     port of the burner bench (default 15020)
   --bench-log FILE   what the bench itself saw, as JSON lines: writes, watchdog, truth
+  --as-built         run what is built already: install and build nothing
   --new              begin anew with new passwords; the earlier data are kept beside it`;
 
 /** @returns the options, or ends the program with a message */
@@ -16,6 +17,7 @@ export function demoOptions(root) {
     port: text,
     'bench-port': text,
     'bench-log': text,
+    'as-built': { type: 'boolean' },
     new: { type: 'boolean' },
     help: { type: 'boolean' },
   };
@@ -35,6 +37,7 @@ export function demoOptions(root) {
     /** Null where not given: a new installation then takes 15020, an old one what it had. */
     benchPort: values['bench-port'] === undefined ? null : portOf('--bench-port', values['bench-port']),
     benchLog: values['bench-log'] ? resolve(values['bench-log']) : null,
+    isAsBuilt: values['as-built'] ?? false,
     isNew: values.new ?? false,
   };
 }

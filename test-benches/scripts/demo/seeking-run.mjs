@@ -7,16 +7,12 @@ import { signIn, until } from './api.mjs';
  *
  * @returns the address of the run's page, below that of the server
  */
-export async function startSeeking(base, { rigId, experimentTitle, account, password }) {
-  const call = await signIn(base, account, password);
+export async function startSeeking(base, { rigId, experimentId, by, password }) {
+  const call = await signIn(base, by, password);
   const status = await untilReady(call, rigId);
   if (status.runId !== null) return `/runs/${status.runId}`;
   if (status.phase === 'idle') await call('POST', `/rigs/${rigId}/arm`);
-  const { items } = await call('GET', `/experiments?rigId=${rigId}`);
-  const experiment = items.find(({ title }) => title === experimentTitle);
-  if (!experiment) throw new Error(`The rig has no experiment "${experimentTitle}" any more.`);
-  const order = { experimentId: experiment.id };
-  const run = await call('POST', '/runs', order, { 'idempotency-key': randomUUID() });
+  const run = await call('POST', '/runs', { experimentId }, { 'idempotency-key': randomUUID() });
   return `/runs/${run.id}`;
 }
 
