@@ -1,11 +1,11 @@
 // `npm run bench -- NAME… [--json]`: builds where needed and runs the benchmarks.
 import { spawn } from 'node:child_process';
 import { join } from 'node:path';
-import { buildTypes, installDependencies, root } from './prepare.mjs';
+import { compile, installDependencies, root } from './prepare.mjs';
 
 try {
   await installDependencies({ isQuiet: true });
-  await buildTypes({ isQuiet: true });
+  await compile(['test-benches', 'orchestrator'], { isQuiet: true });
 } catch (error) {
   console.error(error.message);
   process.exit(1);

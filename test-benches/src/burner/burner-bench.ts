@@ -34,7 +34,8 @@ export async function openBurnerBench(options: BurnerOptions): Promise<BurnerBen
   );
   const face = await openModbusFace(inPresentTime(map, catchUp), options.host, options.port);
   const tick = setInterval(catchUp, tickMs);
-  const truth = setInterval(() => log.add(simulation.now.tS, truthEntry(simulation)), truthEveryMs);
+  const noteTruth = () => log.add(simulation.now.tS, truthEntry(simulation));
+  const truth = options.log === null ? undefined : setInterval(noteTruth, truthEveryMs);
 
   return {
     port: face.port,
