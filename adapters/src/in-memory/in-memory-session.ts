@@ -70,7 +70,7 @@ export class InMemorySession implements AdapterSession<InMemoryAddress> {
     const parsed = addresses.map((address, index) =>
       parseOrMisconfigured(inMemoryAddressSchema, address, `addresses[${index}]`),
     );
-    const asked = Float64Array.from(values);
+    const asked = new Float64Array(values);
     return this.inTurn(async () => {
       const failure = await this.answer();
       const faults = parsed.map((address, index) => failure ?? this.writeOne(address, asked[index] ?? NaN));

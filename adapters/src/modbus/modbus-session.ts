@@ -56,7 +56,7 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
   async write(addresses: readonly ModbusAddress[], values: ArrayLike<number>): Promise<WriteOutcome> {
     const plan = this.writePlanOf(addresses);
     // What was asked for counts, whatever the caller does with its buffer before our turn comes.
-    const asked = Float64Array.from(values);
+    const asked = new Float64Array(values);
     return this.inTurn(() => this.writeNow(plan, asked));
   }
 
@@ -134,7 +134,7 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
 
   private exchange(request: ModbusRequest, deadlineMs: number): Promise<Buffer | DomainError> {
     const leftMs = deadlineMs - this.options.nowMs();
-    if (leftMs >= 1) return this.link.exchange(request, leftMs);
+    if (leftMs >= 1) return this.link.exchange(request, Math.ceil(leftMs));
     return Promise.resolve(
       this.link.lost ??
         new DomainError(
