@@ -1,0 +1,197 @@
+import {
+  keepConnected,
+  type Adapter,
+  type AdapterSession,
+  type KeptConnection,
+  type LinkStatus,
+  type ReadOutcome,
+  type ReadPlan,
+  type WriteOutcome,
+} from '@cresthold/adapters';
+import {
+  DomainError,
+  Quality,
+  type Connection,
+  type Readings,
+  type ValueGrid,
+  type WiredChannel,
+} from '@cresthold/shared';
+import type { Gathering } from './gathering.js';
+import { PendingWrites } from './pending-writes.js';
+
+export interface LineChannel {
+  channel: WiredChannel;
+  /** Index in the rig's channel list. */
+  index: number;
+  address: unknown;
+}
+
+export interface LineOwner {
+  /** The connection opened. */
+  onLineOpened(): void;
+  /** It opened, was lost, or could not be opened. */
+  onLineChanged(): void;
+  /** A request threw: a bug of the adapter. */
+  onBug(error: unknown): void;
+}
+
+/** One connection's share in each scan: one planned read, then the writes of its actuators. */
+export class Line {
+  /** Settles when the first attempt to open has succeeded or failed. */
+  readonly firstAttempt: Promise<void>;
+  /** Grids of its actuators by channel id, known once it has been open. */
+  readonly grids = new Map<string, ValueGrid>();
+  private kept: KeptConnection | null = null;
+  private session: AdapterSession<unknown> | null = null;
+  private settleFirst: () => void = () => undefined;
+  private plan: ReadPlan | null = null;
+  private isBusy = false;
+  /** The readings are of this scan, or arrived since the scan before. */
+  private isFresh = false;
+  private hasBeenRead = false;
+  private startedInRound = 0;
+  private readonly writes: PendingWrites;
+
+  constructor(
+    readonly definition: Connection,
+    private readonly adapter: Adapter,
+    private readonly configuration: unknown,
+    private readonly channels: readonly LineChannel[],
+    private readonly readings: Readings,
+    private readonly gathering: Gathering,
+    private readonly owner: LineOwner,
+  ) {
+    this.writes = new PendingWrites(channels);
+    this.firstAttempt = new Promise((resolve) => (this.settleFirst = resolve));
+  }
+
+  /** Begins to keep the connection open. */
+  open(): void {
+    this.kept = keepConnected(this.adapter, this.configuration, {
+      onOpen: (session) => this.use(session),
+      onLost: () => this.drop(),
+      onStatus: (status) => this.follow(status),
+    });
+  }
+
+  async close(): Promise<void> {
+    this.session = null;
+    await this.kept?.close();
+  }
+
+  /** Why it is not open; null while nothing is known to be wrong. */
+  get error(): DomainError | null {
+    return this.kept?.status.error ?? null;
+  }
+
+  get isConnected(): boolean {
+    return this.session !== null;
+  }
+
+  /** @realtime begins the read of this scan, unless the line is still busy with the one before */
+  startRead(): void {
+    if (this.session === null || this.plan === null || this.isBusy) return;
+    this.isBusy = true;
+    this.startedInRound = this.gathering.round;
+    this.gathering.expect();
+    this.session.read(this.plan).then(this.afterRead, this.afterBug);
+  }
+
+  /** @realtime marks what was not read in time; called once the scan has waited for its reads */
+  settleReadings(): void {
+    if (!this.isFresh) {
+      const isStale = this.session !== null && this.hasBeenRead;
+      for (const { index } of this.channels) this.mark(index, isStale ? Quality.stale : Quality.missing);
+    }
+    this.isFresh = false;
+  }
+
+  /** @realtime */
+  queueWrite(channelIndex: number, value: number): void {
+    if (this.session !== null) this.writes.put(channelIndex, value);
+  }
+
+  /** @realtime sends what is queued, now or as soon as the request under way has ended */
+  startWrite(): void {
+    if (this.session === null || this.isBusy || this.writes.isEmpty) return;
+    this.isBusy = true;
+    this.startedInRound = this.gathering.round;
+    this.gathering.expect();
+    const { addresses, values } = this.writes.take();
+    this.session.write(addresses, values).then(this.afterWrite, this.afterBug);
+  }
+
+  private use(session: AdapterSession<unknown>): void {
+    for (const { channel, address } of this.channels) {
+      if (channel.kind !== 'actuator') continue;
+      const facts = session.describe(address);
+      if (!facts.isWritable) {
+        const message = `The address of actuator "${channel.id}" cannot be written.`;
+        throw new DomainError('adapter.misconfigured', message);
+      }
+      this.grids.set(channel.id, { step: facts.quantum, origin: facts.quantumOrigin });
+    }
+    this.plan = session.planRead(this.channels.map((c) => c.address));
+    this.session = session;
+    this.owner.onLineOpened();
+    this.owner.onLineChanged();
+    this.settleFirst();
+  }
+
+  private drop(): void {
+    this.session = null;
+    this.isFresh = false;
+    this.writes.clear();
+  }
+
+  private follow({ state }: LinkStatus): void {
+    if (state === 'closed' || state === 'opening') return;
+    if (state !== 'open') this.settleFirst();
+    this.owner.onLineChanged();
+  }
+
+  private readonly afterRead = (outcome: ReadOutcome): void => {
+    if (outcome.lost === null) this.take(outcome);
+    this.release();
+  };
+
+  private readonly afterWrite = (outcome: WriteOutcome): void => {
+    if (outcome.lost === null) this.writes.settle(outcome.faults);
+    this.release();
+  };
+
+  private readonly afterBug = (error: unknown): void => {
+    this.owner.onBug(error);
+    this.release();
+  };
+
+  /** The line is free again; a write that came while it was busy goes out at once. */
+  private release(): void {
+    const round = this.startedInRound;
+    this.isBusy = false;
+    this.gathering.arrive(round);
+    if (this.writes.hasNew) this.startWrite();
+  }
+
+  private take(outcome: ReadOutcome): void {
+    for (let i = 0; i < this.channels.length; i += 1) {
+      const channel = this.channels[i];
+      if (channel === undefined) continue;
+      const fault = outcome.faults[i] ?? null;
+      if (fault === null) this.readings.set(channel.index, outcome.values[i] ?? NaN, Quality.good);
+      else this.mark(channel.index, this.qualityOf(fault));
+    }
+    this.isFresh = true;
+    this.hasBeenRead = true;
+  }
+
+  private qualityOf(fault: DomainError): Quality {
+    if (fault.code === 'adapter.refused' || fault.code === 'adapter.corrupt') return Quality.bad;
+    return this.hasBeenRead ? Quality.stale : Quality.missing;
+  }
+
+  /** Keeps the last value known. */
+  private mark(index: number, quality: Quality): void {
+    this.readings.qualities[index] = quality;
+  }
+}

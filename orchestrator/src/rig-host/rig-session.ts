@@ -1,0 +1,154 @@
+import type { Adapter } from '@cresthold/adapters';
+import {
+  createScanEngine,
+  type EnvelopeInForce,
+  type HostCommand,
+  type Rig,
+  type RigStatus,
+  type RunOrder,
+  type ScanEngine,
+  type ValueGrid,
+} from '@cresthold/shared';
+import { PeriodPacer } from './pacer.js';
+import { Publisher } from './publisher.js';
+import type { Recorder } from './recorder.js';
+import { RunRecording } from './run-recording.js';
+import { ScanLoop } from './scan-loop.js';
+import type { ServerLink } from './server-link.js';
+import { Wire } from './wire.js';
+
+type Configuration = Extract<HostCommand, { type: 'configure' }>;
+
+/** How long `configure` waits for the first attempt of every connection, ms. */
+const openBoundMs = 2000;
+
+/** One configured rig: its engine, wire, loop and run, from `configure` to the end. */
+export class RigSession {
+  readonly engine: ScanEngine;
+  private readonly wire: Wire;
+  private readonly pacer: PeriodPacer;
+  private readonly loop: ScanLoop;
+  private readonly publisher: Publisher;
+  private readonly run: RunRecording;
+  private envelope: EnvelopeInForce | null;
+  private readonly grids = new Map<string, ValueGrid>();
+  private looping: Promise<void> = Promise.resolve();
+
+  /**
+   * @param onBug told of a fault of the program itself
+   * @throws adapter.unknown, adapter.misconfigured, or what the engine refuses
+   */
+  constructor(
+    private readonly rig: Rig,
+    configuration: Configuration,
+    adapters: ReadonlyMap<string, Adapter>,
+    recorder: Recorder,
+    link: ServerLink,
+    private readonly onBug: (error: unknown) => void,
+  ) {
+    const { envelope, trip, isLockedOut } = configuration;
+    this.envelope = envelope;
+    this.engine = createScanEngine({ rig, envelope, trip, isLockedOut, grids: this.grids });
+    const { readings } = this.engine;
+    const onOpened = () => this.learnGrids();
+    this.wire = new Wire(rig, adapters, readings, onOpened, () => this.publisher.requestStatus(), onBug);
+    this.publisher = new Publisher(rig, readings, link, () => this.status());
+    this.run = new RunRecording(recorder, rig, {
+      send: (message) => link.send(message),
+      onRunBegun: (run) => this.publisher.useRun(run),
+      onRunOver: () => this.publisher.useRun(null),
+      log: (level, text) => link.log(level, text),
+    });
+    this.pacer = new PeriodPacer(rig.periodMs / 1000);
+    this.loop = new ScanLoop({
+      engine: this.engine,
+      wire: this.wire,
+      pacer: this.pacer,
+      periodS: rig.periodMs / 1000,
+      serverSilentS: link.serverSilentS,
+      sinks: [this.run, this.publisher],
+    });
+  }
+
+  /** Opens the wires and starts to scan; a wire that cannot be opened is tried again and again. */
+  async begin(): Promise<void> {
+    await this.wire.open(openBoundMs);
+    this.looping = this.loop.run();
+    this.looping.catch(this.onBug);
+  }
+
+  /** Lets go of the wire without moving anything; for a rig that is at rest or cannot be reached. */
+  async end(): Promise<void> {
+    this.loop.stop();
+    await this.looping.catch(() => undefined);
+    this.run.interrupt('The rig host ended.');
+    await this.run.closed();
+    await this.wire.close();
+  }
+
+  get isFree(): boolean {
+    return ['offline', 'idle', 'tripped'].includes(this.engine.status().phase) && !this.run.isOpen;
+  }
+
+  get areAllConnectionsLost(): boolean {
+    return this.wire.lostConnections.length === this.rig.connections.length;
+  }
+
+  /** No run is open, its file is closed as well, and every actuator is at rest. */
+  isAtRest(): boolean {
+    return this.engine.isAtRest() && !this.run.isOpen;
+  }
+
+  setEnvelope(envelope: EnvelopeInForce): void {
+    this.engine.setEnvelope(envelope);
+    this.envelope = envelope;
+    this.publisher.requestStatus();
+  }
+
+  async startRun(order: RunOrder): Promise<void> {
+    await this.run.start(order, this.engine, this.envelope);
+    this.publisher.requestStatus();
+  }
+
+  /** After a command: the next scan comes at once and tells the server. */
+  touch(): void {
+    this.publisher.requestStatus();
+    this.pacer.hurry();
+  }
+
+  trip(cause: string, message: string): void {
+    this.engine.trip(cause, message, Date.now());
+    this.touch();
+  }
+
+  /** One step on the way to rest, repeated until `isAtRest`: stops what runs, disarms what is armed. */
+  headForRest(reason: string): void {
+    const { phase } = this.engine.status();
+    if (phase === 'running') this.engine.stop('rig host', reason);
+    if (phase === 'armed') this.engine.disarm('rig host');
+  }
+
+  status(): RigStatus {
+    const { statistics } = this.loop;
+    return {
+      ...this.engine.status(),
+      connections: this.wire.connectionStatus(),
+      scan: {
+        count: statistics.count,
+        overruns: statistics.overruns,
+        latenessP99Ms: statistics.latenessP99Ms(),
+        wireMeanMs: statistics.wireMeanMs(),
+      },
+    };
+  }
+
+  /**
+   * What an actuator's wire can carry is known once its connection has been open. It cannot have moved
+   * before, so the engine takes its envelope anew.
+   */
+  private learnGrids(): void {
+    const before = this.grids.size;
+    for (const [channel, grid] of this.wire.grids()) this.grids.set(channel, grid);
+    if (this.grids.size > before && this.envelope !== null) this.engine.setEnvelope(this.envelope);
+  }
+}

@@ -1,0 +1,140 @@
+import type { Adapter } from '@cresthold/adapters';
+import { DomainError, type Readings, type Rig, type RigStatus, type ValueGrid } from '@cresthold/shared';
+import { Gathering } from './gathering.js';
+import { Line, type LineChannel } from './line.js';
+import { within } from './within.js';
+
+export type LostConnection = { connection: string; code: string; message: string };
+
+/** A scan waits for its requests for one period, and at least this long, ms. */
+const waitMinMs = 20;
+const notYet = 'Not connected yet.';
+
+/**
+ * All connections of one rig. Each scan reads them side by side and writes each in order; a connection
+ * that does not answer in time leaves its channels stale and does not hold up the others.
+ */
+export class Wire {
+  private readonly lines: Line[];
+  private readonly lineByChannel: (Line | undefined)[];
+  private readonly indexByChannel = new Map<string, number>();
+  private readonly gathering = new Gathering();
+  private readonly waitMs: number;
+  private lost: LostConnection[] = [];
+
+  /**
+   * @param onOpened a connection opened: the grids of its actuators are known
+   * @param onChanged a connection opened, was lost, or could not be opened
+   * @param onBug an adapter threw where its contract forbids it
+   * @throws adapter.unknown, adapter.misconfigured naming the field at fault
+   */
+  constructor(
+    private readonly rig: Rig,
+    adapters: ReadonlyMap<string, Adapter>,
+    private readonly readings: Readings,
+    onOpened: () => void,
+    private readonly onChanged: () => void,
+    onBug: (error: unknown) => void,
+  ) {
+    this.waitMs = Math.max(waitMinMs, rig.periodMs);
+    rig.channels.forEach((channel, index) => this.indexByChannel.set(channel.id, index));
+    const owner = { onLineOpened: onOpened, onLineChanged: () => this.changed(), onBug };
+    this.lines = rig.connections.map((definition, at) => {
+      const adapter = adapters.get(definition.adapter);
+      if (adapter === undefined) throw unknownAdapter(definition.adapter, at);
+      const { configurationSchema } = adapter.manifest;
+      const field = `connections[${at}].configuration`;
+      const configuration = parsed(configurationSchema, definition.configuration, field);
+      const channels = channelsOf(rig, definition.id, adapter);
+      return new Line(definition, adapter, configuration, channels, this.readings, this.gathering, owner);
+    });
+    this.lineByChannel = rig.channels.map((channel) =>
+      channel.kind === 'derived' ? undefined : this.lines.find((l) => l.definition.id === channel.connection),
+    );
+  }
+
+  /** Begins to open every connection; resolves when each was tried once, or after `boundMs`. */
+  async open(boundMs: number): Promise<void> {
+    this.changed();
+    for (const line of this.lines) line.open();
+    await within(Promise.all(this.lines.map((line) => line.firstAttempt)), boundMs, undefined);
+  }
+
+  async close(): Promise<void> {
+    await Promise.all(this.lines.map((line) => line.close()));
+  }
+
+  get lostConnections(): readonly LostConnection[] {
+    return this.lost;
+  }
+
+  /** Grids of the actuators whose connection has been open. */
+  grids(): [string, ValueGrid][] {
+    return this.lines.flatMap((line) => [...line.grids]);
+  }
+
+  connectionStatus(): RigStatus['connections'] {
+    return this.lines.map((line) => ({
+      id: line.definition.id,
+      isConnected: line.isConnected,
+      error: line.isConnected ? null : (line.error?.message ?? notYet),
+    }));
+  }
+
+  /** @realtime fills the readings of this scan */
+  async read(): Promise<void> {
+    this.gathering.begin();
+    for (const line of this.lines) line.startRead();
+    const wait = this.gathering.all(this.waitMs);
+    if (wait !== null) await wait;
+    for (const line of this.lines) line.settleReadings();
+  }
+
+  /** @realtime @returns null where nothing is on the wire */
+  write(writes: readonly { channel: string; value: number }[]): Promise<void> | null {
+    this.gathering.begin();
+    for (const { channel, value } of writes) {
+      const index = this.indexByChannel.get(channel) ?? -1;
+      this.lineByChannel[index]?.queueWrite(index, value);
+    }
+    for (const line of this.lines) line.startWrite();
+    return this.gathering.all(this.waitMs);
+  }
+
+  private changed(): void {
+    this.lost = this.lines
+      .filter((line) => !line.isConnected)
+      .map((line) => ({
+        connection: line.definition.id,
+        code: line.error?.code ?? 'adapter.disconnected',
+        message: line.error?.message ?? notYet,
+      }));
+    this.onChanged();
+  }
+}
+
+function channelsOf(rig: Rig, connection: string, adapter: Adapter): LineChannel[] {
+  const channels: LineChannel[] = [];
+  rig.channels.forEach((channel, index) => {
+    if (channel.kind === 'derived' || channel.connection !== connection) return;
+    const address = parsed(adapter.manifest.addressSchema, channel.address, `channels[${index}].address`);
+    channels.push({ channel, index, address });
+  });
+  return channels;
+}
+
+function parsed(schema: Adapter['manifest']['configurationSchema'], value: unknown, field: string): unknown {
+  const result = schema.safeParse(value);
+  if (result.success) return result.data;
+  const details = result.error.issues.map(({ path, message }) => ({
+    field: [field, ...path].join('.'),
+    message,
+  }));
+  const first = details[0];
+  throw new DomainError('adapter.misconfigured', `${first?.field}: ${first?.message}`, details);
+}
+
+function unknownAdapter(adapter: string, at: number): DomainError {
+  const message = `No adapter "${adapter}" is installed.`;
+  return new DomainError('adapter.unknown', message, [{ field: `connections[${at}].adapter`, message }]);
+}
