@@ -10,6 +10,7 @@ export * from './experiments/experiment.schema.js';
 export * from './experiments/expression-symbols.js';
 export * from './experiments/preflight.js';
 export * from './experiments/preflight.types.js';
+export * from './experiments/sequencer.js';
 export * from './experiments/sequencer.types.js';
 export * from './experiments/step-kinds.js';
 export * from './experiments/step-order.js';

@@ -1,0 +1,76 @@
+import { slewPeriodsAtMost } from '../../envelopes/guard.js';
+import type { SequencerInput } from '../sequencer.types.js';
+import type { StepServices } from './step-runner.js';
+
+/** Kept under the slew limit by this much, so that rounding does not call the guard. */
+const slewMargin = 1 + 1e-6;
+
+interface Leg {
+  channel: string;
+  from: number;
+  to: number;
+}
+
+/** Takes actuators from where they are held to their targets on straight lines, all arriving together. */
+export class ActuatorRamp {
+  private legs: Leg[] = [];
+  private durationS = 0;
+  private rampedS = 0;
+
+  constructor(private readonly services: StepServices) {}
+
+  /**
+   * @param rampS wanted time, s; longer where a slew limit asks for it
+   * @returns why it cannot be done; null where it can
+   */
+  begin(
+    input: SequencerInput,
+    targets: readonly { channel: string; value: number }[],
+    rampS: number,
+  ): string | null {
+    this.legs = targets.map(({ channel, value }) => ({
+      channel,
+      from: whereHeld(input, channel),
+      to: value,
+    }));
+    this.rampedS = 0;
+    this.durationS = rampS;
+    for (const { channel, from, to } of this.legs) {
+      const limit = this.services.limitOf(channel);
+      if (!limit) return `"${channel}" has no limit in the envelope in force.`;
+      if (!Number.isFinite(to)) return `The target of "${channel}" is no number.`;
+      if (to < limit.min || to > limit.max) {
+        return `The target ${to} of "${channel}" is outside its envelope of ${limit.min} to ${limit.max}.`;
+      }
+      if (!Number.isFinite(from)) return `It is not known where "${channel}" stands.`;
+      this.durationS = Math.max(this.durationS, (Math.abs(to - from) / limit.slewPerS) * slewMargin);
+    }
+    return null;
+  }
+
+  /** Asks for the values of this scan. @returns true once all have arrived */
+  step(input: SequencerInput): boolean {
+    // After a gap the guard lets no lost time be made up; asking for it would only call it.
+    this.rampedS += Math.min(input.dtS, slewPeriodsAtMost * this.services.periodS);
+    const isComplete = this.rampedS >= this.durationS;
+    let hasArrived = isComplete;
+    for (const { channel, from, to } of this.legs) {
+      const base = isComplete ? to : from + ((to - from) * this.rampedS) / this.durationS;
+      this.services.request(channel, base, 0);
+      // Written so that a value which is no number has not arrived.
+      if (!(Math.abs(input.applied(channel) - to) <= this.services.toleranceOf(channel))) hasArrived = false;
+    }
+    return hasArrived;
+  }
+
+  /** Time that the lines take by themselves, s. */
+  get plannedS(): number {
+    return this.durationS;
+  }
+}
+
+/** Where an actuator stands without dither, channel unit; NaN where that is not known. */
+export function whereHeld(input: SequencerInput, channel: string): number {
+  const held = input.held(channel);
+  return Number.isFinite(held) ? held : input.applied(channel);
+}
