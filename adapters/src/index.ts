@@ -1,6 +1,8 @@
 export * from './conformance/conformance-fixture.js';
 export { describeAdapterConformance } from './conformance/describe-adapter-conformance.js';
 export * from './contract.js';
+export * from './faults/fault-control.js';
+export { withFaults } from './faults/with-faults.js';
 export { inMemoryAdapter } from './in-memory/in-memory.adapter.js';
 export type { InMemoryAddress, InMemoryConfiguration } from './in-memory/in-memory.schema.js';
 export * from './in-memory/memory-store.js';
@@ -9,3 +11,4 @@ export type { ModbusAddress } from './modbus/modbus-address.schema.js';
 export { modbusTcpAdapter } from './modbus-tcp/modbus-tcp.adapter.js';
 export type { ModbusTcpConfiguration } from './modbus-tcp/modbus-tcp-configuration.schema.js';
 export * from './registry.js';
+export { listSerialPorts, type SerialPortListing } from './serial/open-serial-port.js';
