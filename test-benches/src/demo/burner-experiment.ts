@@ -61,8 +61,8 @@ export const burnerExperiment: ExperimentInput = {
         parameters: {
           actuator: 'airTrim',
           from: 14,
-          to: 70,
-          points: 11,
+          to: 62,
+          points: 13,
           settleS: 0.8,
           averageS: 0.4,
           isUpAndDown: true,
