@@ -1,6 +1,13 @@
 import type { IncomingMessage, Server } from 'node:http';
 import type { Duplex } from 'node:stream';
-import { Injectable, Logger, type OnApplicationBootstrap, type OnModuleDestroy } from '@nestjs/common';
+import {
+  Inject,
+  Injectable,
+  Logger,
+  Optional,
+  type OnApplicationBootstrap,
+  type OnModuleDestroy,
+} from '@nestjs/common';
 import { HttpAdapterHost } from '@nestjs/core';
 import type { FromLive } from '@cresthold/shared';
 import { WebSocketServer, type WebSocket } from 'ws';
@@ -14,7 +21,8 @@ import { LiveHub } from './live-hub.js';
 export const livePath = `/${apiPrefix}/live`;
 
 /** Between two looks at every socket: does it still answer, is its session still good? */
-const careEveryMs = 20_000;
+export const LIVE_CARE_EVERY_MS = Symbol('live-care-every-ms');
+const defaultCareEveryMs = 20_000;
 const messageBytesMax = 16 * 1024;
 /** Close code of RFC 6455, section 7.4.2 (private use): the session has ended, sign in again. */
 const sessionEndedCode = 4401;
@@ -31,6 +39,7 @@ export class LiveServer implements OnApplicationBootstrap, OnModuleDestroy {
     private readonly sessions: SessionsService,
     private readonly hosts: RigHostsService,
     private readonly hub: LiveHub,
+    @Optional() @Inject(LIVE_CARE_EVERY_MS) private readonly careEveryMs = defaultCareEveryMs,
   ) {}
 
   onApplicationBootstrap(): void {
@@ -41,7 +50,7 @@ export class LiveServer implements OnApplicationBootstrap, OnModuleDestroy {
         socket.destroy();
       });
     });
-    this.timer = setInterval(() => void this.care(), careEveryMs);
+    this.timer = setInterval(() => void this.care(), this.careEveryMs);
   }
 
   onModuleDestroy(): void {

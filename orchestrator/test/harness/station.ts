@@ -1,0 +1,126 @@
+import { mkdtempSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import type { RigStatus, Role, Scenario } from '@cresthold/shared';
+import { ApiClient } from './api-client.js';
+import { demoScenario, forkBurnerBench, type BenchProcess } from './bench-process.js';
+import { ServerProcess } from './server-process.js';
+import { until } from './until.js';
+
+export const password = 'brackwater trial 7';
+
+export const accounts = {
+  administrator: ['administrator'],
+  officer: ['safety-officer'],
+  chief: ['safety-officer', 'test-engineer'],
+  engineer: ['test-engineer'],
+  technician: ['technician'],
+  reader: ['reader'],
+} as const satisfies Record<string, Role[]>;
+export type Account = keyof typeof accounts;
+
+/** A server and a burner bench as processes of their own, with nothing set up yet. */
+export class Station {
+  server!: ServerProcess;
+  readonly clients = new Map<Account, ApiClient>();
+
+  private constructor(
+    readonly folder: string,
+    readonly bench: BenchProcess,
+    readonly scenario: Scenario,
+  ) {}
+
+  /** @param benchPort where the rig finds the bench; the bench's own port where it is left out */
+  static async open(benchArgs: string[], benchPort?: (port: number) => Promise<number>): Promise<Station> {
+    const folder = mkdtempSync(join(tmpdir(), 'cresthold-station-'));
+    const bench = await forkBurnerBench(folder, benchArgs);
+    const port = (await benchPort?.(bench.port)) ?? bench.port;
+    const station = new Station(folder, bench, demoScenario(port));
+    await station.startServer();
+    return station;
+  }
+
+  get dataFolder(): string {
+    return join(this.folder, 'data');
+  }
+
+  /** The one rig of the scenario, with its documents. */
+  get entry() {
+    const entry = this.scenario.rigs[0];
+    if (!entry) throw new Error('The scenario has no rig.');
+    return entry;
+  }
+
+  get rigId(): string {
+    return this.entry.rig.id;
+  }
+
+  as(account: Account): ApiClient {
+    const client = this.clients.get(account);
+    if (!client) throw new Error(`Nobody is signed in as ${account}.`);
+    return client;
+  }
+
+  async startServer(): Promise<void> {
+    this.server = await ServerProcess.start(this.dataFolder);
+  }
+
+  /** Makes the first administrator with the printed code, then everybody else, and signs them in. */
+  async makePeople(): Promise<void> {
+    const { url } = this.server;
+    const code = await this.server.setUpCode();
+    const first = { code, account: 'administrator', title: 'Administrator', password };
+    await new ApiClient(url).expect(201, 'POST', 'setup', first);
+    const administrator = await ApiClient.signIn(url, 'administrator', password);
+    for (const [account, roles] of Object.entries(accounts)) {
+      if (account === 'administrator') continue;
+      await administrator.expect(201, 'POST', 'users', { account, title: account, roles, password });
+    }
+    await this.signInAll();
+  }
+
+  /** Sessions hold a server's address: signs everybody in again after a restart. */
+  async signInAll(): Promise<void> {
+    for (const account of Object.keys(accounts) as Account[]) {
+      this.clients.set(account, await ApiClient.signIn(this.server.url, account, password));
+    }
+  }
+
+  async status() {
+    return this.as('reader').get(`rigs/${this.rigId}/status`);
+  }
+
+  async untilPhase(phase: string, withinMs?: number) {
+    let last: unknown;
+    return until(
+      `rig ${phase}`,
+      async () => {
+        last = await this.status();
+        return (last as { phase: string }).phase === phase ? last : null;
+      },
+      withinMs,
+    ).catch((error: Error) => {
+      throw new Error(`${error.message} Last: ${JSON.stringify(last)}\n${this.server.output.text}`);
+    });
+  }
+
+  /** Waits until nothing forbids arming (the burner lights once its heartbeat is seen), then arms. */
+  async arm(account: Account, withinMs?: number) {
+    let last: unknown;
+    const clear = async () => {
+      last = await this.status();
+      const { phase, armingObstacles } = last as RigStatus;
+      return phase === 'armed' || (phase === 'idle' && armingObstacles.length === 0);
+    };
+    await until('nothing forbids arming', clear, withinMs).catch((error: Error) => {
+      throw new Error(`${error.message} Last: ${JSON.stringify(last)}`);
+    });
+    if ((last as RigStatus).phase === 'armed') return;
+    await this.as(account).expect(200, 'POST', `rigs/${this.rigId}/arm`);
+  }
+
+  async close(): Promise<void> {
+    await this.server?.end();
+    await this.bench.end();
+  }
+}
