@@ -14,8 +14,9 @@ import { preflight, type PreflightInput } from './preflight.js';
 import { preflightFaultSchema } from './preflight.types.js';
 import { stepKinds } from './step-kinds.js';
 
+const usual = { objective: testObjective(), rig: testRig(), envelope: testEnvelope() };
 const judge = (graph: ExperimentGraph, change: Partial<PreflightInput> = {}) =>
-  preflight({ graph, objective: testObjective(), rig: testRig(), envelope: testEnvelope(), ...change });
+  preflight({ graph, ...usual, ...change });
 
 /** Findings as `severity code step field`, without the optional ports that the chains leave open. */
 const codes = (graph: ExperimentGraph, change: Partial<PreflightInput> = {}) =>
@@ -372,15 +373,15 @@ describe('preflight of any graph', () => {
     fc.assert(
       fc.property(graph, fc.boolean(), fc.boolean(), (any, hasObjective, hasEnvelope) => {
         const found = judge(any, {
-          objective: hasObjective ? testObjective() : null,
-          envelope: hasEnvelope ? testEnvelope() : null,
+          objective: hasObjective ? usual.objective : null,
+          envelope: hasEnvelope ? usual.envelope : null,
         });
-        for (const fault of found) expect(() => preflightFaultSchema.parse(fault)).not.toThrow();
+        for (const fault of found) preflightFaultSchema.parse(fault);
         if (!any.steps.some(({ kind }) => kind === 'start')) {
           expect(found.map(({ code }) => code)).toContain('preflight.no-start');
         }
       }),
-      { numRuns: 500 },
+      { numRuns: 300 },
     );
-  });
+  }, 60_000);
 });

@@ -30,7 +30,7 @@ export class ActuatorRamp {
   ): string | null {
     this.legs = targets.map(({ channel, value }) => ({
       channel,
-      from: whereHeld(input, channel),
+      from: this.startOf(input, channel),
       to: value,
     }));
     this.rampedS = 0;
@@ -66,6 +66,13 @@ export class ActuatorRamp {
   /** Time that the lines take by themselves, s. */
   get plannedS(): number {
     return this.durationS;
+  }
+
+  /** An actuator found outside its envelope begins at the edge: nothing outside is asked for. */
+  private startOf(input: SequencerInput, channel: string): number {
+    const limit = this.services.limitOf(channel);
+    const held = whereHeld(input, channel);
+    return limit ? Math.min(Math.max(held, limit.min), limit.max) : held;
   }
 }
 

@@ -4,7 +4,7 @@ import { ObjectiveAverage } from './objective-average.js';
 
 /** Whole dither periods whose mean is the objective at the start. */
 const startPeriods = 2;
-/** Whole dither periods whose mean is the outcome. */
+/** Whole dither periods whose mean is the objective at the end. */
 const endPeriods = 5;
 
 /**
@@ -12,9 +12,10 @@ const endPeriods = 5;
  * average out. A period that an invalid objective broke is not counted.
  */
 export class SeekPeriods {
+  /** Mean estimate of the last whole period; NaN before the first. */
+  lastEstimate = NaN;
   private readonly estimate = new RunningStatistics();
   private readonly objective = new ObjectiveAverage();
-  private readonly estimates = new Float64Array(endPeriods);
   private readonly objectives = new Float64Array(endPeriods);
   private readonly start = new RunningStatistics();
   private elapsedS = 0;
@@ -28,6 +29,7 @@ export class SeekPeriods {
     this.objective.clear();
     this.elapsedS = 0;
     this.count = 0;
+    this.lastEstimate = NaN;
   }
 
   /** @returns true in the scan that completes a period */
@@ -39,7 +41,7 @@ export class SeekPeriods {
     // What is left over goes into the next period, so that the cut does not drift against the dither.
     this.elapsedS = Math.max(0, this.elapsedS - this.periodS);
     const slot = this.count % endPeriods;
-    this.estimates[slot] = this.estimate.mean;
+    this.lastEstimate = this.estimate.mean;
     this.objectives[slot] = this.objective.mean;
     if (this.start.count < startPeriods) this.start.add(this.objective.mean);
     this.count += 1;
@@ -48,16 +50,7 @@ export class SeekPeriods {
     return true;
   }
 
-  /** Mean estimate of the last whole period; NaN before the first. */
-  get lastEstimate(): number {
-    return this.count > 0 ? (this.estimates[(this.count - 1) % endPeriods] ?? NaN) : NaN;
-  }
-
-  /** Mean estimate over the last whole periods; NaN before the first. */
-  get meanEstimate(): number {
-    return mean(this.estimates, this.count);
-  }
-
+  /** Mean of the objective over the last whole periods; NaN before the first. */
   get meanObjective(): number {
     return mean(this.objectives, this.count);
   }

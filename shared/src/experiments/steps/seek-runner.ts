@@ -24,11 +24,13 @@ interface Pursuit {
   periods: SeekPeriods;
   retreat: SeekRetreat;
   convergence: StayWithin | null;
+  /** The law adapted all through the present dither period. */
+  isAdapting: boolean;
 }
 
 /**
  * Steers one actuator by the gradient law. First it ramps into its box, then it seeks; at its end the dither
- * ends and the base goes to the estimate averaged over the last whole dither periods. The law climbs: an
+ * ends and the base goes to the estimate averaged over the last whole dither period. The law climbs: an
  * objective to be minimised is fed with its sign turned, and the inner signals are of what is fed.
  */
 export class SeekRunner implements StepRunner {
@@ -80,7 +82,9 @@ export class SeekRunner implements StepRunner {
       law,
       periods: new SeekPeriods(numbers.periodS),
       retreat: new SeekRetreat(numbers.periodS),
-      convergence: end.whenConverged && new StayWithin(end.whenConverged.forS),
+      // Means of fewer than two periods cannot show that the estimate stands still.
+      convergence: end.whenConverged && new StayWithin(Math.max(end.whenConverged.forS, 2 * numbers.periodS)),
+      isAdapting: false,
     };
     this.isApproaching = true;
     this.elapsedS = 0;
@@ -112,7 +116,8 @@ export class SeekRunner implements StepRunner {
   }
 
   /** One scan of the law, and what is kept of it. */
-  private seek(input: SequencerInput, { law, periods, retreat, convergence }: Pursuit): void {
+  private seek(input: SequencerInput, pursuit: Pursuit): void {
+    const { law, periods, retreat } = pursuit;
     const { objective } = input;
     const sign = this.services.objective?.direction === 'minimise' ? -1 : 1;
     this.fed.objective = sign * objective.value;
@@ -126,9 +131,11 @@ export class SeekRunner implements StepRunner {
     }
     if (!this.fed.isValid) {
       periods.interrupt();
-      convergence?.clear();
-    } else if (periods.add(output.estimate, objective, input.dtS) && law.settleS <= 0) {
-      convergence?.add(periods.lastEstimate, law.parameters.periodS);
+      pursuit.convergence?.clear();
+      pursuit.isAdapting = false;
+    } else if (periods.add(output.estimate, objective, input.dtS)) {
+      if (pursuit.isAdapting) pursuit.convergence?.add(periods.lastEstimate, law.parameters.periodS);
+      pursuit.isAdapting = law.settleS <= 0;
     }
   }
 
@@ -147,7 +154,7 @@ export class SeekRunner implements StepRunner {
 
   private leaveResults({ law, periods }: Pursuit, exit: StepExit): void {
     const { min, max } = law.parameters;
-    const mean = law.isRetreated ? NaN : periods.meanEstimate;
+    const mean = periods.lastEstimate;
     this.best = Number.isNaN(mean) ? law.estimate : Math.min(Math.max(mean, min), max);
     const leave = (suffix: string, value: number) => this.services.setResult(this.id, suffix, value);
     leave(`best.${this.settings.parameters.actuator}`, this.best);

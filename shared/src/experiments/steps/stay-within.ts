@@ -46,7 +46,7 @@ export class StayWithin {
 
   /** @param slackS how much less than the whole time is enough, s */
   hasStayed(band: number, slackS: number): boolean {
-    if (this.totalS + slackS < this.forS) return false;
+    if (this.used === 0 || this.totalS + slackS < this.forS) return false;
     let min = Infinity;
     let max = -Infinity;
     for (let i = 0; i < this.used; i += 1) {
