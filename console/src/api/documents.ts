@@ -1,6 +1,7 @@
 import type {
   EnvelopeContent,
   EnvelopeStatus,
+  ExperimentContent,
   ObjectiveContent,
   Rig,
   RigStatus,
@@ -66,4 +67,23 @@ export interface RunSummary {
   startedAt: string;
   endedAt: string | null;
   startedBy: string;
+}
+
+export interface ExperimentSummary {
+  id: string;
+  rigId: string;
+  title: string;
+  latestVersion: number;
+  createdAt: string;
+  createdBy: string;
+}
+
+export interface ExperimentVersion {
+  experimentId: string;
+  version: number;
+  basedOn: number | null;
+  note: string;
+  createdAt: string;
+  createdBy: string;
+  content: ExperimentContent;
 }

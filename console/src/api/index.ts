@@ -1,6 +1,8 @@
 export { answerOf, client, ifMatch } from './client.js';
 export type {
   EnvelopeDocument,
+  ExperimentSummary,
+  ExperimentVersion,
   ObjectiveDocument,
   Page,
   RigDocument,

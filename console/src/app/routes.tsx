@@ -50,8 +50,7 @@ const pages: RouteObject[] = [
   { path: '*', element: <NotFoundPage /> },
 ];
 
-const withBoundary = (page: RouteObject): RouteObject =>
-  ({ ...page, errorElement: <RouteError /> });
+const withBoundary = (page: RouteObject): RouteObject => ({ ...page, errorElement: <RouteError /> });
 
 export const routes: RouteObject[] = [
   {

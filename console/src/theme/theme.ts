@@ -9,7 +9,8 @@ function paletteOf(paper: Paper) {
   return {
     primary: solid(paper.ink),
     secondary: solid(paper.inkSoft),
-    error: solid(paper.trip),
+    // A fault in a form is a warning: red is kept for trips and the emergency stop.
+    error: solid(paper.warn),
     warning: solid(paper.warn),
     info: solid(paper.act),
     success: solid(paper.ink),

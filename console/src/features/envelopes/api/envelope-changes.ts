@@ -47,17 +47,24 @@ export function useSubmitDraft(rigId: string) {
 
 interface Decision {
   id: string;
+  /** Revision that was read: a decision on anything else is refused. */
+  revision: number;
   reason: string;
 }
 
+const decided = ({ id, revision, reason }: Decision) => ({
+  params: { path: { id }, header: { 'If-Match': ifMatch(revision) } },
+  body: { reason },
+});
+
 export function useApprove(rigId: string) {
-  return useEnvelopeChange(rigId, ({ id, reason }: Decision) =>
-    answerOf(client.POST('/api/v1/envelopes/{id}/approve', { ...at(id), body: { reason } })),
+  return useEnvelopeChange(rigId, (decision: Decision) =>
+    answerOf(client.POST('/api/v1/envelopes/{id}/approve', decided(decision))),
   );
 }
 
 export function useReturn(rigId: string) {
-  return useEnvelopeChange(rigId, ({ id, reason }: Decision) =>
-    answerOf(client.POST('/api/v1/envelopes/{id}/return', { ...at(id), body: { reason } })),
+  return useEnvelopeChange(rigId, (decision: Decision) =>
+    answerOf(client.POST('/api/v1/envelopes/{id}/return', decided(decision))),
   );
 }

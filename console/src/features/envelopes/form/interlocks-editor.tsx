@@ -1,0 +1,93 @@
+import Box from '@mui/material/Box';
+import Button from '@mui/material/Button';
+import { interlockFields } from '../envelope-fields.js';
+import { useDraft, useDraftList } from './draft-context.js';
+import { DraftField } from './draft-field.js';
+import { textAt, type FormValue } from './draft-values.js';
+
+const newInterlock: FormValue = { id: '', title: '', condition: '', delayS: 0, action: 'trip', message: '' };
+
+/** Every interlock: when it is unsafe, for how long, what is done, what is said. */
+export function InterlocksEditor() {
+  const { isReadOnly } = useDraft();
+  const { rows, add, remove } = useDraftList('interlocks');
+  return (
+    <Box sx={{ display: 'grid', gap: 1.5 }}>
+      {rows.length === 0 && <Box sx={{ color: 'text.secondary' }}>No interlocks.</Box>}
+      <Box component="ol" sx={{ m: 0, p: 0, listStyle: 'none', display: 'grid', gap: 1.5 }}>
+        {rows.map((row, index) => (
+          <Box
+            component="li"
+            key={index}
+            sx={{
+              border: 1,
+              borderColor: 'divider',
+              p: 1.5,
+              display: 'grid',
+              gap: 1.5,
+              gridTemplateColumns: 'minmax(0, 1fr)',
+            }}
+          >
+            {isReadOnly ? (
+              <ShownInterlock row={row} />
+            ) : (
+              <InterlockFields index={index} onRemove={() => remove(index)} />
+            )}
+          </Box>
+        ))}
+      </Box>
+      {!isReadOnly && (
+        <Box>
+          <Button onClick={() => add(newInterlock)}>Add interlock</Button>
+        </Box>
+      )}
+    </Box>
+  );
+}
+
+function ShownInterlock({ row }: { row: FormValue }) {
+  const text = (key: string) => textAt(row, [key]);
+  return (
+    <Box>
+      <strong>{text('title')}</strong>{' '}
+      <Box component="span" sx={{ color: 'text.secondary' }}>
+        {text('id')}
+      </Box>
+      <div>
+        {text('action')} when {text('condition')}
+        {text('delayS') !== '0' && ` for ${text('delayS')} s`}
+      </div>
+      <Box sx={{ color: 'text.secondary', fontSize: '0.8125rem' }}>{text('message')}</Box>
+    </Box>
+  );
+}
+
+const widths: Record<string, string> = { condition: 'span 2', message: '1 / -1' };
+
+function InterlockFields({ index, onRemove }: { index: number; onRemove: () => void }) {
+  return (
+    <>
+      <Box
+        sx={{
+          display: 'grid',
+          gap: 1.5,
+          gridTemplateColumns: { xs: 'minmax(0, 1fr)', md: 'repeat(6, minmax(0, 1fr))' },
+        }}
+      >
+        {interlockFields.map(({ key, ...field }) => (
+          <Box key={key} sx={{ gridColumn: { md: widths[key] } }}>
+            <DraftField
+              path={['interlocks', index, key]}
+              isLabelShown
+              isNumber={key === 'delayS'}
+              {...field}
+            />
+          </Box>
+        ))}
+      </Box>
+      <Box>
+        <Button onClick={onRemove}>Remove interlock {index + 1}</Button>
+      </Box>
+    </>
+  );
+}

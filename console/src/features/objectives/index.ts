@@ -1,0 +1,1 @@
+export { objectiveKeys, objectivesQuery, useObjectives, useRigObjectives } from './api/objectives.js';
