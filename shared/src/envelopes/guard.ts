@@ -76,9 +76,10 @@ export function freshSlew(actuator: GuardedActuator, dtS: number): number {
 }
 
 /**
- * Greatest movement that the guard lets through in this scan, channel unit. On a grid coarser than
- * the slew limit, allowance that was not used is saved up to one grid step: so the actuator moves a
- * step now and then, and over any time not faster than its limit.
+ * Greatest movement that the guard lets through in this scan, channel unit. Where the grid is coarser
+ * than the slew limit, allowance that was not used is saved up to one grid step: so the actuator
+ * moves a step now and then, and over any time not faster than its limit. Where it is finer nothing
+ * is saved: no scan moves further than slew times dt, even if the grid then makes the ramp slower.
  */
 export function slewAllowance(actuator: GuardedActuator, dtS: number): number {
   const fresh = freshSlew(actuator, dtS);
@@ -109,7 +110,9 @@ export function guardRequest(actuator: GuardedActuator, base: number, dither: nu
   const wanted = clamp(heldBase + heldDither, limit.min, limit.max);
   if (heldBase !== base || wanted !== heldBase + heldDither) note(actuator, 'range');
   if (heldDither !== dither) note(actuator, 'dither');
+  const earned = freshSlew(actuator, dtS) + actuator.carry;
   applyWithinSlew(actuator, wanted, slewAllowance(actuator, dtS));
+  actuator.carry = clamp(earned - Math.abs(actuator.applied - applied), 0, actuator.grid.step);
   return true;
 }
 
@@ -147,10 +150,7 @@ function applyWithinSlew(actuator: GuardedActuator, wanted: number, allowance: n
   const low = Math.max(applied - allowance, slewed < limit.min ? applied : limit.min);
   const high = Math.min(applied + allowance, slewed > limit.max ? applied : limit.max);
   const point = nearestOnGrid(grid, slewed, low, high);
-  actuator.applied = Number.isNaN(point) ? applied : clamp(point, low, high);
-  if (grid.step > 0) {
-    actuator.carry = clamp(allowance - Math.abs(actuator.applied - applied), 0, grid.step);
-  }
+  actuator.applied = Number.isNaN(point) ? applied : point;
 }
 
 /** The grid point nearest to `wanted` in [low, high]; NaN where there is none. */
@@ -160,7 +160,8 @@ function nearestOnGrid(grid: ValueGrid, wanted: number, low: number, high: numbe
   const highest = Math.floor((high - grid.origin) / grid.step + gridSlack);
   if (lowest > highest) return NaN;
   const nearest = clamp(Math.round((wanted - grid.origin) / grid.step), lowest, highest);
-  return grid.origin + nearest * grid.step;
+  /** The sum may miss a bound by its rounding: the bound is the grid point then. */
+  return clamp(grid.origin + nearest * grid.step, low, high);
 }
 
 function note(actuator: GuardedActuator, rule: GuardRule): void {

@@ -1,6 +1,6 @@
-import { freshSlew, guardRequest } from '../envelopes/guard.js';
+import { freshSlew, guardRequest, slewAllowance } from '../envelopes/guard.js';
 import type { SequencerOutput } from '../experiments/sequencer.types.js';
-import { type HeldActuator, moveTowards } from './actuator-bank.js';
+import { type HeldActuator, moveTowards, takeOverFromReadBack } from './actuator-bank.js';
 import {
   actuatorsOf,
   applyRigEvent,
@@ -16,6 +16,7 @@ import { isStopComplete, noteStopped, stepStopAction } from './stop-action.js';
 /** Decides what every actuator is asked for in this scan, and takes it through the guard. */
 export function decide(engine: EngineState, input: ScanInput): void {
   const actuators = actuatorsOf(engine);
+  if (engine.isJustArmed) takeOverAfresh(engine, actuators);
   for (const actuator of actuators) {
     actuator.isWritten = false;
     actuator.requested = NaN;
@@ -36,6 +37,15 @@ export function decide(engine: EngineState, input: ScanInput): void {
     case 'idle':
     case 'offline':
       break;
+  }
+}
+
+/** The first write after arming starts from what is read back now, not from what was when arming was asked. */
+function takeOverAfresh(engine: EngineState, actuators: readonly HeldActuator[]): void {
+  engine.isJustArmed = false;
+  for (const actuator of actuators) {
+    const { target } = actuator;
+    if (actuator.isReachable && takeOverFromReadBack(actuator, engine.readings)) actuator.target = target;
   }
 }
 
@@ -78,12 +88,13 @@ function stepSafely(engine: EngineState, run: RunKeeper, input: ScanInput): Sequ
   }
 }
 
-/** Manual moves: the base goes to its target at the slew limit. */
+/** Manual moves: from where the actuator is to the target at the slew limit. */
 function followTargets(actuators: readonly HeldActuator[], dtS: number): void {
   for (const actuator of actuators) {
+    if (actuator.base === actuator.target) actuator.target = NaN;
     if (Number.isNaN(actuator.target)) continue;
-    actuator.requestedBase = moveTowards(actuator.base, actuator.target, freshSlew(actuator.guarded, dtS));
-    if (actuator.requestedBase === actuator.target) actuator.target = NaN;
+    const { guarded, target } = actuator;
+    actuator.requestedBase = moveTowards(guarded.applied, target, slewAllowance(guarded, dtS));
   }
 }
 

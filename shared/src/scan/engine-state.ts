@@ -38,6 +38,8 @@ export interface EngineState {
   run: RunKeeper | null;
   /** Best-known point of the run that ended last. */
   lastBestPoint: Record<string, number>;
+  /** Armed since the scan before: its first scan takes the actuators over once more. */
+  isJustArmed: boolean;
   consecutiveOverruns: number;
   serverSilentS: number;
   isStatusChanged: boolean;
@@ -71,6 +73,7 @@ export function createEngineState(configuration: ScanEngineConfiguration): Engin
     fitted: envelope ? fitEnvelope(envelope, rig, grids, readings) : null,
     run: null,
     lastBestPoint: {},
+    isJustArmed: false,
     consecutiveOverruns: 0,
     serverSilentS: 0,
     isStatusChanged: true,

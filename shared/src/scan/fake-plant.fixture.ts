@@ -1,4 +1,5 @@
 import { envelopeContentSchema, type EnvelopeInForce } from '../envelopes/envelope.schema.js';
+import type { PreflightFault } from '../experiments/preflight.types.js';
 import type { Sequencer, SequencerInput, SequencerOutput } from '../experiments/sequencer.types.js';
 import type { RunOrder } from '../live/host-message.schema.js';
 import { Quality } from '../rigs/quality.js';
@@ -102,6 +103,8 @@ export const plantOrder: RunOrder = {
 
 export interface PlantOptions extends Partial<ScanEngineConfiguration> {
   sequencer?: Sequencer;
+  /** What preflight finds. */
+  faults?: PreflightFault[];
 }
 
 /** An engine on a plant that takes each write at once, with a clock of its own and faults to choose. */
@@ -120,7 +123,7 @@ export class FakePlant {
   serverSilentS = 0;
 
   constructor(options: PlantOptions = {}) {
-    const { sequencer, ...configuration } = options;
+    const { sequencer, faults = [], ...configuration } = options;
     this.engine = createScanEngine(
       {
         rig: plantRig,
@@ -130,7 +133,10 @@ export class FakePlant {
         grids: new Map(),
         ...configuration,
       },
-      { createSequencer: () => sequencer ?? scriptedSequencer(() => ({})).sequencer, preflight: () => [] },
+      {
+        createSequencer: () => sequencer ?? scriptedSequencer(() => ({})).sequencer,
+        preflight: () => faults,
+      },
     );
   }
 
@@ -179,6 +185,17 @@ export class FakePlant {
     this.arm();
     this.engine.startRun(plantOrder);
     return this;
+  }
+
+  /** Everything works again; what was tripped stays so. */
+  heal(): void {
+    this.lost = [];
+    this.bad.clear();
+    this.stuck.clear();
+    this.latenessS = 0;
+    this.serverSilentS = 0;
+    this.at.temp = 50;
+    this.engine.setLockout(false);
   }
 
   private read(): void {

@@ -51,6 +51,7 @@ export function arm(engine: EngineState): void {
     takeOverFromReadBack(actuator, engine.readings);
     actuator.isStopped = false;
   }
+  engine.isJustArmed = true;
 }
 
 /** @throws rig.not-armed, rig.busy, rig.tripped */

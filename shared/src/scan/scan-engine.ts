@@ -11,19 +11,19 @@ import * as commands from './scan-commands.js';
 import { runScan } from './scan-cycle.js';
 import type { ScanEngine, ScanEngineConfiguration } from './scan-engine.types.js';
 import { statusOf } from './scan-status.js';
-import { type ExperimentParts, startRun } from './start-run.js';
+import { experimentParts, type ExperimentParts, startRun } from './start-run.js';
 import { isStopComplete } from './stop-action.js';
 import { isoTime } from './wall-time.js';
 
 /**
  * Makes the engine of one rig.
  *
- * @param parts what runs experiments; without it no run can be started
+ * @param parts what checks and runs experiments; tests pass scripted ones
  * @throws expression.invalid, channel.not-found where rig and envelope do not fit together
  */
 export function createScanEngine(
   configuration: ScanEngineConfiguration,
-  parts: ExperimentParts | null = null,
+  parts: ExperimentParts = experimentParts,
 ): ScanEngine {
   const engine = createEngineState(configuration);
   return {
@@ -34,16 +34,17 @@ export function createScanEngine(
     arm: () => commands.arm(engine),
     disarm: (by) => commands.disarm(engine, by),
     move: (channel, value) => commands.move(engine, channel, value),
-    startRun: (order) => {
-      if (!parts)
-        throw new DomainError('server.bug', 'This engine was made without a runner of experiments.');
-      return startRun(engine, order, parts);
-    },
+    startRun: (order) => startRun(engine, order, parts),
     pause: (_by, reason) => pause(engine, reason),
     resume: (by) => resumeRun(engine, by),
     stop: (_by, reason) => commands.stop(engine, reason),
     emergencyStop: (by, reason, atMs) => {
-      const note = { cause: 'emergency-stop', message: reason, at: isoTime(atMs), by };
+      const note = {
+        cause: 'emergency-stop',
+        message: reason.trim() || `Emergency stop by ${by}.`,
+        at: isoTime(atMs),
+        by,
+      };
       latchTrip(engine, 'emergency-stop', note);
     },
     trip: (cause, message, atMs) =>

@@ -46,6 +46,7 @@ export interface ScanOutput {
   row: Float64Array | null;
   /** Time since the run began, s; null outside a run. */
   runTS: number | null;
+  /** `runTS` is 0 outside a run: such events belong to no run (`runTS` of the output is null then). */
   readonly events: { runTS: number; atMs: number; body: RunEventBody }[];
   /** Set in the scan that ended the run (its row is the last). */
   runEnded: {

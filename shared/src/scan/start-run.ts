@@ -1,5 +1,7 @@
 import { DomainError } from '../errors/domain-error.js';
+import { preflight, type PreflightInput } from '../experiments/preflight.js';
 import type { PreflightFault } from '../experiments/preflight.types.js';
+import { createSequencer } from '../experiments/sequencer.js';
 import type { Sequencer, SequencerContext } from '../experiments/sequencer.types.js';
 import type { RunOrder } from '../live/host-message.schema.js';
 import type { RunColumn } from '../runs/run-columns.js';
@@ -9,8 +11,10 @@ import { RunKeeper } from './run-keeper.js';
 /** What the engine needs of experiments; replaced in tests by scripted ones. */
 export interface ExperimentParts {
   createSequencer: (context: SequencerContext) => Sequencer;
-  preflight: (context: SequencerContext) => readonly PreflightFault[];
+  preflight: (input: PreflightInput) => readonly PreflightFault[];
 }
+
+export const experimentParts: ExperimentParts = { createSequencer, preflight };
 
 /**
  * @returns the columns of the run's rows, in order
@@ -24,7 +28,7 @@ export function startRun(engine: EngineState, order: RunOrder, parts: Experiment
   const { content: envelope } = fitted.inForce;
   const { objective, experiment } = order;
   const context = { rig, envelope, objective, graph: experiment.graph, periodS };
-  requirePreflight(parts.preflight(context));
+  requirePreflight(parts.preflight({ ...context, grids: engine.grids }));
   const sequencer = parts.createSequencer(context);
   const run = new RunKeeper(order, sequencer, rig, engine.readings, fitted.actuators);
   applyRigEvent(engine, { type: 'start-run' });

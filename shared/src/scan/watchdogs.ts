@@ -3,6 +3,9 @@ import type { HeldActuator } from './actuator-bank.js';
 import { actuatorsOf, type EngineState, tripIfInMotion } from './engine-state.js';
 import type { ScanInput } from './scan-engine.types.js';
 
+/** Two times closer than this are the same, s: sums of periods are not exact. */
+const sameTimeS = 1e-9;
+
 /** Watches that do not come from conditions: lateness of the scan, the server, and the read-backs. */
 export function watch(engine: EngineState, input: ScanInput): void {
   watchOverruns(engine, input);
@@ -44,7 +47,7 @@ function watchReadBacks(engine: EngineState, { tS, atMs }: ScanInput): void {
     }
     if (Number.isNaN(actuator.mismatchSinceS)) actuator.mismatchSinceS = tS;
     const { channel, limit } = actuator;
-    if (tS - actuator.mismatchSinceS <= limit.readBackWithinS) continue;
+    if (tS - actuator.mismatchSinceS <= limit.readBackWithinS + sameTimeS) continue;
     const message = `Actuator "${channel}" did not follow: its read-back was outside ±${limit.readBackTolerance} of what was written for over ${limit.readBackWithinS} s.`;
     tripIfInMotion(engine, `read-back:${channel}`, message, atMs);
   }

@@ -1,0 +1,140 @@
+import { describe, expect, it } from 'vitest';
+import { compileExpression } from '../expressions/compile-expression.js';
+import type { CompiledExpression } from '../expressions/expression.types.js';
+import { Quality } from '../rigs/quality.js';
+import { Readings } from '../scan/readings.js';
+import { type Interlock, interlockSchema } from './envelope.schema.js';
+import { InterlockJudge } from './interlock-judge.js';
+import { StalenessJudge } from './staleness-judge.js';
+
+function compiled(text: string): CompiledExpression {
+  const outcome = compileExpression(text, new Set(['temp', 'co']));
+  if (!outcome.isOk) throw new Error(outcome.message);
+  return outcome.expression;
+}
+
+function judgeOf(...interlocks: Partial<Interlock>[]): InterlockJudge {
+  const whole = interlocks.map((change, index) =>
+    interlockSchema.parse({
+      id: `lock-${index}`,
+      title: 'Lock',
+      condition: 'temp > 90',
+      delayS: 0,
+      action: 'trip',
+      message: 'Look.',
+      ...change,
+    }),
+  );
+  return new InterlockJudge(
+    whole,
+    whole.map(({ condition }) => compiled(condition)),
+  );
+}
+
+const reading =
+  (temp: number, co = 0) =>
+  (symbol: string) =>
+    symbol === 'temp' ? temp : co;
+const actedIds = ({ acted }: InterlockJudge) => acted.map(({ id }) => id);
+
+describe('an interlock', () => {
+  it('acts in the first scan without a delay, and once per episode', () => {
+    const judge = judgeOf({});
+    const acted = [80, 91, 92, 89, 95].map((temp, i) => {
+      judge.judge(reading(temp), i);
+      return judge.acted.length;
+    });
+    expect(acted).toEqual([0, 1, 0, 0, 1]);
+  });
+
+  it('acts exactly when its condition has held for the delay', () => {
+    const judge = judgeOf({ delayS: 0.3 });
+    const states = Array.from({ length: 5 }, (_, i) => {
+      judge.judge(reading(95), 7 + i * 0.1);
+      return judge.stateOf('lock-0');
+    });
+    expect(states).toEqual(['pending', 'pending', 'pending', 'acted', 'acted']);
+  });
+
+  it('does not act a scan too early', () => {
+    const judge = judgeOf({ delayS: 0.3 });
+    for (const tS of [0, 0.1, 0.2, 0.299]) judge.judge(reading(95), tS);
+    expect(judge.stateOf('lock-0')).toBe('pending');
+    judge.judge(reading(95), 0.3);
+    expect(judge.stateOf('lock-0')).toBe('acted');
+  });
+
+  it('begins its delay anew after the condition was false for one scan', () => {
+    const judge = judgeOf({ delayS: 0.3 });
+    for (const [i, temp] of [95, 95, 95, 80, 95, 95, 95].entries()) judge.judge(reading(temp), i * 0.1);
+    expect(judge.stateOf('lock-0')).toBe('pending');
+  });
+
+  it('counts an input that is not a number as violated, whatever side the condition would be on', () => {
+    for (const condition of ['temp > 90', 'temp < 90', 'not (temp > 90)', 'temp > 90 or co < 5']) {
+      const judge = judgeOf({ condition });
+      judge.judge(reading(NaN), 0);
+      expect(judge.stateOf('lock-0')).toBe('acted');
+    }
+  });
+
+  it('says once that it became clear after it had acted, and nothing of one that was only pending', () => {
+    const judge = judgeOf({ delayS: 0 }, { delayS: 10 });
+    judge.judge(reading(95), 0);
+    judge.judge(reading(80), 0.1);
+    expect(judge.cleared.map(({ id }) => id)).toEqual(['lock-0']);
+    judge.judge(reading(80), 0.2);
+    expect(judge.cleared).toEqual([]);
+  });
+
+  it('puts first what came due first, where several act in one scan', () => {
+    const judge = judgeOf(
+      { delayS: 0.25, condition: 'co > 5' },
+      { delayS: 0.2, condition: 'temp > 90' },
+      { delayS: 0.28, condition: 'temp > 91' },
+    );
+    for (const tS of [0, 0.1, 0.2 - 0.001, 0.3]) judge.judge(reading(95, 9), tS);
+    expect(actedIds(judge)).toEqual(['lock-1', 'lock-0', 'lock-2']);
+  });
+
+  it('keeps the order of the envelope where they came due together', () => {
+    const judge = judgeOf({ condition: 'co > 5' }, { condition: 'temp > 90' });
+    judge.judge(reading(95, 9), 0);
+    expect(actedIds(judge)).toEqual(['lock-0', 'lock-1']);
+  });
+
+  it('tells whether any state has changed, and whether it has judged at all', () => {
+    const judge = judgeOf({});
+    expect(judge.hasJudged).toBe(false);
+    judge.judge(reading(80), 0);
+    expect([judge.hasJudged, judge.hasChanged]).toEqual([true, false]);
+    judge.judge(reading(95), 1);
+    expect(judge.hasChanged).toBe(true);
+  });
+});
+
+describe('staleness of a sensor', () => {
+  const readings = new Readings(['temp']);
+
+  it('begins when the age is above the limit, not at it', () => {
+    const judge = new StalenessJudge([{ channel: 'temp', afterS: 0.5 }], readings);
+    readings.set(0, 50, Quality.good);
+    judge.judge(readings, 10);
+    readings.set(0, 50, Quality.stale);
+    judge.judge(readings, 10.5);
+    expect(judge.isStale('temp')).toBe(false);
+    judge.judge(readings, 10.6);
+    expect(judge.isStale('temp')).toBe(true);
+    readings.set(0, 51, Quality.good);
+    judge.judge(readings, 10.7);
+    expect(judge.isStale('temp')).toBe(false);
+  });
+
+  it('holds for a sensor that was never read, and for one that gives no number', () => {
+    const judge = new StalenessJudge([{ channel: 'temp', afterS: 0.5 }], readings);
+    expect(judge.isStale('temp')).toBe(true);
+    readings.set(0, NaN, Quality.good);
+    judge.judge(readings, 0);
+    expect(judge.isStale('temp')).toBe(true);
+  });
+});
