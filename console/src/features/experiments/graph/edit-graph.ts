@@ -37,7 +37,8 @@ export function connect(graph: ExperimentGraph, from: string, port: string, to: 
   if (!step || !target || from === to || target.kind === 'start') return graph;
   if (!stepKinds[step.kind].ports.includes(port)) return graph;
   const edge: Edge = { id: edgeId(from, port), from, port, to };
-  return { ...graph, edges: [...graph.edges.filter((other) => other.id !== edge.id), edge] };
+  const others = graph.edges.filter((other) => other.from !== from || other.port !== port);
+  return { ...graph, edges: [...others, edge] };
 }
 
 /** Removes steps with their edges, and edges. */
@@ -73,6 +74,16 @@ export function duplicate(
     if (from && to) next = connect(next, from, edge.port, to);
   }
   return { graph: next, copies: [...newIds.values()] };
+}
+
+/** Takes the edge of an outcome away. */
+export function disconnect(graph: ExperimentGraph, from: string, port: string): ExperimentGraph {
+  return { ...graph, edges: graph.edges.filter((edge) => edge.from !== from || edge.port !== port) };
+}
+
+/** Where an outcome leads; null where it leads nowhere. */
+export function targetOf(graph: ExperimentGraph, from: string, port: string): string | null {
+  return graph.edges.find((edge) => edge.from === from && edge.port === port)?.to ?? null;
 }
 
 export function edgeId(from: string, port: string): string {

@@ -1,0 +1,2 @@
+export { useExperimentVersion } from './api/experiment-queries.js';
+export { GraphDrawing } from './drawing/graph-drawing.js';

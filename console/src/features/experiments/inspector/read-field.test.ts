@@ -1,0 +1,49 @@
+import { describe, expect, it } from 'vitest';
+import type { Step } from '@cresthold/shared';
+import { fieldName, valueAt } from '../graph/parameter-path.js';
+import { changeParameter, fieldText, readField } from './read-field.js';
+
+const move: Step = {
+  kind: 'move',
+  id: 'move',
+  title: '',
+  position: { x: 0, y: 0 },
+  parameters: { targets: [{ channel: 'airTrim', value: 40 }], rampS: 5, timeoutS: 60 },
+};
+
+describe('what is typed into a field', () => {
+  it('is a number, with a comma or a true minus as well', () => {
+    expect(readField('number', ' 2,5 ')).toEqual({ isOk: true, value: 2.5 });
+    expect(readField('number', '−3')).toEqual({ isOk: true, value: -3 });
+    expect(readField('number', 'ten').isOk).toBe(false);
+    expect(readField('number', '').isOk).toBe(false);
+  });
+
+  it('is an expression where a number may be one', () => {
+    expect(readField('numeric', 'survey.best.airTrim')).toEqual({
+      isOk: true,
+      value: { expression: 'survey.best.airTrim' },
+    });
+    expect(fieldText({ expression: 'survey.best.airTrim' })).toBe('survey.best.airTrim');
+  });
+
+  it('is nothing where it may be left empty', () => {
+    expect(readField('optional-number', ' ')).toEqual({ isOk: true, value: null });
+    expect(fieldText(null)).toBe('');
+  });
+});
+
+describe('a change of one parameter', () => {
+  it('reaches into lists and leaves the old step as it was', () => {
+    const outcome = changeParameter(move, ['targets', 0, 'value'], 41);
+    expect(outcome.isOk && valueAt(outcome.step.parameters, ['targets', 0, 'value'])).toBe(41);
+    expect(valueAt(move.parameters, ['targets', 0, 'value'])).toBe(40);
+    expect(fieldName(['targets', 0, 'value'])).toBe('parameters.targets[0].value');
+  });
+
+  it('is refused with the schema’s words', () => {
+    const outcome = changeParameter(move, ['timeoutS'], -1);
+    expect(outcome.isOk).toBe(false);
+    expect(outcome.isOk ? '' : outcome.message).toMatch(/0/);
+  });
+});

@@ -1,0 +1,101 @@
+import type { Step } from '@cresthold/shared';
+import type { ParameterPath } from '../graph/parameter-path.js';
+
+/** One field of a step's form. */
+export interface StepField {
+  /** `numeric` takes a number or an expression over earlier results. */
+  kind:
+    | 'number'
+    | 'numeric'
+    | 'optional-number'
+    | 'actuator'
+    | 'channel'
+    | 'switch'
+    | 'expression'
+    | 'optional-expression';
+  path: ParameterPath;
+  label: string;
+  /** `@actuator` stands for the unit of the step's actuator, `@channel` for that of its channel. */
+  unit?: string;
+  help?: string;
+}
+
+const of = (
+  kind: StepField['kind'],
+  path: ParameterPath,
+  label: string,
+  more: Pick<StepField, 'unit' | 'help'> = {},
+): StepField => ({ kind, path, label, ...more });
+
+/** The form of a step kind as data; targets of a Move have a form of their own. */
+export function stepFields(step: Step): StepField[] {
+  switch (step.kind) {
+    case 'start':
+    case 'finish':
+      return [];
+    case 'move':
+      return [
+        of('number', ['rampS'], 'Time of the ramp', {
+          unit: 's',
+          help: 'Longer where the slew limit asks for it.',
+        }),
+        of('number', ['timeoutS'], 'Give up after', { unit: 's' }),
+      ];
+    case 'settle':
+      return [
+        of('channel', ['channel'], 'Channel'),
+        of('number', ['band'], 'Band, peak to peak', { unit: '@channel' }),
+        of('number', ['forS'], 'Stays within it for', { unit: 's' }),
+        of('number', ['timeoutS'], 'Give up after', { unit: 's' }),
+      ];
+    case 'hold':
+      return [of('number', ['durationS'], 'Time', { unit: 's' })];
+    case 'survey':
+      return [
+        of('actuator', ['actuator'], 'Actuator'),
+        of('numeric', ['from'], 'From', { unit: '@actuator' }),
+        of('numeric', ['to'], 'To', { unit: '@actuator' }),
+        of('number', ['points'], 'Points'),
+        of('number', ['settleS'], 'Settle at each for', { unit: 's' }),
+        of('number', ['averageS'], 'Then average for', { unit: 's' }),
+        of('switch', ['isUpAndDown'], 'Up and down again', {
+          help: 'The way back shows hysteresis and drift.',
+        }),
+      ];
+    case 'seek':
+      return seekFields;
+    case 'check':
+      return [
+        of('expression', ['criterion'], 'Criterion', {
+          help: 'True is met, e.g. seek.objective - seek.objectiveAtStart > 2',
+        }),
+      ];
+  }
+}
+
+const seekFields: StepField[] = [
+  of('actuator', ['actuator'], 'Actuator'),
+  of('numeric', ['ditherAmplitude'], 'Dither amplitude', {
+    unit: '@actuator',
+    help: 'Half of peak to peak.',
+  }),
+  of('numeric', ['ditherPeriodS'], 'Dither period', {
+    unit: 's',
+    help: 'Slower than the plant, faster than the drift.',
+  }),
+  of('numeric', ['gain'], 'Gain', { help: 'Actuator unit per second for each unit of slope.' }),
+  of('number', ['phaseDeg'], 'Demodulation lag', {
+    unit: '°',
+    help: 'Lag of the plant less lead of the washout.',
+  }),
+  of('number', ['washoutRatio'], 'Washout corner', { help: 'As a fraction of the dither frequency.' }),
+  of('number', ['lowPassRatio'], 'Low-pass corner', { help: 'As a fraction of the dither frequency.' }),
+  of('optional-number', ['min'], 'Not below', { unit: '@actuator', help: 'Empty: as the envelope says.' }),
+  of('optional-number', ['max'], 'Not above', { unit: '@actuator', help: 'Empty: as the envelope says.' }),
+  of('number', ['end', 'afterS'], 'Ends after', { unit: 's' }),
+  of('optional-expression', ['end', 'when'], 'Ends earlier when', { help: 'Empty: never by a condition.' }),
+  of('number', ['invalidForS'], 'Gives up when invalid for', {
+    unit: 's',
+    help: 'Until then it waits at the last good point.',
+  }),
+];
