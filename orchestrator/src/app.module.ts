@@ -1,7 +1,4 @@
-import { existsSync } from 'node:fs';
-import { join } from 'node:path';
 import { Module, type DynamicModule } from '@nestjs/common';
-import { ServeStaticModule } from '@nestjs/serve-static';
 import { AdaptersModule } from './adapters/adapters.module.js';
 import { AuthModule } from './auth/auth.module.js';
 import { ConfigModule } from './config/config.module.js';
@@ -49,7 +46,6 @@ export class AppModule {
         ProblemDetailsModule,
         ...documentModules,
         ...drivingModules,
-        ...consoleModules(config),
       ],
     };
   }
@@ -67,22 +63,4 @@ export class AppModule {
       ],
     };
   }
-}
-
-/** Serves the built console, with every path that is no file and no API answered by its page. */
-function consoleModules(config: Config): DynamicModule[] {
-  if (!existsSync(join(config.consoleFolder, 'index.html'))) return [];
-  return [
-    ServeStaticModule.forRoot({
-      rootPath: config.consoleFolder,
-      exclude: ['/api/{*rest}', '/assets/{*rest}'],
-      serveStaticOptions: { setHeaders: setCaching },
-    }),
-  ];
-}
-
-/** Built assets carry a digest in their names and never change; everything else is asked for anew. */
-function setCaching(response: { setHeader: (name: string, value: string) => void }, path: string): void {
-  const isAsset = path.includes(`${join('/', 'assets')}/`);
-  response.setHeader('Cache-Control', isAsset ? 'public, max-age=31536000, immutable' : 'no-cache');
 }

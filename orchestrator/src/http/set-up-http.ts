@@ -1,6 +1,7 @@
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import type { Config } from '../config/config.schema.js';
 import { serveOpenApi } from './open-api.js';
+import { refuseElsewhere, serveConsole } from './serve-console.js';
 import { sameOrigin } from './same-origin.js';
 import { securityHeaders } from './security-headers.js';
 
@@ -19,5 +20,7 @@ export function setUpHttp(app: NestExpressApplication, config: Config): void {
   app.use(sameOrigin);
   app.useBodyParser('json', { limit: bodyLimit });
   app.setGlobalPrefix(apiPrefix);
+  serveConsole(app, config.consoleFolder);
   serveOpenApi(app);
+  app.use(refuseElsewhere(apiPrefix));
 }

@@ -33,7 +33,7 @@ export class TestServer {
 
   /** A client that is not signed in. */
   get anyone(): TestAgent {
-    return request(this.app.getHttpServer()) as unknown as TestAgent;
+    return request(this.app.getHttpServer());
   }
 
   /** A client signed in as an account with the given roles; made where it does not exist yet. */
