@@ -35,6 +35,8 @@ export interface LineOwner {
   onBug(error: unknown): void;
 }
 
+const notYet = { code: 'adapter.disconnected', message: 'Not connected yet.' };
+
 /** One connection's share in each scan: one planned read, then the writes of its actuators. */
 export class Line {
   /** Settles when the first attempt to open has succeeded or failed. */
@@ -45,6 +47,8 @@ export class Line {
   private session: AdapterSession<unknown> | null = null;
   private settleFirst: () => void = () => undefined;
   private plan: ReadPlan | null = null;
+  /** Why it was lost since the scan before last looked; it may be open again. */
+  private lastLoss: DomainError | null = null;
   private isBusy = false;
   /** The readings are of this scan, or arrived since the scan before. */
   private isFresh = false;
@@ -69,7 +73,7 @@ export class Line {
   open(): void {
     this.kept = keepConnected(this.adapter, this.configuration, {
       onOpen: (session) => this.use(session),
-      onLost: () => this.drop(),
+      onLost: (error) => this.drop(error),
       onStatus: (status) => this.follow(status),
     });
   }
@@ -86,6 +90,13 @@ export class Line {
 
   get isConnected(): boolean {
     return this.session !== null;
+  }
+
+  /** @returns why it is down, or was since this was last asked; null where it was up throughout */
+  takeLoss(): { code: string; message: string } | null {
+    const loss = this.session === null ? (this.error ?? this.lastLoss ?? notYet) : this.lastLoss;
+    this.lastLoss = null;
+    return loss;
   }
 
   /** @realtime begins the read of this scan, unless the line is still busy with the one before */
@@ -138,8 +149,9 @@ export class Line {
     this.settleFirst();
   }
 
-  private drop(): void {
+  private drop(error: DomainError): void {
     this.session = null;
+    this.lastLoss = error;
     this.isFresh = false;
     this.writes.clear();
   }

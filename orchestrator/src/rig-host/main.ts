@@ -18,4 +18,4 @@ process.on('SIGTERM', () => void host.shutDown('The rig host was asked to end.')
 process.on('SIGINT', () => undefined);
 process.on('SIGHUP', () => undefined);
 
-host.announce();
+void host.announce();

@@ -22,6 +22,7 @@ export type ToRecorder =
 
 /** Recorder thread → host. */
 export type FromRecorder =
+  | { type: 'ready' }
   | { type: 'prepared'; error: string | null }
   | { type: 'committed'; data: Float64Array<ArrayBuffer> }
   /** Samples could not be written; they are kept and written again with the next batch. */

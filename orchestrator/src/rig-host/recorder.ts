@@ -4,11 +4,14 @@ import { rowLead, type RunEnd, type RunManifest } from '../recordings/run-file/i
 import { Bell } from './bell.js';
 import { monotonicS } from './monotonic-clock.js';
 import type { FromRecorder, ToRecorder } from './recorder-messages.js';
+import { within } from './within.js';
 
 /** Rows wait at most this long before they go to the recorder thread, ms. */
 const flushAfterMs = 40;
 /** The recorder counts as failed when it has not written a batch for this long, s. */
 const behindMaxS = 5;
+/** Longest wait for a new file, ms. */
+const prepareBoundMs = 4000;
 const rowsPerBatchMax = 256;
 
 /**
@@ -17,6 +20,8 @@ const rowsPerBatchMax = 256;
  * disk cannot follow, `onFailure` is told and the rows wait in memory.
  */
 export class Recorder {
+  /** Resolves when the thread has loaded what it needs; rejects where it ended before. */
+  readonly ready: Promise<void>;
   private readonly worker: Worker;
   private readonly free: Float64Array<ArrayBuffer>[] = [];
   private readonly prepared = new Bell<FromRecorder & { type: 'prepared' }>();
@@ -44,6 +49,11 @@ export class Recorder {
     workerFile: URL = new URL('./recorder-worker.js', import.meta.url),
   ) {
     this.worker = new Worker(workerFile);
+    this.ready = new Promise((resolve, reject) => {
+      this.worker.once('message', resolve);
+      this.worker.once('error', reject);
+    });
+    this.ready.catch(() => undefined);
     this.worker.on('message', (message: FromRecorder) => this.take(message));
     this.worker.on('error', (error) => this.onThreadEnd(error.message));
     this.worker.on('exit', () => this.isClosed || this.onThreadEnd('it exited'));
@@ -57,7 +67,8 @@ export class Recorder {
   async prepare(file: string): Promise<void> {
     if (this.threadEnd !== null) throw new DomainError('recorder.failed', this.threadEnd);
     this.post({ type: 'prepare', file });
-    const { error } = await this.prepared.next();
+    const late = { error: `nothing was heard of it for ${prepareBoundMs} ms` };
+    const { error } = await within(this.prepared.next(), prepareBoundMs, late);
     if (error !== null) {
       throw new DomainError('recorder.failed', `The run file cannot be created: ${error}`);
     }
@@ -174,6 +185,7 @@ export class Recorder {
         return;
       case 'failed':
         return this.fail(message.message);
+      case 'ready':
       case 'closed':
         return;
     }

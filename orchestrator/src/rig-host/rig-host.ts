@@ -35,7 +35,9 @@ export class RigHost {
     });
   }
 
-  announce(): void {
+  /** Says READY once the recorder can take a run. */
+  async announce(): Promise<void> {
+    await this.recorder.ready;
     this.link.send({ type: 'ready', pid: process.pid });
   }
 

@@ -1,6 +1,8 @@
 import type { Adapter } from '@cresthold/adapters';
 import {
   createScanEngine,
+  createSequencer,
+  preflight,
   type EnvelopeInForce,
   type HostCommand,
   type Rig,
@@ -48,7 +50,8 @@ export class RigSession {
   ) {
     const { envelope, trip, isLockedOut } = configuration;
     this.envelope = envelope;
-    this.engine = createScanEngine({ rig, envelope, trip, isLockedOut, grids: this.grids });
+    const setting = { rig, envelope, trip, isLockedOut, grids: this.grids };
+    this.engine = createScanEngine(setting, { createSequencer, preflight });
     const { readings } = this.engine;
     const onOpened = () => this.learnGrids();
     this.wire = new Wire(rig, adapters, readings, onOpened, () => this.publisher.requestStatus(), onBug);
@@ -91,7 +94,7 @@ export class RigSession {
   }
 
   get areAllConnectionsLost(): boolean {
-    return this.wire.lostConnections.length === this.rig.connections.length;
+    return this.wire.areAllDown;
   }
 
   /** No run is open, its file is closed as well, and every actuator is at rest. */

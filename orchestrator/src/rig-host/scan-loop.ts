@@ -71,7 +71,7 @@ export class ScanLoop {
     input.dtS = Math.max(nowS - this.lastS, 1e-6);
     input.atMs = Date.now();
     input.latenessS = latenessS;
-    input.lostConnections = parts.wire.lostConnections;
+    input.lostConnections = parts.wire.takeLost();
     input.serverSilentS = parts.serverSilentS(nowS);
     this.lastS = nowS;
     return input;

@@ -6,8 +6,11 @@ import { within } from './within.js';
 
 export type LostConnection = { connection: string; code: string; message: string };
 
-/** A scan waits for its requests for one period, and at least this long, ms. */
-const waitMinMs = 20;
+/**
+ * A scan waits for its requests for one period, and at least this long, ms. A late scan is only counted,
+ * a stale reading may trip: so hiccups of device and computer are waited for, and a dead device is not.
+ */
+const waitMinMs = 250;
 const notYet = 'Not connected yet.';
 
 /**
@@ -33,12 +36,12 @@ export class Wire {
     adapters: ReadonlyMap<string, Adapter>,
     private readonly readings: Readings,
     onOpened: () => void,
-    private readonly onChanged: () => void,
+    onChanged: () => void,
     onBug: (error: unknown) => void,
   ) {
     this.waitMs = Math.max(waitMinMs, rig.periodMs);
     rig.channels.forEach((channel, index) => this.indexByChannel.set(channel.id, index));
-    const owner = { onLineOpened: onOpened, onLineChanged: () => this.changed(), onBug };
+    const owner = { onLineOpened: onOpened, onLineChanged: onChanged, onBug };
     this.lines = rig.connections.map((definition, at) => {
       const adapter = adapters.get(definition.adapter);
       if (adapter === undefined) throw unknownAdapter(definition.adapter, at);
@@ -55,7 +58,6 @@ export class Wire {
 
   /** Begins to open every connection; resolves when each was tried once, or after `boundMs`. */
   async open(boundMs: number): Promise<void> {
-    this.changed();
     for (const line of this.lines) line.open();
     await within(Promise.all(this.lines.map((line) => line.firstAttempt)), boundMs, undefined);
   }
@@ -64,8 +66,23 @@ export class Wire {
     await Promise.all(this.lines.map((line) => line.close()));
   }
 
-  get lostConnections(): readonly LostConnection[] {
+  /**
+   * Connections that are down, or were since the scan before: a loss shorter than a period is not hidden.
+   *
+   * @realtime allocates only while something is lost
+   */
+  takeLost(): readonly LostConnection[] {
+    if (this.lost.length > 0) this.lost = [];
+    for (const line of this.lines) {
+      const loss = line.takeLoss();
+      if (loss === null) continue;
+      this.lost.push({ connection: line.definition.id, code: loss.code, message: loss.message });
+    }
     return this.lost;
+  }
+
+  get areAllDown(): boolean {
+    return this.lines.every((line) => !line.isConnected);
   }
 
   /** Grids of the actuators whose connection has been open. */
@@ -99,17 +116,6 @@ export class Wire {
     }
     for (const line of this.lines) line.startWrite();
     return this.gathering.all(this.waitMs);
-  }
-
-  private changed(): void {
-    this.lost = this.lines
-      .filter((line) => !line.isConnected)
-      .map((line) => ({
-        connection: line.definition.id,
-        code: line.error?.code ?? 'adapter.disconnected',
-        message: line.error?.message ?? notYet,
-      }));
-    this.onChanged();
   }
 }
 

@@ -1,3 +1,4 @@
+import { writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { setTimeout as delay } from 'node:timers/promises';
 import { pathToFileURL } from 'node:url';
@@ -63,7 +64,9 @@ describe('recorder', () => {
   });
 
   it('tells of a file that cannot be made, in words, before anything has begun', async () => {
-    await expect(recorder.prepare('/proc/none/run.sqlite')).rejects.toMatchObject({
+    const noFolder = join(folder.path, 'no-folder');
+    writeFileSync(noFolder, '');
+    await expect(recorder.prepare(join(noFolder, 'run.sqlite'))).rejects.toMatchObject({
       code: 'recorder.failed',
       message: expect.stringContaining('cannot be created'),
     });

@@ -27,7 +27,7 @@ export function testRig(port: number, periodMs = 20): Rig {
         id: 'main',
         title: 'Main',
         adapter: 'modbus-tcp',
-        configuration: { host: '127.0.0.1', port, timeoutMs: 300 },
+        configuration: { host: '127.0.0.1', port, timeoutMs: 1000 },
       },
     ],
     channels: [
@@ -50,6 +50,7 @@ export function testEnvelope(): EnvelopeInForce {
     rest: 0,
     stopCategory: 1,
     readBackTolerance: 0.5,
+    readBackWithinS: 5,
   };
   return envelopeInForceSchema.parse({
     id: 'envelope-1',
@@ -64,15 +65,15 @@ export function testEnvelope(): EnvelopeInForce {
           id: 'hot-stack',
           title: 'Hot stack',
           condition: 'stackTemperature > 300',
-          delayS: 0,
+          delayS: 0.5,
           action: 'trip',
           message: 'The stack is too hot.',
         },
       ],
-      staleness: [{ channel: 'oxygen', afterS: 0.5 }],
+      staleness: [{ channel: 'oxygen', afterS: 2 }],
       heartbeat: { channel: 'heartbeat', periodS: 0.1 },
-      overrunLimit: 50,
-      serverSilenceS: 5,
+      overrunLimit: 1000,
+      serverSilenceS: 20,
     },
   });
 }
