@@ -47,8 +47,23 @@ describe('seek', () => {
     const run = runScript({ graph: seek({ gain: 2, end: end(60) }), plant });
     expect(Math.max(...trims(run).map(({ base, dither }) => base + dither))).toBeLessThanOrEqual(10);
     expect(run.results['seek.best.trim']).toBe(9.5);
+    expect(run.results['seek.isAtEdge']).toBe(1);
     const boxed = runScript({ graph: seek({ gain: 2, max: 3, end: end(60) }), plant });
     expect(boxed.results['seek.best.trim']).toBe(3);
+  });
+
+  it('takes the dither out at the slew limit', () => {
+    const slewPerS = 3.2;
+    const envelope = testEnvelope({ limits: testEnvelope().limits.map((l) => ({ ...l, slewPerS })) });
+    const run = runScript({ graph: seek({ end: end(60.25) }), plant: hill, envelope });
+    const asked = trims(run).map(({ base, dither }) => base + dither);
+    const last = asked.slice(-20);
+    last.slice(1).forEach((value, i) => {
+      expect(Math.abs(value - (last[i] ?? NaN))).toBeLessThanOrEqual(slewPerS * 0.05);
+    });
+    // It ended at the crest of the dither.
+    expect(Math.max(...last) - (last.at(-1) ?? NaN)).toBeGreaterThan(0.4);
+    expect(run.results['seek.isAtEdge']).toBe(0);
   });
 
   it('ramps into its box before it seeks', () => {

@@ -89,6 +89,8 @@ export function resultNames(step: Step): string[] {
         name('durationS'),
         /** 1 where convergence ended it, else 0. */
         name('isConverged'),
+        /** 1 where it ended at an edge of its box, so that the best may lie beyond, else 0. */
+        name('isAtEdge'),
       ];
   }
 }

@@ -21,16 +21,18 @@ export class ActuatorRamp {
 
   /**
    * @param rampS wanted time, s; longer where a slew limit asks for it
+   * @param from where the lines begin: at the held base, or at the applied value where a dither is to fade
    * @returns why it cannot be done; null where it can
    */
   begin(
     input: SequencerInput,
     targets: readonly { channel: string; value: number }[],
     rampS: number,
+    from: 'held' | 'applied' = 'held',
   ): string | null {
     this.legs = targets.map(({ channel, value }) => ({
       channel,
-      from: this.startOf(input, channel),
+      from: this.startOf(channel, from === 'held' ? whereHeld(input, channel) : input.applied(channel)),
       to: value,
     }));
     this.rampedS = 0;
@@ -69,10 +71,9 @@ export class ActuatorRamp {
   }
 
   /** An actuator found outside its envelope begins at the edge: nothing outside is asked for. */
-  private startOf(input: SequencerInput, channel: string): number {
+  private startOf(channel: string, value: number): number {
     const limit = this.services.limitOf(channel);
-    const held = whereHeld(input, channel);
-    return limit ? Math.min(Math.max(held, limit.min), limit.max) : held;
+    return limit ? Math.min(Math.max(value, limit.min), limit.max) : value;
   }
 }
 

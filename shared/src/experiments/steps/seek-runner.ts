@@ -11,8 +11,8 @@ import { setUpSeek } from './seek-setup.js';
 import { StayWithin } from './stay-within.js';
 import { isOver, type StepExit, type StepRunner, type StepServices } from './step-runner.js';
 
-/** The base has this long to come to the averaged estimate before the step leaves, s. */
-const partingS = 5;
+/** An actuator that has not arrived this long after its line is over will not arrive, s. */
+const arrivalGraceS = 5;
 
 const converged: StepExit = { port: 'done', reason: 'The estimate has converged.' };
 const conditionMet: StepExit = { port: 'done', reason: 'The end condition is met.' };
@@ -100,13 +100,15 @@ export class SeekRunner implements StepRunner {
     if (this.exit) return this.part(input, this.exit);
     if (this.isApproaching) {
       this.isApproaching = !this.ramp.step(input);
-      if (this.isApproaching) return this.goOn(input, this.elapsedS > this.ramp.plannedS + partingS);
+      if (this.isApproaching) return this.goOn(input, this.elapsedS > this.ramp.plannedS + arrivalGraceS);
     }
     this.seek(input, pursuit);
     this.exit = this.judgeEnd(pursuit);
     if (!this.exit) return this.goOn(input, false);
     this.leaveResults(pursuit, this.exit);
-    return this.part(input, this.exit);
+    const goal = [{ channel: this.settings.parameters.actuator, value: this.best }];
+    const reason = this.ramp.begin(input, goal, 0, 'applied');
+    return reason === null ? this.part(input, this.exit) : this.exit;
   }
 
   private goOn(input: SequencerInput, isLost: boolean): StepExit | null {
@@ -162,14 +164,15 @@ export class SeekRunner implements StepRunner {
     leave('objectiveAtStart', periods.objectiveAtStart);
     leave('durationS', this.elapsedS);
     leave('isConverged', exit === converged ? 1 : 0);
+    leave('isAtEdge', this.best <= min || this.best >= max ? 1 : 0);
   }
 
-  /** Without dither to the averaged estimate, which the held base may need some scans to reach. */
+  /** At the slew limit to the averaged estimate, which takes the dither out without a jump. */
   private part(input: SequencerInput, exit: StepExit): StepExit | null {
     const { actuator } = this.settings.parameters;
-    this.services.request(actuator, this.best, 0);
-    const isThere = Math.abs(input.held(actuator) - this.best) <= Math.abs(this.best) * 1e-9;
-    if (isThere || this.partedS > partingS) return exit;
+    const hasArrived = this.ramp.step(input);
+    const isHeld = Math.abs(input.held(actuator) - this.best) <= Math.abs(this.best) * 1e-9;
+    if ((hasArrived && isHeld) || this.partedS > this.ramp.plannedS + arrivalGraceS) return exit;
     this.partedS += input.dtS;
     return null;
   }
