@@ -5,6 +5,9 @@ import type { InMemoryAddress, InMemoryConfiguration } from './in-memory/in-memo
 import { type MemoryStore, memoryStore } from './in-memory/memory-store.js';
 import { keepConnected, type KeptConnection, type TimerPort } from './keep-connected.js';
 
+/** Waits end as soon as they can; a busy machine gets time. */
+const patient = { timeout: 4000, interval: 1 };
+
 class FakeTimers implements TimerPort {
   readonly delaysMs: number[] = [];
   private task: (() => void) | null = null;
@@ -68,7 +71,7 @@ function startBench(mood: MemoryStore['mood'] = 'answering', adapter = inMemoryA
 }
 
 async function nextWait({ timers }: Bench): Promise<void> {
-  await expect.poll(() => timers.isWaiting, { interval: 1 }).toBe(true);
+  await expect.poll(() => timers.isWaiting, patient).toBe(true);
 }
 
 const newest = ({ sessions }: Bench): AdapterSession<InMemoryAddress> => {
@@ -83,7 +86,7 @@ const readOnce = async (session: AdapterSession<InMemoryAddress>) =>
 describe('keepConnected', () => {
   it('hands out a session and closes it', async () => {
     const bench = startBench();
-    await expect.poll(() => bench.sessions.length).toBe(1);
+    await expect.poll(() => bench.sessions.length, patient).toBe(1);
     expect((await readOnce(newest(bench))).values[0]).toBe(1);
     await bench.link.close();
     expect((await readOnce(newest(bench))).lost?.code).toBe('adapter.cancelled');
@@ -106,7 +109,7 @@ describe('keepConnected', () => {
 
   it('tells once of a loss that a read reports, and opens again', async () => {
     const bench = startBench();
-    await expect.poll(() => bench.sessions.length).toBe(1);
+    await expect.poll(() => bench.sessions.length, patient).toBe(1);
     const first = newest(bench);
     await readOnce(first);
     bench.store.endSessions();
@@ -114,7 +117,7 @@ describe('keepConnected', () => {
     await readOnce(first);
     expect(bench.losses).toEqual(['adapter.disconnected']);
     bench.timers.fire();
-    await expect.poll(() => bench.sessions.length).toBe(2);
+    await expect.poll(() => bench.sessions.length, patient).toBe(2);
     expect((await readOnce(newest(bench))).values[0]).toBe(1);
     expect(bench.states).toEqual(['opening', 'open', 'waiting', 'opening', 'open']);
     await bench.link.close();
@@ -122,7 +125,7 @@ describe('keepConnected', () => {
 
   it('tells of a loss that a write reports', async () => {
     const bench = startBench();
-    await expect.poll(() => bench.sessions.length).toBe(1);
+    await expect.poll(() => bench.sessions.length, patient).toBe(1);
     bench.store.endSessions();
     await newest(bench).write([address], [3]);
     expect(bench.losses).toEqual(['adapter.disconnected']);
@@ -134,7 +137,7 @@ describe('keepConnected', () => {
     const loseAfter = async (hasAnswered: boolean): Promise<void> => {
       const count = bench.sessions.length;
       if (bench.timers.isWaiting) bench.timers.fire();
-      await expect.poll(() => bench.sessions.length).toBe(count === 0 ? 1 : count + 1);
+      await expect.poll(() => bench.sessions.length, patient).toBe(count === 0 ? 1 : count + 1);
       if (hasAnswered) await readOnce(newest(bench));
       bench.store.endSessions();
       await readOnce(newest(bench));
@@ -156,7 +159,7 @@ describe('keepConnected', () => {
       { onOpen: () => undefined, onLost: () => undefined, onStatus: ({ state }) => states.push(state) },
       { timers },
     );
-    await expect.poll(() => link.status.state).toBe('failed');
+    await expect.poll(() => link.status.state, patient).toBe('failed');
     expect([link.status.error?.code, timers.delaysMs]).toEqual(['adapter.misconfigured', []]);
     await link.close();
     expect(states).toEqual(['opening', 'failed', 'closed']);
@@ -175,7 +178,7 @@ describe('keepConnected', () => {
         onLost: () => undefined,
       },
     );
-    await expect.poll(() => link.status.state).toBe('failed');
+    await expect.poll(() => link.status.state, patient).toBe('failed');
     expect(link.status.error?.details[0]?.field).toBe('addresses[0].name');
     expect((await readOnce(session!)).lost?.code).toBe('adapter.cancelled');
     await link.close();
@@ -214,14 +217,14 @@ describe('keepConnected', () => {
       },
     };
     const bench = startBench('answering', sticky);
-    await expect.poll(() => bench.sessions.length).toBe(1);
+    await expect.poll(() => bench.sessions.length, patient).toBe(1);
     bench.store.endSessions();
     await readOnce(newest(bench));
     bench.timers.fire();
     await new Promise((resolve) => setImmediate(resolve));
     expect(openings).toBe(1);
     release();
-    await expect.poll(() => openings).toBe(2);
+    await expect.poll(() => openings, patient).toBe(2);
     const closing = bench.link.close();
     await new Promise((resolve) => setTimeout(resolve, 5));
     release();

@@ -24,7 +24,7 @@ export type Provocation =
 
 /** The device end of one test, started afresh for each. */
 export interface ConformancePeer<Configuration, Address> {
-  /** With a timeout of at most 300 ms. */
+  /** With a short timeout, yet long enough for a busy machine: each check of silence waits for it twice. */
   readonly configuration: Configuration;
   /** At least three. */
   readonly cells: readonly ConformanceCell<Address>[];

@@ -46,13 +46,13 @@ export function codesOf(faults: readonly (DomainError | null)[]): (ErrorCode | n
   return faults.map((fault) => fault?.code ?? null);
 }
 
-/** Fails where a promise takes longer than the adapter may; half a second is granted to a busy machine. */
+/** Fails where a promise takes longer than the adapter may; two seconds are granted to a busy machine. */
 export async function within<T>(timeoutMs: number, what: string, promise: Promise<T>): Promise<T> {
   let timer: NodeJS.Timeout | undefined;
   const tooLate = new Promise<never>((_, reject) => {
     timer = setTimeout(() => {
-      reject(new Error(`${what} did not settle within ${timeoutMs} ms and 500 ms grace`));
-    }, timeoutMs + 500);
+      reject(new Error(`${what} did not settle within ${timeoutMs} ms and 2 s of grace`));
+    }, timeoutMs + 2000);
   });
   try {
     return await Promise.race([promise, tooLate]);

@@ -12,7 +12,7 @@ import {
   modbusTcpConfigurationSchema,
 } from './modbus-tcp-configuration.schema.js';
 
-const timeoutMs = 150;
+const timeoutMs = 1000;
 
 const holding = (address: number, type = 'u16', more: object = {}): ModbusAddress =>
   modbusAddressSchema.parse({ table: 'holding-register', address, type, ...more });

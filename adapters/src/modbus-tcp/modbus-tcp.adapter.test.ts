@@ -8,6 +8,9 @@ import { startRelay } from '../modbus/testing/relay.js';
 import { modbusTcpAdapter } from './modbus-tcp.adapter.js';
 import { modbusTcpConfigurationSchema } from './modbus-tcp-configuration.schema.js';
 
+/** Waits end as soon as they can; a busy machine gets time. */
+const patient = { timeout: 4000, interval: 1 };
+
 const holding = (address: number, unit = 1): ModbusAddress =>
   modbusAddressSchema.parse({ unit, table: 'holding-register', address, type: 'u16' });
 
@@ -21,7 +24,7 @@ async function openAt(port: number, more: object = {}): Promise<AdapterSession<M
   const configuration = modbusTcpConfigurationSchema.parse({
     host: '127.0.0.1',
     port,
-    timeoutMs: 100,
+    timeoutMs: 3000,
     ...more,
   });
   const session = await modbusTcpAdapter.open(configuration, new AbortController().signal);
@@ -46,7 +49,7 @@ const codesOf = ({ faults }: ReadOutcome): (string | undefined)[] => faults.map(
 describe('a device that misbehaves', () => {
   it('never answers: timeouts first, then the connection counts as lost', async () => {
     const device = await startDevice(() => undefined);
-    const session = await openAt(device.port, { silencesUntilLost: 3 });
+    const session = await openAt(device.port, { silencesUntilLost: 3, timeoutMs: 50 });
     const plan = session.planRead([holding(0)]);
     const outcomes: (string | undefined)[] = [];
     for (let scan = 0; scan < 4; scan += 1) {
@@ -60,7 +63,7 @@ describe('a device that misbehaves', () => {
       'lost: adapter.disconnected',
     ]);
     expect(device.requests).toHaveLength(3);
-    await expect.poll(() => device.connections).toBe(0);
+    await expect.poll(() => device.connections, patient).toBe(0);
   });
 
   it('an answer in between starts the count of silences anew', async () => {
@@ -69,7 +72,7 @@ describe('a device that misbehaves', () => {
       requests += 1;
       if (requests === 2) socket.write(word(transaction, 7));
     });
-    const session = await openAt(device.port, { silencesUntilLost: 2, timeoutMs: 50 });
+    const session = await openAt(device.port, { silencesUntilLost: 2, timeoutMs: 400 });
     const plan = session.planRead([holding(0)]);
     const lost: boolean[] = [];
     for (let scan = 0; scan < 4; scan += 1) lost.push((await session.read(plan)).lost !== null);
@@ -88,7 +91,7 @@ describe('a device that misbehaves', () => {
         socket.write(word(transaction, value));
       }
     });
-    const session = await openAt(device.port, { timeoutMs: 50 });
+    const session = await openAt(device.port, { timeoutMs: 400 });
     const plan = session.planRead([holding(0)]);
     expect(codesOf(await session.read(plan))).toEqual(['adapter.timeout']);
     expect((await session.read(plan)).values[0]).toBe(2);
@@ -146,7 +149,7 @@ describe('a device that misbehaves', () => {
     const device = await startDevice((request, socket, transaction) => {
       if (request[0] === 2) socket.write(word(transaction, 42, 2));
     });
-    const session = await openAt(device.port, { silencesUntilLost: 5 });
+    const session = await openAt(device.port, { silencesUntilLost: 5, timeoutMs: 400 });
     const plan = session.planRead([holding(0, 1), holding(0, 2)]);
     await session.read(plan);
     for (let scan = 0; scan < 3; scan += 1) {
@@ -160,7 +163,7 @@ describe('a device that misbehaves', () => {
     const device = await startDevice((request, socket, transaction) => {
       if (request[0] === 2) socket.write(framed(transaction, request));
     });
-    const session = await openAt(device.port);
+    const session = await openAt(device.port, { timeoutMs: 1000 });
     const outcome = await session.write([holding(0, 1), holding(0, 2)], [1, 2]);
     expect(outcome.faults.map((fault) => fault?.code)).toEqual(['adapter.timeout', undefined]);
   });
@@ -214,7 +217,7 @@ it('opens and closes a hundred times without leaking a socket', async () => {
     expect((await session.read(session.planRead([holding(0)]))).values[0]).toBe(5);
     await session.close();
   }
-  await expect.poll(() => device.connections).toBe(0);
+  await expect.poll(() => device.connections, patient).toBe(0);
   const sockets = process.getActiveResourcesInfo().filter((name) => name === 'TCPSocketWrap').length;
   expect(sockets).toBeLessThanOrEqual(socketsBefore);
 });

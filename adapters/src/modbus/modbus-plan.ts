@@ -55,6 +55,11 @@ export class ModbusReadPlan implements ReadPlan {
     }
   }
 
+  /** Marks `count` blocks from a position on as not read. */
+  rejectRest(position: number, count: number, fault: DomainError): void {
+    for (const block of this.blocks.slice(position, position + count)) this.reject(block, fault);
+  }
+
   /** Marks everything as not read. */
   lose(error: DomainError): void {
     this.outcome.values.fill(NaN);

@@ -23,6 +23,8 @@ interface WritePlan {
   readonly source: readonly ModbusAddress[];
   readonly addresses: readonly ModbusAddress[];
   readonly runs: readonly WriteRun[];
+  /** Number of different units in this run and those after it. */
+  readonly unitsFrom: readonly number[];
 }
 
 const ignore = (): void => undefined;
@@ -78,10 +80,13 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
     while (left > 0) {
       const block = plan.blocks[position];
       if (!block) break;
-      const { unit, table, address, count } = block;
-      const answer = await this.exchange({ kind: 'read', unit, table, address, count }, deadlineMs);
+      const answer = await this.exchange({ kind: 'read', ...block }, deadlineMs);
       if (this.link.lost) {
         plan.lose(this.link.lost);
+        break;
+      }
+      if (answer === null) {
+        plan.rejectRest(position, left, this.notAsked());
         break;
       }
       if (!Buffer.isBuffer(answer) && isSplittable(answer)) {
@@ -99,13 +104,11 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
   private async writeNow(plan: WritePlan, values: ArrayLike<number>): Promise<WriteOutcome> {
     const deadlineMs = this.options.nowMs() + this.options.timeoutMs;
     const outcome: WriteOutcome = { faults: new Array<null>(plan.addresses.length).fill(null), lost: null };
-    let left = plan.runs.length;
-    for (const run of plan.runs) {
-      // Each gets its share of the time left, so that a silent unit cannot keep a write from the others.
+    for (const [index, run] of plan.runs.entries()) {
+      // Each unit gets its share of the time left, so that a silent one cannot keep the others from theirs.
       const nowMs = this.options.nowMs();
-      const runDeadlineMs = nowMs + (deadlineMs - nowMs) / left;
+      const runDeadlineMs = nowMs + (deadlineMs - nowMs) / (plan.unitsFrom[index] ?? 1);
       await this.writeRun(plan.addresses, values, run, runDeadlineMs, outcome);
-      left -= 1;
     }
     return outcome;
   }
@@ -118,7 +121,10 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
     outcome: WriteOutcome,
   ): Promise<void> {
     const request = requestOf(addresses, values, run);
-    const answer = request instanceof DomainError ? request : await this.exchange(request, deadlineMs);
+    const answer =
+      request instanceof DomainError
+        ? request
+        : ((await this.exchange(request, deadlineMs)) ?? this.notAsked());
     if (this.link.lost) outcome.lost = this.link.lost;
     if (Buffer.isBuffer(answer)) return;
     const isSingle = run.to - run.from === 1;
@@ -132,15 +138,17 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
     }
   }
 
-  private exchange(request: ModbusRequest, deadlineMs: number): Promise<Buffer | DomainError> {
+  /** Null where no time is left to ask. */
+  private exchange(request: ModbusRequest, deadlineMs: number): Promise<Buffer | DomainError | null> {
     const leftMs = deadlineMs - this.options.nowMs();
-    if (leftMs >= 1) return this.link.exchange(request, Math.ceil(leftMs));
-    return Promise.resolve(
-      this.link.lost ??
-        new DomainError(
-          'adapter.timeout',
-          `Not asked: earlier requests used up the ${this.options.timeoutMs} ms of this call.`,
-        ),
+    if (this.link.lost) return Promise.resolve(this.link.lost);
+    return leftMs < 1 ? Promise.resolve(null) : this.link.exchange(request, Math.ceil(leftMs));
+  }
+
+  private notAsked(): DomainError {
+    return new DomainError(
+      'adapter.timeout',
+      `Not asked: earlier requests used up the ${this.options.timeoutMs} ms of this call.`,
     );
   }
 
@@ -148,7 +156,9 @@ export class ModbusSession implements AdapterSession<ModbusAddress> {
     const known = this.writePlans.get(addresses);
     if (known && isSameList(known.source, addresses)) return known;
     const parsed = addresses.map((address, index) => this.parse(address, `addresses[${index}]`));
-    const plan = { source: [...addresses], addresses: parsed, runs: planWrites(parsed) };
+    const runs = planWrites(parsed);
+    const unitsFrom = runs.map(({ from }) => new Set(parsed.slice(from).map(({ unit }) => unit)).size);
+    const plan = { source: [...addresses], addresses: parsed, runs, unitsFrom };
     this.writePlans.set(addresses, plan);
     return plan;
   }

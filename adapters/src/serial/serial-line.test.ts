@@ -4,6 +4,9 @@ import { listSerialPorts, type SerialPortMaker } from './open-serial-port.js';
 import { openSerialLine, type SerialLine } from './serial-line.js';
 import { serialLineConfigurationSchema } from './serial-line.schema.js';
 
+/** Waits end as soon as they can; a busy machine gets time. */
+const patient = { timeout: 4000, interval: 1 };
+
 const path = '/dev/mock0';
 const configuration = serialLineConfigurationSchema.parse({ path, baudRate: 19_200, parity: 'even' });
 const never = new AbortController().signal;
@@ -39,7 +42,7 @@ describe('a serial line', () => {
     expect(made[0]?.port?.recording.toString()).toBe('*IDN?\n');
     sendFromDevice('first\nsec');
     sendFromDevice('ond\n');
-    expect([await line.nextLine(500), await line.nextLine(500)]).toEqual(['first', 'second']);
+    expect([await line.nextLine(4000), await line.nextLine(4000)]).toEqual(['first', 'second']);
     await line.close();
     await line.close();
     expect(made[0]?.isOpen).toBe(false);
@@ -50,10 +53,10 @@ describe('a serial line', () => {
     const line = await open();
     expect(await line.nextLine(10)).toMatchObject({ code: 'adapter.timeout' });
     sendFromDevice('late\nhalf of a');
-    await expect.poll(() => line.nextLine(5)).toBe('late');
+    await expect.poll(() => line.nextLine(5), patient).toBe('late');
     line.discard();
     sendFromDevice('fresh\n');
-    expect(await line.nextLine(500)).toBe('fresh');
+    expect(await line.nextLine(4000)).toBe('fresh');
     await line.close();
   });
 
