@@ -17,7 +17,7 @@ export async function until(timeoutMs, what, isDone) {
     const outcome = await isDone();
     if (outcome) return outcome;
     if (Date.now() > endMs) throw new Error(`${what} within ${timeoutMs / 1000} s.`);
-    await wait(200);
+    await wait(300);
   }
 }
 

@@ -64,7 +64,7 @@ export const burnerExperiment: ExperimentInput = {
           to: 62,
           points: 13,
           settleS: 0.8,
-          averageS: 0.4,
+          averageS: 0.6,
           isUpAndDown: true,
         },
       },
