@@ -13,6 +13,8 @@ const ruleBit: Record<GuardRule, number> = { 'non-finite': 1, range: 2, dither: 
  */
 export const slewPeriodsAtMost = 2;
 
+const continuous: Readonly<ValueGrid> = { step: 0, origin: 0 };
+
 /** Share of a grid step within which two values are the same grid point. */
 const gridSlack = 1e-6;
 
@@ -22,9 +24,10 @@ const gridSlack = 1e-6;
  */
 export interface GuardedActuator {
   readonly limit: ActuatorLimit;
-  readonly grid: ValueGrid;
+  /** Values that the wire can carry; step 0 where it is continuous. */
+  grid: Readonly<ValueGrid>;
   /** The limit's rest value on the wire's grid. */
-  readonly rest: number;
+  rest: number;
   /** Longest time that the slew limit counts, s. */
   readonly slewDtMaxS: number;
   /** Value last let through or taken over, channel unit; NaN before. */
@@ -46,18 +49,27 @@ export function createGuardedActuator(
   grid: ValueGrid | undefined,
   periodS: number,
 ): GuardedActuator {
-  const wire = grid && grid.step > 0 ? grid : { step: 0, origin: 0 };
-  const rest = nearestOnGrid(wire, limit.rest, limit.min, limit.max);
-  return {
+  const actuator: GuardedActuator = {
     limit,
-    grid: wire,
-    rest: Number.isNaN(rest) ? limit.rest : rest,
+    grid: continuous,
+    rest: limit.rest,
     slewDtMaxS: slewPeriodsAtMost * periodS,
     applied: NaN,
     carry: 0,
     intervened: 0,
     counts: new Uint32Array(guardRules.length),
   };
+  useGrid(actuator, grid);
+  return actuator;
+}
+
+/** Sets the grid of the wire, which is known only once the wire is open. */
+export function useGrid(actuator: GuardedActuator, grid: ValueGrid | undefined): void {
+  const { rest, min, max } = actuator.limit;
+  actuator.grid = grid && grid.step > 0 ? { ...grid } : continuous;
+  actuator.carry = 0;
+  const point = nearestOnGrid(actuator.grid, rest, min, max);
+  actuator.rest = Number.isNaN(point) ? rest : point;
 }
 
 /** Begins from the value read back, so that the first write moves nothing. False where it is no number. */

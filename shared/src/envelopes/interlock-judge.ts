@@ -1,5 +1,5 @@
 import type { CompiledExpression, Lookup } from '../expressions/expression.types.js';
-import type { Interlock } from './envelope.schema.js';
+import type { Interlock, InterlockAction } from './envelope.schema.js';
 
 export type InterlockState = 'clear' | 'pending' | 'acted';
 
@@ -58,6 +58,14 @@ export class InterlockJudge {
 
   stateOf(interlockId: string): InterlockState {
     return this.find(interlockId)?.state ?? 'clear';
+  }
+
+  /** The first interlock of an action, in the envelope's order, that has acted and is not clear yet. */
+  firstActed(action: InterlockAction): Interlock | null {
+    for (const { interlock, state } of this.judged) {
+      if (state === 'acted' && interlock.action === action) return interlock;
+    }
+    return null;
   }
 
   /** Calls back for each interlock that is not clear, in the envelope's order. */

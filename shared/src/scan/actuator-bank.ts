@@ -1,5 +1,5 @@
 import type { ActuatorLimit } from '../envelopes/envelope.schema.js';
-import { createGuardedActuator, type GuardedActuator, takeOver } from '../envelopes/guard.js';
+import { createGuardedActuator, type GuardedActuator, takeOver, useGrid } from '../envelopes/guard.js';
 import type { Rig, WiredChannel } from '../rigs/rig.schema.js';
 import type { Readings } from './readings.js';
 import type { ValueGrid } from './scan-engine.types.js';
@@ -92,15 +92,22 @@ export function releaseAll(actuators: readonly HeldActuator[]): void {
   }
 }
 
-/** Marks which actuators can be reached; one whose connection was down must be taken over again. */
+/**
+ * Marks which actuators can be reached. One whose connection was down must be taken over again, and its
+ * grid is learnt anew.
+ */
 export function noteReachability(
   actuators: readonly HeldActuator[],
   isLost: (connection: string) => boolean,
+  grids: ReadonlyMap<string, ValueGrid>,
   tS: number,
 ): void {
   for (const actuator of actuators) {
     const isReachable = !isLost(actuator.connection);
-    if (isReachable && !actuator.isReachable) actuator.reachableSinceS = tS;
+    if (isReachable && !actuator.isReachable) {
+      actuator.reachableSinceS = tS;
+      useGrid(actuator.guarded, grids.get(actuator.channel));
+    }
     if (!isReachable && actuator.isReachable) {
       actuator.isTaken = false;
       actuator.mismatchSinceS = NaN;

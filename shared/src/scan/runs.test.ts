@@ -148,6 +148,26 @@ describe('a run', () => {
     expect(plant.engine.status().isPaused).toBe(false);
   });
 
+  it('is held from its first scan by an interlock that acted before it began', () => {
+    const interlock = {
+      id: 'warm',
+      title: 'W',
+      condition: 'temp > 60',
+      delayS: 0,
+      action: 'pause',
+      message: 'Warm.',
+    };
+    const { sequencer, seen } = scriptedSequencer(() => request(30));
+    const envelope = plantEnvelope({ content: { interlocks: [interlock] } });
+    const plant = new FakePlant({ sequencer, envelope }).arm();
+    plant.at.temp = 61;
+    plant.scan();
+    plant.engine.startRun(plantOrder);
+    plant.scans(3);
+    expect(plant.engine.status()).toMatchObject({ phase: 'running', isPaused: true });
+    expect(seen).toEqual([]);
+  });
+
   it('is stopped in order by an interlock, and only warned by another', () => {
     const stop = {
       id: 'warm',

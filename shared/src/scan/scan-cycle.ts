@@ -57,7 +57,7 @@ function lookAtWires(engine: EngineState, input: ScanInput): void {
   }
   if (wires.isAllUp() && !engine.rigState.isWireUp) applyRigEvent(engine, { type: 'wire-restored' });
   if (!wires.isAllUp()) blankLostChannels(engine);
-  noteReachability(actuatorsOf(engine), engine.isConnectionLost, input.tS);
+  noteReachability(actuatorsOf(engine), engine.isConnectionLost, engine.grids, input.tS);
 }
 
 /** Whatever the caller left in the readings: nothing can be known through a connection that is down. */
@@ -84,17 +84,24 @@ function judge(engine: EngineState, input: ScanInput): void {
     log.add({ type: 'interlock.acted', interlock: id, action, message });
     actOn(engine, interlock, input.atMs);
   }
+  holdRun(engine);
   staleness.forEachStale(({ channel, afterS }) => {
     const message = `Sensor "${channel}" gave no good value for over ${afterS} s.`;
     tripIfInMotion(engine, `stale:${channel}`, message, input.atMs);
   });
 }
 
-/** Warn says so and no more; pause and stop mean something only while there is motion to hold or stop. */
+/** An interlock that pauses holds every run as long as it is not clear, also one that began meanwhile. */
+function holdRun(engine: EngineState): void {
+  if (engine.rigState.phase !== 'running' || !engine.run || engine.run.isPaused) return;
+  const interlock = engine.fitted?.interlocks.firstActed('pause');
+  if (interlock) pauseRun(engine, interlock.message);
+}
+
+/** Warn says so and no more; pausing is {@link holdRun}'s; a stop means something only where there is motion. */
 function actOn(engine: EngineState, { id, action, message }: Interlock, atMs: number): void {
   const { phase } = engine.rigState;
   if (action === 'trip') tripIfInMotion(engine, `interlock:${id}`, message, atMs);
-  if (action === 'pause' && phase === 'running') pauseRun(engine, message);
   if (action === 'stop' && (phase === 'armed' || phase === 'running')) {
     orderStop(engine, 'stop', { status: 'stopped', verdict: 'inconclusive', reason: message });
   }

@@ -158,6 +158,25 @@ describe('a scan engine that is armed', () => {
     expect(values).toEqual([20, 20, 22.5, 22.5, 25, 25, 25, 27.5, 27.5, 30, 30, 30]);
   });
 
+  it('learns the grid of its wire when the wire is opened', () => {
+    const grids = new Map<string, { step: number; origin: number }>();
+    const plant = new FakePlant({ grids });
+    plant.lost = ['main', 'aux'];
+    plant.scan();
+    grids.set('valve', { step: 0.7, origin: 0 });
+    plant.at.valve = 21;
+    plant.lost = [];
+    plant.arm();
+    plant.engine.move('valve', 25, 'technician');
+    expect(plant.scans(2).map((output) => written(output, 'valve'))).toEqual([21.7, 22.4]);
+  });
+
+  it('takes over from what is read in its first scan, not from what was read when arming was asked', () => {
+    const plant = new FakePlant().arm();
+    plant.at.valve = 40;
+    expect(written(plant.scan(), 'valve')).toBe(40);
+  });
+
   it('is stopped in order by a lockout', () => {
     const plant = new FakePlant().arm();
     plant.engine.setLockout(true);

@@ -18,7 +18,10 @@ export interface ScanEngineConfiguration {
   /** A trip latched before this engine began: it starts in `tripped`. */
   trip: Trip | null;
   isLockedOut: boolean;
-  /** Grid of each actuator by channel id; missing means continuous. */
+  /**
+   * Grid of each actuator by channel id; missing means continuous. Looked up whenever the actuator's
+   * connection comes up, so it may be filled once the wire is open.
+   */
   grids: ReadonlyMap<string, ValueGrid>;
 }
 

@@ -41,7 +41,8 @@ function watchServer(engine: EngineState, { serverSilentS, atMs }: ScanInput): v
 function watchReadBacks(engine: EngineState, { tS, atMs }: ScanInput): void {
   if (motionOf[engine.rigState.phase] === 'none') return;
   for (const actuator of actuatorsOf(engine)) {
-    if (!actuator.isTaken || actuator.isStopped || !isReadBackOutside(engine, actuator)) {
+    const isReleased = actuator.isStopped && actuator.limit.stopCategory !== 2;
+    if (!actuator.isTaken || isReleased || !isReadBackOutside(engine, actuator)) {
       actuator.mismatchSinceS = NaN;
       continue;
     }
