@@ -93,6 +93,11 @@ export class RigHostProcess {
     }
   }
 
+  /** A person has looked at what happened: earlier deaths no longer count against a restart. */
+  forgetDeaths(): void {
+    this.budget.refill();
+  }
+
   /** Ends the host in order, by force after the bound, and begins it no more. */
   async stop(): Promise<void> {
     this.current = { name: 'ending' };

@@ -122,6 +122,7 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
     // What the host told before it answered is kept first, so that it cannot come back after the reset.
     await host.settle();
     if (trip) await this.trips.clear(rigId, trip);
+    host.process.forgetDeaths();
     return host.statusAfterCommand();
   }
 

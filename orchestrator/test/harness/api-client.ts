@@ -14,7 +14,7 @@ export interface Answer {
 export class ApiClient {
   cookie = '';
 
-  constructor(readonly baseUrl: string) {}
+  constructor(public baseUrl: string) {}
 
   /** Signs in as somebody. */
   static async signIn(baseUrl: string, account: string, password: string): Promise<ApiClient> {

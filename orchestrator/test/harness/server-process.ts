@@ -34,6 +34,10 @@ export class ServerProcess {
     return printed(this.child, this.output, /Set-up code for the first administrator: (\S+)/);
   }
 
+  lastLines(count: number): string {
+    return this.output.text.split('\n').slice(-count).join('\n');
+  }
+
   async end(signal: NodeJS.Signals = 'SIGTERM'): Promise<void> {
     if (this.child.exitCode !== null || this.child.signalCode !== null) return;
     const exit = once(this.child, 'exit');

@@ -1,8 +1,8 @@
 import { mkdtempSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import type { RigStatus, Role, Scenario } from '@cresthold/shared';
-import { ApiClient } from './api-client.js';
+import type { ExperimentContent, Role, Scenario } from '@cresthold/shared';
+import { ApiClient, type Answer } from './api-client.js';
 import { demoScenario, forkBurnerBench, type BenchProcess } from './bench-process.js';
 import { ServerProcess } from './server-process.js';
 import { until } from './until.js';
@@ -86,6 +86,34 @@ export class Station {
     }
   }
 
+  async makeRig(): Promise<void> {
+    await this.as('engineer').expect(201, 'POST', 'rigs', this.entry.rig);
+    await this.untilPhase('idle');
+  }
+
+  /** Drafted by one and approved by another. */
+  async approveEnvelope(): Promise<void> {
+    const { content } = this.entry.envelope;
+    const path = `rigs/${this.rigId}/envelopes`;
+    const { body } = await this.as('engineer').expect(201, 'POST', path, { content });
+    await this.as('engineer').expect(200, 'POST', `envelopes/${body.id}/submit`);
+    const reason = 'Limits as commissioned.';
+    await this.as('officer').expect(200, 'POST', `envelopes/${body.id}/approve`, { reason });
+  }
+
+  /** @returns its id */
+  async makeObjective(): Promise<string> {
+    const content = this.entry.objectives[0]?.content;
+    const request = { rigId: this.rigId, content };
+    return (await this.as('engineer').expect(201, 'POST', 'objectives', request)).body.id;
+  }
+
+  /** @returns its id */
+  async makeExperiment(content: ExperimentContent): Promise<string> {
+    const request = { rigId: this.rigId, content };
+    return (await this.as('engineer').expect(201, 'POST', 'experiments', request)).body.id;
+  }
+
   async status() {
     return this.as('reader').get(`rigs/${this.rigId}/status`);
   }
@@ -100,23 +128,21 @@ export class Station {
       },
       withinMs,
     ).catch((error: Error) => {
-      throw new Error(`${error.message} Last: ${JSON.stringify(last)}\n${this.server.output.text}`);
+      throw new Error(`${error.message} Last: ${JSON.stringify(last)}\n${this.server.lastLines(15)}`);
     });
   }
 
-  /** Waits until nothing forbids arming (the burner lights once its heartbeat is seen), then arms. */
-  async arm(account: Account, withinMs?: number) {
-    let last: unknown;
-    const clear = async () => {
-      last = await this.status();
-      const { phase, armingObstacles } = last as RigStatus;
-      return phase === 'armed' || (phase === 'idle' && armingObstacles.length === 0);
+  /** Arms as soon as nothing forbids it: the burner lights a while after its heartbeat is seen. */
+  async arm(account: Account, withinMs?: number): Promise<void> {
+    let last: Answer | null = null;
+    const isArmed = async () => {
+      if ((await this.status()).phase === 'armed') return true;
+      last = await this.as(account).call('POST', `rigs/${this.rigId}/arm`);
+      return last.status === 200;
     };
-    await until('nothing forbids arming', clear, withinMs).catch((error: Error) => {
-      throw new Error(`${error.message} Last: ${JSON.stringify(last)}`);
+    await until('the rig is armed', isArmed, withinMs, 200).catch((error: Error) => {
+      throw new Error(`${error.message} Last: ${JSON.stringify(last?.body)}`);
     });
-    if ((last as RigStatus).phase === 'armed') return;
-    await this.as(account).expect(200, 'POST', `rigs/${this.rigId}/arm`);
   }
 
   async close(): Promise<void> {

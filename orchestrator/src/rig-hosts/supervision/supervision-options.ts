@@ -27,7 +27,7 @@ export interface RestartPolicy {
 }
 
 export const defaultTiming: SupervisionTiming = {
-  readyMs: 15_000,
+  readyMs: 30_000,
   requestMs: 5_000,
   configureMs: 20_000,
   silenceMs: 4_000,
