@@ -1,0 +1,41 @@
+import { airTrimRegister, type BenchLogLine } from '../harness/bench-process.js';
+
+/** Where the burner's damper is safe, as the bench documents it, %. */
+export const safeTrim = 70;
+/** Without a heartbeat for so long the burner goes to safe by itself, s of bench time. */
+export const watchdogS = 2;
+/** The damper itself moves no faster, % per s of bench time. */
+export const damperRatePctPerS = 8;
+const heartbeatRegister = 1;
+const tolerancePct = 0.5;
+
+/** When the damper had come to its safe position to stay, ms since 1970; null while it has not. */
+export function safeSinceMs(log: readonly BenchLogLine[], eventAtMs: number): number | null {
+  const truths = log.flatMap((line) => (line.event === 'truth' && line.atMs > eventAtMs ? [line] : []));
+  const lastOutside = truths.findLastIndex((line) => Math.abs(line.trim - safeTrim) > tolerancePct);
+  return truths[lastOutside + 1]?.atMs ?? null;
+}
+
+/** Where the damper was when the event came, %. */
+export function trimAt(log: readonly BenchLogLine[], eventAtMs: number): number {
+  const truths = log.flatMap((line) => (line.event === 'truth' && line.atMs <= eventAtMs ? [line] : []));
+  return truths.at(-1)?.trim ?? NaN;
+}
+
+/** The last sign of life of the rig host that reached the bench before a time, ms since 1970. */
+export function lastBeatMs(log: readonly BenchLogLine[], beforeMs: number): number {
+  const beats = log.filter(
+    (line) => line.event === 'write' && line.register === heartbeatRegister && line.atMs <= beforeMs,
+  );
+  return beats.at(-1)?.atMs ?? NaN;
+}
+
+/** How many writes to the air trim lay outside these limits. */
+export function writesOutside(log: readonly BenchLogLine[], min: number, max: number): number {
+  return log.filter(
+    (line) =>
+      line.event === 'write' &&
+      line.register === airTrimRegister &&
+      (line.engineering < min || line.engineering > max),
+  ).length;
+}

@@ -1,0 +1,144 @@
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { seekExperiment } from '../end-to-end/seek-experiment.js';
+import { Station } from '../harness/station.js';
+import { until } from '../harness/until.js';
+import { lastBeatMs, safeSinceMs, trimAt, writesOutside } from './bench-facts.js';
+import { runFileFacts } from './run-file-facts.js';
+import { WireProxy } from './wire-proxy.js';
+
+/** Bench seconds per second. */
+export const speed = 2;
+const seekStart = 40;
+
+/** What a loss did, measured from outside. */
+export interface Loss {
+  what: string;
+  round: number;
+  /** Where the damper was when the event came, %. */
+  fromTrim: number;
+  /** From the event until the damper was at safe to stay. */
+  safeAfterMs: number;
+  /** Between the last sign of life on the wire before the event and the last recorded scan. */
+  missingMs: number;
+  longestGapMs: number;
+  scans: number;
+  runStatus: string;
+  tripCause: string;
+  isFileIntact: boolean;
+  writesOutside: number;
+}
+
+/** A station with approved limits and a seek that goes on until something ends it. */
+export class KillStation {
+  private experimentId = '';
+
+  private constructor(
+    readonly station: Station,
+    readonly wire: WireProxy,
+  ) {}
+
+  static async open(): Promise<KillStation> {
+    let wire: WireProxy | null = null;
+    const station = await Station.open(['--seed', '11', '--speed', String(speed)], async (benchPort) => {
+      wire = await WireProxy.open(benchPort);
+      return wire.port;
+    });
+    if (!wire) throw new Error('The wire was not opened.');
+    const kills = new KillStation(station, wire);
+    await kills.setUp();
+    return kills;
+  }
+
+  async close(): Promise<void> {
+    this.wire.restore();
+    await this.station.close();
+    this.wire.close();
+  }
+
+  hostPid(): number {
+    const file = join(this.station.dataFolder, 'rigs', `${this.station.rigId}.pid`);
+    return (JSON.parse(readFileSync(file, 'utf8')) as { pid: number }).pid;
+  }
+
+  /**
+   * Starts a seek, lets `event` happen in its middle, and measures what followed.
+   *
+   * @param mend brings back what the event took, once the bench is at safe
+   */
+  async lose(what: string, round: number, event: () => void, mend: () => Promise<void>): Promise<Loss> {
+    const { station } = this;
+    await station.arm('engineer', 40_000);
+    const started = await station.as('engineer').expect(202, 'POST', 'runs', {
+      experimentId: this.experimentId,
+    });
+    const runId: string = started.body.id;
+    await until('the seek is under way', async () => (await station.status()).activeSteps.includes('seek'));
+    // Another moment of the dither in each round.
+    await new Promise((resolve) => setTimeout(resolve, 1_000 + 170 * round));
+    const eventAtMs = Date.now();
+    event();
+    const safeAtMs = await until('the damper is at safe', () => this.safeToStay(eventAtMs), 15_000, 100);
+    const log = station.bench.log();
+    await mend();
+    const run = await until(
+      'the run is marked',
+      async () => {
+        const row = await station.as('reader').get(`runs/${runId}`);
+        return row.endedAt === null ? null : row;
+      },
+      60_000,
+    );
+    const status = await station.untilPhase('tripped', 60_000);
+    const beatMs = lastBeatMs(log, eventAtMs);
+    const facts = runFileFacts(join(station.dataFolder, 'runs', `${runId}.sqlite`), eventAtMs);
+    const limit = station.entry.envelope.content.limits[0];
+    await this.reset();
+    return {
+      what,
+      round,
+      fromTrim: trimAt(log, eventAtMs),
+      safeAfterMs: safeAtMs - eventAtMs,
+      missingMs: Math.max(0, beatMs - facts.lastAtMs),
+      longestGapMs: facts.longestGapMs,
+      scans: facts.scans,
+      runStatus: run.status,
+      tripCause: (status as { trip: { cause: string } }).trip.cause,
+      isFileIntact: facts.isIntact,
+      writesOutside: writesOutside(station.bench.log(), limit?.min ?? NaN, limit?.max ?? NaN),
+    };
+  }
+
+  /** Starts the server again; sessions outlive it, its address does not. */
+  async restartServer(): Promise<void> {
+    await this.station.startServer();
+    for (const client of this.station.clients.values()) client.baseUrl = this.station.server.url;
+  }
+
+  private safeToStay(eventAtMs: number): number | null {
+    const sinceMs = safeSinceMs(this.station.bench.log(), eventAtMs);
+    const staysMs = 1_000;
+    return sinceMs !== null && Date.now() - sinceMs > staysMs ? sinceMs : null;
+  }
+
+  private async reset(): Promise<void> {
+    const path = `rigs/${this.station.rigId}/reset`;
+    const reason = 'The test is over.';
+    await until(
+      'the trip is reset',
+      async () => (await this.station.as('officer').call('POST', path, { reason })).status === 200,
+      40_000,
+      250,
+    );
+  }
+
+  private async setUp(): Promise<void> {
+    const { station } = this;
+    await station.makePeople();
+    await station.makeRig();
+    await station.approveEnvelope();
+    const objectiveId = await station.makeObjective();
+    const content = seekExperiment({ objectiveId, startAt: seekStart, seekForS: 600, surveyPoints: 0 });
+    this.experimentId = await station.makeExperiment(content);
+  }
+}

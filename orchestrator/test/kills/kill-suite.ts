@@ -1,0 +1,110 @@
+import { damperRatePctPerS, safeTrim, watchdogS } from './bench-facts.js';
+import { KillStation, speed, type Loss } from './kill-station.js';
+
+/** What the measurement itself may add: the bench logs its truth every 100 ms, and the machine is shared. */
+const measuringMs = 400;
+/** Longest stretch of samples that may be lost, ms. */
+const missingMaxMs = 100;
+
+/** The longest time to safe: the burner's own watchdog, then the way there at the slower of the two rates. */
+function safeBoundMs(fromTrim: number, slewPerS: number): number {
+  const slowestPctPerS = Math.min(slewPerS, damperRatePctPerS * speed);
+  return (watchdogS / speed + Math.abs(safeTrim - fromTrim) / slowestPctPerS) * 1000 + measuringMs;
+}
+
+/** The losses that no test group can rule out, each in mid-seek, each `rounds` times. */
+export function describeKills(rounds: number): void {
+  describe(`a loss in mid-seek, ${rounds} times each`, () => {
+    let kills: KillStation;
+    const losses: Loss[] = [];
+
+    beforeAll(async () => {
+      kills = await KillStation.open();
+    }, 60_000);
+
+    afterAll(async () => {
+      printTable(losses);
+      await kills?.close();
+    }, 60_000);
+
+    const suffer = async (what: string, event: () => void, mend: () => Promise<void>) => {
+      for (let round = 1; round <= rounds; round++) {
+        const loss = await kills.lose(what, round, event, mend);
+        losses.push(loss);
+        judge(loss, kills.station.entry.envelope.content.limits[0]?.slewPerS ?? NaN);
+      }
+      return losses.filter((loss) => loss.what === what);
+    };
+    const timeoutMs = 60_000 * rounds;
+
+    it(
+      'kill -9 of the server',
+      async () => {
+        const event = () => void kills.station.server.child.kill('SIGKILL');
+        const all = await suffer('server', event, () => kills.restartServer());
+        for (const loss of all) {
+          expect(loss.tripCause).toBe('server-silent');
+          expect(['tripped', 'interrupted']).toContain(loss.runStatus);
+        }
+      },
+      timeoutMs,
+    );
+
+    it(
+      'kill -9 of the rig host',
+      async () => {
+        const all = await suffer(
+          'rig host',
+          () => process.kill(kills.hostPid(), 'SIGKILL'),
+          async () => {},
+        );
+        for (const loss of all) {
+          expect(loss).toMatchObject({ tripCause: 'host-lost', runStatus: 'interrupted' });
+        }
+      },
+      timeoutMs,
+    );
+
+    it.each([
+      ['wire silent', 'freeze'],
+      ['wire closed', 'cut'],
+    ] as const)(
+      'a cut of the wire: %s',
+      async (what, how) => {
+        const all = await suffer(
+          what,
+          () => kills.wire[how](),
+          () => Promise.resolve(kills.wire.restore()),
+        );
+        for (const loss of all) expect(loss.runStatus).toBe('tripped');
+      },
+      timeoutMs,
+    );
+  });
+}
+
+function judge(loss: Loss, slewPerS: number): void {
+  expect(loss.safeAfterMs).toBeLessThanOrEqual(safeBoundMs(loss.fromTrim, slewPerS));
+  expect(loss.missingMs).toBeLessThanOrEqual(missingMaxMs);
+  expect(loss).toMatchObject({ isFileIntact: true, writesOutside: 0 });
+}
+
+function printTable(losses: readonly Loss[]): void {
+  const lines = losses.map((loss) =>
+    [
+      loss.what.padEnd(12),
+      String(loss.round).padStart(5),
+      loss.fromTrim.toFixed(1).padStart(8),
+      String(loss.safeAfterMs).padStart(10),
+      String(loss.missingMs).padStart(10),
+      String(loss.longestGapMs).padStart(9),
+      String(loss.scans).padStart(6),
+      loss.runStatus.padEnd(12),
+      loss.tripCause.padEnd(16),
+      String(loss.writesOutside).padStart(7),
+    ].join(' '),
+  );
+  const head =
+    'loss         round   from/% to safe/ms missing/ms   gap/ms  scans run          trip             outside';
+  console.log([head, ...lines].join('\n'));
+}

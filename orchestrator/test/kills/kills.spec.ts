@@ -1,0 +1,3 @@
+import { describeKills } from './kill-suite.js';
+
+describeKills(1);
