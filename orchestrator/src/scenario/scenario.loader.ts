@@ -53,7 +53,7 @@ export class ScenarioLoader {
    * @throws auth.setup-done where the data folder has accounts already
    * @throws request.invalid naming the faults of the file
    */
-  load(scenario: Scenario): Promise<LoadedScenario> {
+  async load(scenario: Scenario): Promise<LoadedScenario> {
     refuseFaults(roleFaults(scenario));
     return this.queue.transaction(async () => {
       if (await this.userStore.hasAny()) {

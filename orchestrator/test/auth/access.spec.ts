@@ -71,6 +71,10 @@ interface Route {
   access: Access[];
 }
 
+function accessOf(operation: object | undefined): Access[] {
+  return (operation as Record<string, Access[] | undefined> | undefined)?.[accessExtension] ?? [];
+}
+
 function routesOfDocument(server: TestServer): Route[] {
   return Object.entries(openApiDocument(server.app).paths).flatMap(([path, item]) =>
     methods
@@ -79,7 +83,7 @@ function routesOfDocument(server: TestServer): Route[] {
         name: `${method.toUpperCase()} ${path.replace('/api/v1', '')}`,
         method,
         path: path.replace('{version}', '1').replace(/\{\w+\}/g, 'none'),
-        access: (item[method] as Record<string, Access[] | undefined>)[accessExtension] ?? [],
+        access: accessOf(item[method]),
       })),
   );
 }

@@ -1,13 +1,12 @@
 import { DomainError } from '@cresthold/shared';
-import type TestAgent from 'supertest/lib/agent';
 import { DataSource } from 'typeorm';
-import { createTestServer, type TestServer } from '../server/create-test-server.js';
+import { createTestServer, type Client, type TestServer } from '../server/create-test-server.js';
 import { envelopeInput, limitInput, rigInput } from '../server/documents.js';
 
 describe('envelopes', () => {
   let server: TestServer;
-  let engineer: TestAgent;
-  let officer: TestAgent;
+  let engineer: Client;
+  let officer: Client;
   const envelopes = '/api/v1/rigs/kiln-1/envelopes';
   const at = (id: string, act = '') => `/api/v1/envelopes/${id}${act === '' ? '' : `/${act}`}`;
 

@@ -1,12 +1,11 @@
 import type { PreflightFault } from '@cresthold/shared';
-import type TestAgent from 'supertest/lib/agent';
 import { DataSource } from 'typeorm';
-import { createTestServer, type TestServer } from '../server/create-test-server.js';
+import { createTestServer, type Client, type TestServer } from '../server/create-test-server.js';
 import { envelopeInput, experimentInput, objectiveInput, rigInput } from '../server/documents.js';
 
 describe('experiments', () => {
   let server: TestServer;
-  let engineer: TestAgent;
+  let engineer: Client;
   const experiments = '/api/v1/experiments';
   const create = (content: object = experimentInput()) =>
     engineer.post(experiments).send({ rigId: 'kiln-1', content });

@@ -1,10 +1,9 @@
-import type TestAgent from 'supertest/lib/agent';
-import { createTestServer, type TestServer } from '../server/create-test-server.js';
+import { createTestServer, type Client, type TestServer } from '../server/create-test-server.js';
 import { objectiveInput, rigInput } from '../server/documents.js';
 
 describe('objectives', () => {
   let server: TestServer;
-  let engineer: TestAgent;
+  let engineer: Client;
   const create = (content: object, rigId = 'kiln-1') =>
     engineer.post('/api/v1/objectives').send({ rigId, content });
 

@@ -1,11 +1,10 @@
-import type TestAgent from 'supertest/lib/agent';
 import { RigStore } from '../../src/rigs/rig-store.js';
-import { createTestServer, type TestServer } from '../server/create-test-server.js';
+import { createTestServer, type Client, type TestServer } from '../server/create-test-server.js';
 import { envelopeInput, rigInput } from '../server/documents.js';
 
 describe('rigs', () => {
   let server: TestServer;
-  let engineer: TestAgent;
+  let engineer: Client;
   const fieldsOf = (body: { errors: { field: string }[] }) => body.errors.map((error) => error.field);
   const channels = rigInput().channels;
 

@@ -5,7 +5,6 @@ import type { NestExpressApplication } from '@nestjs/platform-express';
 import { Test } from '@nestjs/testing';
 import type { Role } from '@cresthold/shared';
 import request from 'supertest';
-import type TestAgent from 'supertest/lib/agent';
 import { AppModule } from '../../src/app.module.js';
 import { hashPassword } from '../../src/auth/password-hash.js';
 import { sessionCookieName } from '../../src/auth/session-cookie.js';
@@ -17,6 +16,9 @@ import { setUpHttp } from '../../src/http/set-up-http.js';
 import { RigHostsPort } from '../../src/rigs/rig-hosts.port.js';
 import { UserEntity } from '../../src/users/entities/user.entity.js';
 import { FakeRigHosts } from './fake-rig-hosts.js';
+
+/** Sends requests, as nobody or as whoever is signed in. */
+export type Client = ReturnType<typeof request.agent>;
 
 /** Password of every account that `addUser` makes. */
 export const testPassword = 'a long enough one';
@@ -32,12 +34,12 @@ export class TestServer {
   ) {}
 
   /** A client that is not signed in. */
-  get anyone(): TestAgent {
+  get anyone(): Client {
     return request(this.app.getHttpServer());
   }
 
   /** A client signed in as an account with the given roles; made where it does not exist yet. */
-  async as(account: string, ...roles: Role[]): Promise<TestAgent> {
+  async as(account: string, ...roles: Role[]): Promise<Client> {
     const users = this.app.get(TransactionQueue);
     const sessions = this.app.get(SessionsService);
     await users.transaction(async (manager) => {

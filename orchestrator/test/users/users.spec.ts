@@ -1,9 +1,13 @@
-import type TestAgent from 'supertest/lib/agent';
-import { createTestServer, testPassword, type TestServer } from '../server/create-test-server.js';
+import {
+  createTestServer,
+  type Client,
+  testPassword,
+  type TestServer,
+} from '../server/create-test-server.js';
 
 describe('accounts', () => {
   let server: TestServer;
-  let administrator: TestAgent;
+  let administrator: Client;
   const technician = {
     account: 'technician',
     title: 'Technician',
