@@ -23,7 +23,7 @@ beforeAll(async () => {
   bench = await forkBench(['--port', '0', '--seed', '3', '--drift', 'off', '--log', logFile]);
   await client.connectTCP('127.0.0.1', { port: bench.port });
   client.setTimeout(2000);
-});
+}, 30_000);
 
 afterAll(async () => {
   stopHeart();
@@ -62,7 +62,10 @@ const logged = () =>
     .split('\n')
     .map((line) => JSON.parse(line) as BenchLogEntry & { atMs: number; benchS: number });
 
-describe('the burner bench as a process', () => {
+// Bounds for a busy machine, not measures of speed.
+const patient = { timeout: 30_000 };
+
+describe('the burner bench as a process', patient, () => {
   it('waits dark for a heartbeat and lights when it lives', async () => {
     expect(await flame()).toBe(0);
     startHeart();
@@ -153,7 +156,7 @@ describe('the burner bench as a process', () => {
   });
 });
 
-it('names the option at fault', async () => {
+it('names the option at fault', patient, async () => {
   const program = fileURLToPath(new URL('../../dist/burner/main.js', import.meta.url));
   const outcome = promisify(execFile)(process.execPath, [program, '--speed', '0']);
   await expect(outcome).rejects.toMatchObject({ code: 2, stderr: expect.stringContaining('--speed') });

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { lastTwoBenchMinutes, mean, seekOnBurner } from './seek-on-burner.fixture.js';
 
-describe('the sizing of the demonstration, on the drifting and noisy burner', () => {
+describe('the sizing of the demonstration, on the drifting and noisy burner', { timeout: 30_000 }, () => {
   // The drift has a period of 240 s of real time: starts at four quarters of it.
   it.each([
     [1, 10],

@@ -9,7 +9,7 @@ import { demoScenario } from './demo-scenario.js';
 const scenario = demoScenario({ benchHost: '127.0.0.1', benchPort: 15_020 });
 const entry = scenario.rigs[0];
 
-describe('the demo scenario', () => {
+describe('the demo scenario', { timeout: 30_000 }, () => {
   it('has one account for each role', () => {
     expect(scenario.users.flatMap((user) => user.roles).sort()).toEqual(
       ['administrator', 'reader', 'safety-officer', 'technician', 'test-engineer'].sort(),
