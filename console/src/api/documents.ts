@@ -3,6 +3,7 @@ import type {
   EnvelopeStatus,
   ExperimentContent,
   ObjectiveContent,
+  PreflightFault,
   Rig,
   RigStatus,
   Role,
@@ -67,6 +68,13 @@ export interface RunSummary {
   startedAt: string;
   endedAt: string | null;
   startedBy: string;
+  envelopeVersion: number;
+  scans: number;
+  /** Results of the steps by name, e.g. `survey.best.airTrim`. */
+  results: Record<string, number>;
+  /** What preflight warned of when it was started. */
+  warnings: PreflightFault[];
+  fileSha256: string | null;
 }
 
 export interface ExperimentSummary {

@@ -17,7 +17,7 @@ export interface TraceChartProps {
   /** What the chart shows, in words. */
   summary: string;
   /** Beside the name of each trace, e.g. its mean. */
-  valueOf?: (trace: ChartTrace) => ReactNode;
+  readingOf?: (trace: ChartTrace) => ReactNode;
   heightPx?: number;
 }
 
@@ -31,7 +31,7 @@ export function TraceChart({
   levels = noLevels,
   range,
   summary,
-  valueOf,
+  readingOf,
   heightPx = 160,
 }: TraceChartProps) {
   const paper = usePaper();
@@ -51,7 +51,7 @@ export function TraceChart({
     <ChartSheet
       heading={traces.map((trace) => (
         <TraceKey key={trace.column} trace={trace}>
-          {valueOf?.(trace)}
+          {readingOf?.(trace)}
         </TraceKey>
       ))}
       summary={summary}

@@ -1,0 +1,117 @@
+import { useMemo, useState } from 'react';
+import Box from '@mui/material/Box';
+import MenuItem from '@mui/material/MenuItem';
+import TextField from '@mui/material/TextField';
+import Typography from '@mui/material/Typography';
+import type { ExperimentGraph, Rig, RunColumn } from '@cresthold/shared';
+import { formatNumber, Loading, ProblemNotice } from '../../../components/index.js';
+import { TraceChart } from '../../../components/strip-chart/index.js';
+import { useRunSamples, type RunSamples } from '../api/run-queries.js';
+import { chartGroups, type ChartGroup } from './chart-groups.js';
+import { chartRows } from './chart-rows.js';
+
+const spansS = [10, 60, 300, 1800];
+const wholeRun = 0;
+
+interface RunChartsProps {
+  runId: string;
+  rig: Rig;
+  graph: ExperimentGraph;
+  columns: readonly RunColumn[];
+  /** Time since the run began, s; where the newest sample is. */
+  endS: number;
+  isLive: boolean;
+}
+
+/** What was recorded, over the whole run or its end; exact where there are few enough samples. */
+export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChartsProps) {
+  const [spanS, setSpanS] = useState(wholeRun);
+  const groups = useMemo(() => chartGroups(columns, rig, seekActuators(graph)), [columns, rig, graph]);
+  const asked = useMemo(() => groups.flatMap((group) => group.traces.map((trace) => trace.column)), [groups]);
+  // Whole seconds, so that the address does not change with every sample.
+  const fromS = spanS === wholeRun ? null : Math.max(0, Math.floor(endS) - spanS);
+  const samples = useRunSamples(runId, { columns: asked, fromS, points: 600 }, isLive);
+  return (
+    <Box component="section" aria-labelledby="recorded-heading" sx={{ display: 'grid', gap: 1, minWidth: 0 }}>
+      <Box sx={{ display: 'flex', flexWrap: 'wrap', alignItems: 'center', gap: 1 }}>
+        <Typography id="recorded-heading" variant="h2" sx={{ flex: '1 1 8rem' }}>
+          Recorded
+        </Typography>
+        <TextField
+          select
+          label="Span"
+          value={spanS}
+          onChange={(event) => setSpanS(Number(event.target.value))}
+          sx={{ width: '9rem' }}
+        >
+          <MenuItem value={wholeRun}>whole run</MenuItem>
+          {spansS.map((span) => (
+            <MenuItem key={span} value={span}>
+              last {span < 120 ? `${span} s` : `${span / 60} min`}
+            </MenuItem>
+          ))}
+        </TextField>
+      </Box>
+      {samples.isPending && <Loading what="samples" />}
+      {samples.error !== null && (
+        <ProblemNotice
+          title="The samples could not be loaded"
+          error={samples.error}
+          onRetry={() => void samples.refetch()}
+        />
+      )}
+      {samples.data && (
+        <Box
+          sx={{
+            display: 'grid',
+            gap: 1,
+            gridTemplateColumns: 'repeat(auto-fill, minmax(min(100%, 26rem), 1fr))',
+          }}
+        >
+          {groups.map((group) => (
+            <GroupChart key={group.title} group={group} samples={samples.data} />
+          ))}
+        </Box>
+      )}
+    </Box>
+  );
+}
+
+function GroupChart({ group, samples }: { group: ChartGroup; samples: RunSamples }) {
+  const rows = useMemo(
+    () =>
+      chartRows(
+        samples,
+        group.traces.map((trace) => trace.column),
+      ),
+    [samples, group],
+  );
+  return (
+    <TraceChart
+      traces={group.traces}
+      timesS={rows.timesS}
+      values={rows.values}
+      range={null}
+      summary={chartSummary(group, samples)}
+    />
+  );
+}
+
+function chartSummary(group: ChartGroup, samples: RunSamples): string {
+  const parts = group.traces.map((trace) => {
+    const values =
+      samples.mean[samples.columns.indexOf(trace.column)]?.filter((value) => value !== null) ?? [];
+    const last = values.at(-1);
+    return `${trace.label}: ${formatNumber(values[0], trace.decimals)} at the beginning, ${formatNumber(last, trace.decimals)} ${trace.unit} at the end`;
+  });
+  return `${parts.join('; ')}.`;
+}
+
+/** The actuator that each Seek steers, by the step's id. */
+export function seekActuators(graph: ExperimentGraph): ReadonlyMap<string, string> {
+  return new Map(
+    graph.steps.flatMap((step) =>
+      step.kind === 'seek' ? [[step.id, step.parameters.actuator] as [string, string]] : [],
+    ),
+  );
+}

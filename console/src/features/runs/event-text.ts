@@ -1,0 +1,67 @@
+import type { RunEventBody } from '@cresthold/shared';
+import { plainNumber } from '../../components/index.js';
+
+/** A number of an event, or what stands for none. */
+const shown = (value: number | null): string => (value === null ? 'no number' : plainNumber(value));
+
+const met = (isMet: boolean | null): string =>
+  isMet === null ? 'could not be judged' : isMet ? 'is met' : 'is not met';
+
+/** What happened, as a technician would say it. */
+export function eventText(body: RunEventBody): string {
+  switch (body.type) {
+    case 'run.started':
+      return `Run started by ${body.by}`;
+    case 'run.paused':
+      return `Paused: ${body.reason}`;
+    case 'run.resumed':
+      return `Resumed by ${body.by}`;
+    case 'run.stopping':
+      return `Stopping: ${body.reason}`;
+    case 'run.ended':
+      return `Run ended, ${body.status}, verdict ${body.verdict}: ${body.reason}`;
+    case 'step.started':
+      return `${body.step} began`;
+    case 'step.ended':
+      return `${body.step} left by ${body.port}${body.reason === undefined ? '' : `: ${body.reason}`}`;
+    case 'survey.point-measured':
+      return `${body.step}, ${body.branch}: objective ${shown(body.objective)} at ${body.actuator} ${plainNumber(body.value)}${body.isValid ? '' : ', not valid'}`;
+    case 'seek.retreated':
+      return `${body.step} went back to ${plainNumber(body.to)}: ${body.reason}`;
+    case 'check.decided':
+      return `${body.step} ${met(body.isMet)}: ${body.criterion}`;
+    case 'guard.intervened':
+      return `The guard held ${body.channel} at ${plainNumber(body.applied)} (${body.rule}; ${body.count} so far)`;
+    case 'interlock.acted':
+      return `Interlock ${body.interlock}, ${body.action}: ${body.message}`;
+    case 'interlock.cleared':
+      return `Interlock ${body.interlock} is clear again`;
+    case 'connection.lost':
+      return `Connection ${body.connection} lost: ${body.message}`;
+    case 'connection.restored':
+      return `Connection ${body.connection} is back`;
+    case 'scan.overran':
+      return `A scan was ${plainNumber(body.latenessMs)} ms late (${body.consecutive} in a row)`;
+    case 'rig.tripped':
+      return `Tripped by ${body.cause}: ${body.message}`;
+  }
+}
+
+/** What is abnormal is marked in the list; survey points are detail. */
+export function eventWeight(body: RunEventBody): 'trip' | 'warn' | 'plain' | 'detail' {
+  switch (body.type) {
+    case 'rig.tripped':
+      return 'trip';
+    case 'interlock.acted':
+      return body.action === 'trip' ? 'trip' : 'warn';
+    case 'connection.lost':
+    case 'scan.overran':
+    case 'seek.retreated':
+    case 'guard.intervened':
+      return 'warn';
+    case 'survey.point-measured':
+      return 'detail';
+    default:
+      return 'plain';
+  }
+}
