@@ -69,3 +69,6 @@ export const expressionConstants: ReadonlyMap<string, number> = new Map([
   ['pi', Math.PI],
   ['e', Math.E],
 ]);
+
+/** Words that the language keeps for itself: nothing that expressions are to name may be called so. */
+export const reservedWords: ReadonlySet<string> = new Set(['not', 'true', 'false', 'null', 'undefined']);

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { reservedWords } from '../expressions/expression-functions.js';
 import { channelIdSchema, slugSchema, titleSchema } from './channel-id.js';
 
 /** A JSON value; what an adapter's own schema says more about. */
@@ -52,6 +53,14 @@ export const rigSchema = z
     reportDuplicates(rig.channels, 'channels', context);
     const connections = new Set(rig.connections.map((c) => c.id));
     rig.channels.forEach((channel, index) => {
+      // The objective has a symbol in expressions and a column in run files of its own.
+      if (reservedWords.has(channel.id) || channel.id === 'objective') {
+        context.addIssue({
+          code: 'custom',
+          path: ['channels', index, 'id'],
+          message: `"${channel.id}" means something in expressions: choose another name.`,
+        });
+      }
       if (channel.kind !== 'derived' && !connections.has(channel.connection)) {
         context.addIssue({
           code: 'custom',

@@ -1,3 +1,4 @@
+import { reservedWords } from '../../expressions/expression-functions.js';
 import type { Step } from '../experiment.schema.js';
 import { stepKinds } from '../step-kinds.js';
 import type { PreflightCase } from './fault-list.js';
@@ -27,29 +28,13 @@ function checkStart({ graph, faults }: PreflightCase): void {
   }
 }
 
-/** Words that the expression language keeps for itself. */
-const reserved = new Set([
-  'and',
-  'or',
-  'xor',
-  'not',
-  'mod',
-  'to',
-  'in',
-  'true',
-  'false',
-  'null',
-  'undefined',
-  'end',
-]);
-
 function checkIds({ graph, faults }: PreflightCase): void {
   const seen = new Set<string>();
   for (const { id } of graph.steps) {
     if (seen.has(id)) {
       faults.error('duplicate-step', id, 'id', `Two steps are named "${id}": give each a name of its own.`);
     }
-    if (reserved.has(id)) {
+    if (reservedWords.has(id)) {
       faults.error('reserved-name', id, 'id', `"${id}" means something in expressions: choose another name.`);
     }
     seen.add(id);

@@ -5,6 +5,9 @@ import type { StepServices } from './step-runner.js';
 /** Kept under the slew limit by this much, so that rounding does not call the guard. */
 const slewMargin = 1 + 1e-6;
 
+/** An actuator that has not arrived this long after its line is over will not arrive, s. */
+const arrivalGraceS = 5;
+
 interface Leg {
   channel: string;
   from: number;
@@ -65,9 +68,9 @@ export class ActuatorRamp {
     return hasArrived;
   }
 
-  /** Time that the lines take by themselves, s. */
-  get plannedS(): number {
-    return this.durationS;
+  /** @param waitedS time since the lines began, s */
+  isOverdue(waitedS: number): boolean {
+    return waitedS > this.durationS + arrivalGraceS;
   }
 
   /** An actuator found outside its envelope begins at the edge: nothing outside is asked for. */

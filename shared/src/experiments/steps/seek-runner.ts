@@ -11,9 +11,6 @@ import { setUpSeek } from './seek-setup.js';
 import { StayWithin } from './stay-within.js';
 import { isOver, type StepExit, type StepRunner, type StepServices } from './step-runner.js';
 
-/** An actuator that has not arrived this long after its line is over will not arrive, s. */
-const arrivalGraceS = 5;
-
 const converged: StepExit = { port: 'done', reason: 'The estimate has converged.' };
 const conditionMet: StepExit = { port: 'done', reason: 'The end condition is met.' };
 const timeOver: StepExit = { port: 'done', reason: 'The time is over.' };
@@ -100,7 +97,7 @@ export class SeekRunner implements StepRunner {
     if (this.exit) return this.part(input, this.exit);
     if (this.isApproaching) {
       this.isApproaching = !this.ramp.step(input);
-      if (this.isApproaching) return this.goOn(input, this.elapsedS > this.ramp.plannedS + arrivalGraceS);
+      if (this.isApproaching) return this.goOn(input, this.ramp.isOverdue(this.elapsedS));
     }
     this.seek(input, pursuit);
     this.exit = this.judgeEnd(pursuit);
@@ -172,7 +169,7 @@ export class SeekRunner implements StepRunner {
     const { actuator } = this.settings.parameters;
     const hasArrived = this.ramp.step(input);
     const isHeld = Math.abs(input.held(actuator) - this.best) <= Math.abs(this.best) * 1e-9;
-    if ((hasArrived && isHeld) || this.partedS > this.ramp.plannedS + arrivalGraceS) return exit;
+    if ((hasArrived && isHeld) || this.ramp.isOverdue(this.partedS)) return exit;
     this.partedS += input.dtS;
     return null;
   }

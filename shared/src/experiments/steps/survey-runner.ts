@@ -7,9 +7,6 @@ import { done, isOver, noSignals, type StepExit, type StepRunner, type StepServi
 import { judgeSurvey, type SurveyPoint } from './survey-landscape.js';
 import { planSurvey, type Branch, type SurveyVisit } from './survey-plan.js';
 
-/** An actuator that has not arrived this long after its line is over will not arrive, s. */
-const arrivalGraceS = 5;
-
 /**
  * Maps the objective over one actuator. At each value it moves at the slew limit, settles, and averages the
  * objective; it ends where its last visit was. A value is valid where nine tenths of its scans were.
@@ -90,7 +87,7 @@ export class SurveyRunner implements StepRunner {
 
   private giveUpWaiting(input: SequencerInput): StepExit | null {
     this.phaseS += input.dtS;
-    if (this.phaseS < this.ramp.plannedS + arrivalGraceS) return null;
+    if (!this.ramp.isOverdue(this.phaseS)) return null;
     return failed(`"${this.settings.parameters.actuator}" did not come to ${this.visit.target}.`);
   }
 
