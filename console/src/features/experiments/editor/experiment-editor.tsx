@@ -80,7 +80,7 @@ export function ExperimentEditor({ experiment, version, rig, envelope, objective
           isReadOnly={isReadOnly}
           onAdd={add}
         />
-        <Box sx={{ display: 'grid', gap: 2, minWidth: 0 }}>
+        <Box sx={{ display: 'grid', gap: 2, minWidth: 0, order: { xs: 1, lg: 0 } }}>
           <GraphDrawing
             graph={content.graph}
             rig={rig}
