@@ -88,14 +88,14 @@ class WholeLoop {
     await this.loop.run(20);
   }
 
-  /** @returns scans per second */
+  /** @returns how long it took, s */
   async run(scans: number): Promise<number> {
     const startS = monotonicS();
     await this.loop.run(scans);
-    const perS = scans / (monotonicS() - startS);
+    const durationS = monotonicS() - startS;
     const { phase } = this.engine.status();
     if (phase !== 'running') throw new Error(`The rig is ${phase} in mid-benchmark.`);
-    return perS;
+    return durationS;
   }
 
   async close(): Promise<void> {
@@ -107,26 +107,37 @@ class WholeLoop {
 const median = (values: readonly number[]): number =>
   [...values].sort((a, b) => a - b)[Math.floor(values.length / 2)] ?? NaN;
 
+/** Loops of one kind before the other has its turn: short, so that both see the same machine. */
+const blockLoops = 200;
+
+/** One round of both. @returns how long each took, s */
+async function alternate(whole: WholeLoop, bare: BareLoop, loops: number) {
+  let wholeS = 0;
+  let bareS = 0;
+  for (let left = loops; left > 0; left -= blockLoops) {
+    const block = Math.min(left, blockLoops);
+    bareS += await bare.run(block);
+    wholeS += await whole.run(block);
+  }
+  return { wholeS, bareS };
+}
+
 async function measure(value: unknown): Promise<void> {
   const { host, port, scans, rounds } = orderSchema.parse(value);
   const whole = new WholeLoop(host, port);
   const bare = new BareLoop();
   await whole.open();
   await bare.open(host, port);
-  const scanRates: number[] = [];
-  const bareRates: number[] = [];
-  // The first round of both is a warm-up.
-  for (let round = 0; round <= rounds; round += 1) {
-    const bareRate = await bare.run(scans);
-    const scanRate = await whole.run(scans);
-    if (round === 0) continue;
-    bareRates.push(bareRate);
-    scanRates.push(scanRate);
-  }
+  await alternate(whole, bare, scans); // Warm-up.
+  const times: Awaited<ReturnType<typeof alternate>>[] = [];
+  for (let round = 0; round < rounds; round += 1) times.push(await alternate(whole, bare, scans));
   await bare.close();
   await whole.close();
-  const ratio = median(scanRates.map((rate, i) => rate / (bareRates[i] ?? NaN)));
-  process.send?.({ scansPerS: median(scanRates), bareLoopsPerS: median(bareRates), ratio });
+  process.send?.({
+    scansPerS: median(times.map(({ wholeS }) => scans / wholeS)),
+    bareLoopsPerS: median(times.map(({ bareS }) => scans / bareS)),
+    ratio: median(times.map(({ wholeS, bareS }) => bareS / wholeS)),
+  });
 }
 
 process.once('message', (value) => {

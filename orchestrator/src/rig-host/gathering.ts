@@ -1,17 +1,36 @@
+/** How often the bound is looked at, ms: one timer for all scans is cheaper than one for each. */
+const tickMs = 25;
+
 /**
  * Waits for the requests that one scan began, up to a bound. Reused from scan to scan; an arrival of an
  * earlier scan is not counted.
  */
 export class Gathering {
   private waiting = 0;
+  private ticks = 0;
   private resolve: (() => void) | null = null;
-  private timer: NodeJS.Timeout | null = null;
+  private readonly ticksMax: number;
+  private timer: NodeJS.Timeout | undefined;
+  private readonly wait = (resolve: () => void): void => {
+    this.resolve = resolve;
+  };
   /** Number of the present wait. */
   round = 0;
+
+  /** @param boundMs longest wait; kept to within two ticks of 25 ms */
+  constructor(boundMs: number) {
+    this.ticksMax = Math.ceil(boundMs / tickMs);
+  }
+
+  /** Begins to keep the bound; until then a wait has none. */
+  start(): void {
+    this.timer ??= setInterval(() => this.tick(), tickMs);
+  }
 
   begin(): void {
     this.round += 1;
     this.waiting = 0;
+    this.ticks = 0;
   }
 
   expect(): void {
@@ -26,17 +45,21 @@ export class Gathering {
   }
 
   /** @returns null where there is nothing to wait for */
-  all(boundMs: number): Promise<void> | null {
-    if (this.waiting === 0) return null;
-    return new Promise((resolve) => {
-      this.resolve = resolve;
-      this.timer = setTimeout(() => this.finish(), boundMs);
-    });
+  all(): Promise<void> | null {
+    return this.waiting === 0 ? null : new Promise(this.wait);
+  }
+
+  close(): void {
+    clearInterval(this.timer);
+    this.finish();
+  }
+
+  private tick(): void {
+    this.ticks += 1;
+    if (this.ticks > this.ticksMax) this.finish();
   }
 
   private finish(): void {
-    if (this.timer !== null) clearTimeout(this.timer);
-    this.timer = null;
     this.resolve?.();
     this.resolve = null;
   }

@@ -65,7 +65,7 @@ export class Line {
     private readonly gathering: Gathering,
     private readonly owner: LineOwner,
   ) {
-    this.writes = new PendingWrites(channels);
+    this.writes = new PendingWrites(new Map(channels.map((c) => [c.index, c.address])));
     this.firstAttempt = new Promise((resolve) => (this.settleFirst = resolve));
   }
 

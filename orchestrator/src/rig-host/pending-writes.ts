@@ -1,5 +1,3 @@
-import type { LineChannel } from './line.js';
-
 /**
  * What is to be written on one line. A newer value of an actuator replaces an older one that is still
  * waiting; a value that the device did not accept waits for the next scan. Arrays are reused.
@@ -10,13 +8,11 @@ export class PendingWrites {
   private sentIndexes: number[] = [];
   private sentValues: number[] = [];
   private readonly sentAddresses: unknown[] = [];
-  private readonly addressByIndex: ReadonlyMap<number, unknown>;
   /** Something was put since the last `take`. */
   hasNew = false;
 
-  constructor(channels: readonly LineChannel[]) {
-    this.addressByIndex = new Map(channels.map((c) => [c.index, c.address]));
-  }
+  /** @param addressByIndex wire address of each channel index of the line */
+  constructor(private readonly addressByIndex: ReadonlyMap<number, unknown>) {}
 
   get isEmpty(): boolean {
     return this.indexes.length === 0;

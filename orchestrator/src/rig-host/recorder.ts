@@ -12,7 +12,8 @@ const flushAfterMs = 40;
 const behindMaxS = 5;
 /** Longest wait for a new file, ms. */
 const prepareBoundMs = 4000;
-const rowsPerBatchMax = 256;
+/** Rows of one buffer; a faster loop fills it before the time is up. */
+const rowsPerBatch = 256;
 
 /**
  * The loop's side of the recorder. `append` and `appendEvent` never wait: rows are copied into a buffer
@@ -82,7 +83,7 @@ export class Recorder {
   /** @param periodS nominal time between two rows, s */
   begin(manifest: RunManifest, periodS: number): void {
     this.width = rowLead + manifest.columns.length;
-    this.capacity = Math.min(rowsPerBatchMax, Math.max(1, Math.ceil(flushAfterMs / 1000 / periodS)));
+    this.capacity = periodS * 1000 >= flushAfterMs ? 1 : rowsPerBatch;
     this.free.length = 0;
     this.postedAtS.length = 0;
     this.labelIndex.clear();

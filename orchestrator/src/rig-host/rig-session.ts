@@ -145,13 +145,8 @@ export class RigSession {
     };
   }
 
-  /**
-   * What an actuator's wire can carry is known once its connection has been open. It cannot have moved
-   * before, so the engine takes its envelope anew.
-   */
+  /** What an actuator's wire can carry is known from when its connection opens; the engine looks it up then. */
   private learnGrids(): void {
-    const before = this.grids.size;
     for (const [channel, grid] of this.wire.grids()) this.grids.set(channel, grid);
-    if (this.grids.size > before && this.envelope !== null) this.engine.setEnvelope(this.envelope);
   }
 }

@@ -21,8 +21,7 @@ export class Wire {
   private readonly lines: Line[];
   private readonly lineByChannel: (Line | undefined)[];
   private readonly indexByChannel = new Map<string, number>();
-  private readonly gathering = new Gathering();
-  private readonly waitMs: number;
+  private readonly gathering: Gathering;
   private lost: LostConnection[] = [];
 
   /**
@@ -39,7 +38,8 @@ export class Wire {
     onChanged: () => void,
     onBug: (error: unknown) => void,
   ) {
-    this.waitMs = Math.max(waitMinMs, rig.periodMs);
+    const gathering = new Gathering(Math.max(waitMinMs, rig.periodMs));
+    this.gathering = gathering;
     rig.channels.forEach((channel, index) => this.indexByChannel.set(channel.id, index));
     const owner = { onLineOpened: onOpened, onLineChanged: onChanged, onBug };
     this.lines = rig.connections.map((definition, at) => {
@@ -49,7 +49,7 @@ export class Wire {
       const field = `connections[${at}].configuration`;
       const configuration = parsed(configurationSchema, definition.configuration, field);
       const channels = channelsOf(rig, definition.id, adapter);
-      return new Line(definition, adapter, configuration, channels, this.readings, this.gathering, owner);
+      return new Line(definition, adapter, configuration, channels, this.readings, gathering, owner);
     });
     this.lineByChannel = rig.channels.map((channel) =>
       channel.kind === 'derived' ? undefined : this.lines.find((l) => l.definition.id === channel.connection),
@@ -58,12 +58,14 @@ export class Wire {
 
   /** Begins to open every connection; resolves when each was tried once, or after `boundMs`. */
   async open(boundMs: number): Promise<void> {
+    this.gathering.start();
     for (const line of this.lines) line.open();
     await within(Promise.all(this.lines.map((line) => line.firstAttempt)), boundMs, undefined);
   }
 
   async close(): Promise<void> {
     await Promise.all(this.lines.map((line) => line.close()));
+    this.gathering.close();
   }
 
   /**
@@ -102,7 +104,7 @@ export class Wire {
   async read(): Promise<void> {
     this.gathering.begin();
     for (const line of this.lines) line.startRead();
-    const wait = this.gathering.all(this.waitMs);
+    const wait = this.gathering.all();
     if (wait !== null) await wait;
     for (const line of this.lines) line.settleReadings();
   }
@@ -115,7 +117,7 @@ export class Wire {
       this.lineByChannel[index]?.queueWrite(index, value);
     }
     for (const line of this.lines) line.startWrite();
-    return this.gathering.all(this.waitMs);
+    return this.gathering.all();
   }
 }
 

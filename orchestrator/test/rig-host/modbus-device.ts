@@ -7,7 +7,7 @@ export class ModbusDevice {
   readonly words = new Uint16Array(40);
   /** Every write it accepted, oldest first. */
   readonly writes: { address: number; value: number }[] = [];
-  /** Registers that it answers by exception 4 (device failure). */
+  /** Registers that it answers by exception 2 (illegal data address). */
   readonly failing = new Set<number>();
   private constructor(
     private readonly face: ServerTCP,
@@ -76,7 +76,8 @@ export class ModbusDevice {
   }
 
   private refuseFailing(address: number): void {
-    if (this.failing.has(address)) throw Object.assign(new Error('device failure'), { modbusErrorCode: 4 });
+    if (this.failing.has(address))
+      throw Object.assign(new Error('illegal data address'), { modbusErrorCode: 2 });
   }
 }
 
