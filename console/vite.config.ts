@@ -8,5 +8,11 @@ export default defineConfig({
   resolve: { conditions: ['source', 'module', 'browser', 'development|production'] },
   server: { host: '127.0.0.1', proxy: { '/api': { target, ws: true } } },
   build: { chunkSizeWarningLimit: 700 },
-  test: { name: 'console', environment: 'jsdom', include: ['src/**/*.test.{ts,tsx}'] },
+  test: {
+    name: 'console',
+    environment: 'jsdom',
+    include: ['src/**/*.test.{ts,tsx}'],
+    setupFiles: ['src/testing/setup.ts'],
+    testTimeout: 20_000,
+  },
 });

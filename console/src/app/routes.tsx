@@ -55,11 +55,13 @@ const withBoundary = (page: RouteObject): RouteObject => ({ ...page, errorElemen
 export const routes: RouteObject[] = [
   {
     path: '/sign-in',
+    hydrateFallbackElement: <span />,
     errorElement: <RouteError />,
     lazy: async () => ({ Component: (await import('../features/auth/sign-in-page.js')).SignInPage }),
   },
   {
     path: '/setup',
+    hydrateFallbackElement: <span />,
     errorElement: <RouteError />,
     lazy: async () => ({ Component: (await import('../features/auth/setup-page.js')).SetupPage }),
   },

@@ -29,7 +29,7 @@ export function Quantity({ value, unit, decimals, integerPlaces = 1, unitPlaces,
       }}
     >
       {alignNumber(value, decimals, integerPlaces, fractionPlaces)}
-      {unit !== '' && (
+      {(unit !== '' || unitPlaces !== undefined) && (
         <Box
           component="span"
           sx={{

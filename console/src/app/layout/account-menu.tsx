@@ -9,7 +9,14 @@ export function AccountMenu() {
   const roleText = session.roles.map((role) => roleTitles[role]).join(', ');
   return (
     <Box sx={{ display: 'flex', alignItems: 'center', gap: 1, minWidth: 0 }}>
-      <Box sx={{ fontSize: '0.75rem', lineHeight: 1.3, textAlign: 'right', minWidth: 0 }}>
+      <Box
+        sx={{
+          fontSize: { xs: '0.6875rem', sm: '0.75rem' },
+          lineHeight: 1.3,
+          textAlign: 'right',
+          minWidth: 0,
+        }}
+      >
         <Box sx={{ fontWeight: 700 }}>{session.title}</Box>
         {roleText.toLowerCase() !== session.title.toLowerCase() && (
           <Box sx={{ color: 'text.secondary', display: { xs: 'none', sm: 'block' } }}>{roleText}</Box>

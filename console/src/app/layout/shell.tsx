@@ -21,13 +21,13 @@ export function Shell() {
           display: 'flex',
           flexWrap: 'wrap',
           alignItems: 'center',
-          columnGap: 3,
+          columnGap: { xs: 1, sm: 3 },
           rowGap: 0.25,
           borderBottom: 1,
           borderColor: 'divider',
         }}
       >
-        <Box sx={{ fontWeight: 700, letterSpacing: { xs: '0.12em', sm: '0.22em' }, fontSize: '0.875rem' }}>
+        <Box sx={{ fontWeight: 700, letterSpacing: { xs: '0.05em', sm: '0.22em' }, fontSize: '0.875rem' }}>
           CRESTHOLD
         </Box>
         <Navigation />

@@ -1,6 +1,6 @@
 import type uPlot from 'uplot';
 import { fontFamily, traceColour, type Paper } from '../../theme/index.js';
-import { formatNumber } from '../format-quantity.js';
+import { formatNumber, plainNumber } from '../format-quantity.js';
 import type { ChartLevel, ChartRange, ChartTrace } from './chart-trace.js';
 
 export interface ChartLook {
@@ -36,7 +36,7 @@ export function uplotOptions(look: ChartLook, width: number, height: number): uP
     },
     axes: [
       { ...axis, size: 24, gap: 4, space: 70, ...(look.xAxis === 'clock' ? { values: clockTimes } : {}) },
-      { ...axis, size: 58, gap: 6, space: 26 },
+      { ...axis, size: 58, gap: 6, space: 26, values: (_chart, values) => values.map(plainNumber) },
     ],
     series: [{}, ...traces.map((trace) => seriesOf(trace, paper))],
     hooks: { drawAxes: [(chart) => drawLevels(chart, look.levels, paper)] },
@@ -81,6 +81,7 @@ function drawLevels(chart: uPlot, levels: readonly ChartLevel[], paper: Paper): 
   ctx.setLineDash([8 * ratio, 3 * ratio, 2 * ratio, 3 * ratio]);
   ctx.font = `${10 * ratio}px ${fontFamily}`;
   ctx.textAlign = 'right';
+  ctx.textBaseline = 'alphabetic';
   for (const level of levels) {
     const y = chart.valToPos(level.value, 'y', true);
     if (y < bbox.top || y > bbox.top + bbox.height) continue;

@@ -37,7 +37,7 @@ function Cards({ rigs }: { rigs: RigDocument[] }) {
       sx={{
         display: 'grid',
         gap: 2,
-        gridTemplateColumns: 'repeat(auto-fill, minmax(min(100%, 22rem), 1fr))',
+        gridTemplateColumns: 'repeat(auto-fill, minmax(min(100%, 36rem), 1fr))',
       }}
     >
       {rigs.map((rig) => (

@@ -9,6 +9,7 @@ import { useLinkState, useRigStatus } from '../../live/index.js';
 import { useSession } from '../auth/index.js';
 import { useEnvelopes } from '../envelopes/index.js';
 import { BestPoint } from './best-point.js';
+import { LiveReadings } from './live-readings.js';
 import { needsOf, type Need } from './needs.js';
 
 /** One rig on the floor: how it stands, what it does, what it waits for. */
@@ -37,8 +38,26 @@ export function RigCard({ rig }: { rig: RigDocument }) {
             First cause: {status.trip.cause}
           </Notice>
         )}
-        <Box sx={{ p: 1.5, flex: 1, display: 'grid', gap: 1.5, alignContent: 'start' }}>
-          <Facts rig={rig} status={status} />
+        <Box
+          sx={{
+            flex: 1,
+            display: 'grid',
+            gridTemplateColumns: { xs: 'minmax(0, 1fr)', sm: 'minmax(0, 2fr) minmax(0, 3fr)' },
+          }}
+        >
+          <Box sx={{ p: 1.5 }}>
+            <Facts rig={rig} status={status} />
+          </Box>
+          <Box
+            sx={{
+              p: 1.5,
+              borderLeft: { sm: 1 },
+              borderTop: { xs: 1, sm: 0 },
+              borderColor: { xs: 'divider', sm: 'divider' },
+            }}
+          >
+            <LiveReadings rig={rig.content} />
+          </Box>
         </Box>
         <Needs needs={needs} />
       </PanelBoundary>

@@ -68,6 +68,7 @@ function RigObjectives({ rig, objectives, editing, onEdit, onClose }: RigObjecti
               flexWrap: 'wrap',
               gap: 1,
               justifyContent: 'space-between',
+              alignItems: 'flex-start',
               '& + &': { borderTop: 1, borderColor: 'divider', pt: 1.5 },
             }}
           >

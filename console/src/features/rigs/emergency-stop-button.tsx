@@ -42,6 +42,7 @@ export function EmergencyStopButton({ rigTitle, state, onPress }: EmergencyStopB
           px: 2,
           flexDirection: 'column',
           textAlign: 'center',
+          fontFamily: 'inherit',
           maxWidth: { xs: 210, sm: 320 },
           '&:hover': { filter: 'brightness(0.9)' },
           '&:focus-visible': { outline: `4px solid ${theme.vars.palette.text.primary}`, outlineOffset: 0 },

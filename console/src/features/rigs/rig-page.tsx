@@ -44,7 +44,7 @@ function RigView({ rig }: { rig: RigDocument }) {
   return (
     <Page
       title={rig.content.title}
-      trail={rig.content.description}
+      lead={rig.content.description}
       aside={
         status && (
           <PhaseMark phase={status.phase} isPaused={status.isPaused} isLockedOut={status.isLockedOut} />

@@ -22,6 +22,7 @@ export function LimitsTable() {
     <Box sx={{ display: 'grid', gap: 1 }}>
       <ResponsiveTable
         label="Actuator limits"
+        minWidthPx={isReadOnly ? 900 : 1500}
         heads={['Actuator', ...limitFields.map(({ label }) => label), ...(isReadOnly ? [] : [''])]}
         rows={rows.map((_, index) => {
           const channel = channelOf(index);

@@ -33,16 +33,18 @@ const asCards = (theme: Theme) => ({
 
 interface ResponsiveTableProps {
   label: string;
+  /** Room that the columns need side by side, px; it scrolls where there is less. */
+  minWidthPx: number;
   heads: readonly string[];
   /** Cells of each row; the first is its head. */
   rows: readonly (readonly ReactNode[])[];
 }
 
 /** A table that scrolls inside itself, and becomes cards where there is no room for it. */
-export function ResponsiveTable({ label, heads, rows }: ResponsiveTableProps) {
+export function ResponsiveTable({ label, minWidthPx, heads, rows }: ResponsiveTableProps) {
   return (
-    <Box sx={{ overflowX: 'auto' }} tabIndex={0} role="region" aria-label={label}>
-      <Table size="small" aria-label={label} sx={[{ minWidth: { md: 1400 } }, asCards]}>
+    <Box sx={{ overflowX: 'auto' }} tabIndex={0} role="region" aria-label={`${label}, table`}>
+      <Table size="small" aria-label={label} sx={[{ minWidth: { md: minWidthPx } }, asCards]}>
         <TableHead>
           <TableRow>
             {heads.map((head, index) => (
