@@ -146,6 +146,28 @@ describe('a trip', () => {
     expect(trip?.later[0]?.at).toBe('1970-01-01T00:00:05.000Z');
   });
 
+  it('is not reset while a later cause is there', () => {
+    const plant = climber();
+    plant.engine.emergencyStop('t', 'pressed', 0);
+    plant.at.temp = 95;
+    plant.scans(10);
+    expect(() => plant.engine.reset('officer', 'all well')).toThrow(/still there/);
+    plant.at.temp = 50;
+    plant.scan();
+    plant.engine.reset('officer', 'all well');
+    expect(plant.phase).toBe('idle');
+  });
+
+  it('is not reset before the stop action is complete', () => {
+    const plant = climber();
+    plant.engine.emergencyStop('t', 'pressed', 0);
+    plant.scans(3);
+    expect(() => plant.engine.reset('officer', 'all well')).toThrow(/still there/);
+    plant.scans(4);
+    plant.engine.reset('officer', 'all well');
+    expect(plant.at.valve).toBe(20);
+  });
+
   it('latched before the engine began starts it in tripped, and completes the stop action', () => {
     const trip = {
       cause: 'host-lost',
