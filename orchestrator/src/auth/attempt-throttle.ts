@@ -47,6 +47,12 @@ export class AttemptThrottle {
     this.attemptsByKey.delete(key);
   }
 
+  /** Takes the last attempt back, without clearing those before. */
+  undo(key: string): void {
+    const attempts = this.attemptsByKey.get(key);
+    if (attempts !== undefined) attempts.count -= 1;
+  }
+
   private isForgotten(attempts: Attempts, nowS: number): boolean {
     return nowS - attempts.lastAtS > this.rule.forgetAfterS;
   }

@@ -14,7 +14,7 @@ export function loadSessionSecret(dataFolder: string): string {
   try {
     writeFileSync(file, randomBytes(secretBytes).toString('hex'), { mode: 0o600, flag: 'wx' });
   } catch (error) {
-    if (!(error instanceof Error && 'code' in error && error.code === 'EEXIST')) throw error;
+    if ((error as NodeJS.ErrnoException).code !== 'EEXIST') throw error;
   }
   const secret = readFileSync(file, 'utf8').trim();
   if (secret.length < secretBytes * 2) {

@@ -41,16 +41,23 @@ export class SignInThrottle {
   }
 
   succeed(account: string, address: string): void {
-    for (const [throttle, key] of this.keys(account, address)) throttle.succeed(key);
+    this.perPair.succeed(pairKey(account, address));
+    this.perAccount.succeed(account);
+    // Taken back only: else one right password would clear the guesses at other accounts from this address.
+    this.perAddress.undo(address);
   }
 
   private keys(account: string, address: string): [AttemptThrottle, string][] {
     return [
-      [this.perPair, `${account}\n${address}`],
+      [this.perPair, pairKey(account, address)],
       [this.perAddress, address],
       [this.perAccount, account],
     ];
   }
+}
+
+function pairKey(account: string, address: string): string {
+  return `${account}\n${address}`;
 }
 
 /** Seconds on a clock that nobody can set back. */

@@ -2,6 +2,13 @@ import { AsyncLocalStorage } from 'node:async_hooks';
 import { Injectable } from '@nestjs/common';
 import { DataSource, type EntityManager } from 'typeorm';
 
+/** A transaction that is going on. */
+interface OpenTransaction {
+  readonly manager: EntityManager;
+  /** False once it has ended: what it started and did not wait for must not write through it any more. */
+  isOpen: boolean;
+}
+
 /**
  * The one queue of everything that writes to the main database. TypeORM has a single connection to SQLite:
  * transactions that overlap break each other, and a write beside an open transaction joins it and is lost
@@ -12,7 +19,7 @@ import { DataSource, type EntityManager } from 'typeorm';
 @Injectable()
 export class TransactionQueue {
   private tail: Promise<unknown> = Promise.resolve();
-  private readonly current = new AsyncLocalStorage<EntityManager>();
+  private readonly current = new AsyncLocalStorage<OpenTransaction>();
 
   constructor(private readonly dataSource: DataSource) {}
 
@@ -22,12 +29,19 @@ export class TransactionQueue {
    */
   transaction<T>(work: (manager: EntityManager) => Promise<T>): Promise<T> {
     const outer = this.current.getStore();
-    if (outer !== undefined) return work(outer);
-    const result = this.tail.then(() =>
-      this.dataSource.transaction((manager) => this.current.run(manager, () => work(manager))),
-    );
+    if (outer?.isOpen === true) return work(outer.manager);
+    const result = this.tail.then(() => this.dataSource.transaction((manager) => this.runIn(manager, work)));
     this.tail = result.catch(() => undefined);
     return result;
+  }
+
+  private async runIn<T>(manager: EntityManager, work: (manager: EntityManager) => Promise<T>): Promise<T> {
+    const transaction: OpenTransaction = { manager, isOpen: true };
+    try {
+      return await this.current.run(transaction, () => work(manager));
+    } finally {
+      transaction.isOpen = false;
+    }
   }
 
   /** Resolves when everything asked for so far is done. */

@@ -63,6 +63,22 @@ describe('TransactionQueue', () => {
     expect(await actions()).toEqual([]);
   });
 
+  it('gives what a transaction started and did not wait for a transaction of its own', async () => {
+    let left: Promise<void> = Promise.resolve();
+    await queue.transaction(async (manager) => {
+      await add(manager, 'first');
+      left = wait(5).then(() =>
+        queue.transaction(async (inner) => {
+          await add(inner, 'undone');
+          throw new Error('no');
+        }),
+      );
+      left.catch(() => undefined);
+    });
+    await expect(left).rejects.toThrow('no');
+    expect(await actions()).toEqual(['first']);
+  });
+
   it('is drained when all that was asked for is done', async () => {
     void queue.transaction(async (manager) => {
       await wait(5);
