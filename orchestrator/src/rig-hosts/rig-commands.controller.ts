@@ -1,21 +1,21 @@
 import { Body, Controller, Get, HttpCode, Param, Post, Put } from '@nestjs/common';
-import { ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
+import { ApiBody, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { RigStatus } from '@cresthold/shared';
 import { Roles } from '../auth/access.decorator.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { rigStatusDtoSchema } from '../rigs/dto/rig.dto.js';
 import {
-  emergencyStopSchema,
+  emergencyStopBody,
   lockoutSchema,
   moveSchema,
   reasonedSchema,
   rigStatusListSchema,
-  type EmergencyStop,
   type LockoutChange,
   type Move,
   type Reasoned,
 } from './dto/rig-commands.dto.js';
 import { RigCommandsService } from './rig-commands.service.js';
+import { StopReason } from './stop-reason.js';
 
 /** What people do to a rig by hand. Each answers with the rig's status as it follows. */
 @ApiTags('rigs')
@@ -29,12 +29,10 @@ export class RigCommandsController {
   @ApiOperation({
     summary: 'Stops every rig at once and latches it. A software stop: no substitute for the hard-wired one.',
   })
+  @ApiBody(emergencyStopBody)
   @ApiOkResponse({ standardSchema: rigStatusListSchema })
-  emergencyStopAll(
-    @Body({ schema: emergencyStopSchema }) body: EmergencyStop,
-    @CurrentUser() user: SignedInUser,
-  ): Promise<RigStatus[]> {
-    return this.commands.emergencyStopAll(body, user.account);
+  emergencyStopAll(@StopReason() reason: string, @CurrentUser() user: SignedInUser): Promise<RigStatus[]> {
+    return this.commands.emergencyStopAll(reason, user.account);
   }
 
   @Get(':rigId/status')
@@ -82,13 +80,14 @@ export class RigCommandsController {
   @ApiOperation({
     summary: 'Stops the rig at once and latches it. A software stop: no substitute for the hard-wired one.',
   })
+  @ApiBody(emergencyStopBody)
   @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   emergencyStop(
     @Param('rigId') rigId: string,
-    @Body({ schema: emergencyStopSchema }) body: EmergencyStop,
+    @StopReason() reason: string,
     @CurrentUser() user: SignedInUser,
   ): Promise<RigStatus> {
-    return this.commands.emergencyStop(rigId, body, user.account);
+    return this.commands.emergencyStop(rigId, reason, user.account);
   }
 
   @Post(':rigId/reset')

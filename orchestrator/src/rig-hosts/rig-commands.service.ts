@@ -2,10 +2,8 @@ import { Injectable } from '@nestjs/common';
 import type { RigStatus } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
 import { RigStore } from '../rigs/rig-store.js';
-import type { EmergencyStop, LockoutChange, Move } from './dto/rig-commands.dto.js';
+import type { LockoutChange, Move } from './dto/rig-commands.dto.js';
 import { RigHostsService } from './rig-hosts.service.js';
-
-const noReason = 'Emergency stop pressed.';
 
 /** What people do to a rig by hand; each act is kept with who did it. */
 @Injectable()
@@ -40,15 +38,13 @@ export class RigCommandsService {
   }
 
   /** The stop comes first, its entry in the audit log after it. */
-  async emergencyStop(rigId: string, request: EmergencyStop, by: string): Promise<RigStatus> {
-    const reason = reasonOf(request);
+  async emergencyStop(rigId: string, reason: string, by: string): Promise<RigStatus> {
     const status = await this.hosts.emergencyStop(rigId, by, reason);
     await this.audit.record({ account: by, action: 'rig.emergency-stopped', rigId, reason });
     return status;
   }
 
-  async emergencyStopAll(request: EmergencyStop, by: string): Promise<RigStatus[]> {
-    const reason = reasonOf(request);
+  async emergencyStopAll(reason: string, by: string): Promise<RigStatus[]> {
     const statuses = await this.hosts.emergencyStopAll(by, reason);
     await this.audit.record({ account: by, action: 'rig.all-emergency-stopped', reason });
     return statuses;
@@ -69,8 +65,4 @@ export class RigCommandsService {
     await this.audit.record({ account: by, action, rigId, reason });
     return this.hosts.setLockout(rigId, isLockedOut);
   }
-}
-
-function reasonOf(request: EmergencyStop): string {
-  return request?.reason || noReason;
 }

@@ -1,8 +1,11 @@
 import { setTimeout as sleep } from 'node:timers/promises';
+import { isDeepStrictEqual } from 'node:util';
 import { DomainError, type FromHost, type HostCommand } from '@cresthold/shared';
 import { HostLife, type HostDeath, type HostProgram } from './supervision/host-life.js';
 import { RestartBudget } from './supervision/restart-budget.js';
 import type { RestartPolicy, SupervisionTiming } from './supervision/supervision-options.js';
+
+export type HostConfiguration = Extract<HostCommand, { type: 'configure' }>;
 
 /** What the owner of a rig host must do and is told. None of these may throw but `configuration`. */
 export interface RigHostOwner {
@@ -11,7 +14,7 @@ export interface RigHostOwner {
   /** Called right after a fork. */
   onForked(pid: number): void;
   /** Called after each READY: the command that configures the host. */
-  configuration(): Promise<Extract<HostCommand, { type: 'configure' }>>;
+  configuration(): Promise<HostConfiguration>;
   onMessage(message: FromHost): void;
   /** A host died; awaited before it is begun again. Not called when the host ended as asked. */
   onDeath(death: HostDeath): Promise<void>;
@@ -120,12 +123,23 @@ export class RigHostProcess {
     }
     this.keeping = life.ended.then((death) => this.outlive(life, death));
     try {
-      await life.configure(await this.owner.configuration());
-      if (!this.isEnding()) this.current = { name: 'up' };
+      const sent = await this.owner.configuration();
+      await life.configure(sent);
+      if (this.isEnding()) return;
+      this.current = { name: 'up' };
+      await this.catchUp(life, sent);
     } catch (error) {
       // A refusal would come again; a death on the way is one like any other.
       if (!life.isDead) await this.giveUp(life, error);
     }
+  }
+
+  /** What was stored while the host was being configured, e.g. an emergency stop, reaches it as well. */
+  private async catchUp(life: HostLife, sent: HostConfiguration): Promise<void> {
+    const stored = await this.owner.configuration();
+    if (isSameConfiguration(sent, stored)) return;
+    await life.configure(stored);
+    await this.catchUp(life, stored);
   }
 
   /** A host that drives its rig by other documents than the stored ones is ended: it is brought to rest. */
@@ -181,4 +195,10 @@ export class RigHostProcess {
 
 function textOf(error: unknown): string {
   return error instanceof Error ? error.message : String(error);
+}
+
+/** The host itself adds to what followed a trip: that alone is no other configuration. */
+function isSameConfiguration(a: HostConfiguration, b: HostConfiguration): boolean {
+  const strip = ({ trip, ...rest }: HostConfiguration) => ({ ...rest, tripped: [trip?.cause, trip?.at] });
+  return isDeepStrictEqual(strip(a), strip(b));
 }

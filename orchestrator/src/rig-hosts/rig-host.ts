@@ -1,6 +1,6 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import type { Logger } from '@nestjs/common';
-import type { FromHost, HostCommand, RigStatus, Trip } from '@cresthold/shared';
+import { DomainError, type FromHost, type HostCommand, type RigStatus, type Trip } from '@cresthold/shared';
 import type { EnvelopeStore } from '../envelopes/envelope-store.js';
 import { firstValueFrom, Subject } from 'rxjs';
 import type { RunRecords } from '../recordings/run-records.service.js';
@@ -9,7 +9,7 @@ import type { HostFeed } from './host-feed.js';
 import { hostFiles } from './host-files.js';
 import type { LatchedTrips } from './latched-trips.service.js';
 import { statusWithoutHost } from './offline-status.js';
-import { RigHostProcess, type RigHostOwner } from './rig-host-process.js';
+import { RigHostProcess, type HostConfiguration, type RigHostOwner } from './rig-host-process.js';
 import type { HostDeath, HostProgram } from './supervision/host-life.js';
 import { HostPidFile } from './supervision/host-pid-file.js';
 import type { RigHostSettings } from './rig-host-settings.js';
@@ -81,8 +81,12 @@ export class RigHost implements RigHostOwner {
     return this.status();
   }
 
+  /** A person's command to a host that has failed is also the word to begin it again. */
   async request(command: HostCommand): Promise<void> {
-    await this.process.request(command);
+    if (this.process.state.name !== 'failed') return this.process.request(command);
+    const text = `${this.fault} It is begun again now: try again in a moment.`;
+    this.process.start().catch(() => undefined);
+    throw new DomainError('host.unavailable', text);
   }
 
   /** Resolves when everything heard so far is on disk. */
@@ -112,7 +116,7 @@ export class RigHost implements RigHostOwner {
     this.pidFile.write(pid);
   }
 
-  async configuration(): Promise<Extract<HostCommand, { type: 'configure' }>> {
+  async configuration(): Promise<HostConfiguration> {
     const { rigs, envelopes } = this.parts;
     const { content: rig } = await rigs.get(this.rigId);
     const { trip, lockout } = await rigs.state(this.rigId);

@@ -91,16 +91,18 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
    */
   async emergencyStop(rigId: string, by: string, reason: string): Promise<RigStatus> {
     const host = await this.host(rigId);
-    const told = host.request({ type: 'emergency-stop', by, reason });
+    const command: HostCommand = { type: 'emergency-stop', by, reason };
     const at = new Date().toISOString();
     const trip: Trip = { cause: 'emergency-stop', message: reason, at, by, later: [] };
-    await told.then(
-      () => this.trips.latchFirst(rigId, trip),
-      async (error: unknown) => {
-        this.logger.warn(`Rig "${rigId}": its host did not take the emergency stop. ${String(error)}`);
-        await this.trips.latch(rigId, trip);
-      },
-    );
+    try {
+      await host.request(command);
+      await this.trips.latchFirst(rigId, trip);
+    } catch (error) {
+      this.logger.warn(`Rig "${rigId}": its host did not take the emergency stop. ${String(error)}`);
+      await this.trips.latch(rigId, trip);
+      // It may have come up in between, with what was on disk before.
+      if (host.heard?.trip === null) await host.request(command);
+    }
     return host.statusAfterCommand();
   }
 

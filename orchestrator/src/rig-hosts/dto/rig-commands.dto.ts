@@ -2,6 +2,9 @@ import { channelIdSchema } from '@cresthold/shared';
 import { z } from 'zod';
 import { rigStatusDtoSchema } from '../../rigs/dto/rig.dto.js';
 
+/** A longer reason for an emergency stop is cut. */
+export const stopReasonLengthMax = 300;
+
 const reasonSchema = z.string().trim().min(1, 'Give a reason.').max(300, 'At most 300 characters.');
 
 export const rigStatusListSchema = z.array(rigStatusDtoSchema);
@@ -15,11 +18,14 @@ export const moveSchema = z
   .meta({ id: 'Move' });
 export type Move = z.infer<typeof moveSchema>;
 
-export const emergencyStopSchema = z
-  .object({ reason: z.string().trim().max(300, 'At most 300 characters.').optional() })
-  .optional()
-  .meta({ id: 'EmergencyStop' });
-export type EmergencyStop = z.infer<typeof emergencyStopSchema>;
+/** Described here, judged by nobody: see `StopReason`. */
+export const emergencyStopBody = {
+  required: false,
+  schema: {
+    type: 'object',
+    properties: { reason: { type: 'string', maxLength: stopReasonLengthMax } },
+  },
+} as const;
 
 export const reasonedSchema = z.object({ reason: reasonSchema }).meta({ id: 'Reasoned' });
 export type Reasoned = z.infer<typeof reasonedSchema>;

@@ -1,4 +1,5 @@
 import { closeSync } from 'node:fs';
+import { constants, setPriority } from 'node:os';
 import { fork, type ChildProcess } from 'node:child_process';
 import { DomainError, type FromHost, type HostCommand, type ToHost } from '@cresthold/shared';
 import { FloodGauge } from './flood-gauge.js';
@@ -71,6 +72,7 @@ export class HostLife {
     this.ready.catch(() => undefined);
     this.ended = new Promise((resolve) => (this.resolveEnded = resolve));
     this.child = forkProgram(program);
+    raisePriority(this.child.pid);
     this.listen();
   }
 
@@ -221,5 +223,14 @@ function forkProgram({ file, args, outputFile }: HostProgram): ChildProcess {
   } finally {
     // The child has a copy of its own.
     if (outputFd !== null) closeSync(outputFd);
+  }
+}
+
+/** Where the system lets us: a rig must not wait for the server's or anybody else's work. */
+function raisePriority(pid: number | undefined): void {
+  try {
+    if (pid !== undefined) setPriority(pid, constants.priority.PRIORITY_HIGH);
+  } catch {
+    // Only a privileged account may: the host then runs as everything else does.
   }
 }
