@@ -1,7 +1,7 @@
 import { fork } from 'node:child_process';
 import { once } from 'node:events';
 import { resolve } from 'node:path';
-import { ModbusDevice } from './modbus-device';
+import { ModbusDevice } from './modbus-device.js';
 
 jest.setTimeout(90_000);
 

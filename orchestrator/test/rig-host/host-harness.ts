@@ -11,7 +11,7 @@ import {
   type Rig,
   type RigStatus,
 } from '@cresthold/shared';
-import { testEnvelope, testGraph } from './test-rig';
+import { testEnvelope, testGraph } from './test-rig.js';
 
 const program = resolve(__dirname, '../../dist/rig-host/main.js');
 
@@ -26,8 +26,12 @@ export class HostHarness {
   private readonly alive: NodeJS.Timeout;
   private nextRequestId = 1;
 
-  private constructor() {
-    this.child = fork(program, { serialization: 'advanced', stdio: ['ignore', 'ignore', 'inherit', 'ipc'] });
+  private constructor(execArgv: string[]) {
+    this.child = fork(program, {
+      serialization: 'advanced',
+      stdio: ['ignore', 'ignore', execArgv.length > 0 ? 'ignore' : 'inherit', 'ipc'],
+      execArgv,
+    });
     this.child.on('message', (value) => {
       const parsed = fromHostSchema.safeParse(value);
       if (parsed.success) this.messages.push(parsed.data);
@@ -38,14 +42,19 @@ export class HostHarness {
     void this.exited.then(() => clearInterval(this.alive));
   }
 
-  static async start(): Promise<HostHarness> {
-    const host = new HostHarness();
+  /** @param execArgv for a fault planted by the test; what it prints is then left out */
+  static async start(execArgv: string[] = []): Promise<HostHarness> {
+    const host = new HostHarness(execArgv);
     await host.until(() => host.last('ready'), 'ready');
     return host;
   }
 
-  static async configured(rig: Rig, envelope: EnvelopeInForce | null = testEnvelope()): Promise<HostHarness> {
-    const host = await HostHarness.start();
+  static async configured(
+    rig: Rig,
+    envelope: EnvelopeInForce | null = testEnvelope(),
+    execArgv: string[] = [],
+  ): Promise<HostHarness> {
+    const host = await HostHarness.start(execArgv);
     await host.ask({ type: 'configure', rig, envelope, trip: null, isLockedOut: false });
     return host;
   }

@@ -1,6 +1,6 @@
 import { setTimeout as delay } from 'node:timers/promises';
-import { monotonicS } from '../../src/rig-host/monotonic-clock';
-import { PeriodPacer } from '../../src/rig-host/pacer';
+import { monotonicS } from '../../src/rig-host/monotonic-clock.js';
+import { PeriodPacer } from '../../src/rig-host/pacer.js';
 
 describe('period pacer', () => {
   it('keeps to absolute due times: lateness does not add up', async () => {

@@ -3,8 +3,8 @@ import { join, resolve } from 'node:path';
 import { setTimeout as delay } from 'node:timers/promises';
 import { pathToFileURL } from 'node:url';
 import Database from 'better-sqlite3';
-import { Recorder } from '../../src/rig-host/recorder';
-import { temporaryFolder, testManifest } from './run-file-fixture';
+import { Recorder } from '../../src/rig-host/recorder.js';
+import { temporaryFolder, testManifest } from './run-file-fixture.js';
 
 const workerFile = pathToFileURL(resolve(__dirname, '../../dist/rig-host/recorder-worker.js'));
 const manifest = testManifest();

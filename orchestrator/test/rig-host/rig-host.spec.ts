@@ -1,9 +1,9 @@
 import { join } from 'node:path';
-import { RunFileReader } from '../../src/recordings/run-file';
-import { expectContinuous, HostHarness, storedRun } from './host-harness';
-import { ModbusDevice } from './modbus-device';
-import { temporaryFolder } from './run-file-fixture';
-import { testRig } from './test-rig';
+import { RunFileReader } from '../../src/recordings/run-file/index.js';
+import { expectContinuous, HostHarness, storedRun } from './host-harness.js';
+import { ModbusDevice } from './modbus-device.js';
+import { temporaryFolder } from './run-file-fixture.js';
+import { testRig } from './test-rig.js';
 
 jest.setTimeout(90_000);
 

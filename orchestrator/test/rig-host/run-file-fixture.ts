@@ -2,9 +2,9 @@ import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { runColumns } from '@cresthold/shared';
-import { rowLead, runFileSchemaVersion, type RunManifest } from '../../src/recordings/run-file';
-import type { ScanBatch } from '../../src/recordings/run-file/scan-batch';
-import { testEnvelope, testGraph, testRig } from './test-rig';
+import { rowLead, runFileSchemaVersion, type RunManifest } from '../../src/recordings/run-file/index.js';
+import type { ScanBatch } from '../../src/recordings/run-file/scan-batch.js';
+import { testEnvelope, testGraph, testRig } from './test-rig.js';
 
 /** A folder that the test removes. */
 export function temporaryFolder(): { path: string; remove: () => void } {

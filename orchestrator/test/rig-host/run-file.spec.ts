@@ -2,8 +2,13 @@ import { createHash } from 'node:crypto';
 import { existsSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import Database from 'better-sqlite3';
-import { closeInterrupted, RunFileReader, RunFileWriter, sealFile } from '../../src/recordings/run-file';
-import { temporaryFolder, testBatch, testManifest } from './run-file-fixture';
+import {
+  closeInterrupted,
+  RunFileReader,
+  RunFileWriter,
+  sealFile,
+} from '../../src/recordings/run-file/index.js';
+import { temporaryFolder, testBatch, testManifest } from './run-file-fixture.js';
 
 const manifest = testManifest();
 const columnCount = manifest.columns.length;
@@ -159,6 +164,13 @@ describe('run file', () => {
     const events = await reader.events();
     expect(events.at(-1)).toMatchObject({ sequence: 2, tS: 1.2, body: { type: 'run.ended' } });
     await reader.close();
+  });
+
+  it('is not sealed while somebody has it open, and says so', async () => {
+    const { file, writer } = await written(10, (k) => k);
+    await expect(sealFile(file)).rejects.toMatchObject({ code: 'run.not-running' });
+    await writer.end(end);
+    expect(await sealFile(file)).toMatch(/^[0-9a-f]{64}$/);
   });
 
   it('is sealed as one file whose hash is that of its bytes and does not change by reading', async () => {

@@ -1,4 +1,4 @@
-import { ScanStatistics } from '../../src/rig-host/scan-statistics';
+import { ScanStatistics } from '../../src/rig-host/scan-statistics.js';
 
 describe('scan statistics', () => {
   it('know the 99th percentile of lateness to a tenth', () => {

@@ -1,13 +1,14 @@
 import { once } from 'node:events';
 import { createServer, type AddressInfo } from 'node:net';
 import { existsSync } from 'node:fs';
-import { join } from 'node:path';
+import { join, resolve } from 'node:path';
 import { setTimeout as delay } from 'node:timers/promises';
-import { closeInterrupted } from '../../src/recordings/run-file';
-import { expectContinuous, HostHarness, storedRun } from './host-harness';
-import { ModbusDevice } from './modbus-device';
-import { temporaryFolder } from './run-file-fixture';
-import { testEnvelope, testRig } from './test-rig';
+import Database from 'better-sqlite3';
+import { closeInterrupted } from '../../src/recordings/run-file/index.js';
+import { expectContinuous, HostHarness, storedRun } from './host-harness.js';
+import { ModbusDevice } from './modbus-device.js';
+import { temporaryFolder } from './run-file-fixture.js';
+import { testEnvelope, testRig } from './test-rig.js';
 
 jest.setTimeout(90_000);
 
@@ -25,9 +26,9 @@ describe('rig host, by every way to die', () => {
   });
   afterAll(folder.remove);
 
-  async function runAtFour(name: string): Promise<string> {
+  async function runAtFour(name: string, execArgv: string[] = []): Promise<string> {
     const file = join(folder.path, `${name}.sqlite`);
-    host = await HostHarness.configured(testRig(device.port));
+    host = await HostHarness.configured(testRig(device.port), testEnvelope(), execArgv);
     await host.startRun(name, file, 600);
     await host.until(() => device.airTrim === 4, 'the air trim at 4');
     return file;
@@ -38,11 +39,11 @@ describe('rig host, by every way to die', () => {
     host.child.disconnect();
     expect(await host.exited).toEqual({ code: 0, signal: null });
     expect(device.airTrim).toBe(0);
+    expect(existsSync(`${file}-wal`)).toBe(false);
     const run = storedRun(file);
     expectContinuous(run);
     expect(run.end).toMatchObject({ status: 'tripped', scans: run.ks.length });
     expect(run.eventTypes).toContain('rig.tripped');
-    expect(existsSync(`${file}-wal`)).toBe(false);
   });
 
   it('SIGTERM: it stops the run in order, comes to rest, and ends by itself', async () => {
@@ -82,6 +83,34 @@ describe('rig host, by every way to die', () => {
     const marked = await closeInterrupted(file, 'The rig host was killed.');
     expect(marked).toMatchObject({ status: 'interrupted', scans: run.ks.length });
     expect(storedRun(file).eventTypes.at(-1)).toBe('run.ended');
+  });
+
+  it('an exception that nothing catches: it trips, stops the rig, and ends with a code of its own', async () => {
+    const fault = resolve(__dirname, 'planted-fault.cjs');
+    const file = await runAtFour('exception', ['--require', fault]);
+    host.child.kill('SIGUSR2');
+    expect(await host.exited).toEqual({ code: 70, signal: null });
+    expect(device.airTrim).toBe(0);
+    expect(host.of('log').some((m) => m.text.includes('planted by a test'))).toBe(true);
+    expect(host.of('status').at(-1)?.status.trip?.cause).toBe('host-fault');
+    const run = storedRun(file);
+    expectContinuous(run);
+    expect(run.end?.status).toBe('tripped');
+  });
+
+  it('the disk does not take samples: it trips, and has them all once the disk does again', async () => {
+    const file = await runAtFour('disk');
+    const other = new Database(file);
+    other.exec('BEGIN IMMEDIATE');
+    const tripped = await host.untilStatus((s) => s.phase === 'tripped', 'tripped');
+    expect(tripped.trip).toMatchObject({ cause: 'recorder', message: expect.stringContaining('locked') });
+    other.exec('ROLLBACK');
+    other.close();
+    const ended = await host.until(() => host.last('run-ended'), 'the end of the run');
+    const run = storedRun(file);
+    expectContinuous(run);
+    expect(run.ks).toHaveLength(ended.scans);
+    expect(run.end?.status).toBe('tripped');
   });
 
   it('the wire is cut: it trips, records that, and stops the rig once the wire is back', async () => {

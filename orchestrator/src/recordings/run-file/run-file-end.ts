@@ -3,7 +3,7 @@ import { createReadStream } from 'node:fs';
 import { pipeline } from 'node:stream/promises';
 import { DomainError, type RunEvent } from '@cresthold/shared';
 import { RunFileReader } from './run-file-reader.js';
-import { inTransaction, openRunFileSource } from './run-file-source.js';
+import { foldLog, inTransaction, openRunFileSource } from './run-file-source.js';
 import type { RunEnd } from './run-file.types.js';
 
 /**
@@ -49,26 +49,25 @@ async function appendEnd(file: string, end: RunEnd, event: RunEvent): Promise<vo
         JSON.stringify(event.body),
       ]);
     });
-    await source.query('PRAGMA wal_checkpoint(TRUNCATE)');
+    await foldLog(source);
   } finally {
     await source.destroy();
   }
 }
 
 /**
- * Folds the write-ahead log into the file, takes the file out of WAL mode so that reading it never
- * again writes beside it, and hashes it.
+ * Makes the file stand alone, and hashes it.
  *
  * @returns SHA-256 of the file's bytes, hexadecimal
  * @throws run.no-samples where there is no such file
+ * @throws run.not-running where somebody has it open
  */
 export async function sealFile(file: string): Promise<string> {
   const reader = await RunFileReader.open(file);
   await reader.close();
   const source = await openRunFileSource(file, 'read');
   try {
-    const modes: { journal_mode: string }[] = await source.query('PRAGMA journal_mode = DELETE');
-    if (modes[0]?.journal_mode !== 'delete') {
+    if (!(await foldLog(source))) {
       throw new DomainError('run.not-running', 'The run file is still being written or read: try again.');
     }
   } finally {

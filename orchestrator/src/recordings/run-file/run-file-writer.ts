@@ -1,6 +1,6 @@
 import type { RunColumn, RunEvent } from '@cresthold/shared';
 import type { DataSource } from 'typeorm';
-import { inTransaction, openRunFileSource, quoted } from './run-file-source.js';
+import { foldLog, inTransaction, openRunFileSource, quoted } from './run-file-source.js';
 import { rowLead, type ScanBatch } from './scan-batch.js';
 import type { RunEnd, RunManifest } from './run-file.types.js';
 
@@ -54,7 +54,7 @@ export class RunFileWriter {
     this.scans += batch.rows;
   }
 
-  /** Records how the run ended, and leaves one file without a log beside it. */
+  /** Records how the run ended, and leaves one file without a log beside it where nobody reads it. */
   async end(end: Omit<RunEnd, 'scans'>): Promise<RunEnd> {
     const complete: RunEnd = { ...end, scans: this.scans };
     await inTransaction(this.source, () => this.putManifest('end', complete));
@@ -64,7 +64,7 @@ export class RunFileWriter {
 
   /** Closes without an end record. */
   async close(): Promise<void> {
-    await this.source.query('PRAGMA wal_checkpoint(TRUNCATE)');
+    await foldLog(this.source);
     await this.source.destroy();
   }
 
