@@ -10,7 +10,7 @@ import { adapterListSchema, type Adapter } from './dto/adapter.dto.js';
 export class AdaptersController {
   @Get()
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List the installed adapters with what they must be told.' })
+  @ApiOperation({ summary: 'Lists the installed adapters with what they must be told.' })
   @ApiOkResponse({ standardSchema: adapterListSchema })
   list(): Page<Adapter> {
     // A handful at most, fixed at start: always one page.

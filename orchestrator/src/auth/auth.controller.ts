@@ -1,5 +1,5 @@
 import { Body, Controller, Get, HttpCode, Inject, Ip, Post, Res } from '@nestjs/common';
-import { ApiNoContentResponse, ApiOkResponse, ApiTags } from '@nestjs/swagger';
+import { ApiNoContentResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
 import { CONFIG } from '../config/config.module.js';
 import type { Config } from '../config/config.schema.js';
@@ -17,10 +17,10 @@ export class AuthController {
     @Inject(CONFIG) private readonly config: Config,
   ) {}
 
-  /** Signs in: answers who it is and sets the session cookie. */
   @Post('sign-in')
   @HttpCode(200)
   @Roles('anyone')
+  @ApiOperation({ summary: 'Signs in: answers who it is and sets the session cookie.' })
   @ApiOkResponse({ standardSchema: sessionSchema })
   async signIn(
     @Body({ schema: signInSchema }) body: SignIn,
@@ -32,10 +32,10 @@ export class AuthController {
     return session;
   }
 
-  /** Signs out this browser. */
   @Post('sign-out')
   @HttpCode(204)
   @Roles('signed-in')
+  @ApiOperation({ summary: 'Signs out this browser.' })
   @ApiNoContentResponse()
   signOut(@Res({ passthrough: true }) response: Response): void {
     response.clearCookie(sessionCookieName, {
@@ -44,9 +44,9 @@ export class AuthController {
     });
   }
 
-  /** Says who is signed in. */
   @Get('session')
   @Roles('signed-in')
+  @ApiOperation({ summary: 'Says who is signed in.' })
   @ApiOkResponse({ standardSchema: sessionSchema })
   session(@CurrentUser() user: SignedInUser): Session {
     return user;

@@ -28,7 +28,7 @@ export class EnvelopesController {
 
   @Get('rigs/:rigId/envelopes')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List the envelopes of a rig, newest first.' })
+  @ApiOperation({ summary: 'Lists the envelopes of a rig, newest first.' })
   @ApiOkResponse({ standardSchema: envelopePageSchema })
   list(
     @Param('rigId') rigId: string,
@@ -39,7 +39,7 @@ export class EnvelopesController {
 
   @Post('rigs/:rigId/envelopes')
   @Roles('test-engineer', 'safety-officer')
-  @ApiOperation({ summary: 'Draft an envelope.' })
+  @ApiOperation({ summary: 'Drafts an envelope.' })
   @ApiCreatedResponse({ standardSchema: envelopeSchema })
   async create(
     @Param('rigId') rigId: string,
@@ -55,7 +55,7 @@ export class EnvelopesController {
 
   @Get('envelopes/:id')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'Read an envelope; answers an ETag.' })
+  @ApiOperation({ summary: 'Reads an envelope; answers an ETag.' })
   @ApiOkResponse({ standardSchema: envelopeSchema })
   async get(@Param('id') id: string, @Res({ passthrough: true }) response: Response): Promise<Envelope> {
     const envelope = await this.drafts.get(id);
@@ -66,7 +66,7 @@ export class EnvelopesController {
   @Put('envelopes/:id')
   @Roles('test-engineer', 'safety-officer')
   @ApiIfMatch()
-  @ApiOperation({ summary: 'Change a draft or a returned envelope; its author only.' })
+  @ApiOperation({ summary: 'Changes a draft or a returned envelope; its author only.' })
   @ApiOkResponse({ standardSchema: envelopeSchema })
   async change(
     @Param('id') id: string,
@@ -83,7 +83,7 @@ export class EnvelopesController {
   @Post('envelopes/:id/submit')
   @HttpCode(200)
   @Roles('test-engineer', 'safety-officer')
-  @ApiOperation({ summary: 'Hand a draft in for approval; its author only.' })
+  @ApiOperation({ summary: 'Hands a draft in for approval; its author only.' })
   @ApiOkResponse({ standardSchema: envelopeSchema })
   submit(@Param('id') id: string, @CurrentUser() by: SignedInUser): Promise<Envelope> {
     return this.drafts.submit(id, by.account);
@@ -93,7 +93,7 @@ export class EnvelopesController {
   @HttpCode(200)
   @Roles('safety-officer')
   @ApiIfMatch(false)
-  @ApiOperation({ summary: 'Put a submitted envelope in force; never its author.' })
+  @ApiOperation({ summary: 'Puts a submitted envelope in force; never its author.' })
   @ApiOkResponse({ standardSchema: envelopeSchema })
   approve(
     @Param('id') id: string,
@@ -108,7 +108,7 @@ export class EnvelopesController {
   @HttpCode(200)
   @Roles('safety-officer')
   @ApiIfMatch(false)
-  @ApiOperation({ summary: 'Give a submitted envelope back to its author; never the author.' })
+  @ApiOperation({ summary: 'Gives a submitted envelope back to its author; never the author.' })
   @ApiOkResponse({ standardSchema: envelopeSchema })
   giveBack(
     @Param('id') id: string,

@@ -37,7 +37,7 @@ export class ExperimentsController {
 
   @Get()
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List experiments, of one rig or of all.' })
+  @ApiOperation({ summary: 'Lists experiments, of one rig or of all.' })
   @ApiOkResponse({ standardSchema: experimentPageSchema })
   list(@Query({ schema: experimentQuerySchema }) query: ExperimentQuery): Promise<Page<Experiment>> {
     return this.experiments.list(query);
@@ -45,7 +45,7 @@ export class ExperimentsController {
 
   @Post()
   @Roles('test-engineer')
-  @ApiOperation({ summary: 'Make an experiment with its version 1.' })
+  @ApiOperation({ summary: 'Makes an experiment with its version 1.' })
   @ApiCreatedResponse({ standardSchema: experimentSchema })
   async create(
     @Body({ schema: createExperimentSchema }) body: CreateExperiment,
@@ -60,7 +60,7 @@ export class ExperimentsController {
   @Post('preflight')
   @HttpCode(200)
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List the faults of an experiment against the envelope in force; keeps nothing.' })
+  @ApiOperation({ summary: 'Lists the faults of an experiment against the envelope in force; keeps nothing.' })
   @ApiOkResponse({ standardSchema: preflightReportSchema })
   async preflight(
     @Body({ schema: preflightRequestSchema }) { rigId, content }: PreflightRequest,
@@ -70,7 +70,7 @@ export class ExperimentsController {
 
   @Get(':id')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'Read what an experiment is, without its versions.' })
+  @ApiOperation({ summary: 'Reads what an experiment is, without its versions.' })
   @ApiOkResponse({ standardSchema: experimentSchema })
   get(@Param('id') id: string): Promise<Experiment> {
     return this.experiments.get(id);
@@ -78,7 +78,7 @@ export class ExperimentsController {
 
   @Get(':id/versions')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List the versions of an experiment, newest first.' })
+  @ApiOperation({ summary: 'Lists the versions of an experiment, newest first.' })
   @ApiOkResponse({ standardSchema: experimentVersionPageSchema })
   listVersions(
     @Param('id') id: string,
@@ -89,7 +89,7 @@ export class ExperimentsController {
 
   @Get(':id/versions/:version')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'Read one version.' })
+  @ApiOperation({ summary: 'Reads one version.' })
   @ApiOkResponse({ standardSchema: experimentVersionSchema })
   getVersion(
     @Param('id') id: string,
@@ -100,7 +100,7 @@ export class ExperimentsController {
 
   @Post(':id/versions')
   @Roles('test-engineer')
-  @ApiOperation({ summary: 'Add an immutable version on top of the latest.' })
+  @ApiOperation({ summary: 'Adds an immutable version on top of the latest.' })
   @ApiCreatedResponse({ standardSchema: experimentVersionSchema })
   async createVersion(
     @Param('id') id: string,

@@ -26,7 +26,7 @@ export class ObjectivesController {
 
   @Get()
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List objectives, of one rig or of all.' })
+  @ApiOperation({ summary: 'Lists objectives, of one rig or of all.' })
   @ApiOkResponse({ standardSchema: objectivePageSchema })
   list(@Query({ schema: objectiveQuerySchema }) query: ObjectiveQuery): Promise<Page<Objective>> {
     return this.objectives.list(query);
@@ -34,7 +34,7 @@ export class ObjectivesController {
 
   @Get(':id')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'Read an objective; answers an ETag.' })
+  @ApiOperation({ summary: 'Reads an objective; answers an ETag.' })
   @ApiOkResponse({ standardSchema: objectiveSchema })
   async get(@Param('id') id: string, @Res({ passthrough: true }) response: Response): Promise<Objective> {
     const objective = await this.objectives.get(id);
@@ -44,7 +44,7 @@ export class ObjectivesController {
 
   @Post()
   @Roles('test-engineer')
-  @ApiOperation({ summary: 'Write an objective.' })
+  @ApiOperation({ summary: 'Writes an objective.' })
   @ApiCreatedResponse({ standardSchema: objectiveSchema })
   async create(
     @Body({ schema: createObjectiveSchema }) body: CreateObjective,
@@ -60,7 +60,7 @@ export class ObjectivesController {
   @Put(':id')
   @Roles('test-engineer')
   @ApiIfMatch()
-  @ApiOperation({ summary: 'Change an objective.' })
+  @ApiOperation({ summary: 'Changes an objective.' })
   @ApiOkResponse({ standardSchema: objectiveSchema })
   async change(
     @Param('id') id: string,

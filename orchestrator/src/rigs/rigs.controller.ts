@@ -17,7 +17,7 @@ export class RigsController {
 
   @Get()
   @Roles('signed-in')
-  @ApiOperation({ summary: 'List rigs with their status.' })
+  @ApiOperation({ summary: 'Lists rigs with their status.' })
   @ApiOkResponse({ standardSchema: rigPageSchema })
   list(@Query({ schema: pageQuerySchema }) query: PageQuery): Promise<Page<RigDocument>> {
     return this.rigs.list(query);
@@ -25,7 +25,7 @@ export class RigsController {
 
   @Get(':rigId')
   @Roles('signed-in')
-  @ApiOperation({ summary: 'Read a rig and its status; answers an ETag.' })
+  @ApiOperation({ summary: 'Reads a rig and its status; answers an ETag.' })
   @ApiOkResponse({ standardSchema: rigDocumentSchema })
   async get(
     @Param('rigId') rigId: string,
@@ -38,7 +38,7 @@ export class RigsController {
 
   @Post()
   @Roles('test-engineer', 'administrator')
-  @ApiOperation({ summary: 'Make a rig.' })
+  @ApiOperation({ summary: 'Makes a rig.' })
   @ApiCreatedResponse({ standardSchema: rigDocumentSchema })
   async create(
     @Body({ schema: rigInputSchema }) body: Rig,
@@ -54,7 +54,7 @@ export class RigsController {
   @Put(':rigId')
   @Roles('test-engineer', 'administrator')
   @ApiIfMatch()
-  @ApiOperation({ summary: 'Change the wiring of a rig; only while it is idle, offline or tripped.' })
+  @ApiOperation({ summary: 'Changes the wiring of a rig; only while it is idle, offline or tripped.' })
   @ApiOkResponse({ standardSchema: rigDocumentSchema })
   async change(
     @Param('rigId') rigId: string,

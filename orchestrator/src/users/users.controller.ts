@@ -1,5 +1,5 @@
 import { Body, Controller, Get, Param, Patch, Post, Query, Res } from '@nestjs/common';
-import { ApiCreatedResponse, ApiOkResponse, ApiTags } from '@nestjs/swagger';
+import { ApiCreatedResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
 import { Roles } from '../auth/access.decorator.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
@@ -21,17 +21,17 @@ import { UsersService } from './users.service.js';
 export class UsersController {
   constructor(private readonly users: UsersService) {}
 
-  /** Lists accounts. */
   @Get()
   @Roles('administrator')
+  @ApiOperation({ summary: 'Lists accounts.' })
   @ApiOkResponse({ standardSchema: userPageSchema })
   list(@Query({ schema: pageQuerySchema }) query: PageQuery): Promise<Page<User>> {
     return this.users.list(query);
   }
 
-  /** Makes an account. */
   @Post()
   @Roles('administrator')
+  @ApiOperation({ summary: 'Makes an account.' })
   @ApiCreatedResponse({ standardSchema: userSchema })
   async create(
     @Body({ schema: createUserSchema }) body: CreateUser,
@@ -43,9 +43,9 @@ export class UsersController {
     return user;
   }
 
-  /** Changes an account; a new password or disabling ends its sessions. */
   @Patch(':account')
   @Roles('administrator')
+  @ApiOperation({ summary: 'Changes an account; a new password or disabling ends its sessions.' })
   @ApiOkResponse({ standardSchema: userSchema })
   change(
     @Param('account') account: string,
