@@ -126,6 +126,11 @@ describe('the end of a seek', () => {
       'above the 1 of the envelope',
     ],
     [
+      'a dither that nothing could show',
+      { ditherAmplitude: { expression: 'flame * 5e-324' } },
+      'is too small for "trim" to show',
+    ],
+    [
       'a period of zero',
       { ditherPeriodS: { expression: 'flame - 1' } },
       'dither period must be a number above zero',
@@ -159,6 +164,18 @@ function rigWith(id: string) {
   };
   return testRig({ channels: [...testRig().channels, channel] });
 }
+
+describe('a law out of its numbers', () => {
+  it('fails without asking for anything', () => {
+    // Swings of the greatest size that a number can have overflow in the filters of the law.
+    let n = 0;
+    const plant: Plant = () => ({ yield: (n += 1) % 2 === 0 ? 1.7e308 : -1.7e308, flame: 1 });
+    const run = runScript({ graph: seek(), plant });
+    expect(exit(run)?.port).toBe('failed');
+    expect(exit(run)?.reason).toContain('The law gave no number');
+    for (const { base, dither } of trims(run)) expect(Number.isFinite(base + dither)).toBe(true);
+  });
+});
 
 describe('an objective that is not valid', () => {
   it('sends the seek back to its last good point, once an episode, and it goes on', () => {

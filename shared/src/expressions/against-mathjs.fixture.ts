@@ -52,12 +52,13 @@ export function describeAgainstMathjs(numRuns: number, timeoutMs: number): void 
   describe('against the evaluator of mathjs', () => {
     // Without tolerance in comparisons and without complex numbers, as in this language.
     const math = create(all ?? {}, { relTol: Number.MIN_VALUE, absTol: 0, predictable: true });
-    // These do not work without a tolerance.
-    const plain = create(all ?? {});
-    math.import(
-      { floor: Math.floor, ceil: Math.ceil, round: (x: number) => plain.round(x) },
-      { override: true },
-    );
+    // These do not work without a tolerance; toFixed rounds exactly, halves away from zero (ECMA-262).
+    const exact = {
+      floor: Math.floor,
+      ceil: Math.ceil,
+      round: (x: number | boolean) => Number(Number(x).toFixed(0)),
+    };
+    math.import(exact, { override: true });
 
     it(
       'gives the same number wherever it gives one',

@@ -13,6 +13,10 @@ import { isOver, type StepExit, type StepRunner, type StepServices } from './ste
 
 const converged: StepExit = { port: 'done', reason: 'The estimate has converged.' };
 const conditionMet: StepExit = { port: 'done', reason: 'The end condition is met.' };
+const outOfNumbers: StepExit = {
+  port: 'failed',
+  reason: 'The law gave no number: gain or objective are beyond all measure.',
+};
 const timeOver: StepExit = { port: 'done', reason: 'The time is over.' };
 
 /** What one Seek keeps while it seeks. */
@@ -99,7 +103,7 @@ export class SeekRunner implements StepRunner {
       this.isApproaching = !this.ramp.step(input);
       if (this.isApproaching) return this.goOn(input, this.ramp.isOverdue(this.elapsedS));
     }
-    this.seek(input, pursuit);
+    if (!this.seek(input, pursuit)) return outOfNumbers;
     this.exit = this.judgeEnd(pursuit);
     if (!this.exit) return this.goOn(input, false);
     this.leaveResults(pursuit, this.exit);
@@ -114,14 +118,15 @@ export class SeekRunner implements StepRunner {
     return { port: 'failed', reason: `"${this.settings.parameters.actuator}" did not come into the box.` };
   }
 
-  /** One scan of the law, and what is kept of it. */
-  private seek(input: SequencerInput, pursuit: Pursuit): void {
+  /** One scan of the law, and what is kept of it. @returns false where the law gave no number */
+  private seek(input: SequencerInput, pursuit: Pursuit): boolean {
     const { law, periods, retreat } = pursuit;
     const { objective } = input;
     const sign = this.services.objective?.direction === 'minimise' ? -1 : 1;
     this.fed.objective = sign * objective.value;
     this.fed.isValid = objective.isValid && Number.isFinite(objective.value);
     const output = gradientLaw.step(law, this.fed, input.dtS);
+    if (!Number.isFinite(output.estimate + output.dither)) return false;
     this.services.request(this.settings.parameters.actuator, output.estimate, output.dither);
     this.signals.set(law.signals);
     if (retreat.note(this.fed.isValid, input.dtS)) {
@@ -136,6 +141,7 @@ export class SeekRunner implements StepRunner {
       if (pursuit.isAdapting) pursuit.convergence?.add(periods.lastEstimate, law.parameters.periodS);
       pursuit.isAdapting = law.settleS <= 0;
     }
+    return true;
   }
 
   private judgeEnd({ retreat, convergence, law }: Pursuit): StepExit | null {

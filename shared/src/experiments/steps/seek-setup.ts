@@ -2,6 +2,9 @@ import type { ActuatorLimit } from '../../envelopes/envelope.schema.js';
 import type { GradientLawParameters } from '../../seeking/gradient-law.js';
 import type { StepOf } from '../experiment.schema.js';
 
+/** Share of an actuator's range below which a dither is rounding. */
+const amplitudeShareMin = 1e-9;
+
 /** Parameters of Seek that may come from expressions, as numbers. */
 export interface SeekNumbers {
   amplitude: number;
@@ -30,6 +33,9 @@ export function setUpSeek(
   })) {
     if (!Number.isFinite(value) || value <= 0)
       return `The ${name} must be a number above zero, not ${value}.`;
+  }
+  if (amplitude < (limit.max - limit.min) * amplitudeShareMin) {
+    return `The dither amplitude ${amplitude} is too small for "${actuator}" to show.`;
   }
   if (amplitude > limit.ditherAmplitudeMax) {
     return `The dither amplitude ${amplitude} is above the ${limit.ditherAmplitudeMax} of the envelope.`;
