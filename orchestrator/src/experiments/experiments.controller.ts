@@ -60,7 +60,9 @@ export class ExperimentsController {
   @Post('preflight')
   @HttpCode(200)
   @Roles('signed-in')
-  @ApiOperation({ summary: 'Lists the faults of an experiment against the envelope in force; keeps nothing.' })
+  @ApiOperation({
+    summary: 'Lists the faults of an experiment against the envelope in force; keeps nothing.',
+  })
   @ApiOkResponse({ standardSchema: preflightReportSchema })
   async preflight(
     @Body({ schema: preflightRequestSchema }) { rigId, content }: PreflightRequest,

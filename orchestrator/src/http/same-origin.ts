@@ -14,7 +14,7 @@ export function sameOrigin(request: Request, response: Response, next: NextFunct
   if (!isFromHere(request.headers)) {
     return sendProblem(response, toErrorRecord(new DomainError('request.cross-origin')));
   }
-  if (hasBody(request) && request.is('application/json') === false) {
+  if (hasBody(request) && request.is('application/json') === false && !isEmergencyStop(request)) {
     return sendProblem(response, toErrorRecord(new DomainError('request.media-type')));
   }
   next();
@@ -31,6 +31,11 @@ export function isFromHere(headers: OriginHeaders): boolean {
   const site = headers['sec-fetch-site'];
   if (headers.origin === undefined) return site === undefined || site === 'same-origin' || site === 'none';
   return URL.canParse(headers.origin) && new URL(headers.origin).host === headers.host;
+}
+
+/** An emergency stop is never refused for its body; what is no JSON is then not read. */
+function isEmergencyStop(request: Request): boolean {
+  return request.path.endsWith('/emergency-stop');
 }
 
 function hasBody(request: Request): boolean {

@@ -17,10 +17,13 @@ export class RequestValidationPipe extends StandardSchemaValidationPipe {
   }
 
   override async transform<T = unknown>(value: T, metadata: ArgumentMetadata): Promise<T> {
-    if (metadata.type === 'body' && metadata.schema !== undefined && value === undefined) {
-      throw new DomainError('request.media-type');
+    try {
+      return await super.transform<T>(value, metadata);
+    } catch (error) {
+      // No body at all where one is needed: naming its fields would hide what is wrong.
+      if (metadata.type === 'body' && value === undefined) throw new DomainError('request.media-type');
+      throw error;
     }
-    return super.transform<T>(value, metadata);
   }
 }
 

@@ -98,6 +98,8 @@ describe('the edge', () => {
       .type('form')
       .send({ account: 'engineer', password: testPassword });
     expect([form.status, form.body.code]).toEqual([400, 'request.media-type']);
+    const reader = await server.as('reader', 'reader');
+    await reader.post('/api/v1/rigs/emergency-stop').type('text').send('stop!').expect(200);
     const nothing = await server.anyone.post('/api/v1/auth/sign-in');
     expect([nothing.status, nothing.body.code]).toEqual([400, 'request.media-type']);
     const broken = await server.anyone.post('/api/v1/auth/sign-in').type('json').send('{"account":');

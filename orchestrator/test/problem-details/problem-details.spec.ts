@@ -28,6 +28,11 @@ class FailingController {
   limits(@Body({ schema: bodySchema }) body: z.infer<typeof bodySchema>): z.infer<typeof bodySchema> {
     return body;
   }
+
+  @Post('stop')
+  stop(@Body({ schema: z.object({ reason: z.string() }).optional() }) body?: { reason: string }): object {
+    return { reason: body?.reason ?? 'none given' };
+  }
 }
 
 @Module({ imports: [ProblemDetailsModule], controllers: [FailingController] })
@@ -69,6 +74,13 @@ describe('problem details', () => {
       'limits[1].max',
       'limits[2].max',
     ]);
+  });
+
+  it('let a body be left out where its schema does, and say so where it does not', async () => {
+    const stop = await request(app.getHttpServer()).post('/stop').expect(201);
+    expect(stop.body).toEqual({ reason: 'none given' });
+    const limits = await request(app.getHttpServer()).post('/limits').expect(400);
+    expect(limits.body.code).toBe('request.media-type');
   });
 
   it('write paths as people do', () => {
