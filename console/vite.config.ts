@@ -7,7 +7,11 @@ export default defineConfig({
   plugins: [react()],
   resolve: { conditions: ['source', 'module', 'browser', 'development|production'] },
   server: { host: '127.0.0.1', proxy: { '/api': { target, ws: true } } },
-  build: { chunkSizeWarningLimit: 700 },
+  build: {
+    chunkSizeWarningLimit: 700,
+    // The core only declares: what a page does not use of it (the expression parser, say) is left out.
+    rolldownOptions: { treeshake: { moduleSideEffects: [{ test: /\/shared\/src\//, sideEffects: false }] } },
+  },
   test: {
     name: 'console',
     environment: 'jsdom',

@@ -8,6 +8,11 @@ export function formatMoment(iso: string): string {
   return `${day} ${two(at.getHours())}:${two(at.getMinutes())}`;
 }
 
+/** Date and time to the second: `2026-03-01 14:05:09`. */
+export function formatInstant(iso: string): string {
+  return Number.isNaN(Date.parse(iso)) ? iso : `${formatMoment(iso).slice(0, 10)} ${formatClock(iso)}`;
+}
+
 /** Time of day in the viewer's own zone: `14:05:09`. */
 export function formatClock(iso: string): string {
   const at = new Date(iso);

@@ -1,6 +1,6 @@
 export { Empty } from './empty.js';
 export { alignNumber, formatNumber, missing, plainNumber } from './format-quantity.js';
-export { formatClock, formatMoment } from './format-time.js';
+export { formatClock, formatInstant, formatMoment } from './format-time.js';
 export { GatedButton } from './gated-button.js';
 export { Loading } from './loading.js';
 export { Notice, type NoticeKind } from './notice.js';

@@ -16,6 +16,9 @@ export type LiveHubOptions = Pick<LiveClientOptions, 'connect' | 'after' | 'rand
   nowMs: () => number;
 };
 
+/** How long the samples of a rig still come after the last page that shows them was left, ms. */
+const lingerMs = 300_000;
+
 /** All live data of the console in one place: the link, rig states, samples and run events. */
 export class LiveHub {
   readonly statuses: StatusStore;
@@ -51,9 +54,10 @@ export class LiveHub {
 
   readonly subscribeLink = (listener: () => void): (() => void) => this.linkBatch.subscribe(listener);
 
-  /** Asks for a rig's samples while somebody looks. */
+  /** Asks for a rig's samples while somebody looks, and for a while after, so that going to and fro leaves no gap. */
   watchRig(rigId: string): () => void {
-    return this.client.subscribe(rigId);
+    const leave = this.client.subscribe(rigId);
+    return () => void this.options.after(lingerMs, leave);
   }
 
   /** Events and status changes of all runs of watched rigs, in order, unbatched. */

@@ -67,8 +67,14 @@ function valueRange(
   return [least - air, greatest + air];
 }
 
-function clockTimes(_chart: uPlot, timesS: number[]): string[] {
-  return timesS.map((timeS) => new Date(timeS * 1000).toLocaleTimeString('en-GB'));
+/** Room that half of a clock time takes, px: nearer to the right edge it would be cut off. */
+const halfClockPx = 26;
+
+function clockTimes(chart: uPlot, timesS: number[]): string[] {
+  const end = chart.bbox.width / devicePixelRatio - halfClockPx;
+  return timesS.map((timeS) =>
+    chart.valToPos(timeS, 'x') > end ? '' : new Date(timeS * 1000).toLocaleTimeString('en-GB'),
+  );
 }
 
 function drawLevels(chart: uPlot, levels: readonly ChartLevel[], paper: Paper): void {

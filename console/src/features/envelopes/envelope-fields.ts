@@ -44,7 +44,7 @@ export const limitFields: readonly FieldFacts<keyof Limit>[] = [
 export const interlockFields: readonly FieldFacts<keyof Interlock>[] = [
   { key: 'title', label: 'Title' },
   { key: 'id', label: 'Id' },
-  { key: 'condition', label: 'Unsafe when', hint: 'An expression over channels; true is the unsafe side.' },
+  { key: 'condition', label: 'Unsafe when' },
   { key: 'delayS', label: 'for', unit: 's' },
   {
     key: 'action',

@@ -70,6 +70,7 @@ function EnvelopeView({ rig, envelope, envelopes }: EnvelopeViewProps) {
   const { account } = useSession();
   const [content, setContent] = useState<EnvelopeContent>(envelope.content);
   const onContent = useCallback((sound: EnvelopeContent) => setContent(sound), []);
+  const isEdited = canBeEdited(envelope, account);
   const inForce = envelopes.find(({ status }) => status === 'in-force');
   const isDifferent = inForce !== undefined && inForce.id !== envelope.id && envelope.status !== 'superseded';
   return (
@@ -77,13 +78,16 @@ function EnvelopeView({ rig, envelope, envelopes }: EnvelopeViewProps) {
       sx={{
         display: 'grid',
         gap: 2,
-        gridTemplateColumns: { xs: 'minmax(0, 1fr)', lg: 'minmax(0, 1fr) 20rem' },
+        gridTemplateColumns: 'minmax(0, 1fr)',
+        [isEdited ? '@media (min-width: 1800px)' : '@media (min-width: 1200px)']: {
+          gridTemplateColumns: 'minmax(0, 1fr) 20rem',
+        },
         alignItems: 'start',
       }}
     >
       <Box sx={{ display: 'grid', gap: 2, minWidth: 0, gridTemplateColumns: 'minmax(0, 1fr)' }}>
         {envelope.status === 'submitted' && <EnvelopeDecision envelope={envelope} />}
-        {canBeEdited(envelope, account) ? (
+        {isEdited ? (
           <EnvelopeEditor rig={rig} envelope={envelope} onContent={onContent} />
         ) : (
           <EnvelopeSheet form={readOnlyForm(rig, envelope.content)} />

@@ -34,7 +34,7 @@ export function PersonRow({ user }: { user: User }) {
         <Button
           onClick={() => setRoles(roles ? null : user.roles)}
           aria-expanded={roles !== null}
-          aria-label={`Roles of ${user.title}`}
+          aria-label={roles ? `Cancel the change of ${user.title}` : `Roles … of ${user.title}`}
         >
           {roles ? 'Cancel' : 'Roles …'}
         </Button>

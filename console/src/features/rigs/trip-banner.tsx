@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import Box from '@mui/material/Box';
 import type { RigStatus, Trip } from '@cresthold/shared';
-import { formatClock, formatMoment, GatedButton, Notice, ReasonDialog } from '../../components/index.js';
+import { formatClock, formatInstant, GatedButton, Notice, ReasonDialog } from '../../components/index.js';
 import { useObstacle } from '../auth/index.js';
 import { useReset } from './api/rig-commands.js';
 
@@ -44,7 +44,7 @@ export function TripBanner({ status }: { status: RigStatus }) {
 function TripFacts({ trip }: { trip: Trip }) {
   return (
     <>
-      First cause <strong>{trip.cause}</strong> at {formatMoment(trip.at)}, {formatClock(trip.at)}
+      First cause <strong>{trip.cause}</strong> at {formatInstant(trip.at)}
       {trip.by !== null && `, pressed by ${trip.by}`}.
       {trip.later.length > 0 && (
         <Box component="ol" aria-label="What followed" sx={{ m: 0, pl: 2.5 }}>

@@ -13,6 +13,12 @@ export function InterlocksEditor() {
   const { rows, add, remove } = useDraftList('interlocks');
   return (
     <Box sx={{ display: 'grid', gap: 1.5 }}>
+      {!isReadOnly && (
+        <Box sx={{ fontSize: '0.75rem', color: 'text.secondary' }}>
+          “Unsafe when” is an expression over the rig’s channels: true is the unsafe side. A reading that is
+          not good counts as unsafe.
+        </Box>
+      )}
       {rows.length === 0 && <Box sx={{ color: 'text.secondary' }}>No interlocks.</Box>}
       <Box component="ol" sx={{ m: 0, p: 0, listStyle: 'none', display: 'grid', gap: 1.5 }}>
         {rows.map((row, index) => (
@@ -62,32 +68,31 @@ function ShownInterlock({ row }: { row: FormValue }) {
   );
 }
 
-const widths: Record<string, string> = { condition: 'span 2', message: '1 / -1' };
+const widths: Record<string, string> = {
+  title: 'span 2',
+  id: 'span 2',
+  condition: 'span 2',
+  message: 'span 7',
+};
 
 function InterlockFields({ index, onRemove }: { index: number; onRemove: () => void }) {
   return (
-    <>
-      <Box
-        sx={{
-          display: 'grid',
-          gap: 1.5,
-          gridTemplateColumns: { xs: 'minmax(0, 1fr)', md: 'repeat(6, minmax(0, 1fr))' },
-        }}
-      >
-        {interlockFields.map(({ key, ...field }) => (
-          <Box key={key} sx={{ gridColumn: { md: widths[key] } }}>
-            <DraftField
-              path={['interlocks', index, key]}
-              isLabelShown
-              isNumber={key === 'delayS'}
-              {...field}
-            />
-          </Box>
-        ))}
-      </Box>
-      <Box>
-        <Button onClick={onRemove}>Remove interlock {index + 1}</Button>
-      </Box>
-    </>
+    <Box
+      sx={{
+        display: 'grid',
+        gap: 1.5,
+        alignItems: 'start',
+        gridTemplateColumns: { xs: 'minmax(0, 1fr)', md: 'repeat(8, minmax(0, 1fr))' },
+      }}
+    >
+      {interlockFields.map(({ key, ...field }) => (
+        <Box key={key} sx={{ gridColumn: { md: widths[key] } }}>
+          <DraftField path={['interlocks', index, key]} isLabelShown isNumber={key === 'delayS'} {...field} />
+        </Box>
+      ))}
+      <Button sx={{ minHeight: 40 }} onClick={onRemove} aria-label={`Remove interlock ${index + 1}`}>
+        Remove
+      </Button>
+    </Box>
   );
 }

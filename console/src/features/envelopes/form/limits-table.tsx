@@ -22,8 +22,8 @@ export function LimitsTable() {
     <Box sx={{ display: 'grid', gap: 1 }}>
       <ResponsiveTable
         label="Actuator limits"
-        minWidthPx={isReadOnly ? 900 : 1500}
-        heads={['Actuator', ...limitFields.map(({ label }) => label), ...(isReadOnly ? [] : [''])]}
+        minWidthPx={isReadOnly ? 900 : 1320}
+        heads={['Actuator', ...limitFields.map(({ label }) => label), ...(isReadOnly ? [] : ['Remove'])]}
         rows={rows.map((_, index) => {
           const channel = channelOf(index);
           const title = channel?.title ?? textAt(value, ['limits', index, 'channel']);

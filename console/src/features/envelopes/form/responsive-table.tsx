@@ -7,13 +7,21 @@ import TableHead from '@mui/material/TableHead';
 import TableRow from '@mui/material/TableRow';
 import type { Theme } from '@mui/material/styles';
 
+/** Fields in a table are close to each other. */
+const closeFields = {
+  '& td:has(input, select)': { padding: '6px 3px' },
+  '& td .MuiInputBase-root': { paddingRight: '6px' },
+  '& td input': { paddingLeft: '8px', paddingRight: '2px' },
+  '& td select': { paddingLeft: '8px', paddingRight: '22px !important' },
+};
+
 /** Below this width rows become cards, each cell with its column's name before it. */
 const asCards = (theme: Theme) => ({
   [theme.breakpoints.down('md')]: {
     '&, & tbody, & tr, & td, & th': { display: 'block' },
     '& thead': { display: 'none' },
     '& tr + tr': { borderTop: `2px solid ${theme.vars.palette.text.primary}` },
-    '& tbody td': {
+    '& tbody td, & tbody td:has(input, select)': {
       display: 'grid',
       gridTemplateColumns: '11rem minmax(0, 1fr)',
       gap: '8px',
@@ -28,7 +36,9 @@ const asCards = (theme: Theme) => ({
     },
     '& tbody th': { padding: '8px 0 4px' },
   },
-  [theme.breakpoints.down('sm')]: { '& tbody td': { gridTemplateColumns: '8rem minmax(0, 1fr)' } },
+  [theme.breakpoints.down('sm')]: {
+    '& tbody td, & tbody td:has(input, select)': { gridTemplateColumns: '8rem minmax(0, 1fr)' },
+  },
 });
 
 interface ResponsiveTableProps {
@@ -44,7 +54,7 @@ interface ResponsiveTableProps {
 export function ResponsiveTable({ label, minWidthPx, heads, rows }: ResponsiveTableProps) {
   return (
     <Box sx={{ overflowX: 'auto' }} tabIndex={0} role="region" aria-label={`${label}, table`}>
-      <Table size="small" aria-label={label} sx={[{ minWidth: { md: minWidthPx } }, asCards]}>
+      <Table size="small" aria-label={label} sx={[{ minWidth: { md: minWidthPx } }, closeFields, asCards]}>
         <TableHead>
           <TableRow>
             {heads.map((head, index) => (

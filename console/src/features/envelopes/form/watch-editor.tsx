@@ -85,7 +85,7 @@ function Staleness() {
               <Button
                 sx={{ minHeight: 40 }}
                 onClick={() => remove(index)}
-                aria-label={`Stop watching ${titleAt(index)}`}
+                aria-label={`Remove the watch on ${titleAt(index)}`}
               >
                 Remove
               </Button>

@@ -10,7 +10,7 @@ const answerWithinMs = 3000;
  */
 export async function emergencyStop(rigId: string | null): Promise<void> {
   const signal = AbortSignal.timeout(answerWithinMs);
-  const body = { reason: 'Pressed on the console' };
+  const body = { reason: 'Emergency stop pressed on the console' };
   const call =
     rigId === null
       ? client.POST('/api/v1/rigs/emergency-stop', { body, signal })
