@@ -11,6 +11,9 @@ if (process.send === undefined) {
 
 const host = new RigHost(process, (code) => process.exit(code));
 
+// What is printed may have nowhere to go once the server is gone: no reason to leave a rig.
+process.stdout.on('error', () => undefined);
+process.stderr.on('error', () => undefined);
 process.on('uncaughtException', (error) => host.onBug(error));
 process.on('unhandledRejection', (reason) => host.onBug(reason));
 process.on('SIGTERM', () => void host.shutDown('The rig host was asked to end.'));

@@ -11,6 +11,9 @@ const restBoundMs = 25_000;
 /** The same after a fault of the program, ms. */
 const restAfterFaultMs = 5_000;
 const closeBoundMs = 12_000;
+/** How long every connection may be down on the way to rest before the rig is left to its watchdog, ms. */
+const lostBoundMs = 3_000;
+const drainBoundMs = 500;
 const pollMs = 10;
 
 /** Exit codes of the program. */
@@ -95,15 +98,19 @@ export class RigHost {
       await within(session.end(), closeBoundMs, undefined).catch(() => undefined);
     }
     await within(this.recorder.close(), closeBoundMs, undefined).catch(() => undefined);
+    await within(this.link.drained(), drainBoundMs, undefined);
     this.exit(isAtRest || code !== exitCodes.inOrder ? code : exitCodes.notAtRest);
   }
 
   /** @returns false where the rig could not be brought to rest within the bound: its own watchdog acts */
   private async comeToRest(session: RigSession, reason: string, boundMs: number): Promise<boolean> {
     const untilMs = performance.now() + boundMs;
+    let reachedMs = performance.now();
     try {
       while (!session.isAtRest()) {
-        if (performance.now() > untilMs || session.areAllConnectionsLost) return false;
+        const nowMs = performance.now();
+        if (!session.areAllConnectionsLost) reachedMs = nowMs;
+        if (nowMs > untilMs || nowMs - reachedMs > lostBoundMs || session.hasLoopDied) return false;
         session.headForRest(reason);
         await delay(pollMs);
       }

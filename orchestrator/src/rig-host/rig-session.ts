@@ -34,6 +34,7 @@ export class RigSession {
   private readonly run: RunRecording;
   private envelope: EnvelopeInForce | null;
   private readonly grids = new Map<string, ValueGrid>();
+  private isLoopDead = false;
   private looping: Promise<void> = Promise.resolve();
 
   /**
@@ -76,8 +77,7 @@ export class RigSession {
   /** Opens the wires and starts to scan; a wire that cannot be opened is tried again and again. */
   async begin(): Promise<void> {
     await this.wire.open(openBoundMs);
-    this.looping = this.loop.run();
-    this.looping.catch(this.onBug);
+    this.looping = this.keepScanning();
   }
 
   /** Lets go of the wire without moving anything; for a rig that is at rest or cannot be reached. */
@@ -87,6 +87,11 @@ export class RigSession {
     this.run.interrupt('The rig host ended.');
     await this.run.closed();
     await this.wire.close();
+  }
+
+  /** The loop threw twice: nothing more can be done for the rig from here. */
+  get hasLoopDied(): boolean {
+    return this.isLoopDead;
   }
 
   get isFree(): boolean {
@@ -143,6 +148,19 @@ export class RigSession {
         wireMeanMs: statistics.wireMeanMs(),
       },
     };
+  }
+
+  /** After a first fault of its own the loop goes on, tripped, so that the stop action still happens. */
+  private async keepScanning(): Promise<void> {
+    try {
+      await this.loop.run();
+    } catch (error) {
+      this.onBug(error);
+      await this.loop.run().catch((again: unknown) => {
+        this.isLoopDead = true;
+        this.onBug(again);
+      });
+    }
   }
 
   /** What an actuator's wire can carry is known from when its connection opens; the engine looks it up then. */

@@ -23,6 +23,7 @@ export interface ServerLinkOwner {
 export class ServerLink implements Link {
   private lastHeardS = monotonicS();
   private underWay = 0;
+  private onDrained: (() => void) | null = null;
 
   constructor(
     private readonly channel: NodeJS.Process,
@@ -39,7 +40,16 @@ export class ServerLink implements Link {
     if (!this.channel.connected) return;
     this.underWay += 1;
     // A failed send means that the channel closed: `disconnect` says so.
-    this.channel.send?.(message, undefined, {}, () => (this.underWay -= 1));
+    this.channel.send?.(message, undefined, {}, () => {
+      this.underWay -= 1;
+      if (this.underWay === 0) this.onDrained?.();
+    });
+  }
+
+  /** Resolves once everything sent so far is on its way. */
+  drained(): Promise<void> {
+    if (this.underWay === 0) return Promise.resolve();
+    return new Promise((resolve) => (this.onDrained = resolve));
   }
 
   sendDroppable(message: FromHost): boolean {

@@ -59,6 +59,11 @@ export class HostHarness {
     return host;
   }
 
+  /** From now on the server says nothing, but the channel stays open. */
+  fallSilent(): void {
+    clearInterval(this.alive);
+  }
+
   send(message: unknown): void {
     if (this.child.connected) this.child.send(message as object, () => undefined);
   }

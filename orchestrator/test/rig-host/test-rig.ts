@@ -73,7 +73,7 @@ export function testEnvelope(): EnvelopeInForce {
       staleness: [{ channel: 'oxygen', afterS: 2 }],
       heartbeat: { channel: 'heartbeat', periodS: 0.1 },
       overrunLimit: 1000,
-      serverSilenceS: 20,
+      serverSilenceS: 6,
     },
   });
 }

@@ -85,9 +85,22 @@ describe('rig host, by every way to die', () => {
     expect(storedRun(file).eventTypes.at(-1)).toBe('run.ended');
   });
 
-  it('an exception that nothing catches: it trips, stops the rig, and ends with a code of its own', async () => {
-    const fault = resolve(__dirname, 'planted-fault.cjs');
-    const file = await runAtFour('exception', ['--require', fault]);
+  it('the server hangs with the channel open: it trips and stops the rig, and stays', async () => {
+    const file = await runAtFour('server-silent');
+    host.fallSilent();
+    const tripped = await host.untilStatus((s) => s.phase === 'tripped', 'tripped');
+    expect(tripped.trip?.cause).toBe('server-silent');
+    await host.until(() => device.airTrim === 0, 'the air trim at rest');
+    await host.until(() => host.last('run-ended'), 'the end of the run');
+    expect(storedRun(file).end?.status).toBe('tripped');
+    expect(host.child.exitCode).toBeNull();
+  });
+
+  it.each([
+    ['an exception that nothing catches', 'planted-fault.cjs'],
+    ['an exception in the scan itself', 'planted-scan-fault.cjs'],
+  ])('%s: it trips, stops the rig, and ends with a code of its own', async (_, fault) => {
+    const file = await runAtFour(fault, ['--require', resolve(__dirname, fault)]);
     host.child.kill('SIGUSR2');
     expect(await host.exited).toEqual({ code: 70, signal: null });
     expect(device.airTrim).toBe(0);
@@ -219,7 +232,7 @@ describe('rig host, by every way to die', () => {
     await host.untilStatus((s) => s.phase === 'idle', 'idle');
   });
 
-  it('begins tripped where a trip was latched before it, and does not move anything', async () => {
+  it('begins tripped where a trip was latched before it: it brings the rig to rest and lets nobody arm', async () => {
     host = await HostHarness.start();
     const trip = {
       cause: 'host-lost',
@@ -232,6 +245,7 @@ describe('rig host, by every way to die', () => {
     const rig = testRig(device.port);
     await host.ask({ type: 'configure', rig, envelope: testEnvelope(), trip, isLockedOut: false });
     await host.untilStatus((s) => s.phase === 'tripped' && s.trip?.cause === 'host-lost', 'tripped');
+    await host.until(() => device.airTrim === 0, 'the air trim at rest');
     expect(await host.reply({ type: 'arm', by: 'engineer' })).toMatchObject({ code: 'rig.tripped' });
   });
 });
