@@ -1,12 +1,13 @@
-import { Body, Controller, Get, HttpCode, Inject, Ip, Post, Res } from '@nestjs/common';
+import { Body, Controller, Get, HttpCode, Inject, Ip, Post, Req, Res } from '@nestjs/common';
 import { ApiNoContentResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
-import type { Response } from 'express';
+import type { Request, Response } from 'express';
 import { CONFIG } from '../config/config.module.js';
 import type { Config } from '../config/config.schema.js';
 import { Roles } from './access.decorator.js';
 import { AuthService } from './auth.service.js';
 import { sessionSchema, signInSchema, type Session, type SignIn } from './dto/session.dto.js';
 import { sessionCookieName, sessionCookieOptions } from './session-cookie.js';
+import { SessionsService } from './sessions.service.js';
 import { CurrentUser, type SignedInUser } from './signed-in-user.js';
 
 @ApiTags('auth')
@@ -14,6 +15,7 @@ import { CurrentUser, type SignedInUser } from './signed-in-user.js';
 export class AuthController {
   constructor(
     private readonly auth: AuthService,
+    private readonly sessions: SessionsService,
     @Inject(CONFIG) private readonly config: Config,
   ) {}
 
@@ -37,7 +39,8 @@ export class AuthController {
   @Roles('signed-in')
   @ApiOperation({ summary: 'Signs out this browser.' })
   @ApiNoContentResponse()
-  signOut(@Res({ passthrough: true }) response: Response): void {
+  signOut(@Req() request: Request, @Res({ passthrough: true }) response: Response): void {
+    this.sessions.signOut(request.headers.cookie);
     response.clearCookie(sessionCookieName, {
       ...sessionCookieOptions(this.config.isHttps),
       maxAge: undefined,

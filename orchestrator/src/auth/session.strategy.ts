@@ -2,7 +2,6 @@ import { Injectable } from '@nestjs/common';
 import { PassportStrategy } from '@nestjs/passport';
 import type { Request } from 'express';
 import { Strategy } from 'passport-jwt';
-import { readSessionCookie } from './session-cookie.js';
 import { SessionsService, type SessionClaims } from './sessions.service.js';
 import type { SignedInUser } from './signed-in-user.js';
 
@@ -13,7 +12,7 @@ export const sessionStrategyName = 'session-cookie';
 export class SessionStrategy extends PassportStrategy(Strategy, sessionStrategyName) {
   constructor(private readonly sessions: SessionsService) {
     super({
-      jwtFromRequest: (request: Request) => readSessionCookie(request.headers.cookie),
+      jwtFromRequest: (request: Request) => sessions.tokenOf(request.headers.cookie),
       secretOrKey: sessions.secret,
       algorithms: ['HS256'],
     });

@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { Inject, Injectable } from '@nestjs/common';
 import { JwtService } from '@nestjs/jwt';
 import { z } from 'zod';
@@ -18,6 +19,9 @@ export type SessionClaims = z.infer<typeof sessionClaimsSchema>;
 /** Issues sessions and says whose they are. */
 @Injectable()
 export class SessionsService {
+  /** Sessions that were signed out, until they would have expired, ms since 1970; a restart forgets them. */
+  private readonly signedOut = new Map<string, number>();
+
   constructor(
     @Inject(SESSION_SECRET) readonly secret: string,
     private readonly jwt: JwtService,
@@ -30,7 +34,23 @@ export class SessionsService {
       secret: this.secret,
       algorithm: 'HS256',
       expiresIn: sessionLifetimeS,
+      // Two sessions of one second are still two: signing out of one leaves the other.
+      jwtid: randomUUID(),
     });
+  }
+
+  /** The session in a Cookie header; null where there is none or it was signed out. */
+  tokenOf(header: string | undefined): string | null {
+    const token = readSessionCookie(header);
+    return token === null || this.signedOut.has(token) ? null : token;
+  }
+
+  /** Ends the session in a Cookie header, here and on every open connection that it was used for. */
+  signOut(header: string | undefined): void {
+    const token = readSessionCookie(header);
+    const nowMs = Date.now();
+    for (const [ended, untilMs] of this.signedOut) if (untilMs < nowMs) this.signedOut.delete(ended);
+    if (token !== null) this.signedOut.set(token, nowMs + sessionLifetimeS * 1000);
   }
 
   /** Whose session it is; null where the account is gone, disabled, or its sessions were ended. */
@@ -44,7 +64,7 @@ export class SessionsService {
 
   /** Whose session a Cookie header holds, e.g. that of a WebSocket's handshake; null where nobody's. */
   async userOfCookieHeader(header: string | undefined): Promise<SignedInUser | null> {
-    const token = readSessionCookie(header);
+    const token = this.tokenOf(header);
     if (token === null) return null;
     try {
       return await this.userOf(

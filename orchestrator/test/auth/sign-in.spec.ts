@@ -38,6 +38,21 @@ describe('signing in', () => {
     expect(session.body.account).toBe('engineer');
     const out = await server.anyone.post('/api/v1/auth/sign-out').set('Cookie', cookie).expect(204);
     expect(out.headers['set-cookie']?.[0]).toMatch(/^cresthold_session=;.*Expires=Thu, 01 Jan 1970/);
+    await server.anyone.get('/api/v1/auth/session').set('Cookie', cookie).expect(401);
+  });
+
+  it('ends one session by signing out and leaves the others of the account', async () => {
+    const cookies = [await signIn('engineer', testPassword), await signIn('engineer', testPassword)].map(
+      (answer) => answer.headers['set-cookie']?.[0]?.split(';')[0] ?? '',
+    );
+    await server.anyone
+      .post('/api/v1/auth/sign-out')
+      .set('Cookie', cookies[0] ?? '')
+      .expect(204);
+    await server.anyone
+      .get('/api/v1/auth/session')
+      .set('Cookie', cookies[1] ?? '')
+      .expect(200);
   });
 
   it('tells unknown account, disabled account and wrong password apart in no way', async () => {
