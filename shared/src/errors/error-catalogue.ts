@@ -95,6 +95,18 @@ export const errorCatalogue = {
   ),
   'objective.not-found': entry('not-found', 'No such objective.'),
   'expression.invalid': entry('invalid', 'The expression cannot be understood.'),
+  'analysis.invalid-input': entry(
+    'invalid',
+    'A setting or value of the analysis does not fit: mend the fields named in "details".',
+  ),
+  'analysis.too-little-data': entry(
+    'invalid',
+    'The analysis needs more data: measure longer or more points.',
+  ),
+  'analysis.no-fit': entry(
+    'invalid',
+    'The data do not determine what was asked for: make the excitation larger, or spread the points further.',
+  ),
   'experiment.not-found': entry('not-found', 'No such experiment or version.'),
   'experiment.preflight-failed': entry(
     'invalid',

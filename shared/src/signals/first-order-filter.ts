@@ -22,11 +22,25 @@ export function resetFirstOrderFilter(state: FirstOrderFilterState, at = NaN): v
 }
 
 /**
+ * Corner to give to the steps below so that gain and phase are exactly those of the continuous filter at one
+ * frequency, which the bilinear rule alone shifts.
+ *
+ * @param cornerRadPerS wanted corner, rad/s; below π/dtS
+ * @param dtS time of a step, s
+ * @returns (2/dtS)·tan(cornerRadPerS·dtS/2), rad/s: with it the filter is exact at its corner
+ * @source Franklin, Powell and Workman (1998), section 6.1.2, "prewarping"
+ */
+export function prewarpedCornerRadPerS(cornerRadPerS: number, dtS: number): number {
+  return (2 / dtS) * Math.tan((cornerRadPerS * dtS) / 2);
+}
+
+/**
  * One step of the low-pass ω/(s+ω).
  *
- * @param cornerRadPerS corner frequency ω, rad/s; zero or above
+ * @param cornerRadPerS corner frequency ω, rad/s; zero or above; see `prewarpedCornerRadPerS`
  * @param dtS time since the step before, s; above zero
- * @returns the low-pass output, in the input's unit
+ * @returns the low-pass output, in the input's unit; NaN where the input is no finite number, which leaves the
+ * state as it was
  * @realtime safe: allocates nothing
  */
 export function stepLowPass(
@@ -35,6 +49,7 @@ export function stepLowPass(
   cornerRadPerS: number,
   dtS: number,
 ): number {
+  if (!Number.isFinite(input)) return NaN;
   if (Number.isNaN(state.lastInput)) {
     state.low = input;
   } else {

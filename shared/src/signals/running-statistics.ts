@@ -1,43 +1,35 @@
+import { MomentReadings } from './moment-readings.js';
+import { clearMoments, joinMoments, momentStride, setSingleMoment } from './moments.js';
+
 /**
- * Mean and variance in one pass without the cancellation of the sum of squares.
+ * Statistics of all values since the start in one pass, without the cancellation of the sum of squares. Values
+ * that are no finite number are left out, so that none can spoil the rest.
  *
  * @source B. P. Welford (1962), "Note on a method for calculating corrected sums of squares and products",
- * Technometrics 4:419–420
+ * Technometrics 4:419–420, carried on to the fourth moment by Pébay (2008)
+ * @realtime `add` is safe: it allocates nothing
  */
-export class RunningStatistics {
-  private n = 0;
-  private average = 0;
-  private squares = 0;
+export class RunningStatistics extends MomentReadings {
+  private readonly single = new Float64Array(momentStride);
 
-  add(value: number): void {
-    this.n += 1;
-    const delta = value - this.average;
-    this.average += delta / this.n;
-    this.squares += delta * (value - this.average);
+  constructor() {
+    super(new Float64Array(momentStride));
+  }
+
+  /** @returns false where the value is no finite number and was left out */
+  add(value: number): boolean {
+    if (!Number.isFinite(value)) return false;
+    setSingleMoment(this.single, 0, value);
+    joinMoments(this.group, 0, this.single, 0, this.group, 0);
+    return true;
+  }
+
+  /** Takes in all values of another, as if they had been added after its own. */
+  join(later: RunningStatistics): void {
+    joinMoments(this.group, 0, later.group, 0, this.group, 0);
   }
 
   clear(): void {
-    this.n = 0;
-    this.average = 0;
-    this.squares = 0;
-  }
-
-  get count(): number {
-    return this.n;
-  }
-
-  /** NaN while empty. */
-  get mean(): number {
-    return this.n === 0 ? NaN : this.average;
-  }
-
-  /** Standard deviation with divisor n − 1; NaN below two values. */
-  get standardDeviation(): number {
-    return this.n < 2 ? NaN : Math.sqrt(this.squares / (this.n - 1));
-  }
-
-  /** Standard error of the mean for independent values; NaN below two values. */
-  get standardError(): number {
-    return this.standardDeviation / Math.sqrt(this.n);
+    clearMoments(this.group);
   }
 }
