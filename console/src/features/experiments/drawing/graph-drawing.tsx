@@ -68,7 +68,8 @@ export function GraphDrawing({ heightPx, edits, chosenStep = null, ...drawing }:
         onNodeClick={(_event, node) => edits?.onChoose(node.id)}
         onPaneClick={() => edits?.onChoose(null)}
         onSelectionChange={({ nodes: chosen }) => {
-          if (chosen.length === 1 && chosen[0]) edits?.onChoose(chosen[0].id);
+          const [only] = chosen;
+          if (chosen.length === 1 && only && only.id !== chosenStep) edits?.onChoose(only.id);
         }}
         onBeforeDelete={({ nodes: gone, edges: cut }) => {
           edits?.onRemove(new Set(gone.map((node) => node.id)), new Set(cut.map((edge) => edge.id)));

@@ -1,6 +1,12 @@
 import { useMemo, useState } from 'react';
 import Box from '@mui/material/Box';
-import { type EnvelopeContent, type ExperimentGraph, type Rig, type StepKind } from '@cresthold/shared';
+import {
+  type EnvelopeContent,
+  type ExperimentGraph,
+  type PreflightFault,
+  type Rig,
+  type StepKind,
+} from '@cresthold/shared';
 import type { ExperimentSummary, ExperimentVersion, ObjectiveDocument } from '../../../api/index.js';
 import { GatedButton, Page } from '../../../components/index.js';
 import { useRigStatus } from '../../../live/index.js';
@@ -30,6 +36,8 @@ interface ExperimentEditorProps {
   objectives: readonly ObjectiveDocument[];
 }
 
+const noFaults: PreflightFault[] = [];
+
 /** The whole editor of one experiment: palette, drawing, form of the chosen step, preflight, versions. */
 export function ExperimentEditor({ experiment, version, rig, envelope, objectives }: ExperimentEditorProps) {
   const obstacle = useObstacle('experiment.edit');
@@ -50,7 +58,7 @@ export function ExperimentEditor({ experiment, version, rig, envelope, objective
     });
     changeGraph(graph, added);
   };
-  const faults = preflight.data ?? [];
+  const faults = preflight.data ?? noFaults;
   const isStartThere = content.graph.steps.some((step) => step.kind === 'start');
   return (
     <Page
