@@ -95,14 +95,23 @@ export class EnvelopeDecisionsService {
   }
 
   private async undo(approved: EnvelopeEntity, replacedId: string | null, by: string): Promise<void> {
+    const { id, rigId } = approved;
     await this.queue.transaction(async (manager) => {
-      await updateRow(manager, EnvelopeEntity, { id: approved.id }, { status: 'submitted' });
+      // Somebody may have approved another one meanwhile, and that one stays.
+      if (!(await manager.existsBy(EnvelopeEntity, { id, status: 'in-force' }))) return;
+      const undecided = { status: 'submitted' as const, decidedBy: null, reason: null, decidedAt: null };
+      await updateRow(manager, EnvelopeEntity, { id }, undecided);
       if (replacedId !== null) {
         await updateRow(manager, EnvelopeEntity, { id: replacedId }, { status: 'in-force' });
       }
-      const { id: subject, rigId } = approved;
       const reason = 'The rig host refused it.';
-      await this.audit.record({ account: by, action: 'envelope.approval-undone', rigId, subject, reason });
+      await this.audit.record({
+        account: by,
+        action: 'envelope.approval-undone',
+        rigId,
+        subject: id,
+        reason,
+      });
     });
   }
 

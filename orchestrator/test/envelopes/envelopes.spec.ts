@@ -136,6 +136,7 @@ describe('envelopes', () => {
     server.hosts.refusal = new DomainError('rig.illegal-move');
     expect((await decide(second, 'approve').expect(409)).body.code).toBe('rig.illegal-move');
     expect([await statusOf(first), await statusOf(second)]).toEqual(['in-force', 'submitted']);
+    expect((await engineer.get(at(second))).body).toMatchObject({ decidedBy: null, reason: null });
     server.hosts.refusal = null;
     await decide(second, 'approve').expect(200);
     expect([await statusOf(first), await statusOf(second)]).toEqual(['superseded', 'in-force']);
