@@ -1,139 +1,89 @@
+import { z } from 'zod';
 import {
-  createFirstOrderFilter,
-  resetFirstOrderFilter,
-  stepLowPass,
-  stepWashout,
-  type FirstOrderFilterState,
-} from '../signals/first-order-filter.js';
-import type { SeekingLaw, SeekingOutput, SeekingState } from './seeking-law.js';
+  createGradientEstimator,
+  gradientSignals,
+  resetGradientEstimator,
+  stepGradientEstimator,
+  writeEstimates,
+  writeGradientSignals,
+  type GradientEstimator,
+} from './gradient-estimator.js';
+import {
+  axesOf,
+  gainParameter,
+  lowPassRatioParameter,
+  periodicAxis,
+  taperParameter,
+  washoutRatioParameter,
+} from './law-parameters.js';
+import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
+import { at, isSettled, move } from './seek-core.js';
+import { ditherKinds, type SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
 
-/** Parameters of the gradient law; it always climbs: feed it the negative of what is to be made small. */
-export interface GradientLawParameters {
-  /** Dither amplitude a (half of peak to peak), actuator unit; above zero. */
-  amplitude: number;
-  /** Dither period, s; above zero. */
-  periodS: number;
-  /** Washout corner over dither frequency; above zero. */
-  washoutRatio: number;
-  /** Low-pass corner over dither frequency; above zero. */
-  lowPassRatio: number;
-  /** Integrator gain k, actuator unit per second per (objective unit per actuator unit); above zero. */
-  gain: number;
-  /** Lag φ of the demodulating sine, rad: −∠(plant · washout) at the dither frequency recovers the full slope. */
-  phaseRad: number;
-  /** Box of the estimate, actuator unit. */
-  min: number;
-  max: number;
-}
+const axis = periodicAxis(ditherKinds, { gain: gainParameter });
 
-export interface GradientLawState extends SeekingState {
+const parametersSchema = z.object({
+  axes: axesOf(axis, 16),
+  washoutRatio: washoutRatioParameter,
+  lowPassRatio: lowPassRatioParameter,
+  taper: taperParameter,
+});
+export type GradientLawParameters = z.infer<typeof parametersSchema>;
+
+export interface GradientLawState extends PeriodicCore {
   readonly parameters: GradientLawParameters;
-  /** Phase of the dither that was put out last, rad. */
-  phase: number;
-  readonly washout: FirstOrderFilterState;
-  readonly lowPass: FirstOrderFilterState;
-  /** No adaptation for this long: filters settle after a start or a retreat, s. */
-  settleS: number;
-  /** Estimate that has seen a whole valid dither period since; where a retreat goes. */
-  lastGood: number;
-  /** Estimate at the beginning of the present valid period. */
-  candidate: number;
-  /** Valid time since `candidate` was taken, s. */
-  validS: number;
-  /** True while the objective is invalid and the law waits at `lastGood`. */
-  isRetreated: boolean;
-  readonly output: SeekingOutput;
+  readonly estimator: GradientEstimator;
 }
-
-const Signal = { estimate: 0, washout: 1, demodulated: 2, gradient: 3 } as const;
 
 /**
- * Gradient seeking with washout, demodulation, low-pass and integrator.
+ * Gradient seeking with washout, demodulation, low-pass and integrator, for one actuator or several.
  *
- * The objective given to a step is taken as the answer to the dither of the step before. With
- * θ = θ̂ + a·sin ωt the law forms ξ = (2/a)·sin(ωt − φ)·washout(y), whose mean is the slope of the
- * objective times Re[e^{jφ}F(jω)H(jω)] for a plant F behind the map and the washout H, low-passes it and
- * integrates θ̂' = k·ξ. On a quadratic with second derivative f'' the averaged error decays with the rate
- * k·|f''|·Re[e^{jφ}F(jω)H(jω)] while the low-pass is fast beside it.
- *
- * Where the objective is not valid it stops dither and adaptation and goes back to the last estimate that
- * saw a whole valid dither period; once valid again it lets its filters settle for one period.
- * The estimate is held in the box; the integrator has no state but the estimate, so it cannot wind up.
+ * With θ = θ̂ + a·sin ωt the law forms ξ = (2/a)·sin(ωt − φ)·washout(y) for each actuator, whose mean is the
+ * slope of the objective times Re[e^{jφ}F(jω)H(jω)] for a plant F behind the map and the washout H, low-passes it
+ * and integrates θ̂' = k·ξ. On a quadratic with second derivative f'' the averaged error decays with the rate
+ * k·|f''|·Re[e^{jφ}F(jω)H(jω)] while the low-pass is fast beside it. With several actuators the frequencies must
+ * differ, and no sum or difference of two may meet a third (Ariyur & Krstić 2003, ch. 2, from memory).
  *
  * @source M. Krstić and H.-H. Wang (2000), "Stability of extremum seeking feedback for general nonlinear
- * dynamic systems", Automatica 36:595–601
+ * dynamic systems", Automatica 36:595–601; square dither: Y. Tan, D. Nešić and I. Mareels (2008), "On the choice
+ * of dither in extremum seeking systems", Automatica 44:1446–1450 (both from memory)
  * @realtime `step` is safe: it allocates nothing
  */
 export const gradientLaw: SeekingLaw<GradientLawParameters, GradientLawState> = {
   id: 'gradient',
-  signalNames: ['estimate', 'washout', 'demodulated', 'gradient'],
+  title: 'Gradient',
+  purpose: 'Climbs along the slope that a small dither shows; the first choice for one actuator or a few.',
+  source:
+    'M. Krstić and H.-H. Wang (2000), "Stability of extremum seeking feedback for general nonlinear dynamic systems", Automatica 36:595–601',
+  actuatorsMax: 16,
+  ditherKinds,
+  parametersSchema,
+
+  signalNames: (actuators) => perActuator(actuators, gradientSignals),
 
   init(parameters, start) {
-    const estimate = clamp(start, parameters.min, parameters.max);
-    return {
-      parameters,
-      estimate,
-      phase: 0,
-      washout: createFirstOrderFilter(),
-      lowPass: createFirstOrderFilter(),
-      settleS: parameters.periodS,
-      lastGood: estimate,
-      candidate: estimate,
-      validS: 0,
-      isRetreated: false,
-      signals: Float64Array.of(estimate, NaN, NaN, NaN),
-      output: { estimate, dither: 0 },
-    };
+    const { axes, taper } = parameters;
+    const core = createPeriodicCore({ axes, start, taper, signals: axes.length * gradientSignals.length });
+    writeEstimates(core.estimate, core.signals);
+    return { ...core, parameters, estimator: createGradientEstimator(axes.length) };
   },
 
   step(state, input, dtS) {
-    if (input.isValid && Number.isFinite(input.objective)) climb(state, input.objective, dtS);
-    else retreat(state);
-    state.signals[Signal.estimate] = state.estimate;
-    state.output.estimate = state.estimate;
-    return state.output;
+    const { parameters, estimator, dithers, signals } = state;
+    const { axes, washoutRatio, lowPassRatio } = parameters;
+    if (admitPeriodic(state, input, washoutRatio, dtS)) {
+      stepGradientEstimator(estimator, dithers, input.objective, washoutRatio, lowPassRatio, dtS);
+      if (isSettled(state, dtS)) {
+        for (let i = 0; i < axes.length; i += 1) {
+          move(state, i, (axes[i] as { gain: number }).gain * at(estimator.gradient, i) * dtS, dtS);
+        }
+      }
+      perturb(state, dtS);
+      writeGradientSignals(estimator, signals);
+    } else {
+      resetGradientEstimator(estimator);
+    }
+    writeEstimates(state.estimate, signals);
   },
 };
-
-function climb(state: GradientLawState, objective: number, dtS: number): void {
-  const { amplitude, periodS, washoutRatio, lowPassRatio, gain, phaseRad, min, max } = state.parameters;
-  const omega = (2 * Math.PI) / periodS;
-  state.isRetreated = false;
-  const washed = stepWashout(state.washout, objective, washoutRatio * omega, dtS);
-  const demodulated = (2 / amplitude) * Math.sin(state.phase - phaseRad) * washed;
-  const gradient = stepLowPass(state.lowPass, demodulated, lowPassRatio * omega, dtS);
-  if (state.settleS > 0) state.settleS -= dtS;
-  else state.estimate = clamp(state.estimate + gain * gradient * dtS, min, max);
-  rememberGood(state, dtS);
-  state.signals[Signal.washout] = washed;
-  state.signals[Signal.demodulated] = demodulated;
-  state.signals[Signal.gradient] = gradient;
-  state.phase = (state.phase + omega * dtS) % (2 * Math.PI);
-  state.output.dither = amplitude * Math.sin(state.phase);
-}
-
-/** Keeps the estimate of one to two dither periods ago: the newest that is known to have been valid throughout. */
-function rememberGood(state: GradientLawState, dtS: number): void {
-  state.validS += dtS;
-  if (state.validS < state.parameters.periodS) return;
-  state.lastGood = state.candidate;
-  state.candidate = state.estimate;
-  state.validS = 0;
-}
-
-function retreat(state: GradientLawState): void {
-  state.estimate = state.lastGood;
-  state.candidate = state.lastGood;
-  state.validS = 0;
-  state.isRetreated = true;
-  state.settleS = state.parameters.periodS;
-  state.phase = 0;
-  resetFirstOrderFilter(state.washout);
-  resetFirstOrderFilter(state.lowPass);
-  state.signals.fill(NaN);
-  state.output.dither = 0;
-}
-
-function clamp(value: number, min: number, max: number): number {
-  return Math.min(Math.max(value, min), max);
-}

@@ -33,10 +33,12 @@ export function seekOnBurner(seed: number, warmUpS: number): SeekCourse {
   let objective = NaN;
   for (let i = 0; i < warmUpS / scanS; i += 1) objective = scan(seekStartPct);
 
-  const law = gradientLaw.init(lawParameters(), seekStartPct);
+  const law = gradientLaw.init(lawParameters(), [seekStartPct]);
   const course: SeekCourse = { shortfalls: [], errors: [], objectives: [] };
   for (let i = 0; i < seekForS / scanS; i += 1) {
-    const { estimate, dither } = gradientLaw.step(law, { objective, isValid: true }, scanS);
+    gradientLaw.step(law, { objective, isValid: true }, scanS);
+    const [estimate = NaN] = law.estimate;
+    const [dither = NaN] = law.dither;
     objective = scan(estimate + dither);
     const { best, efficiencyPct } = simulation.truth;
     course.shortfalls.push(best.efficiencyPct - efficiencyPct);
@@ -47,12 +49,24 @@ export function seekOnBurner(seed: number, warmUpS: number): SeekCourse {
 }
 
 function lawParameters(): GradientLawParameters {
-  const { ditherAmplitude, ditherPeriodS, phaseDeg, ...same } = burnerSeeking;
+  const { ditherAmplitude: amplitude, ditherPeriodS, phaseDeg, min, max, gain, ...filters } = burnerSeeking;
   return {
-    ...same,
-    amplitude: ditherAmplitude,
-    periodS: ditherPeriodS,
-    phaseRad: (phaseDeg * Math.PI) / 180,
+    axes: [
+      {
+        // The box of the step is that of the estimate, the box of a law that of all it asks for.
+        min: min - amplitude,
+        max: max + amplitude,
+        amplitude,
+        periodS: ditherPeriodS,
+        phaseRad: (phaseDeg * Math.PI) / 180,
+        dither: 'sine',
+        gain,
+        speedMax: null,
+      },
+    ],
+    washoutRatio: filters.washoutRatio,
+    lowPassRatio: filters.lowPassRatio,
+    taper: null,
   };
 }
 

@@ -1,5 +1,6 @@
 import type { CompiledExpression } from '../../expressions/expression.types.js';
 import { gradientLaw, type GradientLawState } from '../../seeking/gradient-law.js';
+import { isUsable } from '../../seeking/seek-core.js';
 import type { SeekingInput } from '../../seeking/seeking-law.js';
 import type { StepOf } from '../experiment.schema.js';
 import type { SequencerInput } from '../sequencer.types.js';
@@ -37,8 +38,8 @@ interface Pursuit {
 export class SeekRunner implements StepRunner {
   readonly id: string;
   readonly kind = 'seek';
-  readonly signalNames = gradientLaw.signalNames;
-  readonly signals = new Float64Array(gradientLaw.signalNames.length).fill(NaN);
+  readonly signalNames = gradientLaw.signalNames(1);
+  readonly signals = new Float64Array(this.signalNames.length).fill(NaN);
   private readonly numbers: Record<'amplitude' | 'periodS' | 'gain', NumericValue>;
   private readonly when: CompiledExpression | null;
   private readonly ramp: ActuatorRamp;
@@ -76,8 +77,8 @@ export class SeekRunner implements StepRunner {
     const start = whereHeld(input, actuator);
     if (!Number.isFinite(start))
       return { port: 'failed', reason: `It is not known where "${actuator}" stands.` };
-    const law = gradientLaw.init(parameters, start);
-    const reason = this.ramp.begin(input, [{ channel: actuator, value: law.estimate }], 0);
+    const law = gradientLaw.init(parameters, [start]);
+    const reason = this.ramp.begin(input, [{ channel: actuator, value: estimateOf(law) }], 0);
     if (reason !== null) return { port: 'failed', reason };
     this.pursuit = {
       law,
@@ -118,27 +119,28 @@ export class SeekRunner implements StepRunner {
     return { port: 'failed', reason: `"${this.settings.parameters.actuator}" did not come into the box.` };
   }
 
-  /** One scan of the law, and what is kept of it. @returns false where the law gave no number */
+  /** One scan of the law, and what is kept of it. @returns false where the law has no number to work with */
   private seek(input: SequencerInput, pursuit: Pursuit): boolean {
     const { law, periods, retreat } = pursuit;
     const { objective } = input;
     const sign = this.services.objective?.direction === 'minimise' ? -1 : 1;
     this.fed.objective = sign * objective.value;
     this.fed.isValid = objective.isValid && Number.isFinite(objective.value);
-    const output = gradientLaw.step(law, this.fed, input.dtS);
-    if (!Number.isFinite(output.estimate + output.dither)) return false;
-    this.services.request(this.settings.parameters.actuator, output.estimate, output.dither);
+    if (this.fed.isValid && !isUsable(this.fed.objective)) return false;
+    gradientLaw.step(law, this.fed, input.dtS);
+    const estimate = estimateOf(law);
+    this.services.request(this.settings.parameters.actuator, estimate, law.dither[0] ?? NaN);
     this.signals.set(law.signals);
     if (retreat.note(this.fed.isValid, input.dtS)) {
       const reason = objective.whyInvalid ?? 'The objective is not valid.';
-      this.services.emit({ type: 'seek.retreated', step: this.id, to: output.estimate, reason });
+      this.services.emit({ type: 'seek.retreated', step: this.id, to: estimate, reason });
     }
     if (!this.fed.isValid) {
       periods.interrupt();
       pursuit.convergence?.clear();
       pursuit.isAdapting = false;
-    } else if (periods.add(output.estimate, objective, input.dtS)) {
-      if (pursuit.isAdapting) pursuit.convergence?.add(periods.lastEstimate, law.parameters.periodS);
+    } else if (periods.add(estimate, objective, input.dtS)) {
+      if (pursuit.isAdapting) pursuit.convergence?.add(periods.lastEstimate, law.trialS);
       pursuit.isAdapting = law.settleS <= 0;
     }
     return true;
@@ -150,7 +152,7 @@ export class SeekRunner implements StepRunner {
     if (retreat.lastedS > invalidForS) {
       return { port: 'failed', reason: `The objective was not valid for ${invalidForS} s.` };
     }
-    if (end.whenConverged && convergence?.hasStayed(end.whenConverged.band, law.parameters.periodS / 2)) {
+    if (end.whenConverged && convergence?.hasStayed(end.whenConverged.band, law.trialS / 2)) {
       return converged;
     }
     if (this.when && this.when.evaluate(this.services.lookup) === 1) return conditionMet;
@@ -158,9 +160,10 @@ export class SeekRunner implements StepRunner {
   }
 
   private leaveResults({ law, periods }: Pursuit, exit: StepExit): void {
-    const { min, max } = law.parameters;
+    const [min = NaN] = law.lowest;
+    const [max = NaN] = law.highest;
     const mean = periods.lastEstimate;
-    this.best = Number.isNaN(mean) ? law.estimate : Math.min(Math.max(mean, min), max);
+    this.best = Number.isNaN(mean) ? estimateOf(law) : Math.min(Math.max(mean, min), max);
     const leave = (suffix: string, value: number) => this.services.setResult(this.id, suffix, value);
     leave(`best.${this.settings.parameters.actuator}`, this.best);
     leave('objective', periods.meanObjective);
@@ -179,4 +182,9 @@ export class SeekRunner implements StepRunner {
     this.partedS += input.dtS;
     return null;
   }
+}
+
+/** Estimate of the only actuator, its unit. */
+function estimateOf({ estimate }: GradientLawState): number {
+  return estimate[0] ?? NaN;
 }

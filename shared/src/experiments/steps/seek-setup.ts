@@ -43,6 +43,22 @@ export function setUpSeek(
   const low = Math.max(min ?? -Infinity, limit.min + amplitude);
   const high = Math.min(max ?? Infinity, limit.max - amplitude);
   if (low > high) return 'With the dither kept inside the envelope no room is left to seek in.';
-  const phaseRad = (phaseDeg * Math.PI) / 180;
-  return { amplitude, periodS, washoutRatio, lowPassRatio, gain, phaseRad, min: low, max: high };
+  return {
+    axes: [
+      {
+        // The law keeps the estimate off its box by the amplitude.
+        min: Math.max(low - amplitude, limit.min),
+        max: Math.min(high + amplitude, limit.max),
+        amplitude,
+        periodS,
+        phaseRad: (phaseDeg * Math.PI) / 180,
+        dither: 'sine',
+        gain,
+        speedMax: null,
+      },
+    ],
+    washoutRatio,
+    lowPassRatio,
+    taper: null,
+  };
 }

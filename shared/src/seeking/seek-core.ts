@@ -1,0 +1,137 @@
+import type { SeekingAxis, TaperParameters } from './law-parameters.js';
+import { ditherWithin, held, highestWithin, lowestWithin } from './seek-box.js';
+import type { SeekingInput, SeekingState } from './seeking-law.js';
+import { createTaper, restoreTaper, stepTaper, type TaperState } from './taper.js';
+
+/** What is larger is a fault and no measurement; it would overflow in products with itself. */
+const magnitudeMax = 1e100;
+/** Longest step that is taken for one, s. */
+const stepMaxS = 1e6;
+
+/** The pieces that all laws share: box, validity with retreat, speed limit, taper. */
+export interface SeekCore extends SeekingState {
+  readonly axes: readonly SeekingAxis[];
+  /** The longest dither period or trial: so long must it be valid before a point counts as good, s. */
+  readonly trialS: number;
+  /** Estimate at the beginning of the present valid trial. */
+  readonly candidate: Float64Array;
+  /** Valid time since `candidate` was taken, s. */
+  validS: number;
+  readonly taper: TaperState;
+}
+
+export interface SeekCoreSetup {
+  axes: readonly SeekingAxis[];
+  start: ArrayLike<number>;
+  trialS: number;
+  signals: number;
+  taper: TaperParameters;
+  /** Largest dither of each actuator, by which its estimate keeps off the box, actuator units. */
+  reach: readonly number[];
+}
+
+export function createSeekCore({ axes, start, trialS, signals, taper, reach }: SeekCoreSetup): SeekCore {
+  const lowest = Float64Array.from(axes, ({ min }, i) => lowestWithin(min, reach[i] ?? 0));
+  const highest = Float64Array.from(axes, ({ max }, i) => highestWithin(max, reach[i] ?? 0));
+  axes.forEach(({ min, max }, i) => {
+    // Without room for the dither the estimate stands in the middle and the dither is cut.
+    if (at(lowest, i) > at(highest, i)) lowest[i] = highest[i] = min + (max - min) / 2;
+  });
+  const estimate = Float64Array.from(axes, (_, i) => {
+    const value = start[i] ?? NaN;
+    return Number.isFinite(value) ? held(value, at(lowest, i), at(highest, i)) : at(lowest, i);
+  });
+  return {
+    axes,
+    estimate,
+    dither: new Float64Array(axes.length),
+    signals: new Float64Array(signals).fill(NaN),
+    lowest,
+    highest,
+    lastGood: estimate.slice(),
+    candidate: estimate.slice(),
+    trialS,
+    validS: 0,
+    settleS: trialS,
+    isRetreated: false,
+    taper: createTaper(taper, axes, trialS),
+  };
+}
+
+/** An entry of an array whose bounds are known. */
+export function at(values: Float64Array, i: number): number {
+  return values[i] as number;
+}
+
+/** @returns true for a number that a law can calculate with */
+export function isUsable(value: number | undefined): value is number {
+  return value !== undefined && value <= magnitudeMax && value >= -magnitudeMax;
+}
+
+/**
+ * Begins a step. Where there is no usable objective the core goes back to the last good point, stops the dither
+ * and lets filters settle for one trial once it is valid again; the law has to reset its filters then.
+ *
+ * @returns true where the law can go on
+ * @realtime safe: allocates nothing
+ */
+export function admit(core: SeekCore, input: SeekingInput, dtS: number): boolean {
+  if (input.isValid && isUsable(input.objective) && dtS > 0 && dtS <= stepMaxS) {
+    core.isRetreated = false;
+    return true;
+  }
+  retreat(core);
+  return false;
+}
+
+/** Goes back to the last good point. */
+export function retreat(core: SeekCore): void {
+  core.estimate.set(core.lastGood);
+  core.candidate.set(core.lastGood);
+  core.dither.fill(0);
+  core.signals.fill(NaN);
+  core.validS = 0;
+  core.settleS = core.trialS;
+  core.isRetreated = true;
+  restoreTaper(core.taper);
+}
+
+/** @returns true once filters have settled, so that the law may adapt */
+export function isSettled(core: SeekCore, dtS: number): boolean {
+  if (core.settleS <= 0) return true;
+  core.settleS -= dtS;
+  return false;
+}
+
+/**
+ * Moves the estimate of one actuator, within its speed limit and its box. The estimate is the only state of the
+ * integrator, so that it cannot wind up.
+ *
+ * @param change wanted change, actuator unit; NaN moves nothing
+ * @param dtS time in which it happens, s
+ */
+export function move(core: SeekCore, i: number, change: number, dtS: number): void {
+  const { speedMax } = core.axes[i] as SeekingAxis;
+  const limited = speedMax === null ? change : held(change, -speedMax * dtS, speedMax * dtS);
+  const next = at(core.estimate, i) + limited;
+  if (next === next) core.estimate[i] = held(next, at(core.lowest, i), at(core.highest, i));
+}
+
+/** Puts out a dither, cut to the box. */
+export function putDither(core: SeekCore, i: number, dither: number): void {
+  const { min, max } = core.axes[i] as SeekingAxis;
+  core.dither[i] = ditherWithin(at(core.estimate, i), dither, min, max);
+}
+
+/**
+ * Ends a step before the next dither is put out: remembers good points and judges the taper. Kept is the estimate
+ * of one to two trials ago: the newest that is known to have been valid throughout.
+ */
+export function remember(core: SeekCore, dtS: number): void {
+  stepTaper(core.taper, core.estimate, dtS);
+  core.validS += dtS;
+  if (core.validS < core.trialS) return;
+  core.lastGood.set(core.candidate);
+  core.candidate.set(core.estimate);
+  core.validS = 0;
+}
