@@ -9,6 +9,8 @@ import { fileURLToPath } from 'node:url';
 export const root = resolve(fileURLToPath(import.meta.url), '../../..');
 
 const workspaces = ['shared', 'adapters', 'test-benches', 'orchestrator', 'console'];
+/** Hash of the lock file that was installed; goes with the folder when npm clears it. */
+const installStamp = join(root, 'node_modules/.cresthold-install');
 const buildStamp = join(root, 'node_modules/.cresthold-build');
 /** Written by the build itself, so their change is no reason to build. */
 const generated = new Set(['console/src/api/schema.d.ts', 'orchestrator/openapi.json']);
@@ -52,10 +54,22 @@ export async function installDependencies(options) {
   if (isInstalled()) return;
   console.error('Installing the dependencies; one of them is compiled, which takes a minute or two …');
   await npm(['ci', '--no-audit', '--no-fund'], options);
+  writeFileSync(installStamp, lockFileHash());
 }
 
-/** Compares what the lock file asks for with what npm noted after its last install. */
+function lockFileHash() {
+  return createHash('sha256')
+    .update(readFileSync(join(root, 'package-lock.json')))
+    .digest('hex');
+}
+
 function isInstalled() {
+  const isStamped = existsSync(installStamp) && readFileSync(installStamp, 'utf8') === lockFileHash();
+  return isStamped || isInstalledByHand();
+}
+
+/** Compares what the lock file asks for with what npm noted, so that an installation by hand is left alone. */
+function isInstalledByHand() {
   const noted = join(root, 'node_modules/.package-lock.json');
   if (!existsSync(noted)) return false;
   const wanted = JSON.parse(readFileSync(join(root, 'package-lock.json'), 'utf8')).packages;
