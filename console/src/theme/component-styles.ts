@@ -66,6 +66,8 @@ const surfaces: ThemeOptions['components'] = {
   },
   MuiDialog: {
     styleOverrides: {
+      /** Below the strip with the emergency stop, which stays above every dialog. */
+      container: { paddingTop: '7.5rem' },
       paper: ({ theme }) => ({ border: `1px solid ${theme.vars.palette.text.primary}`, margin: 16 }),
     },
   },

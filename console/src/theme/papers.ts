@@ -50,7 +50,7 @@ export const papers: Record<SchemeName, Paper> = {
     warnWash: '#f8e5b4',
     actWash: '#dbe8f2',
     stopFace: '#c0121f',
-    traces: ['#1d1a15', '#00707f', '#8e3a8c', '#4a6b12', '#5b4bb3', '#7a5230'],
+    traces: ['#1d1a15', '#389475', '#ae32ae', '#592259', '#7d9438', '#204f17'],
   },
   dark: {
     ground: '#14120e',
@@ -68,7 +68,7 @@ export const papers: Record<SchemeName, Paper> = {
     warnWash: '#3a2a08',
     actWash: '#14283b',
     stopFace: '#c0121f',
-    traces: ['#efe7d6', '#4fc3d1', '#dd9fdb', '#a9c96a', '#b0a5f5', '#d9ab82'],
+    traces: ['#efe7d6', '#8bce7e', '#a63f8d', '#9e8cd4', '#608f56', '#cc94b0'],
   },
 };
 

@@ -36,7 +36,8 @@ export function Shell() {
           <AccountMenu />
         </Box>
       </Box>
-      <Box sx={{ position: 'sticky', top: 0, zIndex: 'appBar' }}>
+      {/* Above dialogs and their backdrops too: the emergency stop is one press away whatever is open. */}
+      <Box sx={{ position: 'sticky', top: 0, zIndex: (theme) => theme.zIndex.modal + 100 }}>
         <SafetyStrip />
       </Box>
       <Main />

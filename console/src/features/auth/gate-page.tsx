@@ -44,26 +44,34 @@ export function GatePage({ title, children }: { title: string; children: ReactNo
   );
 }
 
-/** An objective over its actuator, and the dither that holds its top. */
+/** A textbook hill, px: 44 high at 180. */
+const hillAt = (x: number) => 52 - 44 * Math.exp(-(((x - 180) / 75) ** 2));
+
+const hillPath = Array.from(
+  { length: 91 },
+  (_, index) => `${index === 0 ? 'M' : 'L'}${index * 4} ${hillAt(index * 4).toFixed(1)}`,
+).join('');
+
+/** Each step of the climb makes up half of what is left. */
+const climb = [0, 1, 2, 3, 4, 5].map((step) => 180 - 128 / 1.75 ** step);
+
+/** An objective over its actuator, and the climb to its top. */
 function Hill() {
   return (
-    <svg width="100%" height="56" viewBox="0 0 360 56" preserveAspectRatio="none" aria-hidden="true">
-      <path
-        d="M0 52C90 52 110 8 180 8s90 44 180 44"
-        fill="none"
-        stroke="currentColor"
-        strokeWidth="1.5"
-        vectorEffect="non-scaling-stroke"
-      />
-      <path
-        d="M0 50C60 50 84 36 104 27q6-9 10 0t10-8 10 0 10-8 10 1 10-5 10 0 10-1 10 2 10-2"
-        fill="none"
-        stroke="currentColor"
-        strokeWidth="1"
-        strokeDasharray="2 2"
-        vectorEffect="non-scaling-stroke"
-        opacity="0.6"
-      />
+    <svg width="100%" viewBox="0 0 360 58" aria-hidden="true" style={{ display: 'block' }}>
+      <path d={hillPath} fill="none" stroke="currentColor" strokeWidth="1.5" />
+      {climb.map((x) => (
+        <circle
+          key={x}
+          cx={x}
+          cy={hillAt(x)}
+          r="2.5"
+          fill="var(--ch-palette-background-paper)"
+          stroke="currentColor"
+          strokeWidth="1.2"
+        />
+      ))}
+      <circle cx="180" cy={hillAt(180)} r="3.5" fill="currentColor" />
     </svg>
   );
 }

@@ -84,7 +84,7 @@ function CardHead({ rig, status }: { rig: RigDocument; status: RigStatus | null 
           {rig.content.title}
         </Link>
       </Typography>
-      <Box sx={{ opacity: isPast ? 0.75 : 1 }}>
+      <Box sx={{ fontStyle: isPast ? 'italic' : undefined }}>
         {status ? (
           <PhaseMark phase={status.phase} isPaused={status.isPaused} isLockedOut={status.isLockedOut} />
         ) : (

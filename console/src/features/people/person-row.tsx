@@ -31,21 +31,23 @@ export function PersonRow({ user }: { user: User }) {
             {!user.isEnabled && <strong> · disabled</strong>}
           </Box>
         </Box>
-        <Button
-          onClick={() => setRoles(roles ? null : user.roles)}
-          aria-expanded={roles !== null}
-          aria-label={roles ? `Cancel the change of ${user.title}` : `Roles … of ${user.title}`}
-        >
-          {roles ? 'Cancel' : 'Roles …'}
-        </Button>
-        <Button
-          disabled={isSelf || change.isPending}
-          title={isSelf ? 'You cannot disable yourself.' : undefined}
-          onClick={() => change.mutate({ account: user.account, body: { isEnabled: !user.isEnabled } })}
-          aria-label={`${user.isEnabled ? 'Disable' : 'Enable'} ${user.title}`}
-        >
-          {user.isEnabled ? 'Disable' : 'Enable'}
-        </Button>
+        <Box sx={{ display: 'flex', gap: 1, flex: 'none' }}>
+          <Button
+            onClick={() => setRoles(roles ? null : user.roles)}
+            aria-expanded={roles !== null}
+            aria-label={roles ? `Cancel the change of ${user.title}` : `Roles … of ${user.title}`}
+          >
+            {roles ? 'Cancel' : 'Roles …'}
+          </Button>
+          <Button
+            disabled={isSelf || change.isPending}
+            title={isSelf ? 'You cannot disable yourself.' : undefined}
+            onClick={() => change.mutate({ account: user.account, body: { isEnabled: !user.isEnabled } })}
+            aria-label={`${user.isEnabled ? 'Disable' : 'Enable'} ${user.title}`}
+          >
+            {user.isEnabled ? 'Disable' : 'Enable'}
+          </Button>
+        </Box>
       </Box>
       {roles && (
         <Box sx={{ display: 'flex', flexWrap: 'wrap', gap: 1, alignItems: 'end' }}>

@@ -56,7 +56,7 @@ function RigStripEntry({ rig, isInView }: { rig: RigDocument; isInView: boolean 
       }}
     >
       <span>{rig.content.title}</span>
-      <Box component="span" sx={{ fontSize: '0.8125rem', opacity: isPast ? 0.75 : 1 }}>
+      <Box component="span" sx={{ fontSize: '0.8125rem', fontStyle: isPast ? 'italic' : undefined }}>
         {status ? (
           <PhaseMark phase={status.phase} isPaused={status.isPaused} isLockedOut={status.isLockedOut} />
         ) : (
