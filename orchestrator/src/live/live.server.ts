@@ -68,7 +68,9 @@ export class LiveServer implements OnApplicationBootstrap, OnModuleDestroy {
     const isOurPage = isFromHere({ origin: request.headers.origin, host: request.headers.host });
     const user = isOurPage ? await this.sessions.userOfCookieHeader(cookie) : null;
     if (user === null) return refuse(socket, '401 Unauthorized');
-    this.sockets.handleUpgrade(request, socket, head, (opened) => void this.open(opened, cookie));
+    this.sockets.handleUpgrade(request, socket, head, (opened) => {
+      this.open(opened, cookie).catch(() => opened.terminate());
+    });
   }
 
   private async open(socket: WebSocket, cookie: string | undefined): Promise<void> {

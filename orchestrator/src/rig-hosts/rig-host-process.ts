@@ -30,6 +30,15 @@ export type SupervisorState =
   | { name: 'failed'; because: string }
   | { name: 'ending' };
 
+const stateTexts: Record<SupervisorState['name'], string> = {
+  down: 'is not running',
+  starting: 'is starting',
+  up: 'is up',
+  restarting: 'was lost and is begun again',
+  failed: 'has failed',
+  ending: 'is ending',
+};
+
 /**
  * Keeps one rig host alive: begins it, begins it again within a budget when it dies after READY, and ends
  * it. A host that dies before READY is not begun again: it would only die again.
@@ -52,6 +61,13 @@ export class RigHostProcess {
 
   get state(): SupervisorState {
     return this.current;
+  }
+
+  /** Why the host is not up, for people; null where it is. */
+  get fault(): string | null {
+    const { current } = this;
+    if (current.name === 'up') return null;
+    return `The rig host ${stateTexts[current.name]}.${'because' in current ? ` ${current.because}` : ''}`;
   }
 
   get pid(): number | undefined {
@@ -105,7 +121,11 @@ export class RigHostProcess {
   async stop(): Promise<void> {
     this.current = { name: 'ending' };
     this.abort.abort();
-    await this.life?.shutDown();
+    const death = await this.life?.shutDown();
+    if (death && death.exitCode !== 0) {
+      const how = death.signal ?? `exit code ${death.exitCode}`;
+      this.owner.onLog('error', `The rig host ended without having brought its rig to rest (${how}).`);
+    }
     await this.keeping;
   }
 
@@ -188,8 +208,7 @@ export class RigHostProcess {
   }
 
   private unavailable(): DomainError {
-    const because = 'because' in this.current ? ` ${this.current.because}` : '';
-    return new DomainError('host.unavailable', `The rig host is ${this.current.name}.${because}`);
+    return new DomainError('host.unavailable', this.fault ?? undefined);
   }
 }
 

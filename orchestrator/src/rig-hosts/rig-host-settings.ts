@@ -22,5 +22,5 @@ export const defaultRigHostSettings: RigHostSettings = {
   program: fileURLToPath(new URL('../rig-host/main.js', import.meta.url)),
   timing: defaultTiming,
   restartPolicy: defaultRestartPolicy,
-  orphanWaitMs: 45_000,
+  orphanWaitMs: 60_000,
 };

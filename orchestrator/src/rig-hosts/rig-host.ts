@@ -53,19 +53,17 @@ export class RigHost implements RigHostOwner {
   async status(): Promise<RigStatus> {
     if (this.lastStatus && this.process.state.name === 'up') return this.lastStatus;
     const { trip, lockout } = await this.parts.rigs.state(this.rigId);
-    return statusWithoutHost(this.rigId, trip, lockout !== null, this.fault ?? 'The rig host is silent.');
+    return statusWithoutHost(
+      this.rigId,
+      trip,
+      lockout !== null,
+      this.process.fault ?? 'The rig host is silent.',
+    );
   }
 
   /** The host's last word; null while it is not up. */
   get heard(): RigStatus | null {
     return this.process.state.name === 'up' ? this.lastStatus : null;
-  }
-
-  /** Why the host is not up; null where it is. */
-  get fault(): string | null {
-    const { state } = this.process;
-    if (state.name === 'up') return null;
-    return `The rig host is ${state.name}.${'because' in state ? ` ${state.because}` : ''}`;
   }
 
   /** True where the host could not be begun for a reason that may pass by itself. */
@@ -84,7 +82,7 @@ export class RigHost implements RigHostOwner {
   /** A person's command to a host that has failed is also the word to begin it again. */
   async request(command: HostCommand): Promise<void> {
     if (this.process.state.name !== 'failed') return this.process.request(command);
-    const text = `${this.fault} It is begun again now: try again in a moment.`;
+    const text = `${this.process.fault} It is begun again now: try again in a moment.`;
     this.process.start().catch(() => undefined);
     throw new DomainError('host.unavailable', text);
   }

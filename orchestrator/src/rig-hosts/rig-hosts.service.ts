@@ -70,7 +70,7 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
 
   /** Why each rig's host is not up; null where it is. */
   faults(): { rigId: string; fault: string | null }[] {
-    return [...this.hosts.values()].map((host) => ({ rigId: host.rigId, fault: host.fault }));
+    return [...this.hosts.values()].map((host) => ({ rigId: host.rigId, fault: host.process.fault }));
   }
 
   async command(rigId: string, command: HostCommand): Promise<void> {

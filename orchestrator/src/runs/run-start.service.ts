@@ -23,15 +23,26 @@ export class RunStarter {
    * @throws experiment.preflight-failed, rig.busy, rig.not-armed and whatever else the rig's host answers
    */
   async start(request: RunStart, idempotencyKey: string | null, by: string): Promise<RunEntity> {
-    const earlier = idempotencyKey === null ? null : await this.records.withKey(by, idempotencyKey);
+    const earlier = await this.withKey(by, idempotencyKey);
     if (earlier) return sameRequest(earlier, request);
     const prepared = await this.orders.prepare(request);
     const run = newRun(prepared, idempotencyKey, by);
-    await this.records.open(run);
+    try {
+      await this.records.open(run);
+    } catch (error) {
+      // The same request may have come twice at once.
+      const twin = await this.withKey(by, idempotencyKey);
+      if (twin) return sameRequest(twin, request);
+      throw error;
+    }
     await this.order(run, prepared);
     const { id: subject, rigId } = run;
     await this.audit.record({ account: by, action: 'run.started', rigId, subject });
     return this.records.get(run.id);
+  }
+
+  private async withKey(by: string, key: string | null): Promise<RunEntity | null> {
+    return key === null ? null : this.records.withKey(by, key);
   }
 
   private async order(run: RunEntity, prepared: PreparedRun): Promise<void> {

@@ -64,7 +64,10 @@ describe('starting a run', () => {
 
   it('with the same key starts one run, and another experiment with it none', async () => {
     const experimentId = await makeExperiment(server, 'stays');
-    const { body: first } = await start(experimentId, 'key-1').expect(202);
+    const twins = await Promise.all([start(experimentId, 'key-1'), start(experimentId, 'key-1')]);
+    expect(twins.map(({ status }) => status)).toEqual([202, 202]);
+    const first = twins[0].body;
+    expect(twins[1].body.id).toBe(first.id);
     const { body: again } = await start(experimentId, 'key-1').expect(202);
     expect(again.id).toBe(first.id);
     const { body } = await start(await makeExperiment(server, 'other'), 'key-1').expect(400);

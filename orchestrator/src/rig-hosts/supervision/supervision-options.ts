@@ -31,7 +31,7 @@ export const defaultTiming: SupervisionTiming = {
   requestMs: 5_000,
   configureMs: 20_000,
   silenceMs: 4_000,
-  shutDownMs: 30_000,
+  shutDownMs: 50_000,
   aliveEveryMs: 500,
   messagesPerSMax: 2_000,
 };
