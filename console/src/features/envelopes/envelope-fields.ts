@@ -15,9 +15,9 @@ export interface FieldFacts<Key extends string> {
 }
 
 export const stopCategories = [
-  { value: 0, label: '0 · at once, released' },
-  { value: 1, label: '1 · ramped, released' },
-  { value: 2, label: '2 · ramped, held' },
+  { value: 0, label: '0 · at once' },
+  { value: 1, label: '1 · ramp, let go' },
+  { value: 2, label: '2 · ramp, hold' },
 ] as const;
 
 /** Fields of an actuator's limit, in the order of the table. */
@@ -35,8 +35,8 @@ export const limitFields: readonly FieldFacts<keyof Limit>[] = [
     key: 'whenFoundOutside',
     label: 'Found outside',
     options: [
-      { value: 'refuse', label: 'refuse to arm' },
-      { value: 'slew-in', label: 'come in slowly' },
+      { value: 'refuse', label: 'refuse' },
+      { value: 'slew-in', label: 'slew in' },
     ],
   },
 ];

@@ -6,11 +6,11 @@ import { useIsStale, useLatestValue, useRigSamples, type RigSamples } from '../.
 /** A card shows so many channels at most; all of them are on the rig's page. */
 const shownChannels = 10;
 
-/** The present readings of a rig in one column, aligned on the decimal point. */
-export function LiveReadings({ rig }: { rig: Rig }) {
+/** The present readings of a rig in one column, aligned on the decimal point; the heartbeat says nothing to people. */
+export function LiveReadings({ rig, hiddenChannel }: { rig: Rig; hiddenChannel: string | undefined }) {
   const samples = useRigSamples(rig.id);
   const isStale = useIsStale(samples);
-  const channels = rig.channels.slice(0, shownChannels);
+  const channels = rig.channels.filter(({ id }) => id !== hiddenChannel).slice(0, shownChannels);
   const places = {
     fractionPlaces: Math.max(...channels.map(({ display }) => display.decimals)),
     unitPlaces: Math.max(...channels.map(({ unit }) => unit.length)),

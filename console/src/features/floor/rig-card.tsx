@@ -17,6 +17,8 @@ export function RigCard({ rig }: { rig: RigDocument }) {
   const status = useRigStatus(rig.id, rig.status);
   const session = useSession();
   const envelopes = useEnvelopes(rig.id);
+  const heartbeat = envelopes.data?.find((envelope) => envelope.status === 'in-force')?.content.heartbeat
+    ?.channel;
   const needs = envelopes.data ? needsOf(rig.id, status, envelopes.data, session) : [];
   return (
     <Box
@@ -56,7 +58,7 @@ export function RigCard({ rig }: { rig: RigDocument }) {
               borderColor: { xs: 'divider', sm: 'divider' },
             }}
           >
-            <LiveReadings rig={rig.content} />
+            <LiveReadings rig={rig.content} hiddenChannel={heartbeat} />
           </Box>
         </Box>
         <Needs needs={needs} />
