@@ -16,6 +16,11 @@ export function safeSinceMs(log: readonly BenchLogLine[], eventAtMs: number): nu
   return truths[lastOutside + 1]?.atMs ?? null;
 }
 
+/** Bench time at a moment, s: a bench that is itself held up does not count what it missed. */
+export function benchTimeS(log: readonly BenchLogLine[], atMs: number): number {
+  return log.findLast((line) => line.atMs <= atMs)?.benchS ?? NaN;
+}
+
 /** Where the damper was when the event came, %. */
 export function trimAt(log: readonly BenchLogLine[], eventAtMs: number): number {
   const truths = log.flatMap((line) => (line.event === 'truth' && line.atMs <= eventAtMs ? [line] : []));

@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import { seekExperiment } from '../end-to-end/seek-experiment.js';
 import { Station } from '../harness/station.js';
 import { until } from '../harness/until.js';
-import { lastBeatMs, safeSinceMs, trimAt, writesOutside } from './bench-facts.js';
+import { benchTimeS, lastBeatMs, safeSinceMs, trimAt, writesOutside } from './bench-facts.js';
 import { runFileFacts } from './run-file-facts.js';
 import { WireProxy } from './wire-proxy.js';
 
@@ -20,6 +20,8 @@ export interface Loss {
   fromTrim: number;
   /** From the event until the damper was at safe to stay. */
   safeAfterMs: number;
+  /** The same by the clock of the bench, s of bench time. */
+  safeAfterBenchS: number;
   /** Between the last sign of life on the wire before the event and the last recorded scan. */
   missingMs: number;
   longestGapMs: number;
@@ -96,6 +98,7 @@ export class KillStation {
       round,
       fromTrim: trimAt(log, eventAtMs),
       safeAfterMs: safeAtMs - eventAtMs,
+      safeAfterBenchS: benchTimeS(log, safeAtMs) - benchTimeS(log, eventAtMs),
       missingMs: Math.max(0, beatMs - facts.lastAtMs),
       longestGapMs: facts.longestGapMs,
       scans: facts.scans,
