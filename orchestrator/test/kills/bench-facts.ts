@@ -27,12 +27,18 @@ export function trimAt(log: readonly BenchLogLine[], eventAtMs: number): number 
   return truths.at(-1)?.trim ?? NaN;
 }
 
-/** The last sign of life of the rig host that reached the bench before a time, ms since 1970. */
-export function lastBeatMs(log: readonly BenchLogLine[], beforeMs: number): number {
-  const beats = log.filter(
-    (line) => line.event === 'write' && line.register === heartbeatRegister && line.atMs <= beforeMs,
+/**
+ * How long the rig host went on scanning after the last scan that is in the file, ms: from that scan's own
+ * heartbeat to the last heartbeat before the event, both as the bench saw them.
+ */
+export function missingMs(log: readonly BenchLogLine[], lastScanAtMs: number, eventAtMs: number): number {
+  const beats = log.flatMap((line) =>
+    line.event === 'write' && line.register === heartbeatRegister && line.atMs <= eventAtMs
+      ? [line.atMs]
+      : [],
   );
-  return beats.at(-1)?.atMs ?? NaN;
+  const own = beats.find((atMs) => atMs >= lastScanAtMs);
+  return own === undefined ? 0 : (beats.at(-1) ?? own) - own;
 }
 
 /** How many writes to the air trim lay outside these limits. */

@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import { seekExperiment } from '../end-to-end/seek-experiment.js';
 import { Station } from '../harness/station.js';
 import { until } from '../harness/until.js';
-import { benchTimeS, lastBeatMs, safeSinceMs, trimAt, writesOutside } from './bench-facts.js';
+import { benchTimeS, missingMs, safeSinceMs, trimAt, writesOutside } from './bench-facts.js';
 import { runFileFacts } from './run-file-facts.js';
 import { WireProxy } from './wire-proxy.js';
 
@@ -22,7 +22,7 @@ export interface Loss {
   safeAfterMs: number;
   /** The same by the clock of the bench, s of bench time. */
   safeAfterBenchS: number;
-  /** Between the last sign of life on the wire before the event and the last recorded scan. */
+  /** What the host had still scanned and is not in the file. */
   missingMs: number;
   longestGapMs: number;
   scans: number;
@@ -89,7 +89,6 @@ export class KillStation {
       60_000,
     );
     const status = await station.untilPhase('tripped', 60_000);
-    const beatMs = lastBeatMs(log, eventAtMs);
     const facts = runFileFacts(join(station.dataFolder, 'runs', `${runId}.sqlite`), eventAtMs);
     const limit = station.entry.envelope.content.limits[0];
     await this.reset();
@@ -99,7 +98,7 @@ export class KillStation {
       fromTrim: trimAt(log, eventAtMs),
       safeAfterMs: safeAtMs - eventAtMs,
       safeAfterBenchS: benchTimeS(log, safeAtMs) - benchTimeS(log, eventAtMs),
-      missingMs: Math.max(0, beatMs - facts.lastAtMs),
+      missingMs: missingMs(log, facts.lastAtMs, eventAtMs),
       longestGapMs: facts.longestGapMs,
       scans: facts.scans,
       runStatus: run.status,
