@@ -20,19 +20,27 @@ import { RunStatusMark } from './run-status-mark.js';
 export function RunPage() {
   const { runId = '' } = useParams();
   const run = useRun(runId);
-  const version = useExperimentVersion(run.data?.experimentId ?? '', run.data?.experimentVersion ?? null);
-  const rig = useRig(run.data?.rigId ?? '');
-  const error = run.error ?? version.error ?? (run.data ? rig.error : null);
-  useShowsRig(run.data?.rigId ?? null);
-  if (run.data && version.data && rig.data) {
-    return <RunView run={run.data} graph={version.data.content.graph} rig={rig.data.content} />;
+  if (run.data) return <LoadedRun run={run.data} />;
+  return <Waiting error={run.error} onRetry={() => void run.refetch()} />;
+}
+
+function LoadedRun({ run }: { run: RunSummary }) {
+  const version = useExperimentVersion(run.experimentId, run.experimentVersion);
+  const rig = useRig(run.rigId);
+  useShowsRig(run.rigId);
+  if (version.data && rig.data) {
+    return <RunView run={run} graph={version.data.content.graph} rig={rig.data.content} />;
   }
+  return <Waiting error={version.error ?? rig.error} onRetry={() => void version.refetch()} />;
+}
+
+function Waiting({ error, onRetry }: { error: unknown; onRetry: () => void }) {
   return (
     <Page title="Run">
       {error === null ? (
         <Loading what="run" />
       ) : (
-        <ProblemNotice title="The run could not be loaded" error={error} onRetry={() => void run.refetch()} />
+        <ProblemNotice title="The run could not be loaded" error={error} onRetry={onRetry} />
       )}
     </Page>
   );

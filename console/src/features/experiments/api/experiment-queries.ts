@@ -42,16 +42,15 @@ export function useExperimentVersions(id: string) {
   });
 }
 
-/** One immutable version; null asks for nothing. */
-export function useExperimentVersion(id: string, version: number | null) {
+/** One immutable version. */
+export function useExperimentVersion(id: string, version: number) {
   return useQuery({
-    queryKey: experimentKeys.version(id, version ?? 0),
-    enabled: version !== null,
+    queryKey: experimentKeys.version(id, version),
     staleTime: Infinity,
     queryFn: (): Promise<ExperimentVersion> =>
       answerOf(
         client.GET('/api/v1/experiments/{id}/versions/{version}', {
-          params: { path: { id, version: version ?? 0 } },
+          params: { path: { id, version: version } },
         }),
       ),
   });

@@ -54,6 +54,8 @@ export function GraphDrawing({ heightPx, edits, chosenStep = null, ...drawing }:
       if (change.type === 'position' && change.dragging === false && change.position) {
         edits?.onMove(change.id, change.position);
       }
+      // Only what a person chose comes this way; `chosenStep` is what is chosen.
+      if (change.type === 'select' && change.selected) edits?.onChoose(change.id);
     }
   };
   return (
@@ -65,12 +67,7 @@ export function GraphDrawing({ heightPx, edits, chosenStep = null, ...drawing }:
         defaultEdgeOptions={defaultEdgeOptions}
         onNodesChange={onNodesChange}
         onConnect={(connection) => announce(connection, edits)}
-        onNodeClick={(_event, node) => edits?.onChoose(node.id)}
         onPaneClick={() => edits?.onChoose(null)}
-        onSelectionChange={({ nodes: chosen }) => {
-          const [only] = chosen;
-          if (chosen.length === 1 && only && only.id !== chosenStep) edits?.onChoose(only.id);
-        }}
         onBeforeDelete={({ nodes: gone, edges: cut }) => {
           edits?.onRemove(new Set(gone.map((node) => node.id)), new Set(cut.map((edge) => edge.id)));
           // The graph without them comes back as a property.
