@@ -129,6 +129,8 @@ describe('gradient law on a cubic', () => {
   it.each([
     [0.1, -0.001875],
     [0.2, -0.0075],
+    // The next order: an independent integration by Runge and Kutta gives −0.0306635 for −0.03.
+    [0.4, -0.0306635],
   ])('rests off the optimum by the closed form at amplitude %d', (amplitude, expected) => {
     const c = { ...still, amplitude, washout: 1, curvature: 2, rawGain: 0.4, expected: 0 };
     const means = simulateSeeking({
@@ -145,7 +147,7 @@ describe('gradient law on a cubic', () => {
         .slice(-50)
         .reduce((sum, mean) => sum + mean, 0) / 50;
     console.info(`offset at amplitude ${amplitude}: ${offset.toFixed(6)}, closed form ${expected}`);
-    expect(Math.abs(offset / expected - 1)).toBeLessThan(0.05);
+    expect(Math.abs(offset / expected - 1)).toBeLessThan(0.03);
   });
 });
 

@@ -169,7 +169,7 @@ export interface SeekingAxis {
   readonly min: number;
   readonly max: number;
   readonly amplitude: number;
-  readonly speedMax: number | null;
+  readonly speedMax?: number | null;
 }
 
 export interface PeriodicAxis extends SeekingAxis {

@@ -112,7 +112,8 @@ export function isSettled(core: SeekCore, dtS: number): boolean {
  */
 export function move(core: SeekCore, i: number, change: number, dtS: number): void {
   const { speedMax } = core.axes[i] as SeekingAxis;
-  const limited = speedMax === null ? change : held(change, -speedMax * dtS, speedMax * dtS);
+  const isFree = speedMax === null || speedMax === undefined;
+  const limited = isFree ? change : held(change, -speedMax * dtS, speedMax * dtS);
   const next = at(core.estimate, i) + limited;
   if (next === next) core.estimate[i] = held(next, at(core.lowest, i), at(core.highest, i));
 }

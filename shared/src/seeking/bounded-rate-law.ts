@@ -1,0 +1,121 @@
+import { z } from 'zod';
+import { writeEstimates } from './gradient-estimator.js';
+import { axesOf, gainParameter, periodicAxis, taperParameter } from './law-parameters.js';
+import { ditherWithin, held } from './seek-box.js';
+import { admit, at, createSeekCore, isSettled, remember, type SeekCore } from './seek-core.js';
+import type { SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
+
+const axis = periodicAxis(['sine'], { gain: gainParameter }).omit({
+  speedMax: true,
+  phaseRad: true,
+  dither: true,
+});
+type Axis = z.infer<typeof axis>;
+
+const parametersSchema = z.object({ axes: axesOf(axis, 16), taper: taperParameter });
+export type BoundedRateLawParameters = z.infer<typeof parametersSchema>;
+
+export interface BoundedRateLawState extends SeekCore {
+  readonly parameters: BoundedRateLawParameters;
+  /** What was asked for last, actuator units. */
+  readonly applied: Float64Array;
+  /** ωt of each actuator, rad. */
+  readonly phases: Float64Array;
+  /** Objective less this turns the phase: taken from the first sample, so that no phase is huge. */
+  reference: number;
+}
+
+const signalNames = ['estimate', 'turn'];
+
+/**
+ * Seeking with a bounded update rate: θ' = √(αω)·cos(ωt − k·y), whose size never exceeds √(αω) = a·ω whatever
+ * the objective does, noise and spikes included. On average θ' = (kα/2)·∇y, with a ripple of amplitude
+ * a = √(α/ω). Parametrised by a, and by the gain g = kα/2 of the other laws: α = a²·ω, k = 2g/(a²·ω).
+ *
+ * Only the phase of the perturbation carries the objective: k times the swing of the objective over a period
+ * must stay well below a turn for the average to hold. The perturbation is its own reference, so that a lag λ of
+ * the plant cannot be made up for by a phase: the rate falls by cos λ and turns its sign beyond a quarter period.
+ * A retreat, too, is walked at no more than a·ω.
+ *
+ * @source A. Scheinker and M. Krstić (2013), "Minimum-seeking for CLFs: universal semiglobally stabilizing
+ * feedback under unknown control directions", IEEE Transactions on Automatic Control 58:1107–1122; (2014),
+ * "Extremum seeking with bounded update rates", Systems & Control Letters 63:25–31 (both from memory)
+ * @realtime `step` is safe: it allocates nothing
+ */
+export const boundedRateLaw: SeekingLaw<BoundedRateLawParameters, BoundedRateLawState> = {
+  id: 'bounded-rate',
+  title: 'Bounded update rate',
+  purpose: 'Moves at a speed that noise and spikes of the objective cannot raise.',
+  source:
+    'A. Scheinker and M. Krstić (2014), "Extremum seeking with bounded update rates", Systems & Control Letters 63:25–31',
+  actuatorsMax: 16,
+  ditherKinds: ['sine'],
+  parametersSchema,
+
+  signalNames: (actuators) => perActuator(actuators, signalNames),
+
+  init(parameters, start) {
+    const { axes, taper } = parameters;
+    const core = createSeekCore({
+      axes,
+      start,
+      taper,
+      trialS: Math.max(...axes.map(({ periodS }) => periodS)),
+      signals: axes.length * signalNames.length,
+      reach: axes.map(({ amplitude }) => amplitude),
+    });
+    writeEstimates(core.estimate, core.signals, signalNames.length);
+    const phases = new Float64Array(axes.length);
+    return { ...core, parameters, applied: core.estimate.slice(), phases, reference: NaN };
+  },
+
+  step(state, input, dtS) {
+    if (admit(state, input, dtS)) climb(state, input.objective, dtS);
+    else walkBack(state, dtS);
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+  },
+};
+
+function climb(state: BoundedRateLawState, objective: number, dtS: number): void {
+  const { parameters, phases, applied, signals } = state;
+  const { scale } = state.taper;
+  if (state.reference !== state.reference) state.reference = objective;
+  const isAdapting = isSettled(state, dtS);
+  remember(state, dtS);
+  for (let i = 0; i < applied.length; i += 1) {
+    const { periodS, amplitude, gain } = parameters.axes[i] as Axis;
+    const omega = (2 * Math.PI) / periodS;
+    const reach = amplitude * scale;
+    const turn = isAdapting ? ((2 * gain) / (reach * reach * omega)) * (objective - state.reference) : 0;
+    const middle = at(phases, i) + (omega * dtS) / 2;
+    phases[i] = (at(phases, i) + omega * dtS) % (2 * Math.PI);
+    const speed = reach * omega * Math.cos(middle - turn);
+    place(state, i, at(applied, i) + speed * dtS, reach * Math.sin(at(phases, i) - turn));
+    signals[i * signalNames.length + 1] = turn;
+  }
+}
+
+/** Holds the applied value in the box, the estimate in its own, and keeps their difference below the amplitude. */
+function place(state: BoundedRateLawState, i: number, wanted: number, ripple: number): void {
+  const { applied, estimate, dither, lowest, highest } = state;
+  const { min, max } = state.axes[i] as Axis;
+  const next = held(wanted, min, max);
+  const middle = held(next - ripple, at(lowest, i), at(highest, i));
+  estimate[i] = middle;
+  dither[i] = ditherWithin(middle, next - middle, min, max);
+  applied[i] = middle + at(dither, i);
+}
+
+function walkBack(state: BoundedRateLawState, dtS: number): void {
+  const { applied, estimate, lastGood, phases, parameters } = state;
+  for (let i = 0; i < applied.length; i += 1) {
+    const { amplitude, periodS, min, max } = parameters.axes[i] as Axis;
+    const stride = ((2 * Math.PI) / periodS) * amplitude * Math.max(0, dtS);
+    const way = at(lastGood, i) - at(applied, i);
+    if (stride >= 0) applied[i] = held(at(applied, i) + held(way, -stride, stride), min, max);
+    estimate[i] = at(applied, i);
+  }
+  phases.fill(0);
+  state.reference = NaN;
+}

@@ -1,0 +1,198 @@
+import { z } from 'zod';
+import {
+  createFirstOrderFilter,
+  resetFirstOrderFilter,
+  stepLowPass,
+  type FirstOrderFilterState,
+} from '../signals/first-order-filter.js';
+import { filterDirection, relaxedBarrier } from './constraint-filter.js';
+import {
+  createGradientEstimator,
+  gradientSignals,
+  resetGradientEstimator,
+  stepGradientEstimator,
+  writeEstimates,
+  writeGradientSignals,
+  type GradientEstimator,
+} from './gradient-estimator.js';
+import {
+  axesOf,
+  gainParameter,
+  lowPassRatioParameter,
+  parameter,
+  periodicAxis,
+  taperParameter,
+  washoutRatioParameter,
+} from './law-parameters.js';
+import {
+  admitPeriodic,
+  createPeriodicCore,
+  perturb,
+  retreatPeriodic,
+  type PeriodicCore,
+} from './periodic-core.js';
+import { held } from './seek-box.js';
+import { at, isSettled, isUsable, move } from './seek-core.js';
+import { ditherKinds, type SeekingInput, type SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
+
+const axis = periodicAxis(ditherKinds, { gain: gainParameter });
+type Axis = z.infer<typeof axis>;
+const positive = z.number().positive().max(1e12);
+
+const parametersSchema = z.object({
+  axes: axesOf(axis, 16),
+  side: parameter(
+    z.enum(['above', 'below']),
+    'Allowed side',
+    '',
+    'Whether the constrained quantity is to stay above or below its bound.',
+  ),
+  method: parameter(
+    z.enum(['filter', 'barrier']).default('filter'),
+    'Method',
+    '',
+    'Filter: goes up to the bound and slides along it. Barrier: keeps off the bound, the farther the greater its weight.',
+  ),
+  approachRate: parameter(
+    positive.default(0.1),
+    'Approach rate',
+    '1 / s',
+    'Filter: the distance to the bound shrinks no faster than with this rate, and grows back with it.',
+  ),
+  reserve: parameter(
+    z.number().min(0).max(1e12).default(0),
+    'Reserve',
+    'unit of the quantity',
+    'Distance from the bound that is kept on average; choose it above the ripple that the dither makes there.',
+  ),
+  barrierWeight: parameter(
+    positive.default(1),
+    'Barrier weight',
+    'objective unit',
+    'Barrier: what a distance to the bound e times as large is worth.',
+  ),
+  barrierKnee: parameter(
+    positive.default(0.01),
+    'Barrier knee',
+    'unit of the quantity',
+    'Barrier: below this distance it rises as a parabola, so that it stays finite beyond the bound.',
+  ),
+  washoutRatio: washoutRatioParameter,
+  lowPassRatio: lowPassRatioParameter,
+  taper: taperParameter,
+});
+export type ConstrainedLawParameters = z.infer<typeof parametersSchema>;
+
+export interface ConstrainedLawState extends PeriodicCore {
+  readonly parameters: ConstrainedLawParameters;
+  readonly estimator: GradientEstimator;
+  readonly marginEstimator: GradientEstimator;
+  readonly marginFilter: FirstOrderFilterState;
+  /** Wanted speed and slope of the margin, in dither amplitudes. */
+  readonly direction: Float64Array;
+  readonly marginSlope: Float64Array;
+  /** Corner of the margin's low-pass, rad/s. */
+  readonly marginCorner: number;
+}
+
+const signalsPerActuator = [...gradientSignals, 'marginGradient'];
+const stride = signalsPerActuator.length;
+
+/**
+ * Gradient seeking while a second measured quantity stays on one side of a bound. Its slope is demodulated with
+ * the same dithers. *Filter*: the gradient step is replaced by the nearest one that does not let the margin shrink
+ * faster than it may (axes are compared in units of their dither amplitude). *Barrier*: a relaxed logarithmic
+ * barrier of the margin is added to the objective, and the law climbs the sum.
+ *
+ * Safety here is practical only: the slope is known late and with noise, and the dither swings about the estimate;
+ * small violations are possible. The envelope's interlocks remain what protects. A speed limit that is not given
+ * is one dither amplitude a period. Where the constrained quantity is not a number the law retreats.
+ *
+ * @source A. Williams, M. Krstić and A. Scheinker (2023), "Semi-global practical extremum seeking with practical
+ * safety", arXiv:2309.15401; D. DeHaan and M. Guay (2005), Automatica 41:1567–1574
+ * @realtime `step` is safe: it allocates nothing
+ */
+export const constrainedLaw: SeekingLaw<ConstrainedLawParameters, ConstrainedLawState> = {
+  id: 'constrained',
+  title: 'Constrained gradient',
+  purpose: 'Climbs while another quantity stays above or below a bound.',
+  source:
+    'A. Williams, M. Krstić and A. Scheinker (2023), "Semi-global practical extremum seeking with practical safety", arXiv:2309.15401',
+  actuatorsMax: 16,
+  ditherKinds,
+  parametersSchema,
+
+  signalNames: (actuators) => [...perActuator(actuators, signalsPerActuator), 'margin'],
+
+  init(parameters, start) {
+    const { taper, lowPassRatio } = parameters;
+    const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
+    const n = axes.length;
+    const core = createPeriodicCore({ axes, start, taper, signals: n * stride + 1 });
+    writeEstimates(core.estimate, core.signals, stride);
+    return {
+      ...core,
+      parameters,
+      estimator: createGradientEstimator(n),
+      marginEstimator: createGradientEstimator(n),
+      marginFilter: createFirstOrderFilter(),
+      direction: new Float64Array(n),
+      marginSlope: new Float64Array(n),
+      marginCorner: (lowPassRatio * 2 * Math.PI) / core.trialS,
+    };
+  },
+
+  step(state, input, dtS) {
+    const { parameters, signals } = state;
+    const margin = marginOf(parameters, input);
+    if (!admitPeriodic(state, input, parameters.washoutRatio, dtS)) resetFilters(state);
+    else if (!isUsable(margin)) {
+      retreatPeriodic(state);
+      resetFilters(state);
+    } else {
+      climb(state, input.objective, margin, dtS);
+      perturb(state, dtS);
+      writeGradientSignals(state.estimator, signals, stride);
+      for (let i = 0; i < state.estimate.length; i += 1) {
+        signals[i * stride + 4] = at(state.marginEstimator.gradient, i);
+      }
+      signals[state.estimate.length * stride] = margin;
+    }
+    writeEstimates(state.estimate, signals, stride);
+  },
+};
+
+function marginOf({ side, reserve }: ConstrainedLawParameters, input: SeekingInput): number {
+  const { constraint, bound } = input;
+  if (constraint === undefined || bound === undefined) return NaN;
+  return (side === 'above' ? constraint - bound : bound - constraint) - reserve;
+}
+
+function resetFilters({ estimator, marginEstimator, marginFilter }: ConstrainedLawState): void {
+  resetGradientEstimator(estimator);
+  resetGradientEstimator(marginEstimator);
+  resetFirstOrderFilter(marginFilter);
+}
+
+function climb(state: ConstrainedLawState, objective: number, margin: number, dtS: number): void {
+  const { parameters, estimator, marginEstimator, dithers, direction, marginSlope } = state;
+  const { axes, method, washoutRatio, lowPassRatio, approachRate } = parameters;
+  const isBarrier = method === 'barrier';
+  const barrier = isBarrier ? parameters.barrierWeight * relaxedBarrier(margin, parameters.barrierKnee) : 0;
+  // Far beyond the bound the barrier is beyond all measure; held, it still leads back.
+  const climbed = held(objective + barrier, -1e100, 1e100);
+  stepGradientEstimator(estimator, dithers, climbed, washoutRatio, lowPassRatio, dtS);
+  stepGradientEstimator(marginEstimator, dithers, margin, washoutRatio, lowPassRatio, dtS);
+  const mean = stepLowPass(state.marginFilter, margin, state.marginCorner, dtS);
+  if (!isSettled(state, dtS)) return;
+  for (let i = 0; i < axes.length; i += 1) {
+    const { amplitude, gain } = axes[i] as Axis;
+    direction[i] = (gain * at(estimator.gradient, i)) / amplitude;
+    marginSlope[i] = at(marginEstimator.gradient, i) * amplitude;
+  }
+  if (!isBarrier) filterDirection(direction, marginSlope, mean, approachRate);
+  for (let i = 0; i < axes.length; i += 1) {
+    move(state, i, at(direction, i) * (axes[i] as Axis).amplitude * dtS, dtS);
+  }
+}

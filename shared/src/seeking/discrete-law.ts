@@ -1,0 +1,144 @@
+import { z } from 'zod';
+import { axesOf, dwellingAxis, parameter, taperParameter } from './law-parameters.js';
+import { writeEstimates } from './gradient-estimator.js';
+import {
+  admit,
+  at,
+  createSeekCore,
+  isSettled,
+  move,
+  putDither,
+  remember,
+  type SeekCore,
+} from './seek-core.js';
+import type { SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
+
+const axis = dwellingAxis({
+  scansPerPeriod: parameter(
+    z.number().gt(2).max(1e9),
+    'Dither period',
+    'scans',
+    'Scans per period of the perturbation; more than two.',
+  ),
+  phaseRad: parameter(
+    z
+      .number()
+      .min(-2 * Math.PI)
+      .max(2 * Math.PI)
+      .default(0),
+    'Demodulation lag',
+    'rad',
+    'Lag of the demodulation that makes up for that of plant and washout at the dither frequency.',
+  ),
+  gain: parameter(
+    z.number().positive().max(1e12),
+    'Gain γ',
+    'actuator unit² / objective unit per scan',
+    'Change of the estimate per scan and slope. On a peak with second derivative f″ the error shrinks by gain · |f″| each scan.',
+  ),
+});
+
+const parametersSchema = z.object({
+  axes: axesOf(axis, 16),
+  washoutPole: parameter(
+    z
+      .number()
+      .gt(-1)
+      .lt(1)
+      .refine((h) => h !== 0, 'Use a number between −1 and 1 that is not 0.')
+      .default(-0.9),
+    'Washout h',
+    '',
+    'The washout is (z − 1)/(z + h): its pole lies at −h; nearer to −1 for a lower corner.',
+  ),
+  taper: taperParameter,
+});
+export type DiscreteLawParameters = z.infer<typeof parametersSchema>;
+
+export interface DiscreteLawState extends SeekCore {
+  readonly parameters: DiscreteLawParameters;
+  readonly phases: Float64Array;
+  /** Objective and washout output of the scan before; NaN before the first. */
+  lastObjective: number;
+  washed: number;
+  /** Scale of the dithers that were put out last. */
+  scale: number;
+}
+
+const signalNames = ['estimate', 'washout', 'demodulated'];
+
+/**
+ * Discrete-time gradient seeking: washout (z − 1)/(z + h), dither a·cos ωk, demodulation by (2/a)·cos(ωk − φ),
+ * integrator γ/(z − 1); the factor 2/a, which the original leaves in γ, makes γ independent of the amplitude.
+ * It counts scans (`trialS` and `settleS` too) and does not look at their length: for rigs whose plant answers within a scan.
+ *
+ * The averaged error shrinks by 1 − γ·|f''|·Re[e^{jφ}W(e^{jω})] a scan, W being washout and plant.
+ *
+ * @source J.-Y. Choi, M. Krstić, K. B. Ariyur and J. S. Lee (2002), "Extremum seeking control for discrete-time
+ * systems", IEEE Transactions on Automatic Control 47:318–323 (from memory)
+ * @realtime `step` is safe: it allocates nothing
+ */
+export const discreteLaw: SeekingLaw<DiscreteLawParameters, DiscreteLawState> = {
+  id: 'discrete',
+  title: 'Discrete-time gradient',
+  purpose: 'The gradient law counted in scans, for plants that answer within a scan.',
+  source:
+    'J.-Y. Choi, M. Krstić, K. B. Ariyur and J. S. Lee (2002), "Extremum seeking control for discrete-time systems", IEEE Trans. Automatic Control 47:318–323',
+  actuatorsMax: 16,
+  ditherKinds: ['sine'],
+  parametersSchema,
+
+  signalNames: (actuators) => perActuator(actuators, signalNames),
+
+  init(parameters, start) {
+    const { axes, taper } = parameters;
+    const core = createSeekCore({
+      axes,
+      start,
+      taper,
+      trialS: Math.max(...axes.map(({ scansPerPeriod }) => scansPerPeriod)),
+      signals: axes.length * signalNames.length,
+      reach: axes.map(({ amplitude }) => amplitude),
+    });
+    writeEstimates(core.estimate, core.signals, signalNames.length);
+    // The first step answers no dither: cos of a quarter period is none.
+    const phases = new Float64Array(axes.length).fill(-Math.PI / 2);
+    return { ...core, parameters, phases, lastObjective: NaN, washed: 0, scale: 1 };
+  },
+
+  step(state, input, dtS) {
+    if (admit(state, input, dtS)) climb(state, input.objective, dtS);
+    else {
+      state.lastObjective = NaN;
+      state.washed = 0;
+      state.phases.fill(-Math.PI / 2);
+      state.scale = 1;
+    }
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+  },
+};
+
+function climb(state: DiscreteLawState, objective: number, dtS: number): void {
+  const { parameters, phases, signals } = state;
+  const { axes, washoutPole } = parameters;
+  const change = state.lastObjective === state.lastObjective ? objective - state.lastObjective : 0;
+  state.lastObjective = objective;
+  state.washed = change - washoutPole * state.washed;
+  // Settling, trials and taper are counted in scans.
+  const isAdapting = isSettled(state, 1);
+  for (let i = 0; i < axes.length; i += 1) {
+    const { amplitude, phaseRad, gain } = axes[i] as DiscreteLawParameters['axes'][number];
+    const demodulated = (2 / (amplitude * state.scale)) * Math.cos(at(phases, i) - phaseRad) * state.washed;
+    if (isAdapting) move(state, i, gain * demodulated, dtS);
+    signals[i * signalNames.length + 1] = state.washed;
+    signals[i * signalNames.length + 2] = demodulated;
+  }
+  remember(state, 1);
+  state.scale = state.taper.scale;
+  for (let i = 0; i < axes.length; i += 1) {
+    const { amplitude, scansPerPeriod } = axes[i] as DiscreteLawParameters['axes'][number];
+    phases[i] = (at(phases, i) + (2 * Math.PI) / scansPerPeriod) % (2 * Math.PI);
+    putDither(state, i, amplitude * state.scale * Math.cos(at(phases, i)));
+  }
+}

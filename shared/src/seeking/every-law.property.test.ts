@@ -1,0 +1,3 @@
+import { describeEveryLaw } from './every-law.property.fixture.js';
+
+describeEveryLaw(250);

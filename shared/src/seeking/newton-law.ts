@@ -1,0 +1,192 @@
+import { z } from 'zod';
+import {
+  createGradientEstimator,
+  gradientSignals,
+  resetGradientEstimator,
+  stepGradientEstimator,
+  writeEstimates,
+  writeGradientSignals,
+  type GradientEstimator,
+} from './gradient-estimator.js';
+import {
+  createHessianEstimator,
+  resetHessianEstimator,
+  stepHessianEstimator,
+  type HessianEstimator,
+} from './hessian-estimator.js';
+import {
+  axesOf,
+  lowPassRatioParameter,
+  parameter,
+  periodicAxis,
+  taperParameter,
+  washoutRatioParameter,
+} from './law-parameters.js';
+import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
+import {
+  applyRiccatiFilter,
+  createRiccatiFilter,
+  stepRiccatiFilter,
+  type RiccatiFilter,
+} from './riccati-filter.js';
+import { at, isSettled, move } from './seek-core.js';
+import type { SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
+
+const positive = z.number().positive().max(1e12);
+
+const axis = periodicAxis(['sine'], {
+  curvature: parameter(
+    positive,
+    'Curvature',
+    'objective unit / actuator unit²',
+    'First guess of the size of the second derivative at the peak, from a survey; the law corrects it.',
+  ),
+});
+
+const parametersSchema = z.object({
+  axes: axesOf(axis, 8),
+  rate: parameter(
+    positive,
+    'Convergence rate',
+    '1 / s',
+    'Rate with which the estimate approaches the peak, the same in every direction; a tenth of the dither frequency at most.',
+  ),
+  inverseRate: parameter(
+    positive,
+    'Rate of the inverse Hessian',
+    '1 / s',
+    'How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.',
+  ),
+  washoutRatio: washoutRatioParameter,
+  lowPassRatio: lowPassRatioParameter,
+  hessianRatio: parameter(
+    z.number().positive().max(10).default(0.05),
+    'Low-pass of the Hessian',
+    'of the lowest dither frequency',
+    'Corner of the filter that takes the ripple off the second derivatives.',
+  ),
+  lag: parameter(
+    z
+      .object({
+        timeConstantS: parameter(
+          z.number().min(0).max(1e9).default(0),
+          'Time constant',
+          's',
+          'From Identify.',
+        ),
+        deadTimeS: parameter(z.number().min(0).max(1e9).default(0), 'Dead time', 's', 'From Identify.'),
+      })
+      .prefault({}),
+    'Lag of the plant',
+    '',
+    'The second derivatives show at other frequencies than the dither; this makes up for the lag there.',
+  ),
+  taper: taperParameter,
+});
+export type NewtonLawParameters = z.infer<typeof parametersSchema>;
+
+export interface NewtonLawState extends PeriodicCore {
+  readonly parameters: NewtonLawParameters;
+  readonly estimator: GradientEstimator;
+  readonly curvatures: HessianEstimator;
+  /** Γ, the inverse of the curvature −Ĥ. */
+  readonly inverse: RiccatiFilter;
+  readonly curvature: Float64Array;
+  readonly direction: Float64Array;
+}
+
+/**
+ * Newton seeking: the gradient is multiplied with a running inverse of the Hessian, so that the estimate
+ * approaches the peak at a rate that is set, θ̂' = rate·Γ·∇̂ with Γ → (−H)⁻¹, along every direction alike and
+ * whatever the scale of the objective is (the guess of the curvature scaled along with it).
+ *
+ * While the Hessian is not known well the step is held by a speed limit: one dither amplitude a period where none
+ * is given.
+ *
+ * Conditions on the frequencies: no ω_i may equal an ω_j, (ω_j + ω_k)/2, ω_j + 2ω_k or ω_j ± ω_k; keep clear of
+ * 2ω_j and 3ω_j as well.
+ *
+ * @source A. Ghaffari, M. Krstić and D. Nešić (2012), "Multivariable Newton-based extremum seeking", Automatica
+ * 48:1759–1767 (from memory)
+ * @realtime `step` is safe: it allocates nothing
+ */
+export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
+  id: 'newton',
+  title: 'Newton',
+  purpose: 'Climbs at a set rate in every direction, for ridges and for actuators of unlike effect.',
+  source:
+    'A. Ghaffari, M. Krstić and D. Nešić (2012), "Multivariable Newton-based extremum seeking", Automatica 48:1759–1767',
+  actuatorsMax: 8,
+  ditherKinds: ['sine'],
+  parametersSchema,
+
+  signalNames: (actuators) => [...perActuator(actuators, gradientSignals), ...hessianNames(actuators)],
+
+  init(parameters, start) {
+    const { taper, lag, washoutRatio, hessianRatio } = parameters;
+    const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
+    const n = axes.length;
+    const signals = n * gradientSignals.length + (n * (n + 1)) / 2;
+    const core = createPeriodicCore({ axes, start, taper, signals });
+    const state: NewtonLawState = {
+      ...core,
+      parameters,
+      estimator: createGradientEstimator(n),
+      curvatures: createHessianEstimator(core.dithers, lag, washoutRatio, hessianRatio),
+      inverse: createRiccatiFilter(axes.map(({ curvature }) => curvature)),
+      curvature: new Float64Array(n * n),
+      direction: new Float64Array(n),
+    };
+    resetFilters(state);
+    writeEstimates(state.estimate, state.signals);
+    return state;
+  },
+
+  step(state, input, dtS) {
+    const { parameters, signals } = state;
+    if (admitPeriodic(state, input, parameters.washoutRatio, dtS)) {
+      climb(state, input.objective, dtS);
+      perturb(state, dtS);
+      writeGradientSignals(state.estimator, signals);
+      writeHessian(state);
+    } else {
+      resetFilters(state);
+    }
+    writeEstimates(state.estimate, signals);
+  },
+};
+
+function climb(state: NewtonLawState, objective: number, dtS: number): void {
+  const { parameters, estimator, curvatures, dithers, inverse, curvature, direction } = state;
+  const { washoutRatio, lowPassRatio, rate, inverseRate } = parameters;
+  stepGradientEstimator(estimator, dithers, objective, washoutRatio, lowPassRatio, dtS);
+  stepHessianEstimator(curvatures, dithers, objective, dtS);
+  if (!isSettled(state, dtS)) return;
+  for (let i = 0; i < curvature.length; i += 1) curvature[i] = -at(curvatures.hessian, i);
+  stepRiccatiFilter(inverse, curvature, inverseRate, dtS);
+  applyRiccatiFilter(inverse, estimator.gradient, direction);
+  for (let i = 0; i < direction.length; i += 1) move(state, i, rate * at(direction, i) * dtS, dtS);
+}
+
+/** The Hessian begins again from what the inverse holds. */
+function resetFilters({ estimator, curvatures, inverse }: NewtonLawState): void {
+  resetGradientEstimator(estimator);
+  resetHessianEstimator(curvatures, inverse.inverse);
+}
+
+/** Lower triangle: `hessian` for one actuator, `hessian11`, `hessian21`, `hessian22` for several. */
+function hessianNames(actuators: number): string[] {
+  if (actuators === 1) return ['hessian'];
+  const rows = Array.from({ length: actuators }, (_, i) => i + 1);
+  return rows.flatMap((row) => rows.slice(0, row).map((column) => `hessian${row}${column}`));
+}
+
+function writeHessian({ curvatures, signals, estimate }: NewtonLawState): void {
+  const { entries, hessian, size } = curvatures;
+  const from = estimate.length * gradientSignals.length;
+  for (let e = 0; e < entries.length; e += 1) {
+    const { row, column } = entries[e] as HessianEstimator['entries'][number];
+    signals[from + e] = at(hessian, row * size + column);
+  }
+}

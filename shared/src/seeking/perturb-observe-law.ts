@@ -1,0 +1,109 @@
+import { z } from 'zod';
+import { createDwell, restartDwell, stepDwell, type Dwell } from './dwell.js';
+import { writeEstimates } from './gradient-estimator.js';
+import { axesOf, dwellingAxis, dwellParameters, taperParameter } from './law-parameters.js';
+import { admit, at, createSeekCore, move, remember, type SeekCore } from './seek-core.js';
+import type { SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
+
+const parametersSchema = z
+  .object({ axes: axesOf(dwellingAxis({}), 16), ...dwellParameters, taper: taperParameter })
+  .refine(({ dwellS, settleS }) => settleS < dwellS, {
+    message: 'Settling must end before the dwell does.',
+    path: ['settleS'],
+  });
+export type PerturbObserveLawParameters = z.infer<typeof parametersSchema>;
+
+export interface PerturbObserveLawState extends SeekCore {
+  readonly parameters: PerturbObserveLawParameters;
+  /** Direction in which each actuator goes next, +1 or −1. */
+  readonly directions: Float64Array;
+  /** The actuator that was moved last. */
+  moved: number;
+  readonly dwell: Dwell;
+  /** Mean of the objective before the last move; NaN before the first. */
+  before: number;
+}
+
+const signalNames = ['estimate', 'direction'];
+
+/**
+ * Perturb and observe, the baseline: a step of the size `amplitude`, a look at the objective, on in the same
+ * direction if it did not fall and back if it did; several actuators by turns. There is no dither: the estimate
+ * itself walks. Around a quadratic peak −c·e² with the grid off by e, |e| < Δ/2, it walks over three points and
+ * loses c·(e² + Δ²/2) on average.
+ *
+ * @source the common hill-climbing rule; e.g. T. Esram and P. L. Chapman (2007), "Comparison of photovoltaic array
+ * maximum power point tracking techniques", IEEE Transactions on Energy Conversion 22:439–449 (from memory)
+ * @realtime `step` is safe: it allocates nothing
+ */
+export const perturbObserveLaw: SeekingLaw<PerturbObserveLawParameters, PerturbObserveLawState> = {
+  id: 'perturb-observe',
+  title: 'Perturb and observe',
+  purpose: 'Steps on while the objective rises and back when it falls; the baseline to compare with.',
+  source:
+    'T. Esram and P. L. Chapman (2007), "Comparison of photovoltaic array maximum power point tracking techniques", IEEE Trans. Energy Conversion 22:439–449',
+  actuatorsMax: 16,
+  ditherKinds: ['square'],
+  parametersSchema,
+
+  signalNames: (actuators) => perActuator(actuators, signalNames),
+
+  init(parameters, start) {
+    const { axes, taper, dwellS } = parameters;
+    const core = createSeekCore({
+      axes,
+      start,
+      taper,
+      trialS: dwellS,
+      signals: axes.length * signalNames.length,
+      reach: axes.map(() => 0),
+    });
+    writeEstimates(core.estimate, core.signals, signalNames.length);
+    const directions = new Float64Array(axes.length).fill(1);
+    return { ...core, settleS: 0, parameters, directions, moved: 0, dwell: createDwell(), before: NaN };
+  },
+
+  step(state, input, dtS) {
+    if (!admit(state, input, dtS)) turnBack(state);
+    else {
+      if (stepDwell(state.dwell, state.parameters.dwellS, state.parameters.settleS, input.objective, dtS))
+        judge(state, dtS);
+      remember(state, dtS);
+    }
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+  },
+};
+
+function judge(state: PerturbObserveLawState, dtS: number): void {
+  const { dwell, directions, axes, taper, signals, parameters } = state;
+  const mean = dwell.sum / dwell.count;
+  if (mean < state.before) directions[state.moved] = -at(directions, state.moved);
+  // The first dwell shows what the start is worth and moves nothing yet but the first actuator.
+  const next = state.before === state.before ? (state.moved + 1) % axes.length : 0;
+  state.before = mean;
+  restartDwell(dwell);
+  const { amplitude } = axes[next] as { amplitude: number };
+  const step = amplitude * taper.scale;
+  const room =
+    at(directions, next) > 0
+      ? at(state.highest, next) - at(state.estimate, next)
+      : at(state.estimate, next) - at(state.lowest, next);
+  // At its edge it looks the other way, where there is room.
+  if (room < step / 2) directions[next] = -at(directions, next);
+  move(state, next, at(directions, next) * step, Math.max(parameters.dwellS, dtS));
+  state.moved = next;
+  for (let i = 0; i < axes.length; i += 1) signals[i * signalNames.length + 1] = at(directions, i);
+}
+
+/** Away from where the objective is not valid: the way of the last move. */
+function turnBack(state: PerturbObserveLawState): void {
+  if (state.before === state.before) directionsTurned(state);
+  state.before = NaN;
+  state.settleS = 0;
+  restartDwell(state.dwell);
+}
+
+function directionsTurned({ directions, moved }: PerturbObserveLawState): void {
+  directions[moved] = -at(directions, moved);
+}

@@ -1,0 +1,108 @@
+import { z } from 'zod';
+import {
+  createGradientEstimator,
+  gradientSignals,
+  resetGradientEstimator,
+  stepGradientEstimator,
+  writeEstimates,
+  writeGradientSignals,
+  type GradientEstimator,
+} from './gradient-estimator.js';
+import {
+  axesOf,
+  gainParameter,
+  lowPassRatioParameter,
+  parameter,
+  periodicAxis,
+  taperParameter,
+  washoutRatioParameter,
+} from './law-parameters.js';
+import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
+import { at, isSettled, move } from './seek-core.js';
+import { ditherKinds, type SeekingLaw } from './seeking-law.js';
+import { perActuator } from './signal-names.js';
+import { recoveredShare } from './washout-share.js';
+
+const axis = periodicAxis(ditherKinds, {
+  gain: gainParameter,
+  slope: parameter(
+    z.number(),
+    'Wanted slope',
+    'objective unit / actuator unit',
+    'Slope at which the estimate rests; 0 is the peak, above zero lies on the rising side of it.',
+  ),
+  slopeShare: parameter(
+    z.number().positive().max(1).nullable().default(null),
+    'Recovered share of the slope',
+    '',
+    'How much of the slope the demodulation shows; empty for a plant without lag. Behind a lag whose phase is made up for: the gain of plant and washout at the dither frequency.',
+  ),
+});
+
+const parametersSchema = z.object({
+  axes: axesOf(axis, 16),
+  washoutRatio: washoutRatioParameter,
+  lowPassRatio: lowPassRatioParameter,
+  taper: taperParameter,
+});
+export type SlopeLawParameters = z.infer<typeof parametersSchema>;
+
+export interface SlopeLawState extends PeriodicCore {
+  readonly parameters: SlopeLawParameters;
+  readonly estimator: GradientEstimator;
+  /** What the estimator shows at the wanted slope, objective unit / actuator unit. */
+  readonly references: Float64Array;
+}
+
+/**
+ * Slope seeking: rests where the objective has a given slope, for plants whose best point is a cliff's edge or
+ * whose curve has no peak. θ̂' = k·(ξ − r) with ξ as in the gradient law and r what ξ shows at the wanted slope:
+ * slope · Re[e^{jφ}H(jω)] for the washout H (the original's r = (a·f'ref/2)·Re H before scaling by 2/a).
+ * Stable where the curve bends down (f'' < 0).
+ *
+ * @source K. B. Ariyur and M. Krstić (2004), "Slope seeking: a generalization of extremum seeking", International
+ * Journal of Adaptive Control and Signal Processing 18:1–22 (from memory)
+ * @realtime `step` is safe: it allocates nothing
+ */
+export const slopeLaw: SeekingLaw<SlopeLawParameters, SlopeLawState> = {
+  id: 'slope',
+  title: 'Slope',
+  purpose: 'Rests where the objective rises with a given slope, for curves whose peak must not be reached.',
+  source:
+    'K. B. Ariyur and M. Krstić (2004), "Slope seeking: a generalization of extremum seeking", Int. J. Adaptive Control and Signal Processing 18:1–22',
+  actuatorsMax: 16,
+  ditherKinds,
+  parametersSchema,
+
+  signalNames: (actuators) => perActuator(actuators, gradientSignals),
+
+  init(parameters, start) {
+    const { axes, taper, washoutRatio } = parameters;
+    const core = createPeriodicCore({ axes, start, taper, signals: axes.length * gradientSignals.length });
+    writeEstimates(core.estimate, core.signals);
+    const references = Float64Array.from(
+      axes,
+      (a) => a.slope * (a.slopeShare ?? recoveredShare(a.dither, washoutRatio, a.phaseRad)),
+    );
+    return { ...core, parameters, references, estimator: createGradientEstimator(axes.length) };
+  },
+
+  step(state, input, dtS) {
+    const { parameters, estimator, dithers, signals, references } = state;
+    const { axes, washoutRatio, lowPassRatio } = parameters;
+    if (admitPeriodic(state, input, washoutRatio, dtS)) {
+      stepGradientEstimator(estimator, dithers, input.objective, washoutRatio, lowPassRatio, dtS);
+      if (isSettled(state, dtS)) {
+        for (let i = 0; i < axes.length; i += 1) {
+          const excess = at(estimator.gradient, i) - at(references, i);
+          move(state, i, (axes[i] as { gain: number }).gain * excess * dtS, dtS);
+        }
+      }
+      perturb(state, dtS);
+      writeGradientSignals(estimator, signals);
+    } else {
+      resetGradientEstimator(estimator);
+    }
+    writeEstimates(state.estimate, signals);
+  },
+};
