@@ -108,13 +108,14 @@ function hillsOf(
   const threshold = Number.isFinite(sampleError) ? distinctErrors * Math.SQRT2 * sampleError : 0;
   return findHills(heights, lineNeighbours(samples.length)).map((hill, rank) => {
     const sample = samples[hill.index]!;
+    const isDistinct = rank === 0 || hill.prominence > threshold;
     return {
       index: hill.index,
       value: sample.value,
       objective: sample.objective,
       prominence: hill.prominence,
-      isDistinct: rank === 0 || hill.prominence > threshold,
-      peak: peakAt(samples, hill.index, sign, curve?.width ?? 0),
+      isDistinct,
+      peak: isDistinct ? peakAt(samples, hill.index, sign, curve?.width ?? 0) : null,
     };
   });
 }

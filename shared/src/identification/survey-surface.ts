@@ -3,7 +3,7 @@ import type { Direction } from '../objectives/objective.schema.js';
 import { checkSettings } from '../signals/check-settings.js';
 import { noEstimate, type Estimate } from '../signals/estimate.js';
 import { backlashWidth, type SweepPair } from './backlash.js';
-import { fitSurfacePeak, type SurfacePeakFit } from './fit-surface-peak.js';
+import { fitSurfacePeak, type SurfacePeakFit, type SurfacePoint } from './fit-surface-peak.js';
 import { findHills, gridNeighbours } from './hills.js';
 import { distinctErrors, type SurveyHill, type SurveySample } from './survey-map.types.js';
 
@@ -22,7 +22,7 @@ export interface SurveyGrid {
 export interface SurveySurfaceHill extends SurveyHill {
   x: number;
   y: number;
-  /** By a paraboloid through the samples around; null where they determine none. */
+  /** By a paraboloid through the samples around; null where they determine none, and of hills that are not distinct. */
   peak: SurfacePeakFit | null;
 }
 
@@ -63,15 +63,20 @@ export function readSurveySurface(grid: SurveyGrid, direction: Direction): Surve
   const sign = direction === 'maximise' ? 1 : -1;
   const threshold = Number.isFinite(sampleError) ? distinctErrors * Math.SQRT2 * sampleError : 0;
   const heights = objectives.map((objective) => sign * objective);
-  const hills = findHills(heights, gridNeighbours(xs.length, ys.length)).map((hill, rank) => ({
-    index: hill.index,
-    x: xs[hill.index % xs.length]!,
-    y: ys[Math.floor(hill.index / xs.length)]!,
-    objective: objectives[hill.index]!,
-    prominence: hill.prominence,
-    isDistinct: rank === 0 || hill.prominence > threshold,
-    peak: peakAt(grid, objectives, hill.index, sign, sampleError),
-  }));
+  const points = pointsOf(grid, objectives);
+  const hills = findHills(heights, gridNeighbours(xs.length, ys.length)).map((hill, rank) => {
+    const isDistinct = rank === 0 || hill.prominence > threshold;
+    const [x, y] = [xs[hill.index % xs.length]!, ys[Math.floor(hill.index / xs.length)]!];
+    return {
+      index: hill.index,
+      x,
+      y,
+      objective: objectives[hill.index]!,
+      prominence: hill.prominence,
+      isDistinct,
+      peak: isDistinct ? peakAt(grid, points, [x, y], sign, sampleError) : null,
+    };
+  });
   return { objectives, hills, sampleError, backlash: backlashOf(grid) };
 }
 
@@ -87,19 +92,22 @@ function errorOf({ up, down }: SurveyGrid): number {
   return Math.sqrt(square / (down.length > 0 ? 2 : 1));
 }
 
-function peakAt(
-  { xs, ys }: SurveyGrid,
-  objectives: readonly number[],
-  index: number,
-  sign: number,
-  sampleError: number,
-): SurfacePeakFit | null {
-  const near = [xs[index % xs.length]!, ys[Math.floor(index / xs.length)]!] as const;
-  const points = objectives.flatMap((objective, i) =>
+/** The valid places with their objective. */
+function pointsOf({ xs, ys }: SurveyGrid, objectives: readonly number[]): SurfacePoint[] {
+  return objectives.flatMap((objective, i) =>
     Number.isFinite(objective)
       ? [{ x: xs[i % xs.length]!, y: ys[Math.floor(i / xs.length)]!, objective }]
       : [],
   );
+}
+
+function peakAt(
+  { xs, ys }: SurveyGrid,
+  points: readonly SurfacePoint[],
+  near: readonly [number, number],
+  sign: number,
+  sampleError: number,
+): SurfacePeakFit | null {
   const step = (values: readonly number[]) => (values[values.length - 1]! - values[0]!) / (values.length - 1);
   const halfWidths = [stepsBeside * step(xs), stepsBeside * step(ys)] as const;
   const errors = sampleError > 0 ? points.map(() => sampleError) : undefined;

@@ -1,0 +1,3 @@
+import { describeMetricLaws } from './metric-laws.fixture.js';
+
+describeMetricLaws(300, 60_000);

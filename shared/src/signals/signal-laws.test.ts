@@ -1,0 +1,3 @@
+import { describeSignalLaws } from './signal-laws.fixture.js';
+
+describeSignalLaws(300, 60_000);
