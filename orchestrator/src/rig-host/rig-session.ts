@@ -84,7 +84,7 @@ export class RigSession {
   async end(): Promise<void> {
     this.loop.stop();
     await this.looping.catch(() => undefined);
-    this.run.interrupt('The rig host ended.');
+    this.run.interrupt('The rig host ended before the run did.', this.engine.status().trip);
     await this.run.closed();
     await this.wire.close();
   }

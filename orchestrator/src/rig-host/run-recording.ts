@@ -10,6 +10,7 @@ import {
   type ScanEngine,
   type ScanInput,
   type ScanOutput,
+  type Trip,
 } from '@cresthold/shared';
 import { runFileSchemaVersion, type RunManifest } from '../recordings/run-file/index.js';
 import type { Recorder } from './recorder.js';
@@ -33,6 +34,8 @@ const statusAfter: Partial<Record<RunEventBody['type'], RunStatus>> = {
   'run.paused': 'paused',
   'run.resumed': 'running',
   'run.stopping': 'stopping',
+  /** Its stop action is still recorded; it ends `tripped`. */
+  'rig.tripped': 'stopping',
 };
 
 /** The run under way: numbers its rows and events, records them, and closes its file at its end. */
@@ -90,10 +93,16 @@ export class RunRecording implements ScanSink {
     if (output.runEnded !== null) this.finish({ ...output.runEnded });
   }
 
-  /** Ends the record of a run that the engine can no longer end. */
-  interrupt(reason: string): void {
+  /**
+   * Ends the record of a run that the engine can no longer end.
+   *
+   * @param trip what tripped the rig in this run; such a run ends `tripped` and says that its stop was not over
+   */
+  interrupt(reason: string, trip: Trip | null): void {
     if (this.runId === null) return;
-    this.finish({ status: 'interrupted', verdict: 'inconclusive', reason, results: {} });
+    const status = trip === null ? 'interrupted' : 'tripped';
+    const why = trip === null ? reason : `${trip.message} ${reason}`;
+    this.finish({ status, verdict: 'inconclusive', reason: why, results: {} });
   }
 
   private begin(order: RunOrder, engine: ScanEngine, envelope: EnvelopeInForce): void {

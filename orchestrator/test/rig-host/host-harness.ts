@@ -180,3 +180,12 @@ export function expectContinuous(run: StoredRun): void {
   expect(run.ks).toEqual(run.ks.map((_, i) => i + 1));
   expect(run.tS.every((tS, i) => i === 0 || tS > (run.tS[i - 1] ?? Infinity))).toBe(true);
 }
+
+/** The way from 4 to rest is in the rows, and the last one was read at rest. */
+export function expectRestRecorded(run: StoredRun): void {
+  const from = run.airTrim.lastIndexOf(4);
+  const way = run.airTrim.slice(from + 1);
+  expect(way.length).toBeGreaterThan(2);
+  expect(way.some((value) => value !== null && value > 0 && value < 4)).toBe(true);
+  expect(way.at(-1)).toBe(0);
+}

@@ -1,6 +1,6 @@
 import { join } from 'node:path';
 import { RunFileReader } from '../../src/recordings/run-file/index.js';
-import { expectContinuous, HostHarness, storedRun } from './host-harness.js';
+import { expectContinuous, expectRestRecorded, HostHarness, storedRun } from './host-harness.js';
 import { ModbusDevice } from './modbus-device.js';
 import { temporaryFolder } from './run-file-fixture.js';
 import { testRig } from './test-rig.js';
@@ -96,7 +96,7 @@ describe('rig host', () => {
     expect(tripped.trip).toMatchObject({ cause: 'emergency-stop', by: 'technician' });
     const ended = await host.until(() => host.last('run-ended'), 'the end of the run');
     expect(ended.status).toBe('tripped');
-    await host.until(() => device.airTrim === 0, 'the air trim at rest');
+    expect(device.airTrim).toBe(0);
     expect(await host.reply({ type: 'arm', by: 'engineer' })).toMatchObject({ code: 'rig.tripped' });
     const move = { type: 'move', channel: 'airTrim', value: 3, by: 'engineer' } as const;
     expect(await host.reply(move)).toMatchObject({ code: 'rig.tripped' });
@@ -106,6 +106,7 @@ describe('rig host', () => {
     const run = storedRun(file);
     expectContinuous(run);
     expect(run.end?.status).toBe('tripped');
+    expectRestRecorded(run);
   });
 
   it('refuses a second run, and keeps the first one going', async () => {

@@ -5,7 +5,7 @@ import { join, resolve } from 'node:path';
 import { setTimeout as delay } from 'node:timers/promises';
 import Database from 'better-sqlite3';
 import { closeInterrupted } from '../../src/recordings/run-file/index.js';
-import { expectContinuous, HostHarness, storedRun } from './host-harness.js';
+import { expectContinuous, expectRestRecorded, HostHarness, storedRun } from './host-harness.js';
 import { ModbusDevice } from './modbus-device.js';
 import { temporaryFolder } from './run-file-fixture.js';
 import { testEnvelope, testRig } from './test-rig.js';
@@ -44,6 +44,7 @@ describe('rig host, by every way to die', () => {
     expectContinuous(run);
     expect(run.end).toMatchObject({ status: 'tripped', scans: run.ks.length });
     expect(run.eventTypes).toContain('rig.tripped');
+    expectRestRecorded(run);
   });
 
   it('SIGTERM: it stops the run in order, comes to rest, and ends by itself', async () => {
@@ -92,7 +93,10 @@ describe('rig host, by every way to die', () => {
     expect(tripped.trip?.cause).toBe('server-silent');
     await host.until(() => device.airTrim === 0, 'the air trim at rest');
     await host.until(() => host.last('run-ended'), 'the end of the run');
-    expect(storedRun(file).end?.status).toBe('tripped');
+    const run = storedRun(file);
+    expect(run.end?.status).toBe('tripped');
+    expectRestRecorded(run);
+    expect(host.of('run-status').map(({ status }) => status)).toEqual(['running', 'stopping']);
     expect(host.child.exitCode).toBeNull();
   });
 
@@ -109,6 +113,7 @@ describe('rig host, by every way to die', () => {
     const run = storedRun(file);
     expectContinuous(run);
     expect(run.end?.status).toBe('tripped');
+    expectRestRecorded(run);
   });
 
   it('the disk does not take samples: it trips, and has them all once the disk does again', async () => {
@@ -124,6 +129,7 @@ describe('rig host, by every way to die', () => {
     expectContinuous(run);
     expect(run.ks).toHaveLength(ended.scans);
     expect(run.end?.status).toBe('tripped');
+    expectRestRecorded(run);
   });
 
   it('the wire is cut: it trips, records that, and stops the rig once the wire is back', async () => {

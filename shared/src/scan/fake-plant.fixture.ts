@@ -121,6 +121,8 @@ export class FakePlant {
   stuck = new Set<string>();
   latenessS = 0;
   serverSilentS = 0;
+  /** Names of the columns of the run that was started last. */
+  columns: string[] = [];
 
   constructor(options: PlantOptions = {}) {
     const { sequencer, faults = [], ...configuration } = options;
@@ -183,7 +185,7 @@ export class FakePlant {
 
   run(): this {
     this.arm();
-    this.engine.startRun(plantOrder);
+    this.columns = this.engine.startRun(plantOrder).map(({ name }) => name);
     return this;
   }
 

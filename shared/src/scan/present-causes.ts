@@ -5,7 +5,8 @@ import { isReadBackOutside } from './watchdogs.js';
 
 /**
  * What of the latched trip, first cause and later ones, is still there, and so forbids its reset.
- * An unfinished stop action forbids it too: a reset must not leave an actuator half-way.
+ * An unfinished stop action forbids it too: a reset must not leave an actuator half-way. So does the run
+ * that records it.
  */
 export function presentCauses(engine: EngineState): FieldFault[] {
   const { trip } = engine.rigState;
@@ -15,6 +16,9 @@ export function presentCauses(engine: EngineState): FieldFault[] {
     const message = whyPresent(engine, cause);
     return message ? [{ field: cause, message }] : [];
   });
+  if (engine.run) {
+    faults.push({ field: 'run', message: 'The run is still recorded: wait until it has ended.' });
+  }
   if (!isStopCompleteWhereReachable(actuatorsOf(engine))) {
     const message = 'The stop action is not complete: wait until every actuator is read back at rest.';
     faults.push({ field: 'stop-action', message });

@@ -34,6 +34,8 @@ export class RunKeeper {
   isPaused = false;
   /** Set once the run is to end; the rig goes to rest meanwhile. */
   end: RunEnd | null = null;
+  /** Until when a tripped run stays open for its stop action, s; NaN before the first scan of it. */
+  stopAwaitedUntilS = NaN;
   activeSteps: readonly string[] = [];
   /** The objective of this scan. */
   objective: Readonly<ObjectiveSample> = noObjective;

@@ -17,13 +17,17 @@ import { presentCauses } from './present-causes.js';
 import { beginStopAction } from './stop-action.js';
 
 /**
- * Puts an envelope in force. While a trip is latched the stop action goes on with the new limits.
+ * Puts an envelope in force. While a trip is latched the stop action goes on with the new limits. A run is
+ * recorded to its end under the envelope in which it began.
  *
- * @throws rig.busy while armed, running or stopping
+ * @throws rig.busy while armed, running or stopping, and while a run is open
  * @throws channel.not-found, expression.invalid where it does not fit the rig
  */
 export function setEnvelope(engine: EngineState, envelope: EnvelopeInForce): void {
   requireRigEvent(engine, { type: 'set-envelope' });
+  if (engine.run) {
+    throw new DomainError('rig.busy', 'The run records its stop action: wait until it has ended.');
+  }
   const fitted = fitEnvelope(envelope, engine.rig, engine.grids, engine.readings);
   const before = actuatorsOf(engine);
   for (const actuator of fitted.actuators) {

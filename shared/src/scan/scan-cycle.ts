@@ -12,7 +12,9 @@ import {
   tripIfInMotion,
 } from './engine-state.js';
 import { pauseRun } from './pause.js';
+import type { RunKeeper } from './run-keeper.js';
 import type { ScanInput, ScanOutput } from './scan-engine.types.js';
+import { isStopCompleteWhereReachable, stopTimeAtMostS } from './stop-action.js';
 import { isoTime } from './wall-time.js';
 import { watch } from './watchdogs.js';
 
@@ -120,14 +122,25 @@ function collectWrites(engine: EngineState, tS: number): void {
   }
 }
 
-/** A run ends at once with a trip, else when the rig has come to rest. */
+/** A run ends when the rig has come to rest; after a trip, when it has as far as it can be reached. */
 function closeRun(engine: EngineState, tS: number): void {
   const { run, rigState, log } = engine;
   if (!run?.end || rigState.phase === 'stopping' || rigState.phase === 'running') return;
+  if (rigState.phase === 'tripped' && isStopAwaited(engine, run, tS)) return;
   log.sayInterventions(actuatorsOf(engine), tS, true);
   log.add({ type: 'run.ended', ...run.end });
   engine.output.runEnded = { ...run.end, results: run.results() };
   engine.lastBestPoint = bestPoint(run.order.experiment.graph, run.sequencer);
   engine.run = null;
   engine.isStatusChanged = true;
+}
+
+/**
+ * Whether the record of a tripped run still waits for its stop action. An actuator whose connection is down
+ * is not waited for, and one that does not come to rest only for as long as it should have needed.
+ */
+function isStopAwaited(engine: EngineState, run: RunKeeper, tS: number): boolean {
+  const actuators = actuatorsOf(engine);
+  if (Number.isNaN(run.stopAwaitedUntilS)) run.stopAwaitedUntilS = tS + stopTimeAtMostS(actuators);
+  return !isStopCompleteWhereReachable(actuators) && tS < run.stopAwaitedUntilS;
 }

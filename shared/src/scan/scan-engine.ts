@@ -19,10 +19,11 @@ import { isoTime } from './wall-time.js';
  * Makes the engine of one rig. What it decides where the contract leaves it open:
  * - A run whose experiment finished stays open through `stopping` and ends `finished`, with the verdict of
  *   its checks, once every actuator is read back at rest; so its record shows how the rig came to rest. An
- *   ordered stop likewise ends `stopped`. A trip ends the run in the same scan, always inconclusive.
+ *   ordered stop likewise ends `stopped`. After a trip the run stays open, always inconclusive, until the stop
+ *   action is complete where the wire reaches, or should long have been; then it ends `tripped`.
  * - An actuator is at rest only when its read-back says so; until then its rest value is written again.
  * - A stop action that was interrupted by a lost wire goes on from the read-back when the wire is back.
- * - A reset needs every cause gone, the later ones too, and the stop action complete.
+ * - A reset needs every cause gone, the later ones too, the stop action complete and the run ended.
  * - In `idle` and `offline` nothing but the heartbeat is written, and only the emergency stop and `trip`
  *   latch a trip: an interlock that is not clear there forbids arming.
  *

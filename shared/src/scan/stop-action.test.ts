@@ -117,10 +117,22 @@ describe('a stop action whose wire is lost', () => {
 
 describe('an envelope put in force during a trip', () => {
   it('carries the stop action on with its limits', () => {
+    const plant = new FakePlant().arm();
+    plant.engine.move('valve', 23, 't');
+    plant.scans(3);
+    plant.engine.emergencyStop('t', 'smoke', 0);
+    expect(valuesOf(plant, 'valve', 1)).toEqual([22]);
+    plant.engine.setEnvelope(plantEnvelope({ valve: { rest: 21.5, slewPerS: 5 } }));
+    expect(valuesOf(plant, 'valve', 3)).toEqual([21.5, undefined, undefined]);
+  });
+
+  it('is refused while the run is recorded to its end under the one before', () => {
     const plant = running({});
     plant.engine.emergencyStop('t', 'smoke', 0);
     plant.scan();
-    plant.engine.setEnvelope(plantEnvelope({ valve: { rest: 21.5, slewPerS: 5 } }));
-    expect(valuesOf(plant, 'valve', 3)).toEqual([21.5, undefined, undefined]);
+    expect(() => plant.engine.setEnvelope(plantEnvelope())).toThrow(/wait until it has ended/);
+    expect(valuesOf(plant, 'valve', 2)).toEqual([21, 20]);
+    plant.scan();
+    plant.engine.setEnvelope(plantEnvelope());
   });
 });

@@ -59,6 +59,27 @@ export function isStopCompleteWhereReachable(actuators: readonly HeldActuator[])
   return actuators.every((actuator) => actuator.isStopped || !actuator.isReachable);
 }
 
+/** A ramp may take this many times as long as its slew limit says: grids and late scans make it slower. */
+const rampTimesAtMost = 2;
+
+/** What a stop action may take beside its ramps and read-backs, s. */
+const stopGraceS = 1;
+
+/** @returns longest time in which the stop action should be complete from where the actuators are now, s */
+export function stopTimeAtMostS(actuators: readonly HeldActuator[]): number {
+  const timeByOrder = new Map<number, number>();
+  for (const { guarded, limit } of actuators) {
+    const distance = Math.abs(guarded.applied - guarded.rest);
+    const way = Number.isNaN(distance) ? limit.max - limit.min : distance;
+    const rampS = limit.stopCategory === 0 ? 0 : (rampTimesAtMost * way) / limit.slewPerS;
+    const before = timeByOrder.get(limit.stopOrder) ?? 0;
+    timeByOrder.set(limit.stopOrder, Math.max(before, rampS + limit.readBackWithinS));
+  }
+  let totalS = stopGraceS;
+  for (const timeS of timeByOrder.values()) totalS += timeS;
+  return totalS;
+}
+
 /** Category 0 needs no knowledge of where the actuator is: it must only get there. */
 function canBeStopped(actuator: HeldActuator): boolean {
   return actuator.isReachable && (actuator.isTaken || actuator.limit.stopCategory === 0);

@@ -1,16 +1,6 @@
 import { describe, expect, it } from 'vitest';
+import { climber, untilEnded } from './climber.fixture.js';
 import { eventTypes, FakePlant, plantEnvelope, scriptedSequencer, written } from './fake-plant.fixture.js';
-
-const climbing = () =>
-  scriptedSequencer(() => ({ requests: [{ channel: 'valve', base: 30, dither: 0 }] })).sequencer;
-
-/** A run that has reached 25 and still climbs. */
-function climber(options = {}): FakePlant {
-  const plant = new FakePlant({ sequencer: climbing(), ...options }).run();
-  plant.scans(5);
-  expect(plant.at.valve).toBe(25);
-  return plant;
-}
 
 /** Scans until the rig trips; returns how many scans that took and the last output. */
 function untilTripped(plant: FakePlant, atMost: number) {
@@ -32,15 +22,20 @@ const causes: [string, (plant: FakePlant) => void, string, number][] = [
 ];
 
 describe.each(causes)('%s', (_, provoke, cause, scans) => {
-  it('trips a run, which ends in the same scan, recorded and inconclusive', () => {
+  it('trips a run, which records its stop action and ends tripped and inconclusive', () => {
     const plant = climber();
     provoke(plant);
     const { count, output } = untilTripped(plant, 20);
     expect(count).toBe(scans);
-    expect(plant.engine.status().trip).toMatchObject({ cause, by: null, later: [] });
-    expect(output.runEnded).toMatchObject({ status: 'tripped', verdict: 'inconclusive' });
+    expect(plant.engine.status()).toMatchObject({ trip: { cause, by: null, later: [] }, runId: 'run-1' });
+    expect(eventTypes(output)).toContain('rig.tripped');
     expect(output.row).not.toBeNull();
-    expect(eventTypes(output)).toEqual(expect.arrayContaining(['rig.tripped', 'run.ended']));
+    expect(output.runEnded).toBeNull();
+    const last = untilEnded(plant);
+    expect(last.runEnded).toMatchObject({ status: 'tripped', verdict: 'inconclusive' });
+    expect(last.row).not.toBeNull();
+    expect(eventTypes(last)).toContain('run.ended');
+    expect(plant.engine.status().runId).toBeNull();
   });
 
   it('trips an armed rig, but not an idle one', () => {
@@ -238,7 +233,7 @@ describe('the emergency stop', () => {
       by: 'reader',
       later: [],
     });
-    expect(plant.scan().runEnded).toMatchObject({ status: 'tripped', reason: 'smoke' });
+    expect(untilEnded(plant).runEnded).toMatchObject({ status: 'tripped', reason: 'smoke' });
   });
 
   it('can be reset while the rig is offline, and leads to offline', () => {
