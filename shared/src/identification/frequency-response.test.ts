@@ -93,6 +93,21 @@ describe('lock-in', () => {
   });
 });
 
+// Slope of a map by lock-in at the dither: variance 2σ²/(N·a²); σ = 0.3, N = 64, a = 0.2 → 0.0703125 (closed form of least squares).
+it('a slope from lock-in at a dither of amplitude a scatters with variance 2σ²/(N·a²)', () => {
+  const slopes = Array.from({ length: 4000 }, (_, seed) => {
+    const noise = new SeededNoise(seed);
+    const lockIn = new LockIn(16, 4);
+    for (let i = 0; i < 64; i += 1)
+      lockIn.add(2.1 * 0.2 * Math.sin((2 * Math.PI * i) / 16) + 0.3 * noise.normal());
+    return lockIn.reading!.inPhase.value / 0.2;
+  });
+  const mean = slopes.reduce((a, b) => a + b) / slopes.length;
+  const variance = slopes.reduce((sum, slope) => sum + (slope - mean) ** 2, 0) / (slopes.length - 1);
+  expect(Math.abs(mean - 2.1)).toBeLessThan(0.02);
+  expect(Math.abs(variance / 0.0703125 - 1)).toBeLessThan(0.08);
+});
+
 /** A lag of 0.5 s behind a sine of 50 samples of 0.02 s, with noise on its output, the start left out. */
 function sineTest(scatter: () => number, periods: number) {
   const lag = createFirstOrderLag();

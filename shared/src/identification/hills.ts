@@ -45,7 +45,10 @@ export function findHills(
       islands.join(top, highest);
     }
   }
-  return [...hills, ...islands.last(falling)].sort((a, b) => b.prominence - a.prominence);
+  return [...hills, ...islands.last(falling)].sort(
+    // Rounding can make two prominences equal; the higher hill goes first then.
+    (a, b) => b.prominence - a.prominence || b.height - a.height || a.index - b.index,
+  );
 }
 
 /** Which island each point above the water belongs to, named by its top. */

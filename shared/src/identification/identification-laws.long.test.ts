@@ -1,0 +1,3 @@
+import { describeIdentificationLaws } from './identification-laws.fixture.js';
+
+describeIdentificationLaws(10_000, 1_200_000);
