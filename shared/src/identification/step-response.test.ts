@@ -3,7 +3,9 @@ import { judgeErrors } from '../signals/honest-errors.fixture.js';
 import { createFirstOrderLag, stepFirstOrderLag } from '../signals/lags.js';
 import { SeededNoise } from '../signals/seeded-noise.fixture.js';
 import { firstOrderAnswer, firstOrderRiseS, firstOrderSettlingS } from './first-order-figures.js';
-import { fitStepResponse, twoPointStepResponse, type StepRecord } from './step-response.js';
+import type { StepRecord } from './step-record.js';
+import { fitStepResponse } from './step-response.js';
+import { twoPointStepResponse } from './two-point-step-response.js';
 
 /** Gain 2, τ = 12 s, dead time 3 s, from 5 at t = 0 with a step of `size`, on a grid of `dt` from −`before` to 100 s. */
 function record(dt: number, size = 1, scatter: (i: number) => number = () => 0, before = 20): StepRecord {

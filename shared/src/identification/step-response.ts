@@ -1,31 +1,10 @@
 import { DomainError } from '../errors/domain-error.js';
 import { autocorrelation } from '../signals/autocorrelation.js';
-import { checkSeries, checkSettings } from '../signals/check-settings.js';
 import type { Estimate } from '../signals/estimate.js';
 import { fitNonlinear, type NonlinearModel } from './fit-nonlinear.js';
-
-/** A recorded answer to a step of an actuator. */
-export interface StepRecord {
-  /** Times of the samples, s, rising. */
-  timesS: ArrayLike<number>;
-  /** Channel that answers, its unit. */
-  values: ArrayLike<number>;
-  /** When the actuator stepped, s. */
-  stepAtS: number;
-  /** By how much, actuator unit; not 0. */
-  stepSize: number;
-}
-
-/** y = start + gain·stepSize·(1 − e^(−(t − stepAt − deadTime)/timeConstant)) after the dead time. */
-export interface StepResponse<Quantity> {
-  /** Channel unit per actuator unit. */
-  gain: Quantity;
-  timeConstantS: Quantity;
-  /** May come out below 0 by some standard errors where there is none. */
-  deadTimeS: Quantity;
-  /** Value before the step, channel unit. */
-  start: Quantity;
-}
+import type { LeastSquaresFit } from './least-squares.js';
+import { checkStepRecord, type StepRecord, type StepResponse } from './step-record.js';
+import { twoPointStepResponse } from './two-point-step-response.js';
 
 export interface StepResponseFit extends StepResponse<Estimate> {
   /** Standard deviation of the noise, channel unit. */
@@ -37,57 +16,35 @@ export interface StepResponseFit extends StepResponse<Estimate> {
   residualAutocorrelation: number;
 }
 
-/** Fractions of the way at which a first-order answer is after τ/3 and τ: 28.3 % and 63.2 %. */
-const fractions = [-Math.expm1(-1 / 3), -Math.expm1(-1)] as const;
-/** Share of the record, from its end, that is taken for the final value. */
-const tailShare = 0.1;
+/** Start, change, time constant and dead time. */
+type Parameters = [start: number, change: number, timeConstantS: number, deadTimeS: number];
 
 /**
- * First-order answer with dead time from two points: τ = 1.5·(t63 − t28), dead time = t63 − τ. No standard errors;
- * it is where `fitStepResponse` starts from.
+ * First-order answer with dead time by least squares. The search begins from two points, and from the best of a coarse grid
+ * as well, because noise can lead the two points astray; the better end counts. The record should begin before the step, and
+ * last four time constants or more after it.
  *
- * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the answer does not rise to its end
- * @source the 28.3 %/63.2 % method of C. L. Smith (1972), "Digital Computer Process Control", as given in process-control
- * texts, e.g. D. E. Seborg et al. (2011), "Process Dynamics and Control", section 7.2; exact fractions here
- */
-export function twoPointStepResponse(record: StepRecord): StepResponse<number> {
-  checkRecord(record);
-  const { timesS, values, stepAtS, stepSize } = record;
-  const before = Array.from(timesS).filter((t) => t <= stepAtS).length;
-  const start = meanOf(values, 0, Math.max(before, 1));
-  const tail = Math.max(1, Math.floor((values.length - before) * tailShare));
-  const change = meanOf(values, values.length - tail, values.length) - start;
-  const [early, late] = fractions.map((share) => crossingS(record, start, change * share)) as [
-    number,
-    number,
-  ];
-  const timeConstantS = 1.5 * (late - early);
-  if (!(timeConstantS > 0)) throw new DomainError('analysis.no-fit');
-  return { gain: change / stepSize, timeConstantS, deadTimeS: late - timeConstantS - stepAtS, start };
-}
-
-/**
- * First-order answer with dead time by least squares, begun from two points. The record should begin before the step,
- * and last four time constants or more after it.
+ * Standard errors are those of the linearised model: right while the noise is below about a sixth of the change (with some
+ * hundred samples), too small above.
  *
  * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the record shows no such answer
  */
 export function fitStepResponse(record: StepRecord): StepResponseFit {
-  const begin = twoPointStepResponse(record);
-  const { stepSize } = record;
-  const fit = fitNonlinear(stepModel(record), record.values, [
-    begin.start,
-    begin.gain * stepSize,
-    begin.timeConstantS,
-    begin.deadTimeS,
-  ]);
+  checkStepRecord(record);
+  const model = stepModel(record);
+  const fits = [fromTwoPoints(record), fromGrid(record, model)].flatMap((start) =>
+    descend(model, record, start),
+  );
+  const [first] = fits;
+  if (!first) throw new DomainError('analysis.no-fit');
+  const fit = fits.reduce((a, b) => (b.sumOfSquares < a.sumOfSquares ? b : a), first);
   const estimate = (i: number, scale = 1): Estimate => ({
     value: fit.parameters[i]! / scale,
     standardError: fit.standardErrors[i]! / Math.abs(scale),
   });
   return {
     start: estimate(0),
-    gain: estimate(1, stepSize),
+    gain: estimate(1, record.stepSize),
     timeConstantS: estimate(2),
     deadTimeS: estimate(3),
     noise: fit.sigma,
@@ -95,14 +52,62 @@ export function fitStepResponse(record: StepRecord): StepResponseFit {
   };
 }
 
-function checkRecord({ timesS, values, stepAtS, stepSize }: StepRecord): void {
-  checkSeries(values, 'values', 8);
-  checkSeries(timesS, 'timesS', values.length);
-  checkSettings(
-    [timesS.length === values.length, 'timesS', 'must be as many as the values.'],
-    [stepSize !== 0 && Number.isFinite(stepSize), 'stepSize', 'must not be 0.'],
-    [stepAtS < timesS[timesS.length - 1]!, 'stepAtS', 'must lie before the end of the record.'],
-  );
+/** The fit from a start; none where it leads nowhere. */
+function descend(model: NonlinearModel, record: StepRecord, start: Parameters | null): LeastSquaresFit[] {
+  const fit = start && orNull(() => fitNonlinear(model, record.values, start));
+  return fit ? [fit] : [];
+}
+
+function fromTwoPoints(record: StepRecord): Parameters | null {
+  const found = orNull(() => twoPointStepResponse(record));
+  return found && [found.start, found.gain * record.stepSize, found.timeConstantS, found.deadTimeS];
+}
+
+/** The result, or null where the data do not determine one. */
+function orNull<Result>(find: () => Result): Result | null {
+  try {
+    return find();
+  } catch (error) {
+    if (error instanceof DomainError && error.code === 'analysis.no-fit') return null;
+    throw error;
+  }
+}
+
+/** Time constants and dead times of the grid, as shares of the time after the step. */
+const gridTimeConstants = [1 / 40, 1 / 20, 1 / 10, 1 / 5, 2 / 5];
+const gridDeadTimes = [0, 1 / 20, 1 / 10, 1 / 5, 2 / 5];
+
+/** Best of a coarse grid; for given times, start and change follow from a straight line. */
+function fromGrid(record: StepRecord, model: NonlinearModel): Parameters {
+  const { timesS, values, stepAtS } = record;
+  const spanS = timesS[timesS.length - 1]! - stepAtS;
+  let best: Parameters = [0, 0, spanS, 0];
+  let least = Infinity;
+  for (const share of gridTimeConstants) {
+    for (const dead of gridDeadTimes) {
+      const shape = Array.from(values, (_, i) => model.valueAt([0, 1, share * spanS, dead * spanS], i));
+      const { start, change, squares } = regress(shape, values);
+      if (squares >= least) continue;
+      least = squares;
+      best = [start, change, share * spanS, dead * spanS];
+    }
+  }
+  return best;
+}
+
+function regress(
+  x: readonly number[],
+  y: ArrayLike<number>,
+): { start: number; change: number; squares: number } {
+  const n = x.length;
+  const meanX = x.reduce((sum, value) => sum + value, 0) / n;
+  const meanY = Array.from(y).reduce((sum, value) => sum + value, 0) / n;
+  const xx = x.reduce((sum, value) => sum + (value - meanX) ** 2, 0);
+  const xy = x.reduce((sum, value, i) => sum + (value - meanX) * (y[i]! - meanY), 0);
+  const change = xx > 0 ? xy / xx : 0;
+  const start = meanY - change * meanX;
+  const squares = x.reduce((sum, value, i) => sum + (y[i]! - start - change * value) ** 2, 0);
+  return { start, change, squares };
 }
 
 function stepModel({ timesS, stepAtS }: StepRecord): NonlinearModel {
@@ -119,25 +124,4 @@ function stepModel({ timesS, stepAtS }: StepRecord): NonlinearModel {
       return [1, 1 - left, ((-change * t) / (tau * tau)) * left, (-change / tau) * left];
     },
   };
-}
-
-/** When the answer passes a level: half-way between the first sample beyond it and the last one short of it. */
-function crossingS({ timesS, values, stepAtS }: StepRecord, start: number, rise: number): number {
-  const beyond = (i: number) => (values[i]! - start - rise) * Math.sign(rise) >= 0;
-  const after = Array.from(timesS, (_, i) => i).filter((i) => timesS[i]! > stepAtS && i > 0);
-  const first = after.find(beyond);
-  const last = after.findLast((i) => !beyond(i) && i + 1 < values.length);
-  if (first === undefined) throw new DomainError('analysis.no-fit');
-  const at = (i: number) => {
-    const [low, high] = [values[i - 1]! - start, values[i]! - start];
-    const share = high === low ? 1 : Math.min(Math.max((rise - low) / (high - low), 0), 1);
-    return timesS[i - 1]! + share * (timesS[i]! - timesS[i - 1]!);
-  };
-  return (at(first) + at(last === undefined ? first : last + 1)) / 2;
-}
-
-function meanOf(values: ArrayLike<number>, from: number, to: number): number {
-  let sum = 0;
-  for (let i = from; i < to; i += 1) sum += values[i]!;
-  return sum / (to - from);
 }
