@@ -14,17 +14,20 @@ export interface SweepPair {
 const roundingShare = 1e-9;
 
 /**
- * Width of the backlash of an actuator, from the distance of the two ways: with a play of width b the way up shows
- * f(u − b/2), the way down f(u + b/2), so that up − down = −b·f'(u), to third order in b. The slope f' is that of the smoothed
- * mean of the two ways; its own scatter, which would make b too small, is taken out of the sum of its squares.
+ * Width of the backlash of an actuator, from the distance of the two ways: with a play of width b the way up
+ * shows f(u − b/2), the way down f(u + b/2), so that up − down = −b·f'(u), to third order in b. The slope f' is
+ * that of the smoothed mean of the two ways; its own scatter, which would make b too small, is taken out of the
+ * sum of its squares.
  *
- * A sweep too fast for the plant parts the two ways in the same way: repeat it at another speed to tell the two apart.
+ * A sweep too fast for the plant parts the two ways in the same way: repeat it at another speed to tell the two
+ * apart.
  *
  * @param lines one or more; those of a map are judged together
- * @returns unit of the actuator; below 0 by some standard errors where there is none; NaN where the map is too flat to tell
+ * @returns unit of the actuator; below 0 by some standard errors where there is none; NaN where the map is too
+ * flat to tell
  * @throws analysis.invalid-input, analysis.too-little-data
- * @source regression through the origin; correction for the scatter of the regressor: W. A. Fuller (1987), "Measurement Error
- * Models", section 1.2; the model is derived here
+ * @source regression through the origin; correction for the scatter of the regressor: W. A. Fuller (1987),
+ * "Measurement Error Models", section 1.2; the model is derived here
  */
 export function backlashWidth(lines: readonly SweepPair[]): Estimate {
   const gaps = lines.flatMap(gapsOf);

@@ -16,16 +16,17 @@ const gainShare = 1e-14;
 const dampingMax = 1e12;
 
 /**
- * Nonlinear least squares: damped Gauss–Newton steps from a start, with the covariance from the derivatives at the end.
- * It ends in the minimum that the start leads to.
+ * Nonlinear least squares: damped Gauss–Newton steps from a start, with the covariance from the derivatives at
+ * the end. It ends in the minimum that the start leads to.
  *
  * @param y data
  * @param start parameters to begin with
  * @param standardErrors as in `fitLinear`
- * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the data do not tell the parameters
- * apart, or no end is found
- * @source D. W. Marquardt (1963), "An algorithm for least-squares estimation of nonlinear parameters", SIAM J. 11:431–441;
- * scaling: J. J. Moré (1978), "The Levenberg-Marquardt algorithm: implementation and theory", Lecture Notes in Mathematics 630
+ * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the data do not tell the
+ * parameters apart, or no end is found
+ * @source D. W. Marquardt (1963), "An algorithm for least-squares estimation of nonlinear parameters", SIAM J.
+ * 11:431–441; scaling: J. J. Moré (1978), "The Levenberg-Marquardt algorithm: implementation and theory",
+ * Lecture Notes in Mathematics 630
  */
 export function fitNonlinear(
   model: NonlinearModel,

@@ -24,13 +24,13 @@ export interface PeakWindow {
 /**
  * Position, height and curvature of a peak by a parabola through the data near it.
  *
- * Where the map is no parabola the window makes an error that the standard errors do not show: of the position about
- * −f'''·w²/(10·f'') and of the curvature about f''''·w²/14, for many evenly spaced data within ±w. (Derived here, by
- * projecting x³ and x⁴ on lower powers.)
+ * Where the map is no parabola the window makes an error that the standard errors do not show: of the position
+ * about −f'''·w²/(10·f'') and of the curvature about f''''·w²/14, for many evenly spaced data within ±w.
+ * (Derived here, by projecting x³ and x⁴ on lower powers.)
  *
  * @param standardErrors of the data; their scatter about the parabola is used where not given
- * @throws analysis.invalid-input, analysis.too-little-data below four points in the window, analysis.no-fit where the
- * data are straight or the flat place is outside the window
+ * @throws analysis.invalid-input, analysis.too-little-data below four points in the window, analysis.no-fit
+ * where the data are straight or the flat place is outside the window
  * @source least squares as in `fitLinear`; position and height by propagation, JCGM 100:2008 (GUM), clause 5.2
  */
 export function fitPeak(

@@ -30,8 +30,8 @@ export interface SurfaceWindow {
  * Position, height and curvatures of a peak over two actuators by a paraboloid through the points near it.
  *
  * @param standardErrors of the points; their scatter about the paraboloid is used where not given
- * @throws analysis.invalid-input, analysis.too-little-data below seven points in the window, analysis.no-fit where the
- * points do not determine it or the flat place is outside the window
+ * @throws analysis.invalid-input, analysis.too-little-data below seven points in the window, analysis.no-fit
+ * where the points do not determine it or the flat place is outside the window
  */
 export function fitSurfacePeak(
   points: readonly SurfacePoint[],

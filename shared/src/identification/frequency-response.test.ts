@@ -93,7 +93,8 @@ describe('lock-in', () => {
   });
 });
 
-// Slope of a map by lock-in at the dither: variance 2σ²/(N·a²); σ = 0.3, N = 64, a = 0.2 → 0.0703125 (closed form of least squares).
+// Slope of a map by lock-in at the dither: variance 2σ²/(N·a²); σ = 0.3, N = 64, a = 0.2 → 0.0703125 (closed
+// form of least squares).
 it('a slope from lock-in at a dither of amplitude a scatters with variance 2σ²/(N·a²)', () => {
   const slopes = Array.from({ length: 4000 }, (_, seed) => {
     const noise = new SeededNoise(seed);

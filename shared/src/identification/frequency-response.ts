@@ -28,13 +28,14 @@ export interface SineTest {
 type Phasor = readonly [re: number, im: number];
 
 /**
- * Frequency response at one frequency by lock-in over blocks of whole periods, averaged as cross power over input power;
- * noise on the output only. Leave out the periods in which the plant settles. An unfinished block at the end is not used.
+ * Frequency response at one frequency by lock-in over blocks of whole periods, averaged as cross power over
+ * input power; noise on the output only. Leave out the periods in which the plant settles. An unfinished block
+ * at the end is not used.
  *
  * @throws analysis.invalid-input; analysis.too-little-data below two blocks
- * @source J. S. Bendat and A. G. Piersol (2010), "Random Data", 4th ed.: H₁ estimate eq. 6.37, coherence eq. 6.39, random
- * errors √((1 − γ²)/(2γ²·n)) of gain (relative) and phase (rad), tables 9.6 and section 9.2.4; n − 1 for n here, which
- * removes most of the bias of a coherence from few blocks
+ * @source J. S. Bendat and A. G. Piersol (2010), "Random Data", 4th ed.: H₁ estimate eq. 6.37, coherence eq.
+ * 6.39, random errors √((1 − γ²)/(2γ²·n)) of gain (relative) and phase (rad), tables 9.6 and section 9.2.4; n −
+ * 1 for n here, which removes most of the bias of a coherence from few blocks
  */
 export function frequencyResponse(test: SineTest): FrequencyResponse {
   const { inputs, outputs, samplesPerPeriod, periodsPerBlock = 1 } = test;

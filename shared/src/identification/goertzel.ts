@@ -7,8 +7,8 @@ import { checkSeries } from '../signals/check-settings.js';
  * @param bin periods in the record; 0 to N/2. Close to 0 with many samples the recursion loses digits: use
  * `fourierTransform` there.
  * @throws analysis.invalid-input, analysis.too-little-data
- * @source G. Goertzel (1958), "An algorithm for the evaluation of finite trigonometric series", American Mathematical
- * Monthly 65:34–35
+ * @source G. Goertzel (1958), "An algorithm for the evaluation of finite trigonometric series", American
+ * Mathematical Monthly 65:34–35
  * @realtime safe: one pass, allocates one small object
  * @example
  * goertzel([1, 2, 3, 4], 0) // { re: 10, im: 0 }

@@ -4,15 +4,15 @@ export interface Hill {
   index: number;
   height: number;
   /**
-   * Height of the top above the highest pass to higher ground; of the highest hill above the lowest point that can be
-   * reached from it.
+   * Height of the top above the highest pass to higher ground; of the highest hill above the lowest point that
+   * can be reached from it.
    */
   prominence: number;
 }
 
 /**
- * All hills of a map, the most prominent first, by flooding it from above: as the water falls, tops appear as islands, and
- * when two islands meet, the lower one's prominence is known. Works on a line and on a grid alike.
+ * All hills of a map, the most prominent first, by flooding it from above: as the water falls, tops appear as
+ * islands, and when two islands meet, the lower one's prominence is known. Works on a line and on a grid alike.
  *
  * @param heights one per point; points that are no finite number are not on the map
  * @param neighboursOf indices beside a point, itself not among them

@@ -92,7 +92,8 @@ const rise = (x: readonly number[]): NonlinearModel => ({
 });
 
 describe('nonlinear least squares', () => {
-  // NIST StRD, nonlinear regression, BoxBOD (second start; from the first, far off, it ends on a plateau) and Misra1a (both).
+  // NIST StRD, nonlinear regression, BoxBOD (second start; from the first, far off, it ends on a plateau) and
+  // Misra1a (both).
   it('gives the certified values of BoxBOD from 100, 0.75', () => {
     const fit = fitNonlinear(rise([1, 2, 3, 5, 7, 10]), [109, 149, 149, 191, 213, 224], [100, 0.75]);
     near(fit.parameters[0]!, 213.80940889, 1e-7);

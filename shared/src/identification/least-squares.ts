@@ -13,7 +13,10 @@ export interface LeastSquaresFit {
   sumOfSquares: number;
   /** Degrees of freedom: data less parameters. */
   freedom: number;
-  /** Standard deviation of the residuals √(sumOfSquares/freedom); about 1 where standard errors are known. NaN with freedom 0. */
+  /**
+   * Standard deviation of the residuals √(sumOfSquares/freedom); about 1 where standard errors are known. NaN
+   * with freedom 0.
+   */
   sigma: number;
 }
 
@@ -22,10 +25,12 @@ export interface LeastSquaresFit {
  *
  * @param rows one row of factors per datum
  * @param y data
- * @param standardErrors of the data, all above 0; where given they weight the data and set the uncertainty, otherwise
- * all data are taken for equally exact and the scatter of the residuals sets it
- * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the data do not tell the parameters apart
- * @source Å. Björck (1996), "Numerical Methods for Least Squares Problems", section 2.4 (Householder), 1.3 (covariance)
+ * @param standardErrors of the data, all above 0; where given they weight the data and set the uncertainty,
+ * otherwise all data are taken for equally exact and the scatter of the residuals sets it
+ * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the data do not tell the
+ * parameters apart
+ * @source Å. Björck (1996), "Numerical Methods for Least Squares Problems", section 2.4 (Householder), 1.3
+ * (covariance)
  */
 export function fitLinear(
   rows: readonly (readonly number[])[],

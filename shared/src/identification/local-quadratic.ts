@@ -13,14 +13,16 @@ export interface LocalWeights {
 const pointsMin = 4;
 
 /**
- * Parabola around a place by least squares, with weights (1 − |distance/width|³)³ that fade out at the width; exact for
- * data on a parabola. Where fewer than four points are within the width it is widened to take them in.
+ * Parabola around a place by least squares, with weights (1 − |distance/width|³)³ that fade out at the width;
+ * exact for data on a parabola. Where fewer than four points are within the width it is widened to take them
+ * in.
  *
  * @param xs places of the data, at least four different ones
  * @param at place looked at
  * @param width distance at which the weight is 0; above 0
- * @source W. S. Cleveland (1979), "Robust locally weighted regression and smoothing scatterplots", J. American Statistical
- * Association 74:829–836 (weights); J. Fan and I. Gijbels (1996), "Local Polynomial Modelling", section 3.1
+ * @source W. S. Cleveland (1979), "Robust locally weighted regression and smoothing scatterplots", J. American
+ * Statistical Association 74:829–836 (weights); J. Fan and I. Gijbels (1996), "Local Polynomial Modelling",
+ * section 3.1
  */
 export function localQuadratic(xs: ArrayLike<number>, at: number, width: number): LocalWeights {
   const reach = hasPointsWithin(xs, at, width) ? width : widened(xs, at);

@@ -63,8 +63,9 @@ export class LockIn {
   }
 
   /**
-   * Takes the next sample; phase 0 of the reference is at the first one. A sample that is no finite number throws the
-   * unfinished reading away, because the rest would no longer be whole periods; the next begins with the sample after it.
+   * Takes the next sample; phase 0 of the reference is at the first one. A sample that is no finite number
+   * throws the unfinished reading away, because the rest would no longer be whole periods; the next begins with
+   * the sample after it.
    *
    * @returns true where a reading became ready
    */

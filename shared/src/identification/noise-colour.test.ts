@@ -5,7 +5,8 @@ import { digamma, trigamma } from './digamma.js';
 import { noiseSpectrum } from './noise-colour.js';
 
 describe('digamma and trigamma', () => {
-  // Closed forms: ψ(1) = −γ = −0.5772156649, ψ(½) = −γ − 2·ln 2, ψ'(1) = π²/6, ψ'(½) = π²/2 (Abramowitz and Stegun, chapter 6).
+  // Closed forms: ψ(1) = −γ = −0.5772156649, ψ(½) = −γ − 2·ln 2, ψ'(1) = π²/6, ψ'(½) = π²/2 (Abramowitz and
+  // Stegun, chapter 6).
   it('have the closed forms', () => {
     expect(digamma(1)).toBeCloseTo(-0.5772156649015329, 10);
     expect(digamma(0.5)).toBeCloseTo(-0.5772156649015329 - 2 * Math.LN2, 10);

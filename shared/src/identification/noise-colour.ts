@@ -34,15 +34,15 @@ const binsMin = 5;
 const slopeTolerance = 0.25;
 
 /**
- * Noise of a channel at rest: its level and how it falls with frequency, by a straight line through the logarithms of
- * an averaged periodogram (Hann, half overlap). The logarithm's bias and variance are those of a χ² average, and
- * neighbouring bins are taken as correlated as the Hann window makes them.
+ * Noise of a channel at rest: its level and how it falls with frequency, by a straight line through the
+ * logarithms of an averaged periodogram (Hann, half overlap). The logarithm's bias and variance are those of a
+ * χ² average, and neighbouring bins are taken as correlated as the Hann window makes them.
  *
  * @param values channel with everything at rest, evenly spaced
  * @param sampleRateHz above zero
  * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit below five bins in the band
- * @source D. B. Percival and A. T. Walden (1993), "Spectral Analysis for Physical Applications", section 6.3 (log of the
- * estimate) and 6.17 (overlap); least squares with a known covariance
+ * @source D. B. Percival and A. T. Walden (1993), "Spectral Analysis for Physical Applications", section 6.3
+ * (log of the estimate) and 6.17 (overlap); least squares with a known covariance
  */
 export function noiseSpectrum(
   values: ArrayLike<number>,

@@ -87,7 +87,8 @@ describe('peak by a parabola', () => {
     expect(peak.points).toBe(9);
   });
 
-  // −f'''·w²/(10 f'') with f'' = −2, f''' = 0.6, w = 0.5: +0.0075; f''''·w²/14 with f'''' = 2.4: 0.042857 (derived in fit-peak.ts).
+  // −f'''·w²/(10 f'') with f'' = −2, f''' = 0.6, w = 0.5: +0.0075; f''''·w²/14 with f'''' = 2.4: 0.042857
+  // (derived in fit-peak.ts).
   it('is off by the derived amounts where the map is no parabola', () => {
     const xs = line(2001, -0.5, 0.5);
     const window = { near: 0, halfWidth: 0.5 };

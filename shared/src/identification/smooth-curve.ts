@@ -27,16 +27,18 @@ const candidates = 24;
 const leverageMax = 0.999;
 
 /**
- * Smooth curve through data with noise: a parabola fitted around each place. The width that predicts left-out points best
- * is chosen; leaving out costs nothing because the error at a left-out point is residual/(1 − own weight).
+ * Smooth curve through data with noise: a parabola fitted around each place. The width that predicts left-out
+ * points best is chosen; leaving out costs nothing because the error at a left-out point is residual/(1 − own
+ * weight).
  *
  * Standard errors cover the noise, not what the width flattens: a bend narrower than the width is drawn too blunt.
  *
  * @param xs places, at least six different ones, in any order
  * @param ys data
  * @throws analysis.invalid-input, analysis.too-little-data
- * @source M. Stone (1974), J. Royal Statistical Society B 36:111–147 (cross-validation); T. J. Hastie and R. J. Tibshirani
- * (1990), "Generalized Additive Models", section 3.4 (short cut) and 3.5 (degrees of freedom n − 2·tr L + tr LLᵀ)
+ * @source M. Stone (1974), J. Royal Statistical Society B 36:111–147 (cross-validation); T. J. Hastie and R. J.
+ * Tibshirani (1990), "Generalized Additive Models", section 3.4 (short cut) and 3.5 (degrees of freedom n −
+ * 2·tr L + tr LLᵀ)
  */
 export function smoothCurve(
   xs: ArrayLike<number>,

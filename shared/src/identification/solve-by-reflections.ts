@@ -9,7 +9,8 @@ const dependenceShare = 1e-13;
  * @param rows overwritten
  * @param y overwritten
  * @throws analysis.no-fit where columns depend on each other
- * @source A. S. Householder (1958), "Unitary triangularization of a nonsymmetric matrix", Journal of the ACM 5:339–342
+ * @source A. S. Householder (1958), "Unitary triangularization of a nonsymmetric matrix", Journal of the ACM
+ * 5:339–342
  */
 export function solveByReflections(rows: number[][], y: number[]): { x: number[]; inverse: number[][] } {
   const width = rows[0]?.length ?? 0;

@@ -7,7 +7,10 @@ import type { StepRecord } from './step-record.js';
 import { fitStepResponse } from './step-response.js';
 import { twoPointStepResponse } from './two-point-step-response.js';
 
-/** Gain 2, τ = 12 s, dead time 3 s, from 5 at t = 0 with a step of `size`, on a grid of `dt` from −`before` to 100 s. */
+/**
+ * Gain 2, τ = 12 s, dead time 3 s, from 5 at t = 0 with a step of `size`, on a grid of `dt` from −`before` to
+ * 100 s.
+ */
 function record(dt: number, size = 1, scatter: (i: number) => number = () => 0, before = 20): StepRecord {
   const count = Math.round((before + 100) / dt) + 1;
   const timesS = Array.from({ length: count }, (_, i) => i * dt - before);
@@ -16,8 +19,8 @@ function record(dt: number, size = 1, scatter: (i: number) => number = () => 0, 
 }
 
 describe('step response', () => {
-  // K = 2, τ = 12, θ = 3: t28.3 = 7, t63.2 = 15, so τ = 1.5·(15 − 7) = 12 and θ = 15 − 12 = 3 (closed form). The final value
-  // read from the record's end is short of the true one, which is what the tolerance is for.
+  // K = 2, τ = 12, θ = 3: t28.3 = 7, t63.2 = 15, so τ = 1.5·(15 − 7) = 12 and θ = 15 − 12 = 3 (closed form).
+  // The final value read from the record's end is short of the true one, which is what the tolerance is for.
   it('from two points has the closed form', () => {
     const found = twoPointStepResponse(record(0.5));
     expect(Math.abs(found.timeConstantS - 12)).toBeLessThan(0.05);
@@ -61,7 +64,8 @@ describe('step response', () => {
     expect(found.gain.value).toBeCloseTo(1, 6);
   });
 
-  // 300 seeded records with noise of 5 % of the change: scores have mean 0 ± 0.06 and size 1 ± 0.04 where all is right.
+  // 300 seeded records with noise of 5 % of the change: scores have mean 0 ± 0.06 and size 1 ± 0.04 where all
+  // is right.
   it('gives standard errors that are right', () => {
     const truths = { gain: 2, timeConstantS: 12, deadTimeS: 3, start: 5 };
     const records = judgeErrors(300, truths, (noise) =>

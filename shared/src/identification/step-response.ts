@@ -20,12 +20,12 @@ export interface StepResponseFit extends StepResponse<Estimate> {
 type Parameters = [start: number, change: number, timeConstantS: number, deadTimeS: number];
 
 /**
- * First-order answer with dead time by least squares. The search begins from two points, and from the best of a coarse grid
- * as well, because noise can lead the two points astray; the better end counts. The record should begin before the step, and
- * last four time constants or more after it.
+ * First-order answer with dead time by least squares. The search begins from two points, and from the best of a
+ * coarse grid as well, because noise can lead the two points astray; the better end counts. The record should
+ * begin before the step, and last four time constants or more after it.
  *
- * Standard errors are those of the linearised model: right while the noise is below about a sixth of the change (with some
- * hundred samples), too small above.
+ * Standard errors are those of the linearised model: right while the noise is below about a sixth of the change
+ * (with some hundred samples), too small above.
  *
  * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the record shows no such answer
  */

@@ -21,7 +21,10 @@ export interface SurveyCurveFindings {
   hills: SurveyCurveHill[];
   /** Null with fewer than six samples that count. */
   curve: SmoothCurve | null;
-  /** Standard error of one sample: as measured where known, otherwise the scatter about the curve; NaN where neither. */
+  /**
+   * Standard error of one sample: as measured where known, otherwise the scatter about the curve; NaN where
+   * neither.
+   */
   sampleError: number;
   /** Difference of the two ways, up less down, where it is greatest in size; objective unit. */
   greatestGap: Estimate;
@@ -120,7 +123,10 @@ function hillsOf(
   });
 }
 
-/** Parabola within the width of the smoothing, but not wider than a quarter of the range, and over three samples a side. */
+/**
+ * Parabola within the width of the smoothing, but not wider than a quarter of the range, and over three samples
+ * a side.
+ */
 function peakAt(
   samples: readonly SurveyCurveSample[],
   index: number,

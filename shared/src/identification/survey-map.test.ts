@@ -75,7 +75,8 @@ const twoHills = (u: number) => -(u ** 4 - u ** 3 - 2 * u ** 2 + 3 * u);
 describe('survey over one actuator', () => {
   const values = line(41, -1.6, 1.4);
 
-  // min h(1) = −3, local min h(−1) = 1, local max h(−0.75) = 1.0195 of u⁴ + u³ − 2u² − 3u (roots of its derivative).
+  // min h(1) = −3, local min h(−1) = 1, local max h(−0.75) = 1.0195 of u⁴ + u³ − 2u² − 3u (roots of its
+  // derivative).
   it('lists the hills of a two-hill map with place, prominence and curvature', () => {
     const found = readSurveyCurve(samples(values, values.map(twoHills), 1e-4), [], 'maximise');
     expect(found.hills).toHaveLength(2);

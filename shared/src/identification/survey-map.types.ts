@@ -24,7 +24,10 @@ export interface SurveyHill {
 export interface SurveyCurveHill extends SurveyHill {
   /** Actuator value of its best sample. */
   value: number;
-  /** By a parabola through the samples around; null where they determine none, as at an end of the range, and of hills that are not distinct. */
+  /**
+   * By a parabola through the samples around; null where they determine none, as at an end of the range, and of
+   * hills that are not distinct.
+   */
   peak: { position: Estimate; height: Estimate; curvature: Estimate } | null;
 }
 

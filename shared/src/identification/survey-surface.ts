@@ -7,7 +7,10 @@ import { fitSurfacePeak, type SurfacePeakFit, type SurfacePoint } from './fit-su
 import { findHills, gridNeighbours } from './hills.js';
 import { distinctErrors, type SurveyHill, type SurveySample } from './survey-map.types.js';
 
-/** A survey over two actuators on a grid: for each y in turn, x goes up and, where there is a way down, down again. */
+/**
+ * A survey over two actuators on a grid: for each y in turn, x goes up and, where there is a way down, down
+ * again.
+ */
 export interface SurveyGrid {
   /** Values of the first actuator, rising. */
   xs: readonly number[];
@@ -22,7 +25,10 @@ export interface SurveyGrid {
 export interface SurveySurfaceHill extends SurveyHill {
   x: number;
   y: number;
-  /** By a paraboloid through the samples around; null where they determine none, and of hills that are not distinct. */
+  /**
+   * By a paraboloid through the samples around; null where they determine none, and of hills that are not
+   * distinct.
+   */
   peak: SurfacePeakFit | null;
 }
 
@@ -45,7 +51,8 @@ const rowSamplesMin = 6;
 /**
  * What a survey over two actuators shows.
  *
- * @throws analysis.invalid-input where the samples do not fill the grid; analysis.too-little-data where none is valid
+ * @throws analysis.invalid-input where the samples do not fill the grid; analysis.too-little-data where none is
+ * valid
  */
 export function readSurveySurface(grid: SurveyGrid, direction: Direction): SurveySurfaceFindings {
   const { xs, ys, up, down } = grid;

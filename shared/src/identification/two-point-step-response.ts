@@ -10,9 +10,11 @@ const tailShare = 0.1;
  * First-order answer with dead time from two points: τ = 1.5·(t63 − t28), dead time = t63 − τ. No standard errors;
  * it is where `fitStepResponse` starts from.
  *
- * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the answer does not rise to its end
- * @source the 28.3 %/63.2 % method of C. L. Smith (1972), "Digital Computer Process Control", as given in process-control
- * texts, e.g. D. E. Seborg et al. (2011), "Process Dynamics and Control", section 7.2; exact fractions here
+ * @throws analysis.invalid-input, analysis.too-little-data; analysis.no-fit where the answer does not rise to
+ * its end
+ * @source the 28.3 %/63.2 % method of C. L. Smith (1972), "Digital Computer Process Control", as given in
+ * process-control texts, e.g. D. E. Seborg et al. (2011), "Process Dynamics and Control", section 7.2; exact
+ * fractions here
  */
 export function twoPointStepResponse(record: StepRecord): StepResponse<number> {
   checkStepRecord(record);

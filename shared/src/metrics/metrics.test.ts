@@ -95,7 +95,8 @@ describe('efficiency of a tracker', () => {
     expect(dynamicEfficiency(record)).toBeCloseTo(380 / 420, 14);
   });
 
-  // Weights of EN 50530, from memory: 0.03, 0.06, 0.13, 0.10, 0.48, 0.20 and 0.04, 0.05, 0.12, 0.21, 0.53, 0.05; each sums up to 1.
+  // Weights of EN 50530, from memory: 0.03, 0.06, 0.13, 0.10, 0.48, 0.20 and 0.04, 0.05, 0.12, 0.21, 0.53,
+  // 0.05; each sums up to 1.
   it.each(['european', 'californian'] as const)('%s weights sum up to 1 and weight as they say', (name) => {
     const weighting = staticWeightings[name];
     expect(weighting.reduce((sum, [, weight]) => sum + weight, 0)).toBeCloseTo(1, 14);

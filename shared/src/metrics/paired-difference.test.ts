@@ -29,7 +29,8 @@ describe('paired difference', () => {
     expect(found.high).toBeGreaterThan(gain);
   });
 
-  // Samples of a first-order autoregression (φ = 0.9, 20 samples a leg) on a drift; 1500 trials, binomial scatter 0.6 %.
+  // Samples of a first-order autoregression (φ = 0.9, 20 samples a leg) on a drift; 1500 trials, binomial
+  // scatter 0.6 %.
   it.each([6, 12, 30])(
     'of %d blocks holds the truth as often as it says, with correlated samples on a drift',
     (blocks) => {

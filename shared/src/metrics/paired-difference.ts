@@ -25,14 +25,15 @@ export interface PairedDifference extends MeanInterval {
 /**
  * Mean difference seeking less baseline of a paired trial in the order ABBA, with its confidence interval.
  *
- * In each block of four legs the means of both arms fall on the same middle time, so that a drift in a straight line
- * cancels exactly. A bent drift c·k² of leg number k leaves ∓2c; that cancels over two blocks where every second one is BAAB.
- * The blocks' differences are then taken as a series whose members may still resemble their neighbours (see `meanInterval`).
+ * In each block of four legs the means of both arms fall on the same middle time, so that a drift in a straight
+ * line cancels exactly. A bent drift c·k² of leg number k leaves ∓2c; that cancels over two blocks where every
+ * second one is BAAB. The blocks' differences are then taken as a series whose members may still resemble their
+ * neighbours (see `meanInterval`).
  *
  * @param legs in their order in time, all equally long; each block of four ABBA or BAAB
  * @throws analysis.invalid-input where the order is another; analysis.too-little-data below two blocks
- * @source order: OIML R 111-1 (2004), Annex C.4.1, weighing cycles ABBA (from memory); ABBA BAAB: E. Prouhet (1851), Comptes
- * rendus 33:225
+ * @source order: OIML R 111-1 (2004), Annex C.4.1, weighing cycles ABBA (from memory); ABBA BAAB: E. Prouhet
+ * (1851), Comptes rendus 33:225
  */
 export function pairedDifference(
   legs: readonly TrialLeg[],

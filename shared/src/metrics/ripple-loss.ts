@@ -6,8 +6,8 @@ import { meanInterval, type MeanInterval, type MeanIntervalSettings } from './me
 const meanSquares = { sine: 1 / 2, square: 1 } as const;
 
 /**
- * What dithering costs on average at the best point of a quadratic map: |f''|·⟨dither²⟩/2, that is |f''|a²/4 for a sine and
- * |f''|a²/2 for a square.
+ * What dithering costs on average at the best point of a quadratic map: |f''|·⟨dither²⟩/2, that is |f''|a²/4
+ * for a sine and |f''|a²/2 for a square.
  *
  * @param amplitude a, half of peak to peak, actuator unit; 0 or above
  * @param curvature second derivative of the objective, objective unit per actuator unit²
@@ -23,8 +23,8 @@ export function ditherLoss(amplitude: number, curvature: number, shape: keyof ty
 }
 
 /**
- * What a run lost on average behind the best, with its interval: compare it with `ditherLoss`, which nothing that dithers
- * can go below.
+ * What a run lost on average behind the best, with its interval: compare it with `ditherLoss`, which nothing
+ * that dithers can go below.
  *
  * @param objectives samples after the law has converged; whole dither periods, evenly spaced
  * @param best objective at the best point

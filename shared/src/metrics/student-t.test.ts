@@ -2,8 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { studentQuantile } from './student-t.js';
 
 describe("Student's t", () => {
-  // JCGM 100:2008 (GUM), table G.2, and the usual t tables (e.g. Abramowitz and Stegun 1964, table 26.10), from memory:
-  // two-sided 95 %, 99 %.
+  // JCGM 100:2008 (GUM), table G.2, and the usual t tables (e.g. Abramowitz and Stegun 1964, table 26.10), from
+  // memory: two-sided 95 %, 99 %.
   it.each([
     [1, 12.71, 63.66],
     [2, 4.3, 9.92],

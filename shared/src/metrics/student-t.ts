@@ -9,8 +9,8 @@ const freedomMax = 1e6;
  * @param probability above 0, below 1; 0.975 for a two-sided interval of 95 %
  * @param freedom degrees of freedom, above 0, not necessarily whole
  * @throws analysis.invalid-input
- * @source Student (1908), Biometrika 6:1–25; by inverting the incomplete beta function, M. Abramowitz and I. A. Stegun
- * (1964), 26.7.1
+ * @source Student (1908), Biometrika 6:1–25; by inverting the incomplete beta function, M. Abramowitz and I. A.
+ * Stegun (1964), 26.7.1
  * @example
  * studentQuantile(0.975, 1) // 12.706204736174707
  */

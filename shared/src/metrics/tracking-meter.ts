@@ -46,8 +46,9 @@ export class TrackingMeter {
   }
 
   /**
-   * Share of what was to be had: ∫objective/∫best where it is to be made large, ∫best/∫objective where small. 1 is perfect; above
-   * 1 the best was not the best. NaN while empty, and where the objective can be 0 or below: use the regret there.
+   * Share of what was to be had: ∫objective/∫best where it is to be made large, ∫best/∫objective where small. 1
+   * is perfect; above 1 the best was not the best. NaN while empty, and where the objective can be 0 or below:
+   * use the regret there.
    */
   get efficiency(): number {
     if (this.timeS === 0 || !(this.objectiveMean > 0 && this.bestMean > 0)) return NaN;

@@ -44,14 +44,15 @@ const windowFactor = 5;
 /**
  * Integrated autocorrelation time: n values tell as much about their mean as n/τ independent ones.
  *
- * The sum is cut at the first lag that is 5 or more and 5 times the sum so far; cut earlier it would miss correlation, later it
- * would gather noise. Series shorter than about 50 τ give too small a time: use a model of the correlation or
- * means of blocks there.
+ * The sum is cut at the first lag that is 5 or more and 5 times the sum so far; cut earlier it would miss
+ * correlation, later it would gather noise. Series shorter than about 50 τ give too small a time: use a model
+ * of the correlation or means of blocks there.
  *
  * @param values evenly spaced, 2 or more; of values that do not differ the time is 1
  * @throws analysis.invalid-input, analysis.too-little-data
- * @source A. D. Sokal (1997), "Monte Carlo methods in statistical mechanics: foundations and new algorithms", in
- * "Functional Integration", section 3; standard error by N. Madras and A. D. Sokal (1988), J. Statistical Physics 50:109–186
+ * @source A. D. Sokal (1997), "Monte Carlo methods in statistical mechanics: foundations and new algorithms",
+ * in "Functional Integration", section 3; standard error by N. Madras and A. D. Sokal (1988), J. Statistical
+ * Physics 50:109–186
  */
 export function integratedAutocorrelationTime(values: ArrayLike<number>): AutocorrelationTime {
   checkSeries(values, 'values', 2);

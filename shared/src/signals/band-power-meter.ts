@@ -23,7 +23,8 @@ export interface BandPowerMeterSettings {
  * window. A sine of amplitude a at the centre reads a²/2; white noise of density S reads S·(π/2)·widthHz, for
  * bands that are narrow beside the step rate.
  *
- * @source noise bandwidth of a resonator, e.g. P. Horowitz and W. Hill (1989), "The Art of Electronics", section 7.21
+ * @source noise bandwidth of a resonator, e.g. P. Horowitz and W. Hill (1989), "The Art of Electronics",
+ * section 7.21
  * @realtime `add` is safe: constant time, allocates nothing
  */
 export class BandPowerMeter {

@@ -79,7 +79,8 @@ export class MomentReadings {
   }
 
   /**
-   * Excess kurtosis G₂ = (n − 1)/((n − 2)(n − 3)) · ((n + 1)(b₂ − 3) + 6), without bias for normal values; NaN below four.
+   * Excess kurtosis G₂ = (n − 1)/((n − 2)(n − 3)) · ((n + 1)(b₂ − 3) + 6), without bias for normal values; NaN
+   * below four.
    *
    * @source Joanes and Gill (1998)
    */

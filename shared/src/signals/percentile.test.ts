@@ -8,8 +8,8 @@ const data = [3.1, -2.0, 7.7, 1.5, 9.2, 4.4, -0.3, 6.0, 2.2, 5.9, 8.1];
 const percents = [0, 10, 25, 50, 62, 90, 100];
 
 describe('percentile', () => {
-  // NumPy (with SciPy 1.17.1) percentile, methods interpolated_inverted_cdf, hazen, weibull, linear, median_unbiased,
-  // normal_unbiased, which its documentation numbers 4 to 9 after Hyndman and Fan (1996).
+  // NumPy (with SciPy 1.17.1) percentile, methods interpolated_inverted_cdf, hazen, weibull, linear,
+  // median_unbiased, normal_unbiased, which its documentation numbers 4 to 9 after Hyndman and Fan (1996).
   it.each<[PercentileType, number[]]>([
     [4, [-2.0, -1.83, 1.05, 3.75, 5.63, 8.06, 9.2]],
     [5, [-2.0, -0.98, 1.675, 4.4, 5.932, 8.54, 9.2]],
@@ -41,7 +41,8 @@ describe('running percentile', () => {
     expect(median.value).toBeCloseTo(4.44, 2);
   });
 
-  // Quantiles of the normal distribution: 1.2816 at 90 %, −0.6745 at 25 % (tables). Standard error √(p(1−p)/n)/φ(z) = 0.0054, 0.0043.
+  // Quantiles of the normal distribution: 1.2816 at 90 %, −0.6745 at 25 % (tables). Standard error
+  // √(p(1−p)/n)/φ(z) = 0.0054, 0.0043.
   it.each([
     [90, 1.2816],
     [25, -0.6745],

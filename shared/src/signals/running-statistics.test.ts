@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { MomentReadings } from './moment-readings.js';
 import { certifiedSets } from './nist-univariate.fixture.js';
 import { RunningStatistics } from './running-statistics.js';
+import { SeededNoise } from './seeded-noise.fixture.js';
 import { SlidingStatistics } from './sliding-statistics.js';
 import { traceStatistics } from './trace-statistics.js';
 
@@ -34,7 +35,8 @@ describe.each(ways)('%s statistics', (_, of) => {
     expect(relative(statistics.lag1Autocorrelation, set.lag1)).toBeLessThan(Math.max(set.tolerance, 1e-10));
   });
 
-  // The encyclopaedia example of kurtosis 18.05 (from memory), recomputed by SciPy 1.17.1 stats.kurtosis and stats.skew.
+  // The encyclopaedia example of kurtosis 18.05 (from memory), recomputed by SciPy 1.17.1 stats.kurtosis and
+  // stats.skew.
   it('tell the three definitions of kurtosis apart', () => {
     const statistics = of([0, 3, 4, 1, 2, 3, 0, 2, 1, 3, 2, 0, 2, 2, 3, 2, 5, 2, 3, 999]);
     expect(statistics.kurtosis).toBeCloseTo(18.051426543784178, 9);
@@ -60,7 +62,8 @@ describe.each(ways)('%s statistics', (_, of) => {
     expect(statistics.kurtosis).toBeCloseTo(1.5, 12);
   });
 
-  // At the quantiles (i − ½)/n of the distributions; theory: uniform 1.8, Laplace 6 (slowly, from below), exponential skewness 2.
+  // At the quantiles (i − ½)/n of the distributions; theory: uniform 1.8, Laplace 6 (slowly, from below),
+  // exponential skewness 2.
   it('near the kurtosis and skewness of known distributions', () => {
     const at = (quantile: (p: number) => number) =>
       of(Float64Array.from({ length: 20000 }, (_, i) => quantile((i + 0.5) / 20000)));
@@ -102,6 +105,14 @@ describe('bad values', () => {
     expect(traceStatistics([1, Infinity, 3]).peak).toBeNaN();
     expect(traceStatistics([]).mean).toBeNaN();
   });
+});
+
+// Theory: kurtosis 3, skewness 0; standard errors √(24/n) and √(6/n) of n = 200 000 values.
+it('finds the kurtosis and skewness of normal values', () => {
+  const statistics = traceStatistics(new SeededNoise(21).normals(200_000));
+  expect(Math.abs(statistics.kurtosis - 3)).toBeLessThan(4 * Math.sqrt(24 / 200_000));
+  expect(Math.abs(statistics.unbiasedExcessKurtosis)).toBeLessThan(4 * Math.sqrt(24 / 200_000));
+  expect(Math.abs(statistics.skewness)).toBeLessThan(4 * Math.sqrt(6 / 200_000));
 });
 
 it('joins running statistics as if all values had been added to one', () => {

@@ -68,7 +68,8 @@ export function createSecondOrderFilter(settings: SecondOrderSettings): SecondOr
 /**
  * One step.
  *
- * @returns the output in the input's unit; NaN where the input is no finite number, which leaves the state as it was
+ * @returns the output in the input's unit; NaN where the input is no finite number, which leaves the state as
+ * it was
  * @realtime safe: allocates nothing
  */
 export function stepSecondOrderFilter(state: SecondOrderFilterState, input: number): number {

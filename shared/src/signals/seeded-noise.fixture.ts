@@ -45,7 +45,8 @@ export class SeededNoise {
   /**
    * Noise whose density falls as 1/f^slope, by an autoregression of `memory` terms.
    *
-   * @source N. J. Kasdin (1995), "Discrete simulation of colored noise", Proceedings of the IEEE 83:802–827, eq. 116
+   * @source N. J. Kasdin (1995), "Discrete simulation of colored noise", Proceedings of the IEEE 83:802–827,
+   * eq. 116
    */
   coloured(count: number, slope: number, memory = count): number[] {
     const weights = [1];

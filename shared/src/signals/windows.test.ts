@@ -8,8 +8,9 @@ import {
 } from './windows.js';
 
 describe('windows', () => {
-  // Harris (1978), table I (from memory): coherent gain, noise bandwidth and scallop loss, except the loss of Hamming, 1.7514 dB
-  // in Heinzel, Rüdiger and Schilling (2002, from memory). Flat-top: noise bandwidth 3.7702 of SciPy 1.17.1; loss about 0.01 dB.
+  // Harris (1978), table I (from memory): coherent gain, noise bandwidth and scallop loss, except the loss of
+  // Hamming, 1.7514 dB in Heinzel, Rüdiger and Schilling (2002, from memory). Flat-top: noise bandwidth 3.7702
+  // of SciPy 1.17.1; loss about 0.01 dB.
   it.each<[WindowKind, number, number, number]>([
     ['rectangular', 1, 1, 3.92],
     ['hann', 0.5, 1.5, 1.42],

@@ -53,7 +53,11 @@ export function noiseBandwidthBins(weights: ArrayLike<number>): number {
   return (weights.length * total(weights, 2)) / total(weights, 1) ** 2;
 }
 
-/** Share of the amplitude of a sine half-way between two bins that its bin still shows; 0 to 1. @source Harris (1978), eq. 18 */
+/**
+ * Share of the amplitude of a sine half-way between two bins that its bin still shows; 0 to 1.
+ *
+ * @source Harris (1978), eq. 18
+ */
 export function scallopFactor(weights: ArrayLike<number>): number {
   let re = 0;
   let im = 0;
