@@ -18,7 +18,7 @@ const people = [
 
 /** Limits as the engineer types them. */
 const limits = { min: 10, max: 80, slewPerS: 15, dither: 3, rest: 70 };
-const seekStart = 45;
+const seekStart = 28;
 const airTrimRegister = 0;
 
 let product: Product;

@@ -32,5 +32,5 @@ export function roundScale(values: readonly number[], wantedTicks: number): Scal
 function roundStep(raw: number): number {
   const power = 10 ** Math.floor(Math.log10(raw));
   const share = raw / power;
-  return (share <= 1 ? 1 : share <= 2 ? 2 : share <= 5 ? 5 : 10) * power;
+  return (share <= 1.5 ? 1 : share <= 3 ? 2 : share <= 7 ? 5 : 10) * power;
 }
