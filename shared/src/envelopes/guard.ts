@@ -166,7 +166,7 @@ function applyWithinSlew(actuator: GuardedActuator, wanted: number, allowance: n
 }
 
 /** The grid point nearest to `wanted` in [low, high]; NaN where there is none. */
-function nearestOnGrid(grid: ValueGrid, wanted: number, low: number, high: number): number {
+export function nearestOnGrid(grid: ValueGrid, wanted: number, low: number, high: number): number {
   if (grid.step === 0) return wanted;
   const lowest = Math.ceil((low - grid.origin) / grid.step - gridSlack);
   const highest = Math.floor((high - grid.origin) / grid.step + gridSlack);

@@ -1,4 +1,5 @@
 import type { ActuatorLimit } from '../envelopes/envelope.schema.js';
+import { nearestOnGrid } from '../envelopes/guard.js';
 import type { Lookup } from '../expressions/expression.types.js';
 import type { ObjectiveContent } from '../objectives/objective.schema.js';
 import type { RunEventBody, Verdict } from '../runs/run-event.schema.js';
@@ -17,6 +18,9 @@ const nothing: readonly never[] = [];
 
 /** Share of the range within which two values of a continuous actuator are the same. */
 const rangeSlack = 1e-9;
+
+/** Share of a grid step within which two values are the same grid point. */
+const gridShare = 1e-3;
 
 /** What a run has asked for, found and decided so far; what its steps work with. */
 export class RunLedger implements StepServices {
@@ -57,14 +61,25 @@ export class RunLedger implements StepServices {
     return this.limits.get(channel);
   }
 
+  gridStepOf(channel: string): number {
+    return this.context.grids?.get(channel)?.step ?? 0;
+  }
+
+  nearestTo(channel: string, target: number): number {
+    const limit = this.limits.get(channel);
+    const grid = this.context.grids?.get(channel);
+    if (!limit || !grid) return target;
+    const point = nearestOnGrid(grid, target, limit.min, limit.max);
+    return Number.isNaN(point) ? target : point;
+  }
+
   toleranceOf(channel: string): number {
     const limit = this.limits.get(channel);
     if (!limit) return 0;
-    const grid = this.context.grids?.get(channel);
     const slack = (limit.max - limit.min) * rangeSlack;
-    // Without a known grid the approved read-back tolerance says what counts as being there.
+    // Where no grid is known the approved read-back tolerance says what counts as being there.
     if (!this.context.grids) return Math.max(limit.readBackTolerance, slack);
-    return (grid?.step ?? 0) + slack;
+    return this.gridStepOf(channel) * gridShare + slack;
   }
 
   request(channel: string, base: number, dither: number): void {

@@ -21,6 +21,8 @@ export interface HeldActuator {
   requestedBase: number;
   /** Signed dither that is asked for in this scan, before the guard. */
   requestedDither: number;
+  /** Nothing asks for it in this scan: it holds its base. */
+  isHolding: boolean;
   /** Sum of both, for the record; NaN where nothing was asked for. */
   requested: number;
   /** Written in this scan. */
@@ -59,6 +61,7 @@ export function createActuatorBank(
       target: NaN,
       requestedBase: NaN,
       requestedDither: 0,
+      isHolding: true,
       requested: NaN,
       isWritten: false,
       isReachable: false,

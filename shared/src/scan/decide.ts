@@ -1,4 +1,4 @@
-import { freshSlew, guardRequest, slewAllowance } from '../envelopes/guard.js';
+import { freshSlew, guardRequest, isInsideRange, slewAllowance } from '../envelopes/guard.js';
 import type { SequencerOutput } from '../experiments/sequencer.types.js';
 import { type HeldActuator, moveTowards, takeOverFromReadBack } from './actuator-bank.js';
 import {
@@ -22,6 +22,7 @@ export function decide(engine: EngineState, input: ScanInput): void {
     actuator.requested = NaN;
     actuator.requestedBase = actuator.base;
     actuator.requestedDither = 0;
+    actuator.isHolding = true;
   }
   if (engine.rigState.phase === 'running') ask(engine, input);
   if (engine.rigState.phase === 'armed') followTargets(actuators, input.dtS);
@@ -70,6 +71,7 @@ function ask(engine: EngineState, input: ScanInput): void {
     }
     actuator.requestedBase = base;
     actuator.requestedDither = dither;
+    actuator.isHolding = false;
   }
 }
 
@@ -94,6 +96,7 @@ function followTargets(actuators: readonly HeldActuator[], dtS: number): void {
     if (actuator.base === actuator.target) actuator.target = NaN;
     if (Number.isNaN(actuator.target)) continue;
     const { guarded, target } = actuator;
+    actuator.isHolding = false;
     actuator.requestedBase = moveTowards(guarded.applied, target, slewAllowance(guarded, dtS));
   }
 }
@@ -104,6 +107,7 @@ function followTargets(actuators: readonly HeldActuator[], dtS: number): void {
  */
 function guardAll(engine: EngineState, input: ScanInput): void {
   for (const actuator of actuatorsOf(engine)) {
+    if (actuator.isHolding) actuator.requestedBase = heldWithinReach(actuator, input.dtS);
     const { guarded, limit, requestedBase, requestedDither } = actuator;
     actuator.requested = requestedBase + requestedDither;
     if (!guardRequest(guarded, requestedBase, requestedDither, input.dtS)) {
@@ -111,10 +115,21 @@ function guardAll(engine: EngineState, input: ScanInput): void {
       tripIfInMotion(engine, `non-finite:${actuator.channel}`, message, input.atMs);
       continue;
     }
+    actuator.isWritten = true;
+    if (actuator.isHolding) continue;
     const inRange = Math.min(Math.max(requestedBase, limit.min), limit.max);
     actuator.base = moveTowards(actuator.base, inRange, freshSlew(guarded, input.dtS));
-    actuator.isWritten = true;
   }
+}
+
+/**
+ * The held base, or what leads there: where a step or a dither ended away from its base, the way back is walked
+ * at the slew limit and is no matter for the guard. From outside the range the guard brings an actuator in.
+ */
+function heldWithinReach({ base, guarded, limit }: HeldActuator, dtS: number): number {
+  const { applied, grid } = guarded;
+  if (!isInsideRange(limit, applied)) return base;
+  return moveTowards(applied, base, freshSlew(guarded, dtS) + grid.step / 2);
 }
 
 function stopOn(engine: EngineState, input: ScanInput): void {

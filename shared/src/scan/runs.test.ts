@@ -69,6 +69,17 @@ describe('a run', () => {
     expect(seen.map((tS) => tS.toFixed(1))).toEqual(['0.0', '0.1', '0.2', '0.3']);
   });
 
+  it('takes a great dither out at the slew limit in a pause, which is no matter for the guard', () => {
+    const { sequencer } = scriptedSequencer((_, step) => request(21, Math.min(step, 4)));
+    const plant = new FakePlant({ sequencer }).run();
+    plant.scans(6);
+    expect(plant.at.valve).toBe(25);
+    plant.engine.pause('t', 'a look');
+    const paused = plant.scans(6);
+    expect(paused.map((output) => written(output, 'valve'))).toEqual([24, 23, 22, 21, 21, 21]);
+    expect(paused.flatMap(eventTypes)).toEqual(['run.paused']);
+  });
+
   it('does not go on towards a far target while paused', () => {
     const { sequencer } = scriptedSequencer(() => request(80));
     const plant = new FakePlant({ sequencer }).run();

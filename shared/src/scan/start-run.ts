@@ -27,8 +27,8 @@ export function startRun(engine: EngineState, order: RunOrder, parts: Experiment
   if (!fitted) throw new DomainError('envelope.none-in-force');
   const { content: envelope } = fitted.inForce;
   const { objective, experiment } = order;
-  const context = { rig, envelope, objective, graph: experiment.graph, periodS };
-  requirePreflight(parts.preflight({ ...context, grids: engine.grids }));
+  const context = { rig, envelope, objective, graph: experiment.graph, periodS, grids: engine.grids };
+  requirePreflight(parts.preflight(context));
   const sequencer = parts.createSequencer(context);
   const run = new RunKeeper(order, sequencer, rig, engine.readings, fitted.actuators);
   applyRigEvent(engine, { type: 'start-run' });

@@ -1,12 +1,16 @@
 import { slewPeriodsAtMost } from '../../envelopes/guard.js';
 import type { SequencerInput } from '../sequencer.types.js';
 import type { StepServices } from './step-runner.js';
+import { withinReach } from './within-reach.js';
 
 /** Kept under the slew limit by this much, so that rounding does not call the guard. */
 const slewMargin = 1 + 1e-6;
 
-/** An actuator that has not arrived this long after its line is over will not arrive, s. */
+/** An actuator that has not arrived this long after it should have will not arrive, s. */
 const arrivalGraceS = 5;
+
+/** A line may take this many times as long: a grid that lies badly to the slew limit halves the speed. */
+const durationTimesAtMost = 2;
 
 interface Leg {
   channel: string;
@@ -53,24 +57,26 @@ export class ActuatorRamp {
     return null;
   }
 
-  /** Asks for the values of this scan. @returns true once all have arrived */
+  /** Asks for the values of this scan, also to hold the targets. @returns true once all have arrived */
   step(input: SequencerInput): boolean {
     // After a gap the guard lets no lost time be made up; asking for it would only call it.
     this.rampedS += Math.min(input.dtS, slewPeriodsAtMost * this.services.periodS);
     const isComplete = this.rampedS >= this.durationS;
     let hasArrived = isComplete;
     for (const { channel, from, to } of this.legs) {
-      const base = isComplete ? to : from + ((to - from) * this.rampedS) / this.durationS;
-      this.services.request(channel, base, 0);
+      const onLine = isComplete ? to : from + ((to - from) * this.rampedS) / this.durationS;
+      this.services.request(channel, withinReach(this.services, input, channel, onLine), 0);
+      const nearest =
+        Math.abs(this.services.nearestTo(channel, to) - to) + this.services.toleranceOf(channel);
       // Written so that a value which is no number has not arrived.
-      if (!(Math.abs(input.applied(channel) - to) <= this.services.toleranceOf(channel))) hasArrived = false;
+      if (!(Math.abs(input.applied(channel) - to) <= nearest)) hasArrived = false;
     }
     return hasArrived;
   }
 
   /** @param waitedS time since the lines began, s */
   isOverdue(waitedS: number): boolean {
-    return waitedS > this.durationS + arrivalGraceS;
+    return waitedS > durationTimesAtMost * this.durationS + arrivalGraceS;
   }
 
   /** An actuator found outside its envelope begins at the edge: nothing outside is asked for. */

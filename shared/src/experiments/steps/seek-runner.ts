@@ -6,6 +6,7 @@ import type { StepOf } from '../experiment.schema.js';
 import type { SequencerInput } from '../sequencer.types.js';
 import { ActuatorRamp, whereHeld } from './actuator-ramp.js';
 import { numericValue, type CompileStepExpression, type NumericValue } from './compile-step-expression.js';
+import { SeekCatchUp } from './seek-catch-up.js';
 import { SeekPeriods } from './seek-periods.js';
 import { SeekRetreat } from './seek-retreat.js';
 import { setUpSeek } from './seek-setup.js';
@@ -25,6 +26,7 @@ interface Pursuit {
   law: GradientLawState;
   periods: SeekPeriods;
   retreat: SeekRetreat;
+  catchUp: SeekCatchUp;
   convergence: StayWithin | null;
   /** The law adapted all through the present dither period. */
   isAdapting: boolean;
@@ -84,6 +86,7 @@ export class SeekRunner implements StepRunner {
       law,
       periods: new SeekPeriods(numbers.periodS),
       retreat: new SeekRetreat(numbers.periodS),
+      catchUp: new SeekCatchUp(this.services, actuator),
       // Means of fewer than two periods cannot show that the estimate stands still.
       convergence: end.whenConverged && new StayWithin(Math.max(end.whenConverged.forS, 2 * numbers.periodS)),
       isAdapting: false,
@@ -129,7 +132,9 @@ export class SeekRunner implements StepRunner {
     if (this.fed.isValid && !isUsable(this.fed.objective)) return false;
     gradientLaw.step(law, this.fed, input.dtS);
     const estimate = estimateOf(law);
-    this.services.request(this.settings.parameters.actuator, estimate, law.dither[0] ?? NaN);
+    const dither = law.dither[0] ?? NaN;
+    const base = pursuit.catchUp.follow(input, estimate, dither, this.fed.isValid);
+    this.services.request(this.settings.parameters.actuator, base, dither);
     this.signals.set(law.signals);
     if (retreat.note(this.fed.isValid, input.dtS)) {
       const reason = objective.whyInvalid ?? 'The objective is not valid.';

@@ -19,7 +19,11 @@ export interface StepServices {
   readonly objective: ObjectiveContent | null;
   /** Limit of an actuator; undefined where the envelope has none. */
   limitOf(channel: string): ActuatorLimit | undefined;
-  /** How near to its target an actuator must come to have arrived, channel unit. */
+  /** Step of the grid of an actuator's wire, channel unit; 0 where it is continuous or not known. */
+  gridStepOf(channel: string): number;
+  /** The value nearest to `target` that an actuator can be sent to: on its wire's grid, inside its envelope. */
+  nearestTo(channel: string, target: number): number;
+  /** How much further off than that value an actuator may be and still have arrived, channel unit. */
   toleranceOf(channel: string): number;
   /** Value of a symbol in this scan: a result, the objective where it is valid, or a good reading; else NaN. */
   readonly lookup: Lookup;

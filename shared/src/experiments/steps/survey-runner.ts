@@ -55,7 +55,8 @@ export class SurveyRunner implements StepRunner {
       if (!this.ramp.step(input)) return this.giveUpWaiting(input);
       this.enter('settling');
     } else {
-      this.services.request(this.settings.parameters.actuator, this.visit.target, 0);
+      // Past its line the ramp holds the target, without asking for more than this scan can move.
+      this.ramp.step(input);
     }
     const { settleS, averageS } = this.settings.parameters;
     const { periodS } = this.services;
