@@ -32,7 +32,7 @@ export class VirtualBurner {
   private readonly scenario = demoScenario({ benchHost: '127.0.0.1', benchPort: 1 });
   private readonly registers: RegisterMap;
   private readonly wired: WiredChannel[];
-  private scans = 0;
+  private tS = 0;
 
   constructor(seed: number) {
     const { rig, envelope } = this.entry;
@@ -73,17 +73,18 @@ export class VirtualBurner {
     };
   }
 
-  scan(): ScanOutput {
-    const tS = (this.scans += 1) * scanS;
+  /** @param dtS time since the scan before, s; a scan that is longer than its period came late */
+  scan(dtS = scanS): ScanOutput {
+    const tS = (this.tS += dtS);
     this.simulation.advanceTo(tS * speed + 1e-6);
     const { readings } = this.engine;
     for (const channel of this.wired)
       readings.set(readings.indexOf(channel.id), this.read(channel), Quality.good);
     const output = this.engine.scan({
       tS,
-      dtS: scanS,
+      dtS,
       atMs: Math.round(tS * 1000),
-      latenessS: 0,
+      latenessS: Math.max(0, dtS - scanS),
       lostConnections: [],
       serverSilentS: 0,
     });
