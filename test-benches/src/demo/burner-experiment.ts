@@ -107,10 +107,13 @@ export const burnerExperiment: ExperimentInput = {
     edges: [
       edge('start', 'done', 'survey'),
       edge('survey', 'done', 'move'),
+      edge('survey', 'failed', 'finish'),
       edge('move', 'done', 'settle'),
+      edge('move', 'timeout', 'finish'),
       edge('settle', 'done', 'seek'),
       edge('settle', 'timeout', 'seek'),
       edge('seek', 'done', 'check'),
+      edge('seek', 'failed', 'finish'),
       edge('check', 'yes', 'finish'),
       edge('check', 'no', 'finish'),
     ],
