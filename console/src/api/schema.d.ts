@@ -11,7 +11,7 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** List the installed adapters with what they must be told. */
+        /** Lists the installed adapters with what they must be told. */
         get: operations["adapters_list"];
         put?: never;
         post?: never;
@@ -30,6 +30,7 @@ export interface paths {
         };
         get?: never;
         put?: never;
+        /** Signs in: answers who it is and sets the session cookie. */
         post: operations["auth_signIn"];
         delete?: never;
         options?: never;
@@ -46,6 +47,7 @@ export interface paths {
         };
         get?: never;
         put?: never;
+        /** Signs out this browser. */
         post: operations["auth_signOut"];
         delete?: never;
         options?: never;
@@ -60,6 +62,7 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
+        /** Says who is signed in. */
         get: operations["auth_session"];
         put?: never;
         post?: never;
@@ -76,10 +79,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** List the envelopes of a rig, newest first. */
+        /** Lists the envelopes of a rig, newest first. */
         get: operations["envelopes_list"];
         put?: never;
-        /** Draft an envelope. */
+        /** Drafts an envelope. */
         post: operations["envelopes_create"];
         delete?: never;
         options?: never;
@@ -94,9 +97,9 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** Read an envelope; answers an ETag. */
+        /** Reads an envelope; answers an ETag. */
         get: operations["envelopes_get"];
-        /** Change a draft or a returned envelope; its author only. */
+        /** Changes a draft or a returned envelope; its author only. */
         put: operations["envelopes_change"];
         post?: never;
         delete?: never;
@@ -114,7 +117,7 @@ export interface paths {
         };
         get?: never;
         put?: never;
-        /** Hand a draft in for approval; its author only. */
+        /** Hands a draft in for approval; its author only. */
         post: operations["envelopes_submit"];
         delete?: never;
         options?: never;
@@ -131,7 +134,7 @@ export interface paths {
         };
         get?: never;
         put?: never;
-        /** Put a submitted envelope in force; never its author. */
+        /** Puts a submitted envelope in force; never its author. */
         post: operations["envelopes_approve"];
         delete?: never;
         options?: never;
@@ -148,7 +151,7 @@ export interface paths {
         };
         get?: never;
         put?: never;
-        /** Give a submitted envelope back to its author; never the author. */
+        /** Gives a submitted envelope back to its author; never the author. */
         post: operations["envelopes_giveBack"];
         delete?: never;
         options?: never;
@@ -163,10 +166,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** List experiments, of one rig or of all. */
+        /** Lists experiments, of one rig or of all. */
         get: operations["experiments_list"];
         put?: never;
-        /** Make an experiment with its version 1. */
+        /** Makes an experiment with its version 1. */
         post: operations["experiments_create"];
         delete?: never;
         options?: never;
@@ -183,7 +186,7 @@ export interface paths {
         };
         get?: never;
         put?: never;
-        /** List the faults of an experiment against the envelope in force; keeps nothing. */
+        /** Lists the faults of an experiment against the envelope in force; keeps nothing. */
         post: operations["experiments_preflight"];
         delete?: never;
         options?: never;
@@ -198,7 +201,7 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** Read what an experiment is, without its versions. */
+        /** Reads what an experiment is, without its versions. */
         get: operations["experiments_get"];
         put?: never;
         post?: never;
@@ -215,10 +218,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** List the versions of an experiment, newest first. */
+        /** Lists the versions of an experiment, newest first. */
         get: operations["experiments_listVersions"];
         put?: never;
-        /** Add an immutable version on top of the latest. */
+        /** Adds an immutable version on top of the latest. */
         post: operations["experiments_createVersion"];
         delete?: never;
         options?: never;
@@ -233,7 +236,7 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** Read one version. */
+        /** Reads one version. */
         get: operations["experiments_getVersion"];
         put?: never;
         post?: never;
@@ -250,10 +253,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** List objectives, of one rig or of all. */
+        /** Lists objectives, of one rig or of all. */
         get: operations["objectives_list"];
         put?: never;
-        /** Write an objective. */
+        /** Writes an objective. */
         post: operations["objectives_create"];
         delete?: never;
         options?: never;
@@ -268,9 +271,9 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** Read an objective; answers an ETag. */
+        /** Reads an objective; answers an ETag. */
         get: operations["objectives_get"];
-        /** Change an objective. */
+        /** Changes an objective. */
         put: operations["objectives_change"];
         post?: never;
         delete?: never;
@@ -286,10 +289,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** List rigs with their status. */
+        /** Lists rigs with their status. */
         get: operations["rigs_list"];
         put?: never;
-        /** Make a rig. */
+        /** Makes a rig. */
         post: operations["rigs_create"];
         delete?: never;
         options?: never;
@@ -304,9 +307,9 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** Read a rig and its status; answers an ETag. */
+        /** Reads a rig and its status; answers an ETag. */
         get: operations["rigs_get"];
-        /** Change the wiring of a rig; only while it is idle, offline or tripped. */
+        /** Changes the wiring of a rig; only while it is idle, offline or tripped. */
         put: operations["rigs_change"];
         post?: never;
         delete?: never;
@@ -322,8 +325,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
+        /** Says whether the first administrator is still to be made. */
         get: operations["setup_state"];
         put?: never;
+        /** Makes the first administrator with the code that the server printed. */
         post: operations["setup_setUp"];
         delete?: never;
         options?: never;
@@ -338,8 +343,10 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
+        /** Lists accounts. */
         get: operations["users_list"];
         put?: never;
+        /** Makes an account. */
         post: operations["users_create"];
         delete?: never;
         options?: never;
@@ -360,6 +367,7 @@ export interface paths {
         delete?: never;
         options?: never;
         head?: never;
+        /** Changes an account; a new password or disabling ends its sessions. */
         patch: operations["users_change"];
         trace?: never;
     };
@@ -677,7 +685,7 @@ export interface components {
             status: number;
             detail: string;
             /** @enum {string} */
-            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
+            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
             errors: {
                 field: string;
                 message: string;
@@ -1410,9 +1418,6 @@ export interface components {
             password?: string;
             isEnabled?: boolean;
         };
-        EmergencyStop: {
-            reason?: string;
-        };
         Move: {
             channel: string;
             value: number;
@@ -1575,6 +1580,7 @@ export interface components {
                 type: "scan.overran";
                 latenessMs: number;
                 consecutive: number;
+                count?: number;
             } | {
                 /** @enum {string} */
                 type: "rig.tripped";
@@ -3096,9 +3102,11 @@ export interface operations {
             path?: never;
             cookie?: never;
         };
-        requestBody: {
+        requestBody?: {
             content: {
-                "application/json": components["schemas"]["EmergencyStop"];
+                "application/json": {
+                    reason?: string;
+                };
             };
         };
         responses: {
@@ -3344,9 +3352,11 @@ export interface operations {
             };
             cookie?: never;
         };
-        requestBody: {
+        requestBody?: {
             content: {
-                "application/json": components["schemas"]["EmergencyStop"];
+                "application/json": {
+                    reason?: string;
+                };
             };
         };
         responses: {

@@ -61,7 +61,15 @@ export const runEventBodySchema = z.discriminatedUnion('type', [
   event('interlock.cleared', { interlock: z.string() }),
   event('connection.lost', { connection: z.string(), code: z.string(), message: z.string() }),
   event('connection.restored', { connection: z.string() }),
-  event('scan.overran', { latenessMs: z.number(), consecutive: z.int() }),
+  /** Scans that began more than one period late, joined into one event a second. */
+  event('scan.overran', {
+    /** The worst of them. */
+    latenessMs: z.number(),
+    /** Most in a row; the envelope limits that. */
+    consecutive: z.int(),
+    /** Such scans since the last event of this kind; missing in records from before it was counted. */
+    count: z.int().optional(),
+  }),
   event('rig.tripped', { cause: z.string(), message: z.string() }),
 ]);
 export type RunEventBody = z.infer<typeof runEventBodySchema>;

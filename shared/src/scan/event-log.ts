@@ -15,7 +15,7 @@ interface Joined {
 export class EventLog {
   private readonly waiting: RunEventBody[] = [];
   private guardSaid = new WeakMap<HeldActuator, Joined[]>();
-  private overran: Joined = { saidAtS: -Infinity, saidCount: 0 };
+  private readonly overruns = { saidAtS: -Infinity, count: 0, worstS: 0, longest: 0 };
   private isScanOpen = false;
   private runTS = 0;
   private atMs = 0;
@@ -46,7 +46,7 @@ export class EventLog {
   /** A new run counts its interventions from zero. */
   beginRun(actuators: readonly HeldActuator[]): void {
     this.guardSaid = new WeakMap();
-    this.overran = { saidAtS: -Infinity, saidCount: 0 };
+    this.clearOverruns(-Infinity);
     for (const actuator of actuators) actuator.guarded.counts.fill(0);
   }
 
@@ -57,10 +57,24 @@ export class EventLog {
     }
   }
 
-  sayOverrun(latenessS: number, consecutive: number, tS: number): void {
-    if (tS - this.overran.saidAtS < joinedForS) return;
-    this.overran.saidAtS = tS;
-    this.add({ type: 'scan.overran', latenessMs: latenessS * 1000, consecutive });
+  /** @param consecutive overruns in a row up to this one */
+  noteOverrun(latenessS: number, consecutive: number): void {
+    const { overruns } = this;
+    overruns.count += 1;
+    overruns.worstS = Math.max(overruns.worstS, latenessS);
+    overruns.longest = Math.max(overruns.longest, consecutive);
+  }
+
+  /** Says what was noted: at once the first time, then joined once a second, and at the end. */
+  sayOverruns(tS: number, isLast: boolean): void {
+    const { saidAtS, count, worstS, longest } = this.overruns;
+    if (count === 0 || (tS - saidAtS < joinedForS && !isLast)) return;
+    this.add({ type: 'scan.overran', latenessMs: worstS * 1000, consecutive: longest, count });
+    this.clearOverruns(tS);
+  }
+
+  private clearOverruns(saidAtS: number): void {
+    Object.assign(this.overruns, { saidAtS, count: 0, worstS: 0, longest: 0 });
   }
 
   private sayRule(actuator: HeldActuator, index: number, tS: number, isLast: boolean): void {

@@ -139,6 +139,34 @@ describe('a run', () => {
     expect(counts).toEqual([1, 11, 21, 25]);
   });
 
+  it('joins late scans into one event a second, with how many, the worst, and the most in a row', () => {
+    const plant = new FakePlant().run();
+    const late: Record<number, number> = {
+      2: 0.11,
+      5: 0.15,
+      6: 0.3,
+      8: 0.12,
+      30: 0.2,
+      33: 0.1,
+      41: 0.5,
+      42: 0.4,
+    };
+    const said: unknown[] = [];
+    for (let i = 0; i < 44; i++) {
+      if (i === 42) plant.engine.stop('t', 'enough');
+      const { events } = plant.scan({ latenessS: late[i] ?? 0 });
+      for (const { body } of events) if (body.type === 'scan.overran') said.push({ i, ...body });
+    }
+    const type = 'scan.overran';
+    expect(said).toEqual([
+      { i: 2, type, latenessMs: 110, consecutive: 1, count: 1 },
+      { i: 12, type, latenessMs: 300, consecutive: 2, count: 3 },
+      { i: 30, type, latenessMs: 200, consecutive: 1, count: 1 },
+      { i: 41, type, latenessMs: 500, consecutive: 1, count: 1 },
+      { i: 43, type, latenessMs: 400, consecutive: 2, count: 1 },
+    ]);
+  });
+
   it('is paused by an interlock, and resumed only once that is clear', () => {
     const interlock = {
       id: 'warm',

@@ -128,6 +128,7 @@ function closeRun(engine: EngineState, tS: number): void {
   if (!run?.end || rigState.phase === 'stopping' || rigState.phase === 'running') return;
   if (rigState.phase === 'tripped' && isStopAwaited(engine, run, tS)) return;
   log.sayInterventions(actuatorsOf(engine), tS, true);
+  log.sayOverruns(tS, true);
   log.add({ type: 'run.ended', ...run.end });
   engine.output.runEnded = { ...run.end, results: run.results() };
   engine.lastBestPoint = bestPoint(run.order.experiment.graph, run.sequencer);

@@ -22,8 +22,9 @@ export function isReadBackOutside(engine: EngineState, actuator: HeldActuator): 
 function watchOverruns(engine: EngineState, { latenessS, tS, atMs }: ScanInput): void {
   const isOverrun = latenessS > engine.periodS;
   engine.consecutiveOverruns = isOverrun ? engine.consecutiveOverruns + 1 : 0;
+  if (isOverrun) engine.log.noteOverrun(latenessS, engine.consecutiveOverruns);
+  engine.log.sayOverruns(tS, false);
   if (!isOverrun) return;
-  engine.log.sayOverrun(latenessS, engine.consecutiveOverruns, tS);
   const limit = engine.fitted?.inForce.content.overrunLimit ?? Infinity;
   if (engine.consecutiveOverruns < limit) return;
   const message = `${engine.consecutiveOverruns} scans in a row came later than one period.`;

@@ -41,10 +41,16 @@ export function eventText(body: RunEventBody): string {
     case 'connection.restored':
       return `Connection ${body.connection} is back`;
     case 'scan.overran':
-      return `A scan was ${plainNumber(body.latenessMs)} ms late (${body.consecutive} in a row)`;
+      return overrunText(body);
     case 'rig.tripped':
       return `Tripped by ${body.cause}: ${body.message}`;
   }
+}
+
+function overrunText(body: Extract<RunEventBody, { type: 'scan.overran' }>): string {
+  const { count = 1, latenessMs, consecutive } = body;
+  const late = `${Math.round(latenessMs)} ms late${consecutive > 1 ? ` (${consecutive} in a row)` : ''}`;
+  return count === 1 ? `A scan was ${late}` : `${count} scans were up to ${late}`;
 }
 
 /** What is abnormal is marked in the list; survey points are detail. */
