@@ -16,7 +16,13 @@ const edgeRad = 1e-9;
 /** Dither of one actuator and what it is demodulated with. */
 export interface AxisDither {
   readonly axis: PeriodicAxis;
+  readonly isSine: boolean;
+  readonly amplitude: number;
+  /** Lag of the demodulation φ, rad. */
+  readonly phaseRad: number;
   readonly omega: number;
+  /** Corner of the washout that the objective goes through; 0 for none, rad/s. */
+  readonly washoutCorner: number;
   /** Phase of the dither that was put out last, rad. */
   phase: number;
   /** Share of the amplitude of the dither that was put out last. */
@@ -27,10 +33,16 @@ export interface AxisDither {
   readonly cosine: FirstOrderFilterState;
 }
 
-export function createAxisDither(axis: PeriodicAxis): AxisDither {
+/** @param washoutRatio corner of the objective's washout, of the dither frequency; 0 for none */
+export function createAxisDither(axis: PeriodicAxis, washoutRatio = 0): AxisDither {
+  const omega = (2 * Math.PI) / axis.periodS;
   return {
     axis,
-    omega: (2 * Math.PI) / axis.periodS,
+    isSine: axis.dither === 'sine',
+    amplitude: axis.amplitude,
+    phaseRad: axis.phaseRad,
+    omega,
+    washoutCorner: washoutRatio * omega,
     phase: 0,
     scale: 1,
     washout: createFirstOrderFilter(),
@@ -55,7 +67,8 @@ export function resetAxisDither(dither: AxisDither): void {
  *
  * @realtime safe: allocates nothing
  */
-export function listen(dither: AxisDither, measured: number, washoutCorner: number, dtS: number): void {
+export function listen(dither: AxisDither, measured: number, dtS: number): void {
+  const { washoutCorner } = dither;
   const ripple = washoutCorner > 0 ? stepWashout(dither.washout, measured, washoutCorner, dtS) : measured;
   const corner = lockInRatio * dither.omega;
   stepLowPass(dither.sine, 2 * ripple * Math.sin(dither.phase), corner, dtS);
@@ -76,11 +89,47 @@ export function canListen(dither: AxisDither, measured: number | undefined): boo
  * @realtime safe: allocates nothing
  */
 export function demodulator(dither: AxisDither): number {
-  const { amplitude, phaseRad, dither: kind } = dither.axis;
-  if (kind === 'sine') return (2 / (amplitude * dither.scale)) * Math.sin(dither.phase - phaseRad);
-  if (kind === 'square') return squareOf(dither.phase - phaseRad) / (amplitude * dither.scale);
+  const { amplitude, phaseRad } = dither;
+  if (dither.isSine) return (2 / (amplitude * dither.scale)) * Math.sin(dither.phase - phaseRad);
+  if (dither.axis.dither === 'square') {
+    return squareOf(dither.phase - phaseRad) / (amplitude * dither.scale);
+  }
   const square = rippleSquared(dither);
   return square < amplitude * amplitude ? 0 : (2 / square) * laggedRipple(dither);
+}
+
+/** Writes the demodulator of each dither, 1 / actuator unit; for injected sines without a call. */
+export function writeDemodulators(dithers: readonly AxisDither[], demodulators: Float64Array): void {
+  for (let i = 0; i < dithers.length; i += 1) {
+    const d = dithers[i] as AxisDither;
+    demodulators[i] = d.isSine
+      ? (2 / (d.amplitude * d.scale)) * Math.sin(d.phase - d.phaseRad)
+      : demodulator(d);
+  }
+}
+
+/** Writes the dithers as the objective answers them, lagging by φ, actuator units. */
+export function writeLaggedDithers(dithers: readonly AxisDither[], lagged: Float64Array): void {
+  for (let i = 0; i < dithers.length; i += 1) {
+    const d = dithers[i] as AxisDither;
+    lagged[i] = d.isSine ? d.amplitude * d.scale * Math.sin(d.phase - d.phaseRad) : laggedDither(d);
+  }
+}
+
+/** Writes what is put out next, actuator units: nothing where the plant's own ripple is used. */
+export function writeNextDithers(
+  dithers: readonly AxisDither[],
+  taper: { readonly scale: number },
+  next: Float64Array,
+  dtS: number,
+): void {
+  const { scale } = taper;
+  for (let i = 0; i < dithers.length; i += 1) {
+    const d = dithers[i] as AxisDither;
+    d.phase = (d.phase + d.omega * dtS) % (2 * Math.PI);
+    d.scale = scale;
+    next[i] = d.isSine ? d.amplitude * scale * Math.sin(d.phase) : presentDither(d);
+  }
 }
 
 /**
@@ -104,13 +153,8 @@ function laggedRipple({ axis, phase, sine, cosine }: AxisDither): number {
   return sine.low * Math.sin(phase - axis.phaseRad) + cosine.low * Math.cos(phase - axis.phaseRad);
 }
 
-/** @returns what is put out next, actuator unit: nothing where the plant's own ripple is used */
-export function nextDither(dither: AxisDither, scale: number, dtS: number): number {
-  const { amplitude, dither: kind } = dither.axis;
-  dither.phase = (dither.phase + dither.omega * dtS) % (2 * Math.PI);
-  dither.scale = scale;
-  if (kind === 'sine') return amplitude * scale * Math.sin(dither.phase);
-  return kind === 'square' ? amplitude * scale * squareOf(dither.phase) : 0;
+function presentDither({ axis, amplitude, scale, phase }: AxisDither): number {
+  return axis.dither === 'square' ? amplitude * scale * squareOf(phase) : 0;
 }
 
 function squareOf(phase: number): number {

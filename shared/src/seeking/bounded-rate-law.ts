@@ -3,7 +3,7 @@ import { writeEstimates } from './gradient-estimator.js';
 import { axesOf, gainParameter, periodicAxis, taperParameter } from './law-parameters.js';
 import { ditherWithin, held } from './seek-box.js';
 import { admit, at, createSeekCore, isSettled, remember, type SeekCore } from './seek-core.js';
-import type { SeekingLaw } from './seeking-law.js';
+import type { SeekingInput, SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
 const axis = periodicAxis(['sine'], { gain: gainParameter }).omit({
@@ -20,10 +20,14 @@ export interface BoundedRateLawState extends SeekCore {
   readonly parameters: BoundedRateLawParameters;
   /** What was asked for last, actuator units. */
   readonly applied: Float64Array;
+  /** Perturbation that belongs to `applied`, actuator units. */
+  readonly ripple: Float64Array;
   /** ωt of each actuator, rad. */
   readonly phases: Float64Array;
   /** Objective less this turns the phase: taken from the first sample, so that no phase is huge. */
   reference: number;
+  /** On its way back to the last good point, which it goes to the end even where the objective is valid again. */
+  isReturning: boolean;
 }
 
 const signalNames = ['estimate', 'turn'];
@@ -67,18 +71,27 @@ export const boundedRateLaw: SeekingLaw<BoundedRateLawParameters, BoundedRateLaw
     });
     writeEstimates(core.estimate, core.signals, signalNames.length);
     const phases = new Float64Array(axes.length);
-    return { ...core, parameters, applied: core.estimate.slice(), phases, reference: NaN };
+    return {
+      ...core,
+      parameters,
+      applied: core.estimate.slice(),
+      ripple: new Float64Array(axes.length),
+      phases,
+      reference: NaN,
+      isReturning: false,
+    };
   },
 
   step(state, input, dtS) {
-    if (admit(state, input, dtS)) climb(state, input.objective, dtS);
+    if (!admit(state, input, dtS)) state.isReturning = true;
+    if (!state.isReturning) climb(state, input, dtS);
     else walkBack(state, dtS);
     writeEstimates(state.estimate, state.signals, signalNames.length);
   },
 };
 
-function climb(state: BoundedRateLawState, objective: number, dtS: number): void {
-  const { parameters, phases, applied, signals } = state;
+function climb(state: BoundedRateLawState, { objective }: SeekingInput, dtS: number): void {
+  const { parameters, phases, applied, ripple, signals } = state;
   const { scale } = state.taper;
   if (state.reference !== state.reference) state.reference = objective;
   const isAdapting = isSettled(state, dtS);
@@ -91,31 +104,48 @@ function climb(state: BoundedRateLawState, objective: number, dtS: number): void
     const middle = at(phases, i) + (omega * dtS) / 2;
     phases[i] = (at(phases, i) + omega * dtS) % (2 * Math.PI);
     const speed = reach * omega * Math.cos(middle - turn);
-    place(state, i, at(applied, i) + speed * dtS, reach * Math.sin(at(phases, i) - turn));
+    applied[i] = at(applied, i) + speed * dtS;
+    ripple[i] = reach * Math.sin(at(phases, i) - turn);
     signals[i * signalNames.length + 1] = turn;
   }
+  placeAll(state);
 }
 
 /** Holds the applied value in the box, the estimate in its own, and keeps their difference below the amplitude. */
-function place(state: BoundedRateLawState, i: number, wanted: number, ripple: number): void {
-  const { applied, estimate, dither, lowest, highest } = state;
-  const { min, max } = state.axes[i] as Axis;
-  const next = held(wanted, min, max);
-  const middle = held(next - ripple, at(lowest, i), at(highest, i));
-  estimate[i] = middle;
-  dither[i] = ditherWithin(middle, next - middle, min, max);
-  applied[i] = middle + at(dither, i);
+function placeAll({
+  applied,
+  ripple,
+  estimate,
+  dither,
+  lowest,
+  highest,
+  min,
+  max,
+}: BoundedRateLawState): void {
+  for (let i = 0; i < applied.length; i += 1) {
+    const next = held(at(applied, i), at(min, i), at(max, i));
+    const middle = held(next - at(ripple, i), at(lowest, i), at(highest, i));
+    estimate[i] = middle;
+    dither[i] = ditherWithin(middle, next - middle, at(min, i), at(max, i));
+    applied[i] = middle + at(dither, i);
+  }
 }
 
 function walkBack(state: BoundedRateLawState, dtS: number): void {
-  const { applied, estimate, lastGood, phases, parameters } = state;
+  const { applied, estimate, dither, lastGood, phases, parameters, min, max } = state;
+  let isThere = true;
   for (let i = 0; i < applied.length; i += 1) {
-    const { amplitude, periodS, min, max } = parameters.axes[i] as Axis;
-    const stride = ((2 * Math.PI) / periodS) * amplitude * Math.max(0, dtS);
+    const { amplitude, periodS } = parameters.axes[i] as Axis;
+    const stride = ((2 * Math.PI) / periodS) * amplitude * dtS;
     const way = at(lastGood, i) - at(applied, i);
-    if (stride >= 0) applied[i] = held(at(applied, i) + held(way, -stride, stride), min, max);
+    if (stride >= 0) applied[i] = held(at(applied, i) + held(way, -stride, stride), at(min, i), at(max, i));
+    if (!(Math.abs(way) <= stride)) isThere = false;
     estimate[i] = at(applied, i);
+    dither[i] = 0;
   }
   phases.fill(0);
   state.reference = NaN;
+  state.isRetreated = true;
+  // It climbs on from the next valid step.
+  state.isReturning = !isThere;
 }

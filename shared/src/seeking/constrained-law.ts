@@ -1,10 +1,5 @@
 import { z } from 'zod';
-import {
-  createFirstOrderFilter,
-  resetFirstOrderFilter,
-  stepLowPass,
-  type FirstOrderFilterState,
-} from '../signals/first-order-filter.js';
+import { createFilterBank, resetFilterBank, stepFilterBank, type FilterBank } from './filter-bank.js';
 import { filterDirection, relaxedBarrier } from './constraint-filter.js';
 import {
   createGradientEstimator,
@@ -27,12 +22,13 @@ import {
 import {
   admitPeriodic,
   createPeriodicCore,
+  demodulate,
   perturb,
   retreatPeriodic,
   type PeriodicCore,
 } from './periodic-core.js';
 import { held } from './seek-box.js';
-import { at, isSettled, isUsable, move } from './seek-core.js';
+import { at, isSettled, isUsable, moveAll } from './seek-core.js';
 import { ditherKinds, type SeekingInput, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -88,12 +84,10 @@ export interface ConstrainedLawState extends PeriodicCore {
   readonly parameters: ConstrainedLawParameters;
   readonly estimator: GradientEstimator;
   readonly marginEstimator: GradientEstimator;
-  readonly marginFilter: FirstOrderFilterState;
+  readonly marginFilter: FilterBank;
   /** Wanted speed and slope of the margin, in dither amplitudes. */
   readonly direction: Float64Array;
   readonly marginSlope: Float64Array;
-  /** Corner of the margin's low-pass, rad/s. */
-  readonly marginCorner: number;
 }
 
 const signalsPerActuator = [...gradientSignals, 'marginGradient'];
@@ -126,32 +120,33 @@ export const constrainedLaw: SeekingLaw<ConstrainedLawParameters, ConstrainedLaw
   signalNames: (actuators) => [...perActuator(actuators, signalsPerActuator), 'margin'],
 
   init(parameters, start) {
-    const { taper, lowPassRatio } = parameters;
+    const { taper, washoutRatio, lowPassRatio } = parameters;
     const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
     const n = axes.length;
-    const core = createPeriodicCore({ axes, start, taper, signals: n * stride + 1 });
+    const core = createPeriodicCore({ axes, start, taper, washoutRatio, signals: n * stride + 1 });
     writeEstimates(core.estimate, core.signals, stride);
     return {
       ...core,
       parameters,
-      estimator: createGradientEstimator(n),
-      marginEstimator: createGradientEstimator(n),
-      marginFilter: createFirstOrderFilter(),
+      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
+      marginEstimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
+      marginFilter: createFilterBank(Float64Array.of((lowPassRatio * 2 * Math.PI) / core.trialS)),
       direction: new Float64Array(n),
       marginSlope: new Float64Array(n),
-      marginCorner: (lowPassRatio * 2 * Math.PI) / core.trialS,
     };
   },
 
   step(state, input, dtS) {
     const { parameters, signals } = state;
     const margin = marginOf(parameters, input);
-    if (!admitPeriodic(state, input, parameters.washoutRatio, dtS)) resetFilters(state);
+    if (!admitPeriodic(state, input, dtS)) resetFilters(state);
     else if (!isUsable(margin)) {
       retreatPeriodic(state);
       resetFilters(state);
     } else {
-      climb(state, input.objective, margin, dtS);
+      state.estimator.told[0] = input.objective;
+      state.marginEstimator.told[0] = margin;
+      climb(state, dtS);
       perturb(state, dtS);
       writeGradientSignals(state.estimator, signals, stride);
       for (let i = 0; i < state.estimate.length; i += 1) {
@@ -172,27 +167,42 @@ function marginOf({ side, reserve }: ConstrainedLawParameters, input: SeekingInp
 function resetFilters({ estimator, marginEstimator, marginFilter }: ConstrainedLawState): void {
   resetGradientEstimator(estimator);
   resetGradientEstimator(marginEstimator);
-  resetFirstOrderFilter(marginFilter);
+  resetFilterBank(marginFilter);
 }
 
-function climb(state: ConstrainedLawState, objective: number, margin: number, dtS: number): void {
-  const { parameters, estimator, marginEstimator, dithers, direction, marginSlope } = state;
-  const { axes, method, washoutRatio, lowPassRatio, approachRate } = parameters;
+function climb(state: ConstrainedLawState, dtS: number): void {
+  const {
+    parameters,
+    estimator,
+    marginEstimator,
+    marginFilter,
+    demodulators,
+    direction,
+    marginSlope,
+    change,
+  } = state;
+  const { axes, method, approachRate } = parameters;
+  const margin = at(marginEstimator.told, 0);
   const isBarrier = method === 'barrier';
-  const barrier = isBarrier ? parameters.barrierWeight * relaxedBarrier(margin, parameters.barrierKnee) : 0;
-  // Far beyond the bound the barrier is beyond all measure; held, it still leads back.
-  const climbed = held(objective + barrier, -1e100, 1e100);
-  stepGradientEstimator(estimator, dithers, climbed, washoutRatio, lowPassRatio, dtS);
-  stepGradientEstimator(marginEstimator, dithers, margin, washoutRatio, lowPassRatio, dtS);
-  const mean = stepLowPass(state.marginFilter, margin, state.marginCorner, dtS);
+  if (isBarrier) {
+    const barrier = parameters.barrierWeight * relaxedBarrier(margin, parameters.barrierKnee);
+    // Far beyond the bound the barrier is beyond all measure; held, it still leads back.
+    estimator.told[0] = held(at(estimator.told, 0) + barrier, -1e100, 1e100);
+  }
+  demodulate(state);
+  stepGradientEstimator(estimator, demodulators, dtS);
+  stepGradientEstimator(marginEstimator, demodulators, dtS);
+  marginFilter.input[0] = margin;
+  stepFilterBank(marginFilter, dtS);
   if (!isSettled(state, dtS)) return;
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, gain } = axes[i] as Axis;
     direction[i] = (gain * at(estimator.gradient, i)) / amplitude;
     marginSlope[i] = at(marginEstimator.gradient, i) * amplitude;
   }
-  if (!isBarrier) filterDirection(direction, marginSlope, mean, approachRate);
+  if (!isBarrier) filterDirection(direction, marginSlope, at(marginFilter.output, 0), approachRate);
   for (let i = 0; i < axes.length; i += 1) {
-    move(state, i, at(direction, i) * (axes[i] as Axis).amplitude * dtS, dtS);
+    change[i] = at(direction, i) * (axes[i] as Axis).amplitude * dtS;
   }
+  moveAll(state, dtS);
 }

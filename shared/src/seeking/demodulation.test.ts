@@ -1,5 +1,11 @@
 import { describe, expect, it } from 'vitest';
-import { createAxisDither, demodulator, laggedDither, nextDither, type AxisDither } from './axis-dither.js';
+import {
+  createAxisDither,
+  demodulator,
+  laggedDither,
+  writeNextDithers,
+  type AxisDither,
+} from './axis-dither.js';
 import { createHessianEstimator, stepHessianEstimator } from './hessian-estimator.js';
 import type { PeriodicAxis } from './law-parameters.js';
 import { createRecursiveSlope, stepRecursiveSlope } from './recursive-slope.js';
@@ -8,6 +14,12 @@ import { recoveredShare } from './washout-share.js';
 
 /** The workspace compiles without the types of any platform; the runner of the tests has it. */
 declare const console: { info(text: string): void };
+
+const nextDither = (dither: AxisDither, scale: number, dtS: number): number => {
+  const next = new Float64Array(1);
+  writeNextDithers([dither], { scale }, next, dtS);
+  return next[0] ?? NaN;
+};
 
 const axisWith = (change: Partial<PeriodicAxis> = {}): PeriodicAxis => ({
   min: -10,
@@ -102,7 +114,7 @@ describe('demodulation for the Hessian', () => {
     for (let i = 0; i < steps; i += 1) {
       const [u = NaN, v = NaN] = dithers.map((d, k) => (k === 0 ? 0.5 : 1) + nextDither(d, 1, dtS));
       const y = 50 * u * u + 30 * u * v + 10 * v * v;
-      stepHessianEstimator(estimator, dithers, y, dtS);
+      stepHessianEstimator(estimator, dithers, Float64Array.of(y), dtS);
       estimator.hessian.forEach((h, k) => (hessian[k] = (hessian[k] ?? NaN) + h / steps));
       dithers.forEach((d, k) => (gradient[k] = (gradient[k] ?? NaN) + (demodulator(d) * y) / steps));
     }
@@ -121,7 +133,7 @@ describe('demodulation for the Hessian', () => {
     for (let i = 0; i < 60 * steps; i += 1) {
       const u = nextDither(dither, 1, 1 / steps);
       y += (1 - Math.exp(-1 / steps / tau)) * (-2 * u * u - y);
-      stepHessianEstimator(estimator, [dither], y, 1 / steps);
+      stepHessianEstimator(estimator, [dither], Float64Array.of(y), 1 / steps);
       if (i >= 50 * steps) mean += (estimator.hessian[0] ?? NaN) / (10 * steps);
     }
     // −2u² has second derivative −4; uncompensated 1/(1 + (2ωτ)²) = 0.39 of it would show.
@@ -138,7 +150,8 @@ function leastSquaresSlope(amplitude: number, samples: number, y: (x: number) =>
   for (let i = 0; i < samples; i += 1) {
     const value = y(nextDither(dither, 1, 1 / samples));
     slope.regressors[1] = laggedDither(dither) / amplitude;
-    stepRecursiveSlope(slope, value, 1);
+    slope.told[0] = value;
+    stepRecursiveSlope(slope);
     product += (demodulator(dither) * value) / samples;
   }
   return [(slope.weights[1] ?? NaN) / amplitude, product];
@@ -177,7 +190,9 @@ describe('least squares over a whole period', () => {
     for (let i = 0; i < 400_000; i += 1) {
       nextDither(dither, 1, 1 / 40);
       slope.regressors[1] = laggedDither(dither) / 0.1;
-      stepRecursiveSlope(slope, nextUniform(random) - 0.5, kept);
+      slope.told[0] = nextUniform(random) - 0.5;
+      slope.told[1] = kept;
+      stepRecursiveSlope(slope);
       if (i < 4000) continue;
       square += (slope.weights[1] ?? NaN) ** 2;
       count += 1;

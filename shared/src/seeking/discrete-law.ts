@@ -6,12 +6,12 @@ import {
   at,
   createSeekCore,
   isSettled,
-  move,
-  putDither,
+  moveAll,
+  fitDithers,
   remember,
   type SeekCore,
 } from './seek-core.js';
-import type { SeekingLaw } from './seeking-law.js';
+import type { SeekingInput, SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
 const axis = dwellingAxis({
@@ -108,7 +108,7 @@ export const discreteLaw: SeekingLaw<DiscreteLawParameters, DiscreteLawState> = 
   },
 
   step(state, input, dtS) {
-    if (admit(state, input, dtS)) climb(state, input.objective, dtS);
+    if (admit(state, input, dtS)) climb(state, input, dtS);
     else {
       state.lastObjective = NaN;
       state.washed = 0;
@@ -119,26 +119,27 @@ export const discreteLaw: SeekingLaw<DiscreteLawParameters, DiscreteLawState> = 
   },
 };
 
-function climb(state: DiscreteLawState, objective: number, dtS: number): void {
-  const { parameters, phases, signals } = state;
+function climb(state: DiscreteLawState, { objective }: SeekingInput, dtS: number): void {
+  const { parameters, phases, signals, change, dither } = state;
   const { axes, washoutPole } = parameters;
-  const change = state.lastObjective === state.lastObjective ? objective - state.lastObjective : 0;
+  const rise = state.lastObjective === state.lastObjective ? objective - state.lastObjective : 0;
   state.lastObjective = objective;
-  state.washed = change - washoutPole * state.washed;
-  // Settling, trials and taper are counted in scans.
-  const isAdapting = isSettled(state, 1);
+  state.washed = rise - washoutPole * state.washed;
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, phaseRad, gain } = axes[i] as DiscreteLawParameters['axes'][number];
     const demodulated = (2 / (amplitude * state.scale)) * Math.cos(at(phases, i) - phaseRad) * state.washed;
-    if (isAdapting) move(state, i, gain * demodulated, dtS);
+    change[i] = gain * demodulated;
     signals[i * signalNames.length + 1] = state.washed;
     signals[i * signalNames.length + 2] = demodulated;
   }
+  // Settling, trials and taper are counted in scans.
+  if (isSettled(state, 1)) moveAll(state, dtS);
   remember(state, 1);
   state.scale = state.taper.scale;
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, scansPerPeriod } = axes[i] as DiscreteLawParameters['axes'][number];
     phases[i] = (at(phases, i) + (2 * Math.PI) / scansPerPeriod) % (2 * Math.PI);
-    putDither(state, i, amplitude * state.scale * Math.cos(at(phases, i)));
+    dither[i] = amplitude * state.scale * Math.cos(at(phases, i));
   }
+  fitDithers(state);
 }

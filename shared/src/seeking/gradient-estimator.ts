@@ -1,16 +1,13 @@
-import {
-  createFirstOrderFilter,
-  resetFirstOrderFilter,
-  stepLowPass,
-  stepWashout,
-  type FirstOrderFilterState,
-} from '../signals/first-order-filter.js';
-import { demodulator, type AxisDither } from './axis-dither.js';
+import type { AxisDither } from './axis-dither.js';
+import { createFilterBank, resetFilterBank, stepFilterBank, type FilterBank } from './filter-bank.js';
 
 /** Washout, demodulation and low-pass of one quantity for each dither. */
 export interface GradientEstimator {
-  readonly washouts: readonly FirstOrderFilterState[];
-  readonly lowPasses: readonly FirstOrderFilterState[];
+  /** The quantity of this step, a usable number; the caller writes it. */
+  readonly told: Float64Array;
+  /** One washout and one low-pass for each dither. */
+  readonly washouts: FilterBank;
+  readonly lowPasses: FilterBank;
   /** Quantity less its slow part, its unit. */
   readonly washed: Float64Array;
   readonly demodulated: Float64Array;
@@ -18,51 +15,50 @@ export interface GradientEstimator {
   readonly gradient: Float64Array;
 }
 
-export function createGradientEstimator(actuators: number): GradientEstimator {
-  const filters = () => Array.from({ length: actuators }, createFirstOrderFilter);
-  const values = () => new Float64Array(actuators);
+/** @param washoutRatio, lowPassRatio corners as fractions of each dither frequency */
+export function createGradientEstimator(
+  dithers: readonly AxisDither[],
+  washoutRatio: number,
+  lowPassRatio: number,
+): GradientEstimator {
+  const bank = (ratio: number) => createFilterBank(Float64Array.from(dithers, ({ omega }) => ratio * omega));
+  const lowPasses = bank(lowPassRatio);
   return {
-    washouts: filters(),
-    lowPasses: filters(),
-    washed: values(),
-    demodulated: values(),
-    gradient: values(),
+    told: new Float64Array(1),
+    washouts: bank(washoutRatio),
+    lowPasses,
+    washed: new Float64Array(dithers.length),
+    demodulated: lowPasses.input,
+    gradient: lowPasses.output,
   };
 }
 
-export function resetGradientEstimator(estimator: GradientEstimator): void {
-  for (let i = 0; i < estimator.washouts.length; i += 1) {
-    resetFirstOrderFilter(estimator.washouts[i] as FirstOrderFilterState);
-    resetFirstOrderFilter(estimator.lowPasses[i] as FirstOrderFilterState);
-  }
-  estimator.gradient.fill(0);
+export function resetGradientEstimator({ washouts, lowPasses, gradient }: GradientEstimator): void {
+  resetFilterBank(washouts);
+  resetFilterBank(lowPasses);
+  gradient.fill(0);
 }
 
 /**
  * The mean of `gradient` is the slope times Re[e^{jφ}F(jω)H(jω)] for a plant F and the washout H.
  *
- * @param value a usable number
- * @param washoutRatio, lowPassRatio corners as fractions of each dither frequency
+ * @param demodulators what the quantity is multiplied with, 1 / actuator unit
  * @realtime safe: allocates nothing
  */
 export function stepGradientEstimator(
   estimator: GradientEstimator,
-  dithers: readonly AxisDither[],
-  value: number,
-  washoutRatio: number,
-  lowPassRatio: number,
+  demodulators: Float64Array,
   dtS: number,
 ): void {
-  for (let i = 0; i < dithers.length; i += 1) {
-    const dither = dithers[i] as AxisDither;
-    const washout = estimator.washouts[i] as FirstOrderFilterState;
-    const washed = stepWashout(washout, value, washoutRatio * dither.omega, dtS);
-    const demodulated = demodulator(dither) * washed;
-    const lowPass = estimator.lowPasses[i] as FirstOrderFilterState;
-    estimator.washed[i] = washed;
-    estimator.demodulated[i] = demodulated;
-    estimator.gradient[i] = stepLowPass(lowPass, demodulated, lowPassRatio * dither.omega, dtS);
+  const { told, washouts, lowPasses, washed, demodulated } = estimator;
+  const value = told[0] as number;
+  for (let i = 0; i < demodulators.length; i += 1) washouts.input[i] = value;
+  stepFilterBank(washouts, dtS);
+  for (let i = 0; i < demodulators.length; i += 1) {
+    washed[i] = value - (washouts.output[i] as number);
+    demodulated[i] = (demodulators[i] as number) * (washed[i] as number);
   }
+  stepFilterBank(lowPasses, dtS);
 }
 
 export const gradientSignals = ['estimate', 'washout', 'demodulated', 'gradient'] as const;

@@ -16,8 +16,14 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
-import { at, isSettled, move } from './seek-core.js';
+import {
+  admitPeriodic,
+  createPeriodicCore,
+  demodulate,
+  perturb,
+  type PeriodicCore,
+} from './periodic-core.js';
+import { at, isSettled, moveAll } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -63,21 +69,34 @@ export const gradientLaw: SeekingLaw<GradientLawParameters, GradientLawState> = 
   signalNames: (actuators) => perActuator(actuators, gradientSignals),
 
   init(parameters, start) {
-    const { axes, taper } = parameters;
-    const core = createPeriodicCore({ axes, start, taper, signals: axes.length * gradientSignals.length });
+    const { axes, taper, washoutRatio, lowPassRatio } = parameters;
+    const core = createPeriodicCore({
+      axes,
+      start,
+      taper,
+      washoutRatio,
+      signals: axes.length * gradientSignals.length,
+    });
     writeEstimates(core.estimate, core.signals);
-    return { ...core, parameters, estimator: createGradientEstimator(axes.length) };
+    return {
+      ...core,
+      parameters,
+      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
+    };
   },
 
   step(state, input, dtS) {
-    const { parameters, estimator, dithers, signals } = state;
-    const { axes, washoutRatio, lowPassRatio } = parameters;
-    if (admitPeriodic(state, input, washoutRatio, dtS)) {
-      stepGradientEstimator(estimator, dithers, input.objective, washoutRatio, lowPassRatio, dtS);
+    const { parameters, estimator, demodulators, change, signals } = state;
+    const { axes } = parameters;
+    if (admitPeriodic(state, input, dtS)) {
+      demodulate(state);
+      estimator.told[0] = input.objective;
+      stepGradientEstimator(estimator, demodulators, dtS);
       if (isSettled(state, dtS)) {
         for (let i = 0; i < axes.length; i += 1) {
-          move(state, i, (axes[i] as { gain: number }).gain * at(estimator.gradient, i) * dtS, dtS);
+          change[i] = (axes[i] as { gain: number }).gain * at(estimator.gradient, i) * dtS;
         }
+        moveAll(state, dtS);
       }
       perturb(state, dtS);
       writeGradientSignals(estimator, signals);

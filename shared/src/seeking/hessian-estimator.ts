@@ -1,11 +1,11 @@
-import {
-  createFirstOrderFilter,
-  resetFirstOrderFilter,
-  stepLowPass,
-  stepWashout,
-  type FirstOrderFilterState,
-} from '../signals/first-order-filter.js';
 import type { AxisDither } from './axis-dither.js';
+import {
+  createFilterBank,
+  resetFilterBank,
+  restFilterBank,
+  stepFilterBank,
+  type FilterBank,
+} from './filter-bank.js';
 
 /** How the plant behind the map lags; both zero for a plant that answers at once. */
 export interface PlantLag {
@@ -27,15 +27,14 @@ interface HessianEntry {
   readonly column: number;
   readonly atDifference: Compensation;
   readonly atSum: Compensation;
-  readonly lowPass: FirstOrderFilterState;
 }
 
 /** Second derivatives of the objective from sine dithers. */
 export interface HessianEstimator {
   readonly size: number;
-  readonly washoutCorner: number;
-  readonly lowPassCorner: number;
-  readonly washout: FirstOrderFilterState;
+  readonly washout: FilterBank;
+  /** One for each entry. */
+  readonly lowPasses: FilterBank;
   readonly entries: readonly HessianEntry[];
   readonly sines: Float64Array;
   readonly cosines: Float64Array;
@@ -61,15 +60,13 @@ export function createHessianEstimator(
         column,
         atDifference: answer(first.omega - second.omega),
         atSum: answer(first.omega + second.omega),
-        lowPass: createFirstOrderFilter(),
       });
     }),
   );
   return {
     size,
-    washoutCorner,
-    lowPassCorner: lowPassRatio * slowest,
-    washout: createFirstOrderFilter(),
+    washout: createFilterBank(Float64Array.of(washoutCorner)),
+    lowPasses: createFilterBank(Float64Array.from(entries, () => lowPassRatio * slowest)),
     entries,
     sines: new Float64Array(size),
     cosines: new Float64Array(size),
@@ -91,12 +88,21 @@ function compensation(omega: number, lag: PlantLag, washoutCorner: number): Comp
 
 /** Puts the filters to rest on a Hessian whose negative is given, row by row. */
 export function resetHessianEstimator(estimator: HessianEstimator, curvature: Float64Array): void {
-  const { entries, hessian, size, washout } = estimator;
-  resetFirstOrderFilter(washout);
+  const { entries, lowPasses, size } = estimator;
+  resetFilterBank(estimator.washout);
   for (let e = 0; e < entries.length; e += 1) {
-    const { row, column, lowPass } = entries[e] as HessianEntry;
-    const value = -(curvature[row * size + column] as number);
-    resetFirstOrderFilter(lowPass, value);
+    const { row, column } = entries[e] as HessianEntry;
+    lowPasses.input[e] = -(curvature[row * size + column] as number);
+  }
+  restFilterBank(lowPasses);
+  writeHessian(estimator);
+}
+
+/** The low-passed entries to both sides of the diagonal. */
+function writeHessian({ entries, lowPasses, hessian, size }: HessianEstimator): void {
+  for (let e = 0; e < entries.length; e += 1) {
+    const { row, column } = entries[e] as HessianEntry;
+    const value = lowPasses.output[e] as number;
     hessian[row * size + column] = value;
     hessian[column * size + row] = value;
   }
@@ -108,32 +114,29 @@ export function resetHessianEstimator(estimator: HessianEstimator, curvature: Fl
  * stretched by what plant and washout did to it. The mean of N·y is the Hessian while no two of the frequencies
  * 2ω_i, ω_i ± ω_j meet each other or an ω_k.
  *
+ * @param objective one usable number
  * @realtime safe: allocates nothing
  */
 export function stepHessianEstimator(
   estimator: HessianEstimator,
   dithers: readonly AxisDither[],
-  objective: number,
+  objective: Float64Array,
   dtS: number,
 ): void {
-  const { size, sines, cosines, hessian, entries, lowPassCorner } = estimator;
-  const washed = stepWashout(estimator.washout, objective, estimator.washoutCorner, dtS);
+  const { size, sines, cosines, entries, washout, lowPasses } = estimator;
+  washout.input[0] = objective[0] as number;
+  stepFilterBank(washout, dtS);
+  const washed = (objective[0] as number) - (washout.output[0] as number);
   for (let i = 0; i < size; i += 1) {
     const { phase } = dithers[i] as AxisDither;
     sines[i] = Math.sin(phase);
     cosines[i] = Math.cos(phase);
   }
   for (let e = 0; e < entries.length; e += 1) {
-    const entry = entries[e] as HessianEntry;
-    const value = stepLowPass(
-      entry.lowPass,
-      demodulatorOf(estimator, dithers, entry) * washed,
-      lowPassCorner,
-      dtS,
-    );
-    hessian[entry.row * size + entry.column] = value;
-    hessian[entry.column * size + entry.row] = value;
+    lowPasses.input[e] = demodulatorOf(estimator, dithers, entries[e] as HessianEntry) * washed;
   }
+  stepFilterBank(lowPasses, dtS);
+  writeHessian(estimator);
 }
 
 function demodulatorOf(

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { laggedDither, type AxisDither } from './axis-dither.js';
+import { writeLaggedDithers } from './axis-dither.js';
 import { writeEstimates } from './gradient-estimator.js';
 import { axesOf, gainParameter, parameter, periodicAxis, taperParameter } from './law-parameters.js';
 import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
@@ -9,7 +9,7 @@ import {
   stepRecursiveSlope,
   type RecursiveSlope,
 } from './recursive-slope.js';
-import { at, isSettled, move } from './seek-core.js';
+import { at, isSettled, moveAll } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -60,14 +60,21 @@ export const leastSquaresLaw: SeekingLaw<LeastSquaresLawParameters, LeastSquares
 
   init(parameters, start) {
     const { axes, taper } = parameters;
-    const core = createPeriodicCore({ axes, start, taper, signals: axes.length * signalNames.length + 1 });
+    const core = createPeriodicCore({
+      axes,
+      start,
+      taper,
+      washoutRatio: 0,
+      signals: axes.length * signalNames.length + 1,
+    });
     writeEstimates(core.estimate, core.signals, signalNames.length);
     return { ...core, parameters, slope: createRecursiveSlope(axes.length) };
   },
 
   step(state, input, dtS) {
-    if (admitPeriodic(state, input, 0, dtS)) {
-      climb(state, input.objective, dtS);
+    if (admitPeriodic(state, input, dtS)) {
+      state.slope.told[0] = input.objective;
+      climb(state, dtS);
       perturb(state, dtS);
     } else {
       resetRecursiveSlope(state.slope);
@@ -76,20 +83,22 @@ export const leastSquaresLaw: SeekingLaw<LeastSquaresLawParameters, LeastSquares
   },
 };
 
-function climb(state: LeastSquaresLawState, objective: number, dtS: number): void {
-  const { parameters, slope, dithers, signals, trialS } = state;
+function climb(state: LeastSquaresLawState, dtS: number): void {
+  const { parameters, slope, dithers, demodulators: lagged, signals, trialS, change } = state;
   const { axes, memoryPeriods } = parameters;
+  writeLaggedDithers(dithers, lagged);
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude } = axes[i] as { amplitude: number };
-    slope.regressors[i + 1] = laggedDither(dithers[i] as AxisDither) / amplitude;
+    slope.regressors[i + 1] = at(lagged, i) / amplitude;
   }
-  stepRecursiveSlope(slope, objective, Math.exp(-dtS / (memoryPeriods * trialS)));
-  const isAdapting = isSettled(state, dtS);
+  slope.told[1] = Math.exp(-dtS / (memoryPeriods * trialS));
+  stepRecursiveSlope(slope);
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, gain } = axes[i] as { amplitude: number; gain: number };
     const gradient = at(slope.weights, i + 1) / amplitude;
-    if (isAdapting) move(state, i, gain * gradient * dtS, dtS);
+    change[i] = gain * gradient * dtS;
     signals[i * signalNames.length + 1] = gradient;
   }
   signals[axes.length * signalNames.length] = at(slope.weights, 0);
+  if (isSettled(state, dtS)) moveAll(state, dtS);
 }

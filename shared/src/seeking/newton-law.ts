@@ -22,14 +22,20 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
+import {
+  admitPeriodic,
+  createPeriodicCore,
+  demodulate,
+  perturb,
+  type PeriodicCore,
+} from './periodic-core.js';
 import {
   applyRiccatiFilter,
   createRiccatiFilter,
   stepRiccatiFilter,
   type RiccatiFilter,
 } from './riccati-filter.js';
-import { at, isSettled, move } from './seek-core.js';
+import { at, isSettled, moveAll } from './seek-core.js';
 import type { SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -93,7 +99,6 @@ export interface NewtonLawState extends PeriodicCore {
   /** Γ, the inverse of the curvature −Ĥ. */
   readonly inverse: RiccatiFilter;
   readonly curvature: Float64Array;
-  readonly direction: Float64Array;
 }
 
 /**
@@ -124,19 +129,21 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
   signalNames: (actuators) => [...perActuator(actuators, gradientSignals), ...hessianNames(actuators)],
 
   init(parameters, start) {
-    const { taper, lag, washoutRatio, hessianRatio } = parameters;
+    const { taper, lag, washoutRatio, lowPassRatio, hessianRatio, inverseRate } = parameters;
     const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
     const n = axes.length;
     const signals = n * gradientSignals.length + (n * (n + 1)) / 2;
-    const core = createPeriodicCore({ axes, start, taper, signals });
+    const core = createPeriodicCore({ axes, start, taper, washoutRatio, signals });
     const state: NewtonLawState = {
       ...core,
       parameters,
-      estimator: createGradientEstimator(n),
+      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
       curvatures: createHessianEstimator(core.dithers, lag, washoutRatio, hessianRatio),
-      inverse: createRiccatiFilter(axes.map(({ curvature }) => curvature)),
+      inverse: createRiccatiFilter(
+        axes.map(({ curvature }) => curvature),
+        inverseRate,
+      ),
       curvature: new Float64Array(n * n),
-      direction: new Float64Array(n),
     };
     resetFilters(state);
     writeEstimates(state.estimate, state.signals);
@@ -144,9 +151,10 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
   },
 
   step(state, input, dtS) {
-    const { parameters, signals } = state;
-    if (admitPeriodic(state, input, parameters.washoutRatio, dtS)) {
-      climb(state, input.objective, dtS);
+    const { signals } = state;
+    if (admitPeriodic(state, input, dtS)) {
+      state.estimator.told[0] = input.objective;
+      climb(state, dtS);
       perturb(state, dtS);
       writeGradientSignals(state.estimator, signals);
       writeHessian(state);
@@ -157,16 +165,17 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
   },
 };
 
-function climb(state: NewtonLawState, objective: number, dtS: number): void {
-  const { parameters, estimator, curvatures, dithers, inverse, curvature, direction } = state;
-  const { washoutRatio, lowPassRatio, rate, inverseRate } = parameters;
-  stepGradientEstimator(estimator, dithers, objective, washoutRatio, lowPassRatio, dtS);
-  stepHessianEstimator(curvatures, dithers, objective, dtS);
+function climb(state: NewtonLawState, dtS: number): void {
+  const { parameters, estimator, curvatures, dithers, demodulators, inverse, curvature, change } = state;
+  demodulate(state);
+  stepGradientEstimator(estimator, demodulators, dtS);
+  stepHessianEstimator(curvatures, dithers, estimator.told, dtS);
   if (!isSettled(state, dtS)) return;
   for (let i = 0; i < curvature.length; i += 1) curvature[i] = -at(curvatures.hessian, i);
-  stepRiccatiFilter(inverse, curvature, inverseRate, dtS);
-  applyRiccatiFilter(inverse, estimator.gradient, direction);
-  for (let i = 0; i < direction.length; i += 1) move(state, i, rate * at(direction, i) * dtS, dtS);
+  stepRiccatiFilter(inverse, curvature, dtS);
+  applyRiccatiFilter(inverse, estimator.gradient, change);
+  for (let i = 0; i < change.length; i += 1) change[i] = parameters.rate * at(change, i) * dtS;
+  moveAll(state, dtS);
 }
 
 /** The Hessian begins again from what the inverse holds. */

@@ -2,27 +2,32 @@ import {
   canListen,
   createAxisDither,
   listen,
-  nextDither,
   resetAxisDither,
+  writeDemodulators,
+  writeNextDithers,
   type AxisDither,
 } from './axis-dither.js';
 import type { PeriodicAxis, TaperParameters } from './law-parameters.js';
-import { admit, createSeekCore, putDither, remember, retreat, type SeekCore } from './seek-core.js';
+import { admit, createSeekCore, fitDithers, remember, retreat, type SeekCore } from './seek-core.js';
 import type { SeekingInput } from './seeking-law.js';
 
 /** The core of a law that dithers periodically. */
 export interface PeriodicCore extends SeekCore {
   readonly dithers: readonly AxisDither[];
+  /** What the objective of this step is multiplied with, 1 / actuator unit. */
+  readonly demodulators: Float64Array;
 }
 
 export interface PeriodicCoreSetup {
   axes: readonly PeriodicAxis[];
   start: ArrayLike<number>;
   signals: number;
+  /** Corner of the washout that the objective goes through, of the dither frequency; 0 for none. */
+  washoutRatio: number;
   taper: TaperParameters;
 }
 
-export function createPeriodicCore({ axes, ...setup }: PeriodicCoreSetup): PeriodicCore {
+export function createPeriodicCore({ axes, washoutRatio, ...setup }: PeriodicCoreSetup): PeriodicCore {
   const trialS = Math.max(...axes.map(({ periodS }) => periodS));
   const core = createSeekCore({
     axes,
@@ -30,21 +35,19 @@ export function createPeriodicCore({ axes, ...setup }: PeriodicCoreSetup): Perio
     trialS,
     reach: axes.map(({ dither, amplitude }) => (dither === 'measured' ? 0 : amplitude)),
   });
-  return { ...core, dithers: axes.map(createAxisDither) };
+  return {
+    ...core,
+    dithers: axes.map((axis) => createAxisDither(axis, washoutRatio)),
+    demodulators: new Float64Array(axes.length),
+  };
 }
 
 /**
  * Begins a step: admits the objective and follows measured ripple.
  *
- * @param washoutRatio corner of the washout that the objective goes through, of the dither frequency; 0 for none
  * @returns false where the law has to reset its filters
  */
-export function admitPeriodic(
-  core: PeriodicCore,
-  input: SeekingInput,
-  washoutRatio: number,
-  dtS: number,
-): boolean {
+export function admitPeriodic(core: PeriodicCore, input: SeekingInput, dtS: number): boolean {
   const { dithers } = core;
   if (!admit(core, input, dtS)) {
     resetDithers(core);
@@ -58,7 +61,7 @@ export function admitPeriodic(
       retreatPeriodic(core);
       return false;
     }
-    listen(dither, measured as number, washoutRatio * dither.omega, dtS);
+    listen(dither, measured as number, dtS);
   }
   return true;
 }
@@ -71,10 +74,13 @@ export function retreatPeriodic(core: PeriodicCore): void {
 /** Ends a step: remembers good points and puts out the next dither. */
 export function perturb(core: PeriodicCore, dtS: number): void {
   remember(core, dtS);
-  const { dithers, taper } = core;
-  for (let i = 0; i < dithers.length; i += 1) {
-    putDither(core, i, nextDither(dithers[i] as AxisDither, taper.scale, dtS));
-  }
+  writeNextDithers(core.dithers, core.taper, core.dither, dtS);
+  fitDithers(core);
+}
+
+/** Writes what the objective of this step is to be multiplied with. */
+export function demodulate({ dithers, demodulators }: PeriodicCore): void {
+  writeDemodulators(dithers, demodulators);
 }
 
 function resetDithers({ dithers }: PeriodicCore): void {

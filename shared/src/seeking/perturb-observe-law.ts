@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { createDwell, restartDwell, stepDwell, type Dwell } from './dwell.js';
 import { writeEstimates } from './gradient-estimator.js';
 import { axesOf, dwellingAxis, dwellParameters, taperParameter } from './law-parameters.js';
-import { admit, at, createSeekCore, move, remember, type SeekCore } from './seek-core.js';
+import { admit, at, createSeekCore, moveAll, remember, type SeekCore } from './seek-core.js';
 import type { SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -76,7 +76,8 @@ export const perturbObserveLaw: SeekingLaw<PerturbObserveLawParameters, PerturbO
 };
 
 function judge(state: PerturbObserveLawState, dtS: number): void {
-  const { dwell, directions, axes, taper, signals, parameters } = state;
+  const { dwell, directions, taper, signals, parameters, change } = state;
+  const { axes } = parameters;
   const mean = dwell.sum / dwell.count;
   if (mean < state.before) directions[state.moved] = -at(directions, state.moved);
   // The first dwell shows what the start is worth and moves nothing yet but the first actuator.
@@ -91,7 +92,9 @@ function judge(state: PerturbObserveLawState, dtS: number): void {
       : at(state.estimate, next) - at(state.lowest, next);
   // At its edge it looks the other way, where there is room.
   if (room < step / 2) directions[next] = -at(directions, next);
-  move(state, next, at(directions, next) * step, Math.max(parameters.dwellS, dtS));
+  change.fill(0);
+  change[next] = at(directions, next) * step;
+  moveAll(state, Math.max(parameters.dwellS, dtS));
   state.moved = next;
   for (let i = 0; i < axes.length; i += 1) signals[i * signalNames.length + 1] = at(directions, i);
 }

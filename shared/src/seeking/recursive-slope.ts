@@ -6,6 +6,8 @@
 export interface RecursiveSlope {
   /** Number of unknowns: the constant and one slope per regressor. */
   readonly size: number;
+  /** Measurement, and the share of the past's weight that is kept, e^{−dt/memory}; the caller writes both. */
+  readonly told: Float64Array;
   /** Constant, then slopes; units of y per regressor. */
   readonly weights: Float64Array;
   /** Covariance for measurements of unit variance, row by row. */
@@ -24,6 +26,7 @@ export function createRecursiveSlope(regressors: number): RecursiveSlope {
   const size = regressors + 1;
   const slope: RecursiveSlope = {
     size,
+    told: Float64Array.of(0, 1),
     weights: new Float64Array(size),
     covariance: new Float64Array(size * size),
     regressors: new Float64Array(size),
@@ -42,16 +45,15 @@ export function resetRecursiveSlope({ size, weights, covariance, regressors }: R
 }
 
 /**
- * One measurement with the regressors that the caller wrote.
+ * One measurement, with all that the caller wrote.
  *
- * @param kept share of the past's weight that is kept, e^{−dt/memory}
  * @realtime safe: allocates nothing
  */
-export function stepRecursiveSlope(slope: RecursiveSlope, value: number, kept: number): void {
-  const { size, weights, covariance, regressors, gains } = slope;
-  const share = Math.max(kept, keptMin);
+export function stepRecursiveSlope(slope: RecursiveSlope): void {
+  const { size, told, weights, covariance, regressors, gains } = slope;
+  const share = Math.max(told[1] as number, keptMin);
   let scatter = share;
-  let error = value;
+  let error = told[0] as number;
   for (let i = 0; i < size; i += 1) {
     let sum = 0;
     for (let k = 0; k < size; k += 1) {

@@ -13,8 +13,8 @@ describe('the Riccati filter', () => {
   it('follows the closed form 1/Γ(t) = h + (1/Γ₀ − h)·e^{−ωr·t}, whatever the step', () => {
     // Separation of variables of Γ' = ωr·Γ − ωr·h·Γ²: h = 100, ωr = 1, Γ₀ = 1/400, t = 3.
     for (const steps of [1, 7, 3000]) {
-      const filter = createRiccatiFilter([400]);
-      for (let i = 0; i < steps; i += 1) stepRiccatiFilter(filter, Float64Array.of(100), 1, 3 / steps);
+      const filter = createRiccatiFilter([400], 1);
+      for (let i = 0; i < steps; i += 1) stepRiccatiFilter(filter, Float64Array.of(100), 3 / steps);
       expect(inverseOf(filter)[0]?.[0]).toBeCloseTo(0.00870049, 8);
     }
   });
@@ -31,15 +31,15 @@ describe('the Riccati filter', () => {
       const d = slope(gamma + dt * c);
       gamma += (dt / 6) * (a + 2 * b + 2 * c + d);
     }
-    const filter = createRiccatiFilter([400]);
-    for (let i = 0; i < 15; i += 1) stepRiccatiFilter(filter, Float64Array.of(h), 1, 0.1);
+    const filter = createRiccatiFilter([400], 1);
+    for (let i = 0; i < 15; i += 1) stepRiccatiFilter(filter, Float64Array.of(h), 0.1);
     expect(inverseOf(filter)[0]?.[0]).toBeCloseTo(gamma, 9);
   });
 
   it('tends to the inverse of a matrix', () => {
     // [[100, 30], [30, 20]] has determinant 1100: inverse [[20, −30], [−30, 100]]/1100.
-    const filter = createRiccatiFilter([400, 400]);
-    for (let i = 0; i < 400; i += 1) stepRiccatiFilter(filter, Float64Array.of(100, 30, 30, 20), 1, 0.1);
+    const filter = createRiccatiFilter([400, 400], 1);
+    for (let i = 0; i < 400; i += 1) stepRiccatiFilter(filter, Float64Array.of(100, 30, 30, 20), 0.1);
     const [first = [], second = []] = inverseOf(filter);
     expect(first[0]).toBeCloseTo(0.0181818, 7);
     expect(first[1]).toBeCloseTo(-0.0272727, 7);
@@ -47,11 +47,11 @@ describe('the Riccati filter', () => {
   });
 
   it('keeps its last positive definite value where the map bends the other way', () => {
-    const filter = createRiccatiFilter([2, 2]);
-    for (let i = 0; i < 400; i += 1) stepRiccatiFilter(filter, Float64Array.of(-5, 1, 1, 3), 1, 0.1);
+    const filter = createRiccatiFilter([2, 2], 1);
+    for (let i = 0; i < 400; i += 1) stepRiccatiFilter(filter, Float64Array.of(-5, 1, 1, 3), 0.1);
     const [first = [], second = []] = inverseOf(filter);
     expect(first[0]).toBeGreaterThan(0);
     expect((first[0] ?? NaN) * (second[1] ?? NaN)).toBeGreaterThan((first[1] ?? NaN) ** 2);
-    expect(stepRiccatiFilter(filter, Float64Array.of(NaN, 0, 0, 1), 1, 0.1)).toBe(false);
+    expect(stepRiccatiFilter(filter, Float64Array.of(NaN, 0, 0, 1), 0.1)).toBe(false);
   });
 });

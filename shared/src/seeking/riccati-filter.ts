@@ -11,6 +11,8 @@
  */
 export interface RiccatiFilter {
   readonly size: number;
+  /** ωr, 1/s. */
+  readonly rate: number;
   /** P = Γ⁻¹, row by row. */
   readonly inverse: Float64Array;
   /** Lower Cholesky factor of P, row by row. */
@@ -24,12 +26,16 @@ export interface RiccatiFilter {
 /** Share of the first guess under which a pivot no longer counts as positive. */
 const floorShare = 0.01;
 
-/** @param inverseDiagonal first guess of Γ⁻¹, its diagonal; each above zero */
-export function createRiccatiFilter(inverseDiagonal: ArrayLike<number>): RiccatiFilter {
+/**
+ * @param inverseDiagonal first guess of Γ⁻¹, its diagonal; each above zero
+ * @param rate ωr, 1/s
+ */
+export function createRiccatiFilter(inverseDiagonal: ArrayLike<number>, rate: number): RiccatiFilter {
   const size = inverseDiagonal.length;
   const matrix = () => new Float64Array(size * size);
   const filter: RiccatiFilter = {
     size,
+    rate,
     inverse: matrix(),
     factor: matrix(),
     trial: matrix(),
@@ -51,14 +57,9 @@ export function createRiccatiFilter(inverseDiagonal: ArrayLike<number>): Riccati
  * @returns true where the step was taken
  * @realtime safe: allocates nothing
  */
-export function stepRiccatiFilter(
-  filter: RiccatiFilter,
-  target: Float64Array,
-  rateRadPerS: number,
-  dtS: number,
-): boolean {
+export function stepRiccatiFilter(filter: RiccatiFilter, target: Float64Array, dtS: number): boolean {
   const { inverse, trial, factor, trialFactor } = filter;
-  const share = -Math.expm1(-rateRadPerS * dtS);
+  const share = -Math.expm1(-filter.rate * dtS);
   for (let i = 0; i < trial.length; i += 1) {
     const now = inverse[i] as number;
     trial[i] = now + share * ((target[i] as number) - now);

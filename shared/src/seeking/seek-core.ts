@@ -10,7 +10,13 @@ const stepMaxS = 1e6;
 
 /** The pieces that all laws share: box, validity with retreat, speed limit, taper. */
 export interface SeekCore extends SeekingState {
-  readonly axes: readonly SeekingAxis[];
+  /** Box of what is asked for, actuator units. */
+  readonly min: Float64Array;
+  readonly max: Float64Array;
+  /** Greatest speed of each estimate, actuator units / s; infinite for none. */
+  readonly speedMax: Float64Array;
+  /** Change of each estimate that the law wants in this step, actuator units; `moveAll` takes it. */
+  readonly change: Float64Array;
   /** The longest dither period or trial: so long must it be valid before a point counts as good, s. */
   readonly trialS: number;
   /** Estimate at the beginning of the present valid trial. */
@@ -42,7 +48,10 @@ export function createSeekCore({ axes, start, trialS, signals, taper, reach }: S
     return Number.isFinite(value) ? held(value, at(lowest, i), at(highest, i)) : at(lowest, i);
   });
   return {
-    axes,
+    min: Float64Array.from(axes, ({ min }) => min),
+    max: Float64Array.from(axes, ({ max }) => max),
+    speedMax: Float64Array.from(axes, ({ speedMax }) => speedMax ?? Infinity),
+    change: new Float64Array(axes.length),
     estimate,
     dither: new Float64Array(axes.length),
     signals: new Float64Array(signals).fill(NaN),
@@ -104,24 +113,28 @@ export function isSettled(core: SeekCore, dtS: number): boolean {
 }
 
 /**
- * Moves the estimate of one actuator, within its speed limit and its box. The estimate is the only state of the
- * integrator, so that it cannot wind up.
+ * Moves the estimates by `core.change`, within their speed limits and their box. The estimate is the only state of
+ * the integrator, so that it cannot wind up. A change that is no number moves nothing. (Numbers go through arrays
+ * here and elsewhere, since a call that is not inlined would put each on the heap.)
  *
- * @param change wanted change, actuator unit; NaN moves nothing
  * @param dtS time in which it happens, s
  */
-export function move(core: SeekCore, i: number, change: number, dtS: number): void {
-  const { speedMax } = core.axes[i] as SeekingAxis;
-  const isFree = speedMax === null || speedMax === undefined;
-  const limited = isFree ? change : held(change, -speedMax * dtS, speedMax * dtS);
-  const next = at(core.estimate, i) + limited;
-  if (next === next) core.estimate[i] = held(next, at(core.lowest, i), at(core.highest, i));
+export function moveAll({ change, estimate, lowest, highest, speedMax }: SeekCore, dtS: number): void {
+  for (let i = 0; i < change.length; i += 1) {
+    const reach = at(speedMax, i) * dtS;
+    const next = at(estimate, i) + held(at(change, i), -reach, reach);
+    if (next === next) estimate[i] = held(next, at(lowest, i), at(highest, i));
+  }
 }
 
-/** Puts out a dither, cut to the box. */
-export function putDither(core: SeekCore, i: number, dither: number): void {
-  const { min, max } = core.axes[i] as SeekingAxis;
-  core.dither[i] = ditherWithin(at(core.estimate, i), dither, min, max);
+/** Cuts the dithers to the box. */
+export function fitDithers({ estimate, dither, min, max }: SeekCore): void {
+  for (let i = 0; i < dither.length; i += 1) {
+    const asked = at(estimate, i) + at(dither, i);
+    if (asked > at(max, i) || asked < at(min, i)) {
+      dither[i] = ditherWithin(at(estimate, i), at(dither, i), at(min, i), at(max, i));
+    }
+  }
 }
 
 /**

@@ -17,8 +17,14 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
-import { at, isSettled, move } from './seek-core.js';
+import {
+  admitPeriodic,
+  createPeriodicCore,
+  demodulate,
+  perturb,
+  type PeriodicCore,
+} from './periodic-core.js';
+import { at, isSettled, moveAll } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 import { recoveredShare } from './washout-share.js';
@@ -77,26 +83,40 @@ export const slopeLaw: SeekingLaw<SlopeLawParameters, SlopeLawState> = {
   signalNames: (actuators) => perActuator(actuators, gradientSignals),
 
   init(parameters, start) {
-    const { axes, taper, washoutRatio } = parameters;
-    const core = createPeriodicCore({ axes, start, taper, signals: axes.length * gradientSignals.length });
+    const { axes, taper, washoutRatio, lowPassRatio } = parameters;
+    const core = createPeriodicCore({
+      axes,
+      start,
+      taper,
+      washoutRatio,
+      signals: axes.length * gradientSignals.length,
+    });
     writeEstimates(core.estimate, core.signals);
     const references = Float64Array.from(
       axes,
       (a) => a.slope * (a.slopeShare ?? recoveredShare(a.dither, washoutRatio, a.phaseRad)),
     );
-    return { ...core, parameters, references, estimator: createGradientEstimator(axes.length) };
+    return {
+      ...core,
+      parameters,
+      references,
+      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
+    };
   },
 
   step(state, input, dtS) {
-    const { parameters, estimator, dithers, signals, references } = state;
-    const { axes, washoutRatio, lowPassRatio } = parameters;
-    if (admitPeriodic(state, input, washoutRatio, dtS)) {
-      stepGradientEstimator(estimator, dithers, input.objective, washoutRatio, lowPassRatio, dtS);
+    const { parameters, estimator, demodulators, change, signals, references } = state;
+    const { axes } = parameters;
+    if (admitPeriodic(state, input, dtS)) {
+      demodulate(state);
+      estimator.told[0] = input.objective;
+      stepGradientEstimator(estimator, demodulators, dtS);
       if (isSettled(state, dtS)) {
         for (let i = 0; i < axes.length; i += 1) {
-          const excess = at(estimator.gradient, i) - at(references, i);
-          move(state, i, (axes[i] as { gain: number }).gain * excess * dtS, dtS);
+          change[i] =
+            (axes[i] as { gain: number }).gain * (at(estimator.gradient, i) - at(references, i)) * dtS;
         }
+        moveAll(state, dtS);
       }
       perturb(state, dtS);
       writeGradientSignals(estimator, signals);

@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { createDwell, restartDwell, stepDwell, type Dwell } from './dwell.js';
 import { writeEstimates } from './gradient-estimator.js';
 import { axesOf, dwellingAxis, dwellParameters, parameter, taperParameter } from './law-parameters.js';
-import { admit, at, createSeekCore, move, putDither, remember, type SeekCore } from './seek-core.js';
+import { admit, at, createSeekCore, fitDithers, moveAll, remember, type SeekCore } from './seek-core.js';
 import { createSeededUniform, nextSign, type SeededUniform } from './seeded-uniform.js';
 import type { SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
@@ -145,13 +145,15 @@ function beginTrial(state: SpsaLawState): void {
 }
 
 function perturbTo(state: SpsaLawState, side: number): void {
-  const { signs, axes } = state;
+  const { signs, dither } = state;
+  const { axes } = state.parameters;
   state.side = side;
   restartDwell(state.dwell);
   for (let i = 0; i < signs.length; i += 1) {
     const { amplitude } = axes[i] as { amplitude: number };
-    putDither(state, i, side * at(signs, i) * reachOf(state, amplitude));
+    dither[i] = side * at(signs, i) * reachOf(state, amplitude);
   }
+  fitDithers(state);
 }
 
 function reachOf({ parameters, trial, taper }: SpsaLawState, amplitude: number): number {
@@ -171,9 +173,10 @@ function endPoint(state: SpsaLawState): void {
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, gain } = axes[i] as { amplitude: number; gain: number };
     const gradient = (state.above - mean) / (2 * reachOf(state, amplitude) * at(signs, i));
-    move(state, i, gain * decay * gradient, 2 * dwellS);
+    state.change[i] = gain * decay * gradient;
     state.signals[i * signalNames.length + 1] = gradient;
   }
+  moveAll(state, 2 * dwellS);
   state.trial = trial + 1;
   beginTrial(state);
 }

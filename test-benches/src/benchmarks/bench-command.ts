@@ -3,7 +3,7 @@ import type { Benchmark, BenchmarkResult } from './benchmark.types.js';
 
 export const benchUsage = `Usage: npm run bench -- NAME… [--json]
        npm run bench -- --list
-  NAME    a benchmark, or "all"
+  NAME    a benchmark, a group of them ("law-step"), or "all"
   --json  one JSON object a line
   --list  what there is`;
 
@@ -25,15 +25,20 @@ export function parseBenchCommand(args: string[], known: readonly Benchmark[]): 
   if (values.list) return { kind: 'list' };
   if (positionals.length === 0) return refused('Name at least one benchmark.');
   const names = positionals.includes('all') ? known.map(({ name }) => name) : [...new Set(positionals)];
-  const unknown = names.filter((name) => !known.some((benchmark) => benchmark.name === name));
+  const unknown = names.filter((name) => !known.some((benchmark) => isMeant(name, benchmark)));
   if (unknown.length > 0) {
     const all = known.map(({ name }) => name).join(', ');
     return refused(
       `There is no benchmark ${unknown.map((name) => `"${name}"`).join(', ')}. There are: ${all}.`,
     );
   }
-  const chosen = names.flatMap((name) => known.filter((benchmark) => benchmark.name === name));
-  return { kind: 'run', chosen, isJson: values.json ?? false };
+  const chosen = new Set(names.flatMap((name) => known.filter((benchmark) => isMeant(name, benchmark))));
+  return { kind: 'run', chosen: [...chosen], isJson: values.json ?? false };
+}
+
+/** A benchmark goes by its name, or by that of its group: what stands before the stroke. */
+function isMeant(name: string, benchmark: Benchmark): boolean {
+  return benchmark.name === name || benchmark.name.startsWith(`${name}/`);
 }
 
 function refused(message: string): BenchCommand {
@@ -41,7 +46,9 @@ function refused(message: string): BenchCommand {
 }
 
 /** One result as a line for people. */
-export function resultLine({ name, value, unit, ratio, against }: BenchmarkResult): string {
+export function resultLine({ name, value, unit, ratio, against, heapGrowthBytes }: BenchmarkResult): string {
   const figure = value >= 100 ? Math.round(value).toLocaleString('en') : value.toPrecision(3);
-  return `${name.padEnd(14)} ${figure.padStart(10)} ${unit.padEnd(8)} ${ratio.toFixed(2).padStart(6)} × ${against}`;
+  const line = `${name.padEnd(24)} ${figure.padStart(10)} ${unit.padEnd(8)} ${ratio.toFixed(2).padStart(6)} × ${against}`;
+  if (heapGrowthBytes === undefined) return line;
+  return `${line}; heap ${(heapGrowthBytes / 1024).toFixed(0)} KiB in 10 million`;
 }

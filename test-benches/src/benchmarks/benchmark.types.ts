@@ -7,6 +7,8 @@ export interface BenchmarkResult {
   ratio: number;
   /** What it is compared with. */
   against: string;
+  /** Growth of the heap over ten million repetitions, bytes, where it was looked at. */
+  heapGrowthBytes?: number;
 }
 
 export interface Benchmark {

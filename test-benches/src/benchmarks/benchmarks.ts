@@ -1,6 +1,8 @@
 import type { Benchmark } from './benchmark.types.js';
 import { engineScan } from './engine-scan.benchmark.js';
+import { lawSteps } from './law-step/law-step.benchmark.js';
+import { objectiveStep } from './objective-step.benchmark.js';
 import { scanLoop } from './scan-loop.benchmark.js';
 
 /** Every benchmark that `npm run bench` knows. */
-export const benchmarks: readonly Benchmark[] = [scanLoop, engineScan];
+export const benchmarks: readonly Benchmark[] = [scanLoop, engineScan, objectiveStep, ...lawSteps];

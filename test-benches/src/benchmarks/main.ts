@@ -7,7 +7,7 @@ if (command.kind === 'refused') {
   process.exit(2);
 }
 if (command.kind === 'list') {
-  for (const { name, purpose } of benchmarks) console.log(`${name.padEnd(14)} ${purpose}`);
+  for (const { name, purpose } of benchmarks) console.log(`${name.padEnd(24)} ${purpose}`);
   process.exit(0);
 }
 for (const benchmark of command.chosen) {
