@@ -82,7 +82,7 @@ function RunView({ run, graph, rig }: RunViewProps) {
         <GraphDrawing graph={graph} rig={rig} activeSteps={activeSteps} heightPx={240} />
       </Panel>
       <Box sx={runGrid}>
-        <Box sx={{ minWidth: 0 }}>
+        <Box sx={{ minWidth: 0, order: { xs: 1, lg: 0 } }}>
           {columns.error !== null && (
             <ProblemNotice title="The columns could not be loaded" error={columns.error} />
           )}

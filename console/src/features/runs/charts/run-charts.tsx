@@ -1,5 +1,6 @@
 import { useMemo, useState } from 'react';
 import Box from '@mui/material/Box';
+import Button from '@mui/material/Button';
 import MenuItem from '@mui/material/MenuItem';
 import TextField from '@mui/material/TextField';
 import Typography from '@mui/material/Typography';
@@ -26,8 +27,10 @@ interface RunChartsProps {
 /** What was recorded, over the whole run or its end; exact where there are few enough samples. */
 export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChartsProps) {
   const [spanS, setSpanS] = useState(wholeRun);
-  const groups = useMemo(() => chartGroups(columns, rig, seekActuators(graph)), [columns, rig, graph]);
-  const asked = useMemo(() => groups.flatMap((group) => group.traces.map((trace) => trace.column)), [groups]);
+  const [isAll, setAll] = useState(false);
+  const groups = useMemo(() => chartGroups(columns, rig, graph), [columns, rig, graph]);
+  const shown = useMemo(() => shownGroups(groups, isAll), [groups, isAll]);
+  const asked = useMemo(() => shown.flatMap((group) => group.traces.map((trace) => trace.column)), [shown]);
   // Whole seconds, so that the address does not change with every sample.
   const fromS = spanS === wholeRun ? null : Math.max(0, Math.floor(endS) - spanS);
   const samples = useRunSamples(runId, { columns: asked, fromS, points: 600 }, isLive);
@@ -37,6 +40,13 @@ export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChart
         <Typography id="recorded-heading" variant="h2" sx={{ flex: '1 1 8rem' }}>
           Recorded
         </Typography>
+        <Button
+          aria-pressed={isAll}
+          variant={isAll ? 'contained' : 'outlined'}
+          onClick={() => setAll(!isAll)}
+        >
+          Every channel
+        </Button>
         <TextField
           select
           label="Span"
@@ -68,7 +78,7 @@ export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChart
             gridTemplateColumns: 'repeat(auto-fill, minmax(min(100%, 26rem), 1fr))',
           }}
         >
-          {groups.map((group) => (
+          {shown.map((group) => (
             <GroupChart key={group.title} group={group} samples={samples.data} />
           ))}
         </Box>
@@ -107,11 +117,8 @@ function chartSummary(group: ChartGroup, samples: RunSamples): string {
   return `${parts.join('; ')}.`;
 }
 
-/** The actuator that each Seek steers, by the step's id. */
-export function seekActuators(graph: ExperimentGraph): ReadonlyMap<string, string> {
-  return new Map(
-    graph.steps.flatMap((step) =>
-      step.kind === 'seek' ? [[step.id, step.parameters.actuator] as [string, string]] : [],
-    ),
-  );
+/** What the experiment is about, or everything where it is about nothing that is recorded. */
+function shownGroups(groups: readonly ChartGroup[], isAll: boolean): readonly ChartGroup[] {
+  const main = groups.filter((group) => group.isMain);
+  return isAll || main.length === 0 ? groups : main;
 }

@@ -3,7 +3,7 @@ import Box from '@mui/material/Box';
 import type { ExperimentGraph, Rig, RunColumn, RunEvent } from '@cresthold/shared';
 import { Panel, plainNumber } from '../../../components/index.js';
 import { useRunSamples } from '../api/run-queries.js';
-import { seekActuators } from '../charts/run-charts.js';
+import { seekActuators } from '../charts/chart-groups.js';
 import { LandscapeChart } from './landscape-chart.js';
 import { landscapeActuator, seekBeganS, seekPath, surveyPoints } from './landscape-points.js';
 
