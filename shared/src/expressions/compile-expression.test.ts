@@ -1,5 +1,6 @@
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { afterEach, describe, expect, it, vi } from 'vitest';
+import { Readings } from '../scan/readings.js';
 import { compileExpression } from './compile-expression.js';
 import { reservedWords } from './expression-functions.js';
 import type { CompiledExpression } from './expression.types.js';
@@ -74,6 +75,34 @@ describe('an expression', () => {
       expect(value(text, { a: 1, b: Infinity, c: 1 })).toBeNaN();
     },
   );
+});
+
+describe('an expression bound to readings', () => {
+  afterEach(() => vi.unstubAllGlobals());
+  const bound = () => {
+    const readings = new Readings(['a', 'b', 'c']);
+    const evaluate = compiled('a > 0 ? 2 * a + b * c - b / 4 : b').bind(readings);
+    const at = (values: number[], qualities = [0, 0, 0]) => {
+      values.forEach((value, i) => readings.set(i, value, (qualities[i] ?? 0) as 0 | 1));
+      return evaluate();
+    };
+    return [at([1, 4, 3]), at([-1, 4, 3]), at([1, 4, 3], [0, 1, 0]), at([1, Infinity, 3]), at([1, 0, 0])];
+  };
+
+  it('reads what stands there at the time', () => expect(bound()).toEqual([13, 4, NaN, NaN, 2]));
+
+  it('does so where generated code is forbidden', () => {
+    const forbidden = vi.fn(function () {
+      throw new EvalError('refused by the policy of the page');
+    });
+    vi.stubGlobal('Function', forbidden);
+    expect(bound()).toEqual([13, 4, NaN, NaN, 2]);
+    expect(forbidden).toHaveBeenCalled();
+  });
+
+  it('is no number where a symbol has no place', () => {
+    expect(compiled('a + airTrim').bind(new Readings(['a']))()).toBeNaN();
+  });
 });
 
 describe('a faulty expression', () => {

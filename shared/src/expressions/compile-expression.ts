@@ -1,11 +1,24 @@
 import { create, parseDependencies, type MathNode } from 'mathjs/number';
+import { Quality } from '../rigs/quality.js';
+import type { Unit } from '../units/unit.js';
 import { closestNames } from './closest-names.js';
-import { compileNode, constantReader, ExpressionFault, type CompiledNode } from './compile-node.js';
-import type { CompileOutcome, Lookup } from './expression.types.js';
+import { compileNode, type CompiledNode } from './compile-node.js';
+import { ExpressionFault } from './expression-fault.js';
+import { expressionConstants } from './expression-functions.js';
+import type { CompiledExpression, CompileOutcome, Lookup, ValueSource } from './expression.types.js';
+import { generateFunction } from './generate-function.js';
+import { runProgram, type Program } from './operations.js';
+import { ProgramBuilder } from './program-builder.js';
+import { unitOfExpression } from './unit-of-expression.js';
 
 /** Longest text of an expression, characters. */
 export const expressionLengthMax = 500;
 const nodeCountMax = 200;
+/** Most operations that any expression takes: a node is compiled into four at most. */
+export const expressionOperationsMax = 4 * nodeCountMax;
+
+/** The unit of a symbol; null where it fits any (what is not known is not judged). */
+export type UnitLookup = (symbol: string) => Unit | null;
 
 const { parse } = create(parseDependencies ?? {}, {});
 
@@ -20,51 +33,129 @@ const { parse } = create(parseDependencies ?? {}, {});
  * overflow, root of a negative number) makes the result NaN likewise, through comparisons and `and or not`
  * too; only in the branch that is not taken it is not computed, so that `x == 0 ? 0 : 1 / x` can be written.
  *
+ * With `unitOf` the units are checked as well: sums, comparisons, choices and functions must be of quantities
+ * that go together (`unitOfExpression` has the rules); otherwise the outcome is a fault that names both units.
+ *
  * @param text at most 500 characters
  * @param knownSymbols names that the text may use; they go before `pi` and `e`
- * @returns the compiled expression, whose `evaluate` allocates nothing, or what is wrong and where
+ * @param unitOf unit of each symbol; without it units are not judged
+ * @returns the compiled expression, whose `evaluate` allocates nothing, or what is wrong and where; never throws
  * @example
  * compileExpression('2 * o2', new Set(['o2'])) // { isOk: true, expression }
  */
-export function compileExpression(text: string, knownSymbols: ReadonlySet<string>): CompileOutcome {
+export function compileExpression(
+  text: string,
+  knownSymbols: ReadonlySet<string>,
+  unitOf?: UnitLookup,
+): CompileOutcome {
   const outcome = parseText(text);
   if ('message' in outcome) return { isOk: false, ...outcome };
-  const symbols: string[] = [];
-  const slots = new Float64Array(nodeCountMax);
+  const { node } = outcome;
+  const builder = new ProgramBuilder();
+  const slots = new Map<string, number>();
   try {
-    const root = compileNode(outcome.node, (name) => readerOf(name, knownSymbols, symbols, slots));
-    return {
-      isOk: true,
-      expression: { text, symbols, isCondition: root.isCondition, evaluate: evaluator(root, symbols, slots) },
-    };
+    const symbolRegister = (name: string) => registerOf(name, knownSymbols, builder, slots);
+    const root = compileNode(node, { builder, symbolRegister });
+    const { operations } = builder;
+    const program = builder.finish(root.register);
+    const isSymbol = (name: string) => slots.has(name);
+    const judged = unitOf ? judgeUnits(text, node, isSymbol, unitOf) : { unit: null };
+    if ('message' in judged) return { isOk: false, ...judged, isUnitFault: true };
+    return { isOk: true, expression: expressionOf(text, program, root, slots, judged.unit, operations) };
   } catch (fault) {
     if (!(fault instanceof ExpressionFault)) throw fault;
     return { isOk: false, message: fault.message, at: placeOf(text, fault.culprit) };
   }
 }
 
-function evaluator(root: CompiledNode, symbols: readonly string[], slots: Float64Array) {
+type Judgement = { unit: Unit | null } | { message: string; at: number | null };
+
+function judgeUnits(
+  text: string,
+  node: MathNode,
+  isSymbol: (name: string) => boolean,
+  unitOf: UnitLookup,
+): Judgement {
+  try {
+    return { unit: unitOfExpression(node, (name) => (isSymbol(name) ? unitOf(name) : 'plain')) };
+  } catch (fault) {
+    if (!(fault instanceof ExpressionFault)) throw fault;
+    return { message: fault.message, at: placeOf(text, fault.culprit) };
+  }
+}
+
+function expressionOf(
+  text: string,
+  program: Program,
+  { isCondition }: CompiledNode,
+  slots: ReadonlyMap<string, number>,
+  unit: Unit | null,
+  operations: number,
+): CompiledExpression {
+  const symbols = [...slots.keys()];
+  const registers = Int32Array.from(slots.values());
+  return {
+    text,
+    symbols,
+    isCondition,
+    unit,
+    operations,
+    evaluate: evaluator(program, symbols, registers),
+    bind: (source) => boundEvaluator(program, source, symbols, registers),
+  };
+}
+
+function evaluator(program: Program, symbols: readonly string[], registers: Int32Array) {
   return (lookup: Lookup): number => {
     for (let i = 0; i < symbols.length; i += 1) {
       const value = lookup(symbols[i] as string);
       if (!Number.isFinite(value)) return NaN;
-      slots[i] = value;
+      program.registers[registers[i] as number] = value;
     }
-    return root.run();
+    return runProgram(program);
   };
 }
 
-function readerOf(name: string, known: ReadonlySet<string>, symbols: string[], slots: Float64Array) {
+function boundEvaluator(
+  program: Program,
+  source: ValueSource,
+  symbols: readonly string[],
+  registers: Int32Array,
+) {
+  const places = Int32Array.from(symbols, (symbol) => source.indexOf(symbol));
+  if (places.includes(-1)) return () => NaN;
+  const { values, qualities } = source;
+  const generated = generateFunction(program, registers, places);
+  if (generated) return () => generated(values, qualities);
+  const target = program.registers;
+  return (): number => {
+    for (let i = 0; i < places.length; i += 1) {
+      const place = places[i] as number;
+      const value = values[place] as number;
+      // The difference is 0 for finite numbers only.
+      if (qualities[place] !== Quality.good || value - value !== 0) return NaN;
+      target[registers[i] as number] = value;
+    }
+    return runProgram(program);
+  };
+}
+
+function registerOf(
+  name: string,
+  known: ReadonlySet<string>,
+  builder: ProgramBuilder,
+  slots: Map<string, number>,
+): number {
   if (!known.has(name)) {
-    const constant = constantReader(name);
-    if (constant) return constant;
+    const constant = expressionConstants.get(name);
+    if (constant !== undefined) return builder.constant(constant);
     const meant = closestNames(name, known);
     const hint = meant.length > 0 ? `Did you mean ${meant.join(' or ')}?` : 'Use a name from the list.';
     throw new ExpressionFault(`"${name}" is not known here. ${hint}`, name);
   }
-  if (!symbols.includes(name)) symbols.push(name);
-  const slot = symbols.indexOf(name);
-  return () => slots[slot] as number;
+  const register = slots.get(name) ?? builder.register();
+  slots.set(name, register);
+  return register;
 }
 
 type ParseOutcome = { node: MathNode } | { message: string; at: number | null };

@@ -6,93 +6,65 @@ import type {
   OperatorNode,
   RelationalNode,
 } from 'mathjs';
-import { expressionConstants, expressionFunctions } from './expression-functions.js';
+import { ExpressionFault } from './expression-fault.js';
+import { expressionFunctions, functionByName } from './expression-functions.js';
+import { Operation } from './operations.js';
+import { compileSum } from './compile-sum.js';
+import { contentOf, dottedName, functionNameOf, operatorOf, relationNames } from './parsed-nodes.js';
+import type { ProgramBuilder } from './program-builder.js';
 
-/** A piece of an expression as a closure over the slots of its symbols. */
+/** Where the value of a piece stands when the program has come past it. */
 export interface CompiledNode {
-  readonly run: () => number;
+  readonly register: number;
   /** Its result is a truth value: 1 or 0 (or NaN). */
   readonly isCondition: boolean;
 }
 
-/** Gives the reader of a symbol's slot; throws an ExpressionFault for a symbol that is not known. */
-export type SymbolReader = (name: string) => () => number;
-
-/** What is wrong with an expression. */
-export class ExpressionFault extends Error {
-  constructor(
-    message: string,
-    /** Text at fault, to find its place; null where unknown. */
-    readonly culprit: string | null = null,
-  ) {
-    super(message);
-  }
+export interface NodeCompiler {
+  readonly builder: ProgramBuilder;
+  /** Gives the register of a symbol; throws an ExpressionFault for one that is not known. */
+  readonly symbolRegister: (name: string) => number;
 }
 
-type Binary = (a: number, b: number) => number;
-
-/** Division by zero and overflow are no numbers: a result that is not finite must not be compared. */
-const finite = (value: number) => (Number.isFinite(value) ? value : NaN);
-const truth = (is: boolean) => (is ? 1 : 0);
-const isNotANumber = (a: number, b: number) => Number.isNaN(a) || Number.isNaN(b);
-const judged =
-  (judge: (a: number, b: number) => boolean): Binary =>
-  (a, b) =>
-    isNotANumber(a, b) ? NaN : truth(judge(a, b));
-
-const arithmetic: Record<string, Binary> = {
-  add: (a, b) => finite(a + b),
-  subtract: (a, b) => finite(a - b),
-  multiply: (a, b) => finite(a * b),
-  divide: (a, b) => finite(a / b),
-  // Math.pow(NaN, 0) is 1 and would hide a bad input.
-  pow: (a, b) => (isNotANumber(a, b) ? NaN : finite(Math.pow(a, b))),
+const arithmetic: Record<string, Operation> = {
+  multiply: Operation.multiply,
+  divide: Operation.divide,
+  pow: Operation.pow,
 };
 
-const comparisons: Record<string, Binary> = {
-  smaller: judged((a, b) => a < b),
-  smallerEq: judged((a, b) => a <= b),
-  larger: judged((a, b) => a > b),
-  largerEq: judged((a, b) => a >= b),
-  equal: judged((a, b) => a === b),
-  unequal: judged((a, b) => a !== b),
+const comparisons: Record<string, Operation> = {
+  smaller: Operation.smaller,
+  smallerEq: Operation.smallerEq,
+  larger: Operation.larger,
+  largerEq: Operation.largerEq,
+  equal: Operation.equal,
+  unequal: Operation.unequal,
 };
 
-const logic: Record<string, Binary> = {
-  and: judged((a, b) => a !== 0 && b !== 0),
-  or: judged((a, b) => a !== 0 || b !== 0),
-};
-
-const unary: Record<string, (a: number) => number> = {
-  unaryMinus: (a) => -a,
-  unaryPlus: (a) => a,
-  not: (a) => (Number.isNaN(a) ? NaN : truth(a === 0)),
-};
-
-const functionByName = new Map(expressionFunctions.map((known) => [known.name, known]));
+const logic: Record<string, Operation> = { and: Operation.and, or: Operation.or };
 
 /**
- * Turns a parsed expression into closures.
+ * Turns a parsed expression into instructions.
  *
  * @throws ExpressionFault for anything that the language does not have
  */
-export function compileNode(node: MathNode, readSymbol: SymbolReader): CompiledNode {
+export function compileNode(node: MathNode, compiler: NodeCompiler): CompiledNode {
   switch (node.type) {
     case 'ParenthesisNode':
-      return compileNode((node as MathNode & { content: MathNode }).content, readSymbol);
+      return compileNode(contentOf(node), compiler);
     case 'ConstantNode':
-      return compileConstant(node as ConstantNode);
+      return compileConstant(node as ConstantNode, compiler);
     case 'SymbolNode':
     case 'AccessorNode':
-      return compileSymbol(node, readSymbol);
+      return compileSymbol(node, compiler);
     case 'OperatorNode':
-      return compileOperator(node as OperatorNode, readSymbol);
+      return compileOperator(node as OperatorNode, compiler);
     case 'RelationalNode':
-      return compileRelation(node as RelationalNode, readSymbol);
+      return compileRelation(node as RelationalNode, compiler);
     case 'ConditionalNode':
-      return compileConditional(node as ConditionalNode, readSymbol);
+      return compileConditional(node as ConditionalNode, compiler);
     case 'FunctionNode':
-      return compileCall(node as FunctionNode, readSymbol);
+      return compileCall(node as FunctionNode, compiler);
     default:
       throw new ExpressionFault(
         refusals[node.type] ?? 'Only arithmetic, comparisons and functions can be used.',
@@ -109,102 +81,105 @@ const refusals: Record<string, string> = {
   ObjectNode: 'Objects cannot be used here.',
 };
 
-function compileConstant(node: ConstantNode): CompiledNode {
+function compileConstant(node: ConstantNode, { builder }: NodeCompiler): CompiledNode {
   const value: unknown = node.value;
-  if (typeof value === 'boolean') return { run: () => truth(value), isCondition: true };
-  if (typeof value === 'number' && Number.isFinite(value)) return { run: () => value, isCondition: false };
+  if (typeof value === 'boolean') return { register: builder.constant(value ? 1 : 0), isCondition: true };
+  if (typeof value === 'number' && Number.isFinite(value)) {
+    return { register: builder.constant(value), isCondition: false };
+  }
   if (value === undefined) throw new ExpressionFault('Write an expression.');
   const text = node.toString();
   throw new ExpressionFault(`"${text}" is no number that can be used here.`, text);
 }
 
-/** The whole dotted name of a symbol, e.g. `survey.best.airTrim`; null where it is no plain name. */
-function dottedName(node: MathNode): string | null {
-  if (node.type === 'SymbolNode') return (node as MathNode & { name: string }).name;
-  if (node.type !== 'AccessorNode') return null;
-  const { object, index } = node as MathNode & {
-    object: MathNode;
-    index: { dotNotation: boolean; dimensions: { value?: unknown }[] };
-  };
-  const front = dottedName(object);
-  const last = index.dimensions[0]?.value;
-  return index.dotNotation && front !== null && typeof last === 'string' ? `${front}.${last}` : null;
-}
-
-function compileSymbol(node: MathNode, readSymbol: SymbolReader): CompiledNode {
+function compileSymbol(node: MathNode, { symbolRegister }: NodeCompiler): CompiledNode {
   const name = dottedName(node);
   if (name === null) throw new ExpressionFault('Values cannot be picked from others here: use plain names.');
-  return { run: readSymbol(name), isCondition: false };
+  return { register: symbolRegister(name), isCondition: false };
 }
 
-function compileOperator(node: OperatorNode, readSymbol: SymbolReader): CompiledNode {
-  // The library's types narrow names to those it knows; what is parsed may be any.
-  const { op, fn, args }: { op: string; fn: string; args: MathNode[] } = node;
+function compileOperator(node: OperatorNode, compiler: NodeCompiler): CompiledNode {
+  const { op, fn, args } = operatorOf(node);
   if (node.implicit)
     throw new ExpressionFault('An operator is missing between two values: write "*" to multiply.');
-  const [a, b] = args.map((argument) => compileNode(argument, readSymbol));
-  const one = unary[fn];
-  if (one && a && !b) return { run: () => one(a.run()), isCondition: fn === 'not' };
-  const two = arithmetic[fn] ?? comparisons[fn] ?? logic[fn];
-  if (!two || !a || !b) throw new ExpressionFault(`The operator "${op}" cannot be used here.`, op);
-  return { run: () => two(a.run(), b.run()), isCondition: fn in comparisons || fn in logic };
-}
-
-/** A chain such as `2 < o2 <= 4`: every neighbouring pair must hold. */
-function compileRelation(node: RelationalNode, readSymbol: SymbolReader): CompiledNode {
-  const values = node.params.map((part) => compileNode(part, readSymbol));
-  const pairs = (node as unknown as { conditionals: string[] }).conditionals.map((name, i): CompiledNode => {
-    const [compare, a, b] = [comparisons[name], values[i], values[i + 1]];
-    if (!compare || !a || !b) throw new ExpressionFault('This comparison cannot be used here.');
-    return { run: () => compare(a.run(), b.run()), isCondition: true };
-  });
-  const and = logic['and'] as Binary;
-  return pairs.reduce((left, right) => ({ run: () => and(left.run(), right.run()), isCondition: true }));
-}
-
-function compileConditional(node: ConditionalNode, readSymbol: SymbolReader): CompiledNode {
-  const condition = compileNode(node.condition, readSymbol);
-  const yes = compileNode(node.trueExpr, readSymbol);
-  const no = compileNode(node.falseExpr, readSymbol);
-  const run = () => {
-    const is = condition.run();
-    if (Number.isNaN(is)) return NaN;
-    return is !== 0 ? yes.run() : no.run();
+  const { builder } = compiler;
+  if (args.length === 2 && (fn === 'add' || fn === 'subtract')) {
+    return { register: compileSum(node, compiler), isCondition: false };
+  }
+  const [a, b] = args.map((argument) => compileNode(argument, compiler));
+  if (a && !b) {
+    if (fn === 'unaryPlus') return { register: a.register, isCondition: false };
+    if (fn === 'unaryMinus')
+      return { register: builder.emit(Operation.negate, a.register), isCondition: false };
+    if (fn === 'not') return { register: builder.emit(Operation.not, a.register), isCondition: true };
+  }
+  const operation = arithmetic[fn] ?? comparisons[fn] ?? logic[fn];
+  if (operation === undefined || !a || !b) {
+    throw new ExpressionFault(`The operator "${op}" cannot be used here.`, op);
+  }
+  return {
+    register: builder.emit(operation, a.register, b.register),
+    isCondition: fn in comparisons || fn in logic,
   };
-  return { run, isCondition: yes.isCondition && no.isCondition };
 }
 
-function compileCall(node: FunctionNode, readSymbol: SymbolReader): CompiledNode {
-  const name = dottedName(node.fn) ?? '';
+/** A chain such as `2 < x <= 4`: every neighbouring pair must hold. */
+function compileRelation(node: RelationalNode, compiler: NodeCompiler): CompiledNode {
+  const { builder } = compiler;
+  const values = node.params.map((part) => compileNode(part, compiler).register);
+  const pairs = relationNames(node).map((name, i) => {
+    const [operation, a, b] = [comparisons[name], values[i], values[i + 1]];
+    if (operation === undefined || a === undefined || b === undefined) {
+      throw new ExpressionFault('This comparison cannot be used here.');
+    }
+    return builder.emit(operation, a, b);
+  });
+  const register = pairs.reduce((left, right) => builder.emit(Operation.and, left, right));
+  return { register, isCondition: true };
+}
+
+function compileConditional(node: ConditionalNode, compiler: NodeCompiler): CompiledNode {
+  const condition = compileNode(node.condition, compiler);
+  let isCondition = true;
+  const side = (part: MathNode) => () => {
+    const compiled = compileNode(part, compiler);
+    isCondition &&= compiled.isCondition;
+    return compiled.register;
+  };
+  const register = compiler.builder.choose(condition.register, side(node.trueExpr), side(node.falseExpr));
+  return { register, isCondition };
+}
+
+function compileCall(node: FunctionNode, compiler: NodeCompiler): CompiledNode {
+  const name = functionNameOf(node);
   const known = functionByName.get(name);
   if (!known) {
     const names = expressionFunctions.map((candidate) => candidate.name).join(', ');
     throw new ExpressionFault(`There is no function "${name}": use one of ${names}.`, name);
   }
-  const { apply, minArguments, maxArguments, signature } = known;
+  const { operation, minArguments, maxArguments, signature } = known;
   if (node.args.length < minArguments || node.args.length > maxArguments) {
     throw new ExpressionFault(
       `"${name}" is called with the wrong number of values: write ${signature}.`,
       name,
     );
   }
-  const runs = node.args.map((argument) => compileNode(argument, readSymbol).run);
-  return { run: callOf(apply, runs), isCondition: false };
+  const { builder } = compiler;
+  const values = node.args.map((argument) => compileNode(argument, compiler).register);
+  return {
+    register: name === 'clamp' ? clamp(builder, values) : call(builder, operation, values),
+    isCondition: false,
+  };
 }
 
-/** One closure per number of arguments: spreading an array would allocate in each scan. */
-function callOf(apply: (...values: number[]) => number, runs: (() => number)[]): () => number {
-  const [a, b, c, ...rest] = runs as [() => number, ...(() => number)[]];
-  if (!b) return () => finite(apply(a()));
-  if (!c) return () => finite(apply(a(), b()));
-  if (rest.length === 0) return () => finite(apply(a(), b(), c()));
-  // Only min and max take more, and both can be built up in pairs.
-  const front = callOf(apply, runs.slice(0, -1));
-  const last = runs.at(-1) ?? a;
-  return () => finite(apply(front(), last()));
+function call(builder: ProgramBuilder, operation: Operation, values: readonly number[]): number {
+  const [first, ...others] = values as [number, ...number[]];
+  if (others.length === 0) return builder.emit(operation, first);
+  return others.reduce((front, value) => builder.emit(operation, front, value), first);
 }
 
-export function constantReader(name: string): (() => number) | null {
-  const value = expressionConstants.get(name);
-  return value === undefined ? null : () => value;
+function clamp(builder: ProgramBuilder, values: readonly number[]): number {
+  const [value, low, high] = values as [number, number, number];
+  const lowerEnd = builder.emit(Operation.lowerEnd, low, high);
+  return builder.emit(Operation.min, builder.emit(Operation.max, value, lowerEnd), high);
 }

@@ -1,5 +1,16 @@
+import type { Unit } from '../units/unit.js';
+
 /** Looks a symbol up in one scan: its value where good, NaN where not. */
 export type Lookup = (symbol: string) => number;
+
+/** Where a bound expression reads its symbols, by index: `Readings` is one. */
+export interface ValueSource {
+  /** Place of a symbol, or −1; must stay the same. */
+  indexOf(symbol: string): number;
+  readonly values: Float64Array;
+  /** A `Quality` for each value. */
+  readonly qualities: Uint8Array;
+}
 
 /**
  * A compiled expression. Booleans are numbers: 1 true, 0 false. A bad input makes the result NaN;
@@ -11,7 +22,17 @@ export interface CompiledExpression {
   readonly symbols: readonly string[];
   /** Its result is a truth value: a comparison, `and or not`, or a choice between such. */
   readonly isCondition: boolean;
+  /** The unit of its result; null where units were not given, or where it fits any unit. */
+  readonly unit: Unit | null;
+  /** Most operations that an evaluation takes; at most `expressionOperationsMax`. */
+  readonly operations: number;
   evaluate(lookup: Lookup): number;
+  /**
+   * Looks the places of the symbols up once.
+   *
+   * @returns evaluates with what stands there at the time of the call; allocates nothing
+   */
+  bind(source: ValueSource): () => number;
 }
 
 export type CompileOutcome =
@@ -20,4 +41,5 @@ export type CompileOutcome =
       isOk: false;
       message: string;
       /** Character where the fault is, from 0; null where unknown. */ at: number | null;
+      /** Set where the expression is sound but for its units. */ isUnitFault?: true;
     };

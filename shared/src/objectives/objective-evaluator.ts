@@ -1,7 +1,7 @@
 import type { FieldFault } from '../errors/domain-error.js';
 import type { ObjectiveSample } from '../experiments/sequencer.types.js';
 import { compileExpression } from '../expressions/compile-expression.js';
-import type { CompiledExpression, Lookup } from '../expressions/expression.types.js';
+import type { CompiledExpression } from '../expressions/expression.types.js';
 import type { Rig } from '../rigs/rig.schema.js';
 import type { Readings } from '../scan/readings.js';
 import type { ObjectiveContent } from './objective.schema.js';
@@ -58,21 +58,36 @@ interface Condition {
   message: string;
 }
 
+/** An objective whose symbols have their places in one set of readings. */
+interface BoundObjective {
+  readonly readings: Readings;
+  readonly value: () => number;
+  readonly conditions: readonly { isTrue: () => boolean; message: string }[];
+}
+
+function bindTo(
+  readings: Readings,
+  value: CompiledExpression,
+  conditions: readonly Condition[],
+): BoundObjective {
+  return {
+    readings,
+    value: value.bind(readings),
+    conditions: conditions.map(({ expression, message }) => {
+      const evaluate = expression?.bind(readings);
+      // A condition over a bad reading is NaN: not known to be true is not valid.
+      return { isTrue: () => evaluate?.() === 1, message };
+    }),
+  };
+}
+
 function evaluatorOf(
   content: ObjectiveContent,
   value: CompiledExpression,
   conditions: readonly Condition[],
 ): ObjectiveEvaluator {
   const sample: ObjectiveSample = { value: NaN, isGood: false, isValid: false, whyInvalid: null };
-  let current: Readings | null = null;
-  const lookup: Lookup = (channel) => (current ? current.goodValue(current.indexOf(channel)) : NaN);
-  const firstViolated = (): string | null => {
-    for (const condition of conditions) {
-      // A condition over a bad reading is NaN: not known to be true is not valid.
-      if (condition.expression?.evaluate(lookup) !== 1) return condition.message;
-    }
-    return null;
-  };
+  let bound: BoundObjective | null = null;
   const symbols = [value, ...conditions.flatMap(({ expression }) => expression ?? [])].flatMap(
     (e) => e.symbols,
   );
@@ -80,12 +95,23 @@ function evaluatorOf(
     content,
     channels: [...new Set(symbols)],
     evaluate(readings) {
-      current = readings;
-      sample.value = value.evaluate(lookup);
+      // The readings of a rig are one object from scan to scan.
+      if (bound?.readings !== readings) bound = bindTo(readings, value, conditions);
+      sample.value = bound.value();
       sample.isGood = Number.isFinite(sample.value);
-      sample.whyInvalid = sample.isGood ? firstViolated() : 'A reading that the objective needs is not good.';
+      sample.whyInvalid = sample.isGood
+        ? firstViolated(bound)
+        : 'A reading that the objective needs is not good.';
       sample.isValid = sample.whyInvalid === null;
       return sample;
     },
   };
+}
+
+function firstViolated({ conditions }: BoundObjective): string | null {
+  for (let i = 0; i < conditions.length; i += 1) {
+    const condition = conditions[i] as BoundObjective['conditions'][number];
+    if (!condition.isTrue()) return condition.message;
+  }
+  return null;
 }

@@ -1,0 +1,109 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { Readings } from '../scan/readings.js';
+import { parseUnit } from '../units/parse-unit.js';
+import { randomText } from './against-mathjs.fixture.js';
+import { compileExpression, expressionOperationsMax } from './compile-expression.js';
+
+const ids = ['a', 'b', 'c'];
+const known = new Set(ids);
+const units = ['', '%', 'ppm', '°C', 'K', 'kW', 'm³/h', 'counts', 'not / a // unit'];
+const piece = fc.constantFrom(
+  ...[
+    'a',
+    'b',
+    'survey.best',
+    '(',
+    ')',
+    '+',
+    '-',
+    '*',
+    '/',
+    '^',
+    '<',
+    '<=',
+    '==',
+    '?',
+    ':',
+    ',',
+    ' ',
+    '1',
+    '2.5',
+    '1e308',
+  ],
+  ...[
+    'min(',
+    'clamp(',
+    'weight(',
+    'sqrt(',
+    'not ',
+    ' and ',
+    ' or ',
+    '=',
+    '[',
+    ']',
+    ';',
+    '\n',
+    '.',
+    '"',
+    '{',
+    '}',
+    'e',
+    "'",
+  ],
+);
+const anyText = fc.oneof(
+  fc.string({ maxLength: 60, unit: 'grapheme' }),
+  fc.array(piece, { maxLength: 60 }).map((parts) => parts.join('')),
+  randomText,
+);
+const reading = fc.oneof(
+  fc.double(),
+  fc.double({ min: -5, max: 5, noNaN: true }),
+  fc.constantFrom(0, 1, 1e308),
+);
+
+/** Holds the compiler to its typed outcome and its budget on any text whatever. */
+export function describeExpressionFuzz(numRuns: number): void {
+  describe('any text', () => {
+    it('compiles or says what is wrong, never throws, and stays within its budget of operations', () => {
+      let compiled = 0;
+      fc.assert(
+        fc.property(
+          anyText,
+          fc.array(fc.constantFrom(...units), { minLength: 3, maxLength: 3 }),
+          (text, of) => {
+            const unitOf = (name: string) => parseUnit(of[ids.indexOf(name)] ?? '');
+            for (const outcome of [compileExpression(text, known), compileExpression(text, known, unitOf)]) {
+              if (!outcome.isOk) {
+                expect(outcome.message.length).toBeGreaterThan(8);
+                continue;
+              }
+              compiled += 1;
+              expect(outcome.expression.operations).toBeLessThanOrEqual(expressionOperationsMax);
+              const value = outcome.expression.evaluate(() => 1);
+              expect(Number.isFinite(value) || Number.isNaN(value)).toBe(true);
+            }
+          },
+        ),
+        { numRuns },
+      );
+      expect(compiled).toBeGreaterThan(numRuns / 8);
+    }, 1_200_000);
+
+    it('gives the same number bound to readings as looked up by name', () => {
+      fc.assert(
+        fc.property(randomText, reading, reading, reading, (text, a, b, c) => {
+          const outcome = compileExpression(text, known);
+          if (!outcome.isOk) return;
+          const readings = new Readings(ids);
+          [a, b, c].forEach((value, i) => readings.set(i, value, 0));
+          const lookup = (name: string) => readings.goodValue(readings.indexOf(name));
+          const { expression } = outcome;
+          expect(expression.bind(readings)()).toBe(expression.evaluate(lookup));
+        }),
+        { numRuns },
+      );
+    }, 1_200_000);
+  });
+}

@@ -1,0 +1,3 @@
+import { describeExpressionFuzz } from './expression-fuzz.fixture.js';
+
+describeExpressionFuzz(20_000);
