@@ -23,6 +23,9 @@ export interface Link {
 
 /** Sends scans and status to screens: at most 20 batches a second, dropped rather than queued. */
 export class Publisher implements ScanSink {
+  private readonly rigColumns: string[];
+  /** Channel indices of the actuators, in the order of the rig. */
+  private readonly actuators: readonly number[];
   private columns: string[];
   private runId: string | null = null;
   private rows: Telemetry['rows'] = [];
@@ -38,14 +41,17 @@ export class Publisher implements ScanSink {
     private readonly link: Link,
     private readonly status: () => RigStatus,
   ) {
-    this.columns = [...readings.channelIds];
+    this.actuators = rig.channels.flatMap(({ kind }, index) => (kind === 'actuator' ? [index] : []));
+    const applied = this.actuators.map((index) => `${readings.channelIds[index]}.applied`);
+    this.rigColumns = [...readings.channelIds, ...applied];
+    this.columns = this.rigColumns;
   }
 
   /** From now on rows hold the columns of a run, or of the rig alone. */
   useRun(run: { id: string; columns: readonly RunColumn[] } | null): void {
     this.sendBatch();
     this.runId = run?.id ?? null;
-    this.columns = run?.columns.map((column) => column.name) ?? [...this.readings.channelIds];
+    this.columns = run?.columns.map((column) => column.name) ?? this.rigColumns;
   }
 
   requestStatus(): void {
@@ -66,13 +72,17 @@ export class Publisher implements ScanSink {
   private addRow(input: ScanInput, output: ScanOutput): void {
     if ((output.row !== null) !== (this.runId !== null)) return;
     this.lastRowS = input.tS;
-    const values: (number | null)[] = [];
-    const source = output.row;
-    for (let i = 0; i < this.columns.length; i += 1) {
-      const value = source === null ? this.readings.goodValue(i) : (source[i] ?? NaN);
-      values.push(Number.isFinite(value) ? value : null);
-    }
+    const values = output.row === null ? this.rigValues(output) : rowValues(output.row);
     this.rows.push({ atMs: input.atMs, tS: output.runTS, values });
+  }
+
+  /** In the order of `rigColumns`. */
+  private rigValues({ applied }: ScanOutput): (number | null)[] {
+    const values: (number | null)[] = [];
+    const { length } = this.readings.channelIds;
+    for (let i = 0; i < length; i += 1) values.push(numberOrNull(this.readings.goodValue(i)));
+    for (const index of this.actuators) values.push(numberOrNull(applied[index] ?? NaN));
+    return values;
   }
 
   private sendBatch(): void {
@@ -90,4 +100,14 @@ export class Publisher implements ScanSink {
     this.isStatusDue = false;
     this.lastStatusS = nowS;
   }
+}
+
+function numberOrNull(value: number): number | null {
+  return Number.isFinite(value) ? value : null;
+}
+
+function rowValues(row: Float64Array): (number | null)[] {
+  const values: (number | null)[] = [];
+  for (let i = 0; i < row.length; i += 1) values.push(numberOrNull(row[i] ?? NaN));
+  return values;
 }

@@ -34,10 +34,13 @@ describe('rig host', () => {
       'fuelTrim',
       'heartbeat',
       'excess',
+      'airTrim.applied',
+      'fuelTrim.applied',
+      'heartbeat.applied',
     ]);
     const row = telemetry.rows.at(-1);
     expect(row?.values.slice(0, 4)).toEqual([4, 180, 0, 0]);
-    expect(row?.values[5]).toBe(2);
+    expect(row?.values.slice(5)).toEqual([2, null, null, null]);
     await host.untilStatus((s) => s.phase === 'idle', 'idle');
     const beats = () => device.writes.filter((w) => w.address === 6).map((w) => w.value);
     await host.until(() => beats().length >= 5, 'five heartbeats');
@@ -47,6 +50,23 @@ describe('rig host', () => {
         .every((beat, i) => beat === (beats()[i] ?? 0) + 1),
     ).toBe(true);
     expect(device.airTrimWrites).toEqual([]);
+  });
+
+  it('tells screens what it writes whenever it holds the rig, not only in a run', async () => {
+    host = await HostHarness.configured(testRig(device.port));
+    await host.untilStatus((s) => s.armingObstacles.length === 0, 'ready to arm');
+    await host.ask({ type: 'arm', by: 'technician' });
+    await host.ask({ type: 'move', channel: 'airTrim', value: 3, by: 'technician' });
+    const seen = (value: number | null) => () =>
+      host.of('telemetry').findLast(({ telemetry: { columns, rows, runId } }) => {
+        const at = columns.indexOf('airTrim.applied');
+        return runId === null && at >= 0 && rows.at(-1)?.values[at] === value;
+      });
+    await host.until(seen(3), 'a 3 written by hand');
+    await host.ask({ type: 'disarm', by: 'technician' });
+    await host.untilStatus((s) => s.phase === 'idle', 'idle');
+    host.messages.length = 0;
+    await host.until(seen(null), 'nothing written');
   });
 
   it('arms, runs an experiment to its end and records every scan of it', async () => {

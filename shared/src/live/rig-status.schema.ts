@@ -36,7 +36,10 @@ export const rigStatusSchema = z.object({
   interlocks: z.array(interlockStatusSchema),
   /** What forbids arming, in words; empty where nothing does. */
   armingObstacles: z.array(z.string()),
-  /** Best-known point of the run so far, by actuator. */
+  /**
+   * Best-known point by actuator: of the run that is going on, so far; else of the run that ended last since the
+   * rig host began, because that is what people come back to. Empty where nothing was sought.
+   */
   bestPoint: z.record(z.string(), z.number()),
   scan: z.object({
     count: z.int(),

@@ -8,7 +8,10 @@ export const telemetrySchema = z.object({
   rigId: z.string(),
   runId: z.string().nullable(),
   sequence: z.int(),
-  /** Names of the values in each row. Channels always; run columns while a run is going on. */
+  /**
+   * Names of the values in each row: the channels, and `<actuator>.applied` for each actuator (null where it is
+   * not written); all run columns while a run is going on.
+   */
   columns: z.array(z.string()),
   rows: z.array(
     z.object({

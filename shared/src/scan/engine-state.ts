@@ -51,6 +51,7 @@ export function createEngineState(configuration: ScanEngineConfiguration): Engin
   const readings = new Readings(rig.channels.map(({ id }) => id));
   const output: ScanOutput = {
     writes: [],
+    applied: new Float64Array(readings.channelIds.length).fill(NaN),
     row: null,
     runTS: null,
     events: [],

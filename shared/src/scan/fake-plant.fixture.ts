@@ -167,6 +167,7 @@ export class FakePlant {
     return {
       ...output,
       writes: output.writes.map((write) => ({ ...write })),
+      applied: output.applied.slice(),
       events: [...output.events],
       row: output.row?.slice() ?? null,
     };

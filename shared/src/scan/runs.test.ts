@@ -33,6 +33,21 @@ describe('a run', () => {
     expect(plant.engine.status()).toMatchObject({ phase: 'idle', runId: null, bestPoint: { valve: 21.5 } });
   });
 
+  it('leaves its best point behind until the next run, which begins without one', () => {
+    const { sequencer, results } = scriptedSequencer((_, step) =>
+      step < 2 ? {} : { end: { verdict: 'pass', reason: 'Finished.' } },
+    );
+    results.set('seek.best.valve', 21.5);
+    const plant = new FakePlant({ sequencer }).run();
+    plant.scans(5);
+    expect(plant.engine.status()).toMatchObject({ runId: null, bestPoint: { valve: 21.5 } });
+    results.clear();
+    plant.engine.arm('t');
+    plant.engine.startRun(plantOrder);
+    plant.scan();
+    expect(plant.engine.status()).toMatchObject({ runId: 'run-1', bestPoint: {} });
+  });
+
   it('says what happened in the past tense and in order', () => {
     const { sequencer } = scriptedSequencer((_, step) => (step < 2 ? request(20) : {}));
     const plant = new FakePlant({ sequencer }).run();

@@ -110,10 +110,12 @@ function actOn(engine: EngineState, { id, action, message }: Interlock, atMs: nu
 }
 
 function collectWrites(engine: EngineState, tS: number): void {
-  const { writes } = engine.output;
+  const { writes, applied } = engine.output;
+  applied.fill(NaN);
   for (const actuator of actuatorsOf(engine)) {
     if (!actuator.isWritten) continue;
     actuator.write.value = actuator.guarded.applied;
+    applied[actuator.readingIndex] = actuator.guarded.applied;
     writes.push(actuator.write);
   }
   const heartbeat = engine.fitted?.heartbeat;

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { DomainError } from '../errors/domain-error.js';
 import { eventTypes, FakePlant, plantEnvelope, plantOrder, written } from './fake-plant.fixture.js';
+import type { ScanOutput } from './scan-engine.types.js';
 
 function codeOf(command: () => unknown): string {
   try {
@@ -134,6 +135,19 @@ describe('a scan engine that is armed', () => {
     plant.at.valve = 102.5;
     plant.arm();
     expect(plant.scans(4).map((output) => written(output, 'valve'))).toEqual([101.5, 100.5, 100, 100]);
+  });
+
+  it('says by channel what is written, and nothing where nothing is', () => {
+    const plant = new FakePlant();
+    const of = (output: ScanOutput) =>
+      ['valve', 'fan', 'temp', 'beat'].map((id) => output.applied[plant.engine.readings.indexOf(id)]);
+    expect(of(plant.scan())).toEqual([NaN, NaN, NaN, NaN]);
+    plant.engine.arm('t');
+    plant.engine.move('valve', 25, 't');
+    expect(of(plant.scan())).toEqual([21, 0, NaN, NaN]);
+    plant.engine.disarm('t');
+    plant.scans(3);
+    expect(of(plant.scan())).toEqual([NaN, NaN, NaN, NaN]);
   });
 
   it('makes a manual move at the slew limit, and comes to rest when disarmed', () => {

@@ -45,6 +45,8 @@ export interface ScanInput {
 export interface ScanOutput {
   /** What to write, in this order, after the guard; the heartbeat last. */
   readonly writes: { channel: string; value: number }[];
+  /** What the guard let through by channel index; NaN where an actuator is not written, and for the heartbeat. */
+  readonly applied: Float64Array;
   /** Values of `columns` (NaN is NULL) where this scan belongs to a run, else null. */
   row: Float64Array | null;
   /** Time since the run began, s; null outside a run. */
