@@ -33,6 +33,16 @@ describe('smooth curve', () => {
     expect(smoothCurve(xs, ys, { width }).predictionError).toBeCloseTo(direct, 9);
   });
 
+  it('knows the noise without bias, also where a narrow width follows it (400 seeded curves)', () => {
+    const xs = line(30, 0, 1);
+    const variances = Array.from({ length: 400 }, (_, seed) => {
+      const noise = new SeededNoise(seed);
+      return smoothCurve(xs, noise.normals(30, 0.1), { width: 0.15 }).noise ** 2;
+    });
+    // Standard error of the mean of 400: 1.7 %.
+    expect(Math.abs(variances.reduce((a, b) => a + b) / 400 / 0.01 - 1)).toBeLessThan(0.06);
+  });
+
   it('chooses a wide width for a parabola, a narrow one for a wiggle', () => {
     const noise = new SeededNoise(5);
     const xs = line(60, 0, 6);

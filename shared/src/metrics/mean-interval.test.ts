@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { SeededNoise } from '../signals/seeded-noise.fixture.js';
 import { coverage } from './coverage.fixture.js';
 import { meanInflation, meanInterval } from './mean-interval.js';
 
@@ -26,6 +27,7 @@ describe('interval of a mean', () => {
 
   // Binomial scatter of 1500 trials at 95 %: 0.6 %.
   it.each([
+    [12, 0.6, 0.88, 0.93],
     [30, 0, 0.93, 0.98],
     [50, 0.6, 0.92, 0.97],
     [200, 0.6, 0.925, 0.965],
@@ -40,6 +42,17 @@ describe('interval of a mean', () => {
     },
     30_000,
   );
+
+  // n·(1 − φ)/(1 + φ) for long series (closed form); the correction of r₁ shows in short ones.
+  it('counts as many effective values as the closed form says', () => {
+    const long = meanInterval(new SeededNoise(2).autoregressive(20_000, 0.8));
+    expect(Math.abs((long.effectiveCount * 9) / 20_000 - 1)).toBeLessThan(0.06);
+    const short = Array.from({ length: 800 }, (_, seed) =>
+      meanInterval(new SeededNoise(seed).autoregressive(40, 0.5)),
+    );
+    const middle = short.map((found) => found.effectiveCount).sort((a, b) => a - b)[400]!;
+    expect(Math.abs((middle * meanInflation(40, 0.5)) / 40 - 1)).toBeLessThan(0.08);
+  });
 
   it('by blocks holds the truth as often as it says, for a correlation of any shape', () => {
     // A moving average of 12 is not of first order.
