@@ -31,7 +31,6 @@ export function StepPalette({ unavailable, isReadOnly, onAdd }: StepPaletteProps
               fullWidth
               disabled={isReadOnly || unavailable.has(kind)}
               onClick={() => onAdd(kind)}
-              aria-label={`Add ${stepKinds[kind].title}`}
               sx={{ display: 'block', textAlign: 'left', whiteSpace: 'normal', px: 1, py: 0.5 }}
             >
               <Box sx={{ fontWeight: 700 }}>{stepKinds[kind].title}</Box>
