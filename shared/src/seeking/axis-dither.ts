@@ -6,7 +6,7 @@ import {
   type FirstOrderFilterState,
 } from '../signals/first-order-filter.js';
 import type { PeriodicAxis } from './law-parameters.js';
-import { isUsable } from './seek-core.js';
+import { isUsable } from './usable-number.js';
 
 /** Corner of the lock-in on the plant's own ripple, as a fraction of its frequency. */
 const lockInRatio = 0.05;

@@ -16,7 +16,7 @@ type Axis = z.infer<typeof axis>;
 const parametersSchema = z.object({ axes: axesOf(axis, 16), taper: taperParameter });
 export type BoundedRateLawParameters = z.infer<typeof parametersSchema>;
 
-export interface BoundedRateLawState extends SeekCore {
+interface BoundedRateOwn {
   readonly parameters: BoundedRateLawParameters;
   /** What was asked for last, actuator units. */
   readonly applied: Float64Array;
@@ -29,6 +29,8 @@ export interface BoundedRateLawState extends SeekCore {
   /** On its way back to the last good point, which it goes to the end even where the objective is valid again. */
   isReturning: boolean;
 }
+
+export type BoundedRateLawState = SeekCore<BoundedRateOwn>;
 
 const signalNames = ['estimate', 'turn'];
 
@@ -61,7 +63,15 @@ export const boundedRateLaw: SeekingLaw<BoundedRateLawParameters, BoundedRateLaw
 
   init(parameters, start) {
     const { axes, taper } = parameters;
-    const core = createSeekCore({
+    const state = createSeekCore({
+      own: {
+        parameters,
+        applied: new Float64Array(axes.length),
+        ripple: new Float64Array(axes.length),
+        phases: new Float64Array(axes.length),
+        reference: NaN,
+        isReturning: false,
+      },
       axes,
       start,
       taper,
@@ -69,38 +79,32 @@ export const boundedRateLaw: SeekingLaw<BoundedRateLawParameters, BoundedRateLaw
       signals: axes.length * signalNames.length,
       reach: axes.map(({ amplitude }) => amplitude),
     });
-    writeEstimates(core.estimate, core.signals, signalNames.length);
-    const phases = new Float64Array(axes.length);
-    return {
-      ...core,
-      parameters,
-      applied: core.estimate.slice(),
-      ripple: new Float64Array(axes.length),
-      phases,
-      reference: NaN,
-      isReturning: false,
-    };
+    state.own.applied.set(state.estimate);
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+    return state;
   },
 
   step(state, input, dtS) {
-    if (!admit(state, input, dtS)) state.isReturning = true;
-    if (!state.isReturning) climb(state, input, dtS);
+    const { own } = state;
+    if (!admit(state, input, dtS)) own.isReturning = true;
+    if (!own.isReturning) climb(state, input, dtS);
     else walkBack(state, dtS);
     writeEstimates(state.estimate, state.signals, signalNames.length);
   },
 };
 
 function climb(state: BoundedRateLawState, { objective }: SeekingInput, dtS: number): void {
-  const { parameters, phases, applied, ripple, signals } = state;
+  const { own, signals } = state;
+  const { parameters, phases, applied, ripple } = own;
   const { scale } = state.taper;
-  if (state.reference !== state.reference) state.reference = objective;
+  if (own.reference !== own.reference) own.reference = objective;
   const isAdapting = isSettled(state, dtS);
   remember(state, dtS);
   for (let i = 0; i < applied.length; i += 1) {
     const { periodS, amplitude, gain } = parameters.axes[i] as Axis;
     const omega = (2 * Math.PI) / periodS;
     const reach = amplitude * scale;
-    const turn = isAdapting ? ((2 * gain) / (reach * reach * omega)) * (objective - state.reference) : 0;
+    const turn = isAdapting ? ((2 * gain) / (reach * reach * omega)) * (objective - own.reference) : 0;
     const middle = at(phases, i) + (omega * dtS) / 2;
     phases[i] = (at(phases, i) + omega * dtS) % (2 * Math.PI);
     const speed = reach * omega * Math.cos(middle - turn);
@@ -112,16 +116,8 @@ function climb(state: BoundedRateLawState, { objective }: SeekingInput, dtS: num
 }
 
 /** Holds the applied value in the box, the estimate in its own, and keeps their difference below the amplitude. */
-function placeAll({
-  applied,
-  ripple,
-  estimate,
-  dither,
-  lowest,
-  highest,
-  min,
-  max,
-}: BoundedRateLawState): void {
+function placeAll({ own, estimate, dither, lowest, highest, min, max }: BoundedRateLawState): void {
+  const { applied, ripple } = own;
   for (let i = 0; i < applied.length; i += 1) {
     const next = held(at(applied, i), at(min, i), at(max, i));
     const middle = held(next - at(ripple, i), at(lowest, i), at(highest, i));
@@ -132,7 +128,8 @@ function placeAll({
 }
 
 function walkBack(state: BoundedRateLawState, dtS: number): void {
-  const { applied, estimate, dither, lastGood, phases, parameters, min, max } = state;
+  const { own, estimate, dither, lastGood, min, max } = state;
+  const { applied, phases, parameters } = own;
   let isThere = true;
   for (let i = 0; i < applied.length; i += 1) {
     const { amplitude, periodS } = parameters.axes[i] as Axis;
@@ -144,8 +141,8 @@ function walkBack(state: BoundedRateLawState, dtS: number): void {
     dither[i] = 0;
   }
   phases.fill(0);
-  state.reference = NaN;
+  own.reference = NaN;
   state.isRetreated = true;
   // It climbs on from the next valid step.
-  state.isReturning = !isThere;
+  own.isReturning = !isThere;
 }

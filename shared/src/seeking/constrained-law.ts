@@ -19,18 +19,12 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import {
-  admitPeriodic,
-  createPeriodicCore,
-  demodulate,
-  perturb,
-  retreatPeriodic,
-  type PeriodicCore,
-} from './periodic-core.js';
+import { admitPeriodic, createPeriodicCore, demodulate, perturb, retreatPeriodic } from './periodic-core.js';
 import { held } from './seek-box.js';
-import { at, isSettled, isUsable, moveAll } from './seek-core.js';
+import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingInput, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
+import { isUsable } from './usable-number.js';
 
 const axis = periodicAxis(ditherKinds, { gain: gainParameter });
 type Axis = z.infer<typeof axis>;
@@ -80,7 +74,7 @@ const parametersSchema = z.object({
 });
 export type ConstrainedLawParameters = z.infer<typeof parametersSchema>;
 
-export interface ConstrainedLawState extends PeriodicCore {
+interface ConstrainedOwn {
   readonly parameters: ConstrainedLawParameters;
   readonly estimator: GradientEstimator;
   readonly marginEstimator: GradientEstimator;
@@ -89,6 +83,8 @@ export interface ConstrainedLawState extends PeriodicCore {
   readonly direction: Float64Array;
   readonly marginSlope: Float64Array;
 }
+
+export type ConstrainedLawState = SeekCore<ConstrainedOwn>;
 
 const signalsPerActuator = [...gradientSignals, 'marginGradient'];
 const stride = signalsPerActuator.length;
@@ -123,34 +119,36 @@ export const constrainedLaw: SeekingLaw<ConstrainedLawParameters, ConstrainedLaw
     const { taper, washoutRatio, lowPassRatio } = parameters;
     const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
     const n = axes.length;
-    const core = createPeriodicCore({ axes, start, taper, washoutRatio, signals: n * stride + 1 });
-    writeEstimates(core.estimate, core.signals, stride);
-    return {
-      ...core,
+    const slowestS = Math.max(...axes.map(({ periodS }) => periodS));
+    const signals = n * stride + 1;
+    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
       parameters,
-      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
-      marginEstimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
-      marginFilter: createFilterBank(Float64Array.of((lowPassRatio * 2 * Math.PI) / core.trialS)),
+      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
+      marginEstimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
+      marginFilter: createFilterBank(Float64Array.of((lowPassRatio * 2 * Math.PI) / slowestS)),
       direction: new Float64Array(n),
       marginSlope: new Float64Array(n),
-    };
+    }));
+    writeEstimates(state.estimate, state.signals, stride);
+    return state;
   },
 
   step(state, input, dtS) {
-    const { parameters, signals } = state;
+    const { signals } = state;
+    const { parameters, estimator, marginEstimator } = state.own;
     const margin = marginOf(parameters, input);
-    if (!admitPeriodic(state, input, dtS)) resetFilters(state);
+    if (!admitPeriodic(state, input, dtS)) resetFilters(state.own);
     else if (!isUsable(margin)) {
       retreatPeriodic(state);
-      resetFilters(state);
+      resetFilters(state.own);
     } else {
-      state.estimator.told[0] = input.objective;
-      state.marginEstimator.told[0] = margin;
+      estimator.told[0] = input.objective;
+      marginEstimator.told[0] = margin;
       climb(state, dtS);
       perturb(state, dtS);
-      writeGradientSignals(state.estimator, signals, stride);
+      writeGradientSignals(estimator, signals, stride);
       for (let i = 0; i < state.estimate.length; i += 1) {
-        signals[i * stride + 4] = at(state.marginEstimator.gradient, i);
+        signals[i * stride + 4] = at(marginEstimator.gradient, i);
       }
       signals[state.estimate.length * stride] = margin;
     }
@@ -164,23 +162,15 @@ function marginOf({ side, reserve }: ConstrainedLawParameters, input: SeekingInp
   return (side === 'above' ? constraint - bound : bound - constraint) - reserve;
 }
 
-function resetFilters({ estimator, marginEstimator, marginFilter }: ConstrainedLawState): void {
+function resetFilters({ estimator, marginEstimator, marginFilter }: ConstrainedOwn): void {
   resetGradientEstimator(estimator);
   resetGradientEstimator(marginEstimator);
   resetFilterBank(marginFilter);
 }
 
 function climb(state: ConstrainedLawState, dtS: number): void {
-  const {
-    parameters,
-    estimator,
-    marginEstimator,
-    marginFilter,
-    demodulators,
-    direction,
-    marginSlope,
-    change,
-  } = state;
+  const { demodulators, change } = state;
+  const { parameters, estimator, marginEstimator, marginFilter, direction, marginSlope } = state.own;
   const { axes, method, approachRate } = parameters;
   const margin = at(marginEstimator.told, 0);
   const isBarrier = method === 'barrier';

@@ -56,7 +56,7 @@ const parametersSchema = z.object({
 });
 export type DiscreteLawParameters = z.infer<typeof parametersSchema>;
 
-export interface DiscreteLawState extends SeekCore {
+interface DiscreteOwn {
   readonly parameters: DiscreteLawParameters;
   readonly phases: Float64Array;
   /** Objective and washout output of the scan before; NaN before the first. */
@@ -65,6 +65,8 @@ export interface DiscreteLawState extends SeekCore {
   /** Scale of the dithers that were put out last. */
   scale: number;
 }
+
+export type DiscreteLawState = SeekCore<DiscreteOwn>;
 
 const signalNames = ['estimate', 'washout', 'demodulated'];
 
@@ -93,7 +95,10 @@ export const discreteLaw: SeekingLaw<DiscreteLawParameters, DiscreteLawState> = 
 
   init(parameters, start) {
     const { axes, taper } = parameters;
-    const core = createSeekCore({
+    // The first step answers no dither: cos of a quarter period is none.
+    const phases = new Float64Array(axes.length).fill(-Math.PI / 2);
+    const state = createSeekCore({
+      own: { parameters, phases, lastObjective: NaN, washed: 0, scale: 1 },
       axes,
       start,
       taper,
@@ -101,45 +106,45 @@ export const discreteLaw: SeekingLaw<DiscreteLawParameters, DiscreteLawState> = 
       signals: axes.length * signalNames.length,
       reach: axes.map(({ amplitude }) => amplitude),
     });
-    writeEstimates(core.estimate, core.signals, signalNames.length);
-    // The first step answers no dither: cos of a quarter period is none.
-    const phases = new Float64Array(axes.length).fill(-Math.PI / 2);
-    return { ...core, parameters, phases, lastObjective: NaN, washed: 0, scale: 1 };
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+    return state;
   },
 
   step(state, input, dtS) {
+    const { own } = state;
     if (admit(state, input, dtS)) climb(state, input, dtS);
     else {
-      state.lastObjective = NaN;
-      state.washed = 0;
-      state.phases.fill(-Math.PI / 2);
-      state.scale = 1;
+      own.lastObjective = NaN;
+      own.washed = 0;
+      own.phases.fill(-Math.PI / 2);
+      own.scale = 1;
     }
     writeEstimates(state.estimate, state.signals, signalNames.length);
   },
 };
 
 function climb(state: DiscreteLawState, { objective }: SeekingInput, dtS: number): void {
-  const { parameters, phases, signals, change, dither } = state;
+  const { own, signals, change, dither } = state;
+  const { parameters, phases } = own;
   const { axes, washoutPole } = parameters;
-  const rise = state.lastObjective === state.lastObjective ? objective - state.lastObjective : 0;
-  state.lastObjective = objective;
-  state.washed = rise - washoutPole * state.washed;
+  const rise = own.lastObjective === own.lastObjective ? objective - own.lastObjective : 0;
+  own.lastObjective = objective;
+  own.washed = rise - washoutPole * own.washed;
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, phaseRad, gain } = axes[i] as DiscreteLawParameters['axes'][number];
-    const demodulated = (2 / (amplitude * state.scale)) * Math.cos(at(phases, i) - phaseRad) * state.washed;
+    const demodulated = (2 / (amplitude * own.scale)) * Math.cos(at(phases, i) - phaseRad) * own.washed;
     change[i] = gain * demodulated;
-    signals[i * signalNames.length + 1] = state.washed;
+    signals[i * signalNames.length + 1] = own.washed;
     signals[i * signalNames.length + 2] = demodulated;
   }
   // Settling, trials and taper are counted in scans.
   if (isSettled(state, 1)) moveAll(state, dtS);
   remember(state, 1);
-  state.scale = state.taper.scale;
+  own.scale = state.taper.scale;
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, scansPerPeriod } = axes[i] as DiscreteLawParameters['axes'][number];
     phases[i] = (at(phases, i) + (2 * Math.PI) / scansPerPeriod) % (2 * Math.PI);
-    dither[i] = amplitude * state.scale * Math.cos(at(phases, i));
+    dither[i] = amplitude * own.scale * Math.cos(at(phases, i));
   }
   fitDithers(state);
 }

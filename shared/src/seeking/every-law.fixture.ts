@@ -161,7 +161,8 @@ export function checkRecovery(wild: WildCase): void {
     law.step(state, { objective: Math.sin(i), isValid: true, measured, constraint: 1, bound: 0.5 }, 0.02);
   }
   const hidden = [...state.signals.slice(0, law.signalNames(actuators).length)].filter(Number.isNaN);
-  const { phase, isReturning = false } = state as { phase?: string; isReturning?: boolean };
+  const { phase, own } = state as { phase?: string; own?: { isReturning?: boolean } };
+  const isReturning = own?.isReturning ?? false;
   const isIdle = phase !== undefined || isReturning;
   // Laws that try points and a wide search show a gradient only after a whole trial; a law whose speed is bounded
   // may be on its way back still.

@@ -16,14 +16,8 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import {
-  admitPeriodic,
-  createPeriodicCore,
-  demodulate,
-  perturb,
-  type PeriodicCore,
-} from './periodic-core.js';
-import { at, isSettled, moveAll } from './seek-core.js';
+import { admitPeriodic, createPeriodicCore, demodulate, perturb } from './periodic-core.js';
+import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -37,10 +31,12 @@ const parametersSchema = z.object({
 });
 export type GradientLawParameters = z.infer<typeof parametersSchema>;
 
-export interface GradientLawState extends PeriodicCore {
+interface GradientOwn {
   readonly parameters: GradientLawParameters;
   readonly estimator: GradientEstimator;
 }
+
+export type GradientLawState = SeekCore<GradientOwn>;
 
 /**
  * Gradient seeking with washout, demodulation, low-pass and integrator, for one actuator or several.
@@ -70,23 +66,18 @@ export const gradientLaw: SeekingLaw<GradientLawParameters, GradientLawState> = 
 
   init(parameters, start) {
     const { axes, taper, washoutRatio, lowPassRatio } = parameters;
-    const core = createPeriodicCore({
-      axes,
-      start,
-      taper,
-      washoutRatio,
-      signals: axes.length * gradientSignals.length,
-    });
-    writeEstimates(core.estimate, core.signals);
-    return {
-      ...core,
+    const signals = axes.length * gradientSignals.length;
+    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
       parameters,
-      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
-    };
+      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
+    }));
+    writeEstimates(state.estimate, state.signals);
+    return state;
   },
 
   step(state, input, dtS) {
-    const { parameters, estimator, demodulators, change, signals } = state;
+    const { demodulators, change, signals } = state;
+    const { parameters, estimator } = state.own;
     const { axes } = parameters;
     if (admitPeriodic(state, input, dtS)) {
       demodulate(state);

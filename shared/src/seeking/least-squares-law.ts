@@ -2,14 +2,14 @@ import { z } from 'zod';
 import { writeLaggedDithers } from './axis-dither.js';
 import { writeEstimates } from './gradient-estimator.js';
 import { axesOf, gainParameter, parameter, periodicAxis, taperParameter } from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, perturb, type PeriodicCore } from './periodic-core.js';
+import { admitPeriodic, createPeriodicCore, perturb } from './periodic-core.js';
 import {
   createRecursiveSlope,
   resetRecursiveSlope,
   stepRecursiveSlope,
   type RecursiveSlope,
 } from './recursive-slope.js';
-import { at, isSettled, moveAll } from './seek-core.js';
+import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -27,10 +27,12 @@ const parametersSchema = z.object({
 });
 export type LeastSquaresLawParameters = z.infer<typeof parametersSchema>;
 
-export interface LeastSquaresLawState extends PeriodicCore {
+interface LeastSquaresOwn {
   readonly parameters: LeastSquaresLawParameters;
   readonly slope: RecursiveSlope;
 }
+
+export type LeastSquaresLawState = SeekCore<LeastSquaresOwn>;
 
 const signalNames = ['estimate', 'gradient'];
 
@@ -60,31 +62,30 @@ export const leastSquaresLaw: SeekingLaw<LeastSquaresLawParameters, LeastSquares
 
   init(parameters, start) {
     const { axes, taper } = parameters;
-    const core = createPeriodicCore({
-      axes,
-      start,
-      taper,
-      washoutRatio: 0,
-      signals: axes.length * signalNames.length + 1,
-    });
-    writeEstimates(core.estimate, core.signals, signalNames.length);
-    return { ...core, parameters, slope: createRecursiveSlope(axes.length) };
+    const signals = axes.length * signalNames.length + 1;
+    const state = createPeriodicCore({ axes, start, taper, washoutRatio: 0, signals }, () => ({
+      parameters,
+      slope: createRecursiveSlope(axes.length),
+    }));
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+    return state;
   },
 
   step(state, input, dtS) {
     if (admitPeriodic(state, input, dtS)) {
-      state.slope.told[0] = input.objective;
+      state.own.slope.told[0] = input.objective;
       climb(state, dtS);
       perturb(state, dtS);
     } else {
-      resetRecursiveSlope(state.slope);
+      resetRecursiveSlope(state.own.slope);
     }
     writeEstimates(state.estimate, state.signals, signalNames.length);
   },
 };
 
 function climb(state: LeastSquaresLawState, dtS: number): void {
-  const { parameters, slope, dithers, demodulators: lagged, signals, trialS, change } = state;
+  const { dithers, demodulators: lagged, signals, trialS, change } = state;
+  const { parameters, slope } = state.own;
   const { axes, memoryPeriods } = parameters;
   writeLaggedDithers(dithers, lagged);
   for (let i = 0; i < axes.length; i += 1) {

@@ -22,20 +22,14 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import {
-  admitPeriodic,
-  createPeriodicCore,
-  demodulate,
-  perturb,
-  type PeriodicCore,
-} from './periodic-core.js';
+import { admitPeriodic, createPeriodicCore, demodulate, perturb } from './periodic-core.js';
 import {
   applyRiccatiFilter,
   createRiccatiFilter,
   stepRiccatiFilter,
   type RiccatiFilter,
 } from './riccati-filter.js';
-import { at, isSettled, moveAll } from './seek-core.js';
+import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
 import type { SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -92,7 +86,7 @@ const parametersSchema = z.object({
 });
 export type NewtonLawParameters = z.infer<typeof parametersSchema>;
 
-export interface NewtonLawState extends PeriodicCore {
+interface NewtonOwn {
   readonly parameters: NewtonLawParameters;
   readonly estimator: GradientEstimator;
   readonly curvatures: HessianEstimator;
@@ -100,6 +94,8 @@ export interface NewtonLawState extends PeriodicCore {
   readonly inverse: RiccatiFilter;
   readonly curvature: Float64Array;
 }
+
+export type NewtonLawState = SeekCore<NewtonOwn>;
 
 /**
  * Newton seeking: the gradient is multiplied with a running inverse of the Hessian, so that the estimate
@@ -133,18 +129,16 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
     const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
     const n = axes.length;
     const signals = n * gradientSignals.length + (n * (n + 1)) / 2;
-    const core = createPeriodicCore({ axes, start, taper, washoutRatio, signals });
-    const state: NewtonLawState = {
-      ...core,
+    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
       parameters,
-      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
-      curvatures: createHessianEstimator(core.dithers, lag, washoutRatio, hessianRatio),
+      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
+      curvatures: createHessianEstimator(dithers, lag, washoutRatio, hessianRatio),
       inverse: createRiccatiFilter(
         axes.map(({ curvature }) => curvature),
         inverseRate,
       ),
       curvature: new Float64Array(n * n),
-    };
+    }));
     resetFilters(state);
     writeEstimates(state.estimate, state.signals);
     return state;
@@ -153,10 +147,10 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
   step(state, input, dtS) {
     const { signals } = state;
     if (admitPeriodic(state, input, dtS)) {
-      state.estimator.told[0] = input.objective;
+      state.own.estimator.told[0] = input.objective;
       climb(state, dtS);
       perturb(state, dtS);
-      writeGradientSignals(state.estimator, signals);
+      writeGradientSignals(state.own.estimator, signals);
       writeHessian(state);
     } else {
       resetFilters(state);
@@ -166,7 +160,8 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
 };
 
 function climb(state: NewtonLawState, dtS: number): void {
-  const { parameters, estimator, curvatures, dithers, demodulators, inverse, curvature, change } = state;
+  const { dithers, demodulators, change } = state;
+  const { parameters, estimator, curvatures, inverse, curvature } = state.own;
   demodulate(state);
   stepGradientEstimator(estimator, demodulators, dtS);
   stepHessianEstimator(curvatures, dithers, estimator.told, dtS);
@@ -179,7 +174,7 @@ function climb(state: NewtonLawState, dtS: number): void {
 }
 
 /** The Hessian begins again from what the inverse holds. */
-function resetFilters({ estimator, curvatures, inverse }: NewtonLawState): void {
+function resetFilters({ own: { estimator, curvatures, inverse } }: NewtonLawState): void {
   resetGradientEstimator(estimator);
   resetHessianEstimator(curvatures, inverse.inverse);
 }
@@ -191,7 +186,7 @@ function hessianNames(actuators: number): string[] {
   return rows.flatMap((row) => rows.slice(0, row).map((column) => `hessian${row}${column}`));
 }
 
-function writeHessian({ curvatures, signals, estimate }: NewtonLawState): void {
+function writeHessian({ own: { curvatures }, signals, estimate }: NewtonLawState): void {
   const { entries, hessian, size } = curvatures;
   const from = estimate.length * gradientSignals.length;
   for (let e = 0; e < entries.length; e += 1) {

@@ -11,13 +11,6 @@ import type { PeriodicAxis, TaperParameters } from './law-parameters.js';
 import { admit, createSeekCore, fitDithers, remember, retreat, type SeekCore } from './seek-core.js';
 import type { SeekingInput } from './seeking-law.js';
 
-/** The core of a law that dithers periodically. */
-export interface PeriodicCore extends SeekCore {
-  readonly dithers: readonly AxisDither[];
-  /** What the objective of this step is multiplied with, 1 / actuator unit. */
-  readonly demodulators: Float64Array;
-}
-
 export interface PeriodicCoreSetup {
   axes: readonly PeriodicAxis[];
   start: ArrayLike<number>;
@@ -27,19 +20,20 @@ export interface PeriodicCoreSetup {
   taper: TaperParameters;
 }
 
-export function createPeriodicCore({ axes, washoutRatio, ...setup }: PeriodicCoreSetup): PeriodicCore {
-  const trialS = Math.max(...axes.map(({ periodS }) => periodS));
-  const core = createSeekCore({
+/** @param own makes what belongs to the law alone, from its dithers */
+export function createPeriodicCore<Own>(
+  { axes, washoutRatio, ...setup }: PeriodicCoreSetup,
+  own: (dithers: readonly AxisDither[]) => Own,
+): SeekCore<Own> {
+  const dithers = axes.map((axis) => createAxisDither(axis, washoutRatio));
+  return createSeekCore({
     axes,
     ...setup,
-    trialS,
+    dithers,
+    own: own(dithers),
+    trialS: Math.max(...axes.map(({ periodS }) => periodS)),
     reach: axes.map(({ dither, amplitude }) => (dither === 'measured' ? 0 : amplitude)),
   });
-  return {
-    ...core,
-    dithers: axes.map((axis) => createAxisDither(axis, washoutRatio)),
-    demodulators: new Float64Array(axes.length),
-  };
 }
 
 /**
@@ -47,7 +41,7 @@ export function createPeriodicCore({ axes, washoutRatio, ...setup }: PeriodicCor
  *
  * @returns false where the law has to reset its filters
  */
-export function admitPeriodic(core: PeriodicCore, input: SeekingInput, dtS: number): boolean {
+export function admitPeriodic(core: SeekCore, input: SeekingInput, dtS: number): boolean {
   const { dithers } = core;
   if (!admit(core, input, dtS)) {
     resetDithers(core);
@@ -66,23 +60,23 @@ export function admitPeriodic(core: PeriodicCore, input: SeekingInput, dtS: numb
   return true;
 }
 
-export function retreatPeriodic(core: PeriodicCore): void {
+export function retreatPeriodic(core: SeekCore): void {
   retreat(core);
   resetDithers(core);
 }
 
 /** Ends a step: remembers good points and puts out the next dither. */
-export function perturb(core: PeriodicCore, dtS: number): void {
+export function perturb(core: SeekCore, dtS: number): void {
   remember(core, dtS);
   writeNextDithers(core.dithers, core.taper, core.dither, dtS);
   fitDithers(core);
 }
 
 /** Writes what the objective of this step is to be multiplied with. */
-export function demodulate({ dithers, demodulators }: PeriodicCore): void {
+export function demodulate({ dithers, demodulators }: SeekCore): void {
   writeDemodulators(dithers, demodulators);
 }
 
-function resetDithers({ dithers }: PeriodicCore): void {
+function resetDithers({ dithers }: SeekCore): void {
   for (let i = 0; i < dithers.length; i += 1) resetAxisDither(dithers[i] as AxisDither);
 }

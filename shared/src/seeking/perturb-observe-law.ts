@@ -14,7 +14,7 @@ const parametersSchema = z
   });
 export type PerturbObserveLawParameters = z.infer<typeof parametersSchema>;
 
-export interface PerturbObserveLawState extends SeekCore {
+interface PerturbObserveOwn {
   readonly parameters: PerturbObserveLawParameters;
   /** Direction in which each actuator goes next, +1 or −1. */
   readonly directions: Float64Array;
@@ -24,6 +24,8 @@ export interface PerturbObserveLawState extends SeekCore {
   /** Mean of the objective before the last move; NaN before the first. */
   before: number;
 }
+
+export type PerturbObserveLawState = SeekCore<PerturbObserveOwn>;
 
 const signalNames = ['estimate', 'direction'];
 
@@ -51,7 +53,9 @@ export const perturbObserveLaw: SeekingLaw<PerturbObserveLawParameters, PerturbO
 
   init(parameters, start) {
     const { axes, taper, dwellS } = parameters;
-    const core = createSeekCore({
+    const directions = new Float64Array(axes.length).fill(1);
+    const state = createSeekCore({
+      own: { parameters, directions, moved: 0, dwell: createDwell(), before: NaN },
       axes,
       start,
       taper,
@@ -59,15 +63,16 @@ export const perturbObserveLaw: SeekingLaw<PerturbObserveLawParameters, PerturbO
       signals: axes.length * signalNames.length,
       reach: axes.map(() => 0),
     });
-    writeEstimates(core.estimate, core.signals, signalNames.length);
-    const directions = new Float64Array(axes.length).fill(1);
-    return { ...core, settleS: 0, parameters, directions, moved: 0, dwell: createDwell(), before: NaN };
+    state.settleS = 0;
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+    return state;
   },
 
   step(state, input, dtS) {
+    const { own } = state;
     if (!admit(state, input, dtS)) turnBack(state);
     else {
-      if (stepDwell(state.dwell, state.parameters.dwellS, state.parameters.settleS, input.objective, dtS))
+      if (stepDwell(own.dwell, own.parameters.dwellS, own.parameters.settleS, input.objective, dtS))
         judge(state, dtS);
       remember(state, dtS);
     }
@@ -76,13 +81,14 @@ export const perturbObserveLaw: SeekingLaw<PerturbObserveLawParameters, PerturbO
 };
 
 function judge(state: PerturbObserveLawState, dtS: number): void {
-  const { dwell, directions, taper, signals, parameters, change } = state;
+  const { own, taper, signals, change } = state;
+  const { dwell, directions, parameters } = own;
   const { axes } = parameters;
   const mean = dwell.sum / dwell.count;
-  if (mean < state.before) directions[state.moved] = -at(directions, state.moved);
+  if (mean < own.before) directions[own.moved] = -at(directions, own.moved);
   // The first dwell shows what the start is worth and moves nothing yet but the first actuator.
-  const next = state.before === state.before ? (state.moved + 1) % axes.length : 0;
-  state.before = mean;
+  const next = own.before === own.before ? (own.moved + 1) % axes.length : 0;
+  own.before = mean;
   restartDwell(dwell);
   const { amplitude } = axes[next] as { amplitude: number };
   const step = amplitude * taper.scale;
@@ -95,18 +101,19 @@ function judge(state: PerturbObserveLawState, dtS: number): void {
   change.fill(0);
   change[next] = at(directions, next) * step;
   moveAll(state, Math.max(parameters.dwellS, dtS));
-  state.moved = next;
+  own.moved = next;
   for (let i = 0; i < axes.length; i += 1) signals[i * signalNames.length + 1] = at(directions, i);
 }
 
 /** Away from where the objective is not valid: the way of the last move. */
 function turnBack(state: PerturbObserveLawState): void {
-  if (state.before === state.before) directionsTurned(state);
-  state.before = NaN;
+  const { own } = state;
+  if (own.before === own.before) turnDirection(own);
+  own.before = NaN;
   state.settleS = 0;
-  restartDwell(state.dwell);
+  restartDwell(own.dwell);
 }
 
-function directionsTurned({ directions, moved }: PerturbObserveLawState): void {
+function turnDirection({ directions, moved }: PerturbObserveOwn): void {
   directions[moved] = -at(directions, moved);
 }

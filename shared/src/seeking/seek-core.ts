@@ -1,15 +1,24 @@
+import type { AxisDither } from './axis-dither.js';
 import type { SeekingAxis, TaperParameters } from './law-parameters.js';
 import { ditherWithin, held, highestWithin, lowestWithin } from './seek-box.js';
 import type { SeekingInput, SeekingState } from './seeking-law.js';
 import { createTaper, restoreTaper, stepTaper, type TaperState } from './taper.js';
+import { isUsable } from './usable-number.js';
 
-/** What is larger is a fault and no measurement; it would overflow in products with itself. */
-const magnitudeMax = 1e100;
 /** Longest step that is taken for one, s. */
 const stepMaxS = 1e6;
 
-/** The pieces that all laws share: box, validity with retreat, speed limit, taper. */
-export interface SeekCore extends SeekingState {
+/**
+ * The pieces that all laws share: box, validity with retreat, speed limit, taper. The states of all laws are objects
+ * of this one shape, so that the shared code stays quick when several laws run in one process.
+ */
+export interface SeekCore<Own = unknown> extends SeekingState {
+  /** What belongs to the law alone. */
+  readonly own: Own;
+  /** Periodic dithers, one per actuator; none for laws that try points. */
+  readonly dithers: readonly AxisDither[];
+  /** What the objective of this step is multiplied with for each of them, 1 / actuator unit. */
+  readonly demodulators: Float64Array;
   /** Box of what is asked for, actuator units. */
   readonly min: Float64Array;
   readonly max: Float64Array;
@@ -26,7 +35,9 @@ export interface SeekCore extends SeekingState {
   readonly taper: TaperState;
 }
 
-export interface SeekCoreSetup {
+export interface SeekCoreSetup<Own> {
+  own: Own;
+  dithers?: readonly AxisDither[];
   axes: readonly SeekingAxis[];
   start: ArrayLike<number>;
   trialS: number;
@@ -36,7 +47,8 @@ export interface SeekCoreSetup {
   reach: readonly number[];
 }
 
-export function createSeekCore({ axes, start, trialS, signals, taper, reach }: SeekCoreSetup): SeekCore {
+export function createSeekCore<Own>(setup: SeekCoreSetup<Own>): SeekCore<Own> {
+  const { axes, start, trialS, signals, taper, reach, dithers = [] } = setup;
   const lowest = Float64Array.from(axes, ({ min }, i) => lowestWithin(min, reach[i] ?? 0));
   const highest = Float64Array.from(axes, ({ max }, i) => highestWithin(max, reach[i] ?? 0));
   axes.forEach(({ min, max }, i) => {
@@ -48,6 +60,9 @@ export function createSeekCore({ axes, start, trialS, signals, taper, reach }: S
     return Number.isFinite(value) ? held(value, at(lowest, i), at(highest, i)) : at(lowest, i);
   });
   return {
+    own: setup.own,
+    dithers,
+    demodulators: new Float64Array(dithers.length),
     min: Float64Array.from(axes, ({ min }) => min),
     max: Float64Array.from(axes, ({ max }) => max),
     speedMax: Float64Array.from(axes, ({ speedMax }) => speedMax ?? Infinity),
@@ -70,11 +85,6 @@ export function createSeekCore({ axes, start, trialS, signals, taper, reach }: S
 /** An entry of an array whose bounds are known. */
 export function at(values: Float64Array, i: number): number {
   return values[i] as number;
-}
-
-/** @returns true for a number that a law can calculate with */
-export function isUsable(value: number | undefined): value is number {
-  return value !== undefined && value <= magnitudeMax && value >= -magnitudeMax;
 }
 
 /**

@@ -17,14 +17,8 @@ import {
   taperParameter,
   washoutRatioParameter,
 } from './law-parameters.js';
-import {
-  admitPeriodic,
-  createPeriodicCore,
-  demodulate,
-  perturb,
-  type PeriodicCore,
-} from './periodic-core.js';
-import { at, isSettled, moveAll } from './seek-core.js';
+import { admitPeriodic, createPeriodicCore, demodulate, perturb } from './periodic-core.js';
+import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 import { recoveredShare } from './washout-share.js';
@@ -53,12 +47,14 @@ const parametersSchema = z.object({
 });
 export type SlopeLawParameters = z.infer<typeof parametersSchema>;
 
-export interface SlopeLawState extends PeriodicCore {
+interface SlopeOwn {
   readonly parameters: SlopeLawParameters;
   readonly estimator: GradientEstimator;
   /** What the estimator shows at the wanted slope, objective unit / actuator unit. */
   readonly references: Float64Array;
 }
+
+export type SlopeLawState = SeekCore<SlopeOwn>;
 
 /**
  * Slope seeking: rests where the objective has a given slope, for plants whose best point is a cliff's edge or
@@ -84,28 +80,22 @@ export const slopeLaw: SeekingLaw<SlopeLawParameters, SlopeLawState> = {
 
   init(parameters, start) {
     const { axes, taper, washoutRatio, lowPassRatio } = parameters;
-    const core = createPeriodicCore({
-      axes,
-      start,
-      taper,
-      washoutRatio,
-      signals: axes.length * gradientSignals.length,
-    });
-    writeEstimates(core.estimate, core.signals);
-    const references = Float64Array.from(
-      axes,
-      (a) => a.slope * (a.slopeShare ?? recoveredShare(a.dither, washoutRatio, a.phaseRad)),
-    );
-    return {
-      ...core,
+    const signals = axes.length * gradientSignals.length;
+    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
       parameters,
-      references,
-      estimator: createGradientEstimator(core.dithers, washoutRatio, lowPassRatio),
-    };
+      references: Float64Array.from(
+        axes,
+        (a) => a.slope * (a.slopeShare ?? recoveredShare(a.dither, washoutRatio, a.phaseRad)),
+      ),
+      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
+    }));
+    writeEstimates(state.estimate, state.signals);
+    return state;
   },
 
   step(state, input, dtS) {
-    const { parameters, estimator, demodulators, change, signals, references } = state;
+    const { demodulators, change, signals } = state;
+    const { parameters, estimator, references } = state.own;
     const { axes } = parameters;
     if (admitPeriodic(state, input, dtS)) {
       demodulate(state);

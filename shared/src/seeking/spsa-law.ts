@@ -49,7 +49,7 @@ const parametersSchema = z
   });
 export type SpsaLawParameters = z.infer<typeof parametersSchema>;
 
-export interface SpsaLawState extends SeekCore {
+interface SpsaOwn {
   readonly parameters: SpsaLawParameters;
   readonly random: SeededUniform;
   /** Trials that are done. */
@@ -61,6 +61,8 @@ export interface SpsaLawState extends SeekCore {
   /** Mean of the objective at the first point of the trial. */
   above: number;
 }
+
+export type SpsaLawState = SeekCore<SpsaOwn>;
 
 const signalNames = ['estimate', 'gradient'];
 
@@ -100,7 +102,16 @@ export const spsaLaw: SeekingLaw<SpsaLawParameters, SpsaLawState> = {
 
   init(parameters, start) {
     const { axes, taper, dwellS, seed } = parameters;
-    const core = createSeekCore({
+    const state = createSeekCore({
+      own: {
+        parameters,
+        random: createSeededUniform(seed),
+        trial: 0,
+        side: 0,
+        signs: new Float64Array(axes.length),
+        dwell: createDwell(),
+        above: NaN,
+      },
       axes,
       start,
       taper,
@@ -108,47 +119,39 @@ export const spsaLaw: SeekingLaw<SpsaLawParameters, SpsaLawState> = {
       signals: axes.length * signalNames.length,
       reach: axes.map(({ amplitude }) => amplitude),
     });
-    writeEstimates(core.estimate, core.signals, signalNames.length);
-    return {
-      ...core,
-      settleS: 0,
-      parameters,
-      random: createSeededUniform(seed),
-      trial: 0,
-      side: 0,
-      signs: new Float64Array(axes.length),
-      dwell: createDwell(),
-      above: NaN,
-    };
+    state.settleS = 0;
+    writeEstimates(state.estimate, state.signals, signalNames.length);
+    return state;
   },
 
   step(state, input, dtS) {
+    const { own } = state;
     if (!admit(state, input, dtS)) {
-      state.side = 0;
+      own.side = 0;
       state.settleS = 0;
-      restartDwell(state.dwell);
-    } else if (state.side === 0) {
+      restartDwell(own.dwell);
+    } else if (own.side === 0) {
       beginTrial(state);
-    } else if (
-      stepDwell(state.dwell, state.parameters.dwellS, state.parameters.settleS, input.objective, dtS)
-    ) {
+    } else if (stepDwell(own.dwell, own.parameters.dwellS, own.parameters.settleS, input.objective, dtS)) {
       endPoint(state);
     }
-    if (state.side !== 0) remember(state, dtS);
+    if (own.side !== 0) remember(state, dtS);
     writeEstimates(state.estimate, state.signals, signalNames.length);
   },
 };
 
 function beginTrial(state: SpsaLawState): void {
-  for (let i = 0; i < state.signs.length; i += 1) state.signs[i] = nextSign(state.random);
+  const { own } = state;
+  for (let i = 0; i < own.signs.length; i += 1) own.signs[i] = nextSign(own.random);
   perturbTo(state, 1);
 }
 
 function perturbTo(state: SpsaLawState, side: number): void {
-  const { signs, dither } = state;
-  const { axes } = state.parameters;
-  state.side = side;
-  restartDwell(state.dwell);
+  const { own, dither } = state;
+  const { signs } = own;
+  const { axes } = own.parameters;
+  own.side = side;
+  restartDwell(own.dwell);
   for (let i = 0; i < signs.length; i += 1) {
     const { amplitude } = axes[i] as { amplitude: number };
     dither[i] = side * at(signs, i) * reachOf(state, amplitude);
@@ -156,15 +159,16 @@ function perturbTo(state: SpsaLawState, side: number): void {
   fitDithers(state);
 }
 
-function reachOf({ parameters, trial, taper }: SpsaLawState, amplitude: number): number {
+function reachOf({ own: { parameters, trial }, taper }: SpsaLawState, amplitude: number): number {
   return taper.scale * spsaAmplitude(amplitude, parameters.amplitudeExponent, trial);
 }
 
 function endPoint(state: SpsaLawState): void {
-  const { parameters, dwell, signs, trial } = state;
+  const { own } = state;
+  const { parameters, dwell, signs, trial } = own;
   const mean = dwell.sum / dwell.count;
-  if (state.side === 1) {
-    state.above = mean;
+  if (own.side === 1) {
+    own.above = mean;
     perturbTo(state, -1);
     return;
   }
@@ -172,11 +176,11 @@ function endPoint(state: SpsaLawState): void {
   const decay = spsaGain((1 + stability) ** gainExponent, stability, gainExponent, trial);
   for (let i = 0; i < axes.length; i += 1) {
     const { amplitude, gain } = axes[i] as { amplitude: number; gain: number };
-    const gradient = (state.above - mean) / (2 * reachOf(state, amplitude) * at(signs, i));
+    const gradient = (own.above - mean) / (2 * reachOf(state, amplitude) * at(signs, i));
     state.change[i] = gain * decay * gradient;
     state.signals[i * signalNames.length + 1] = gradient;
   }
   moveAll(state, 2 * dwellS);
-  state.trial = trial + 1;
+  own.trial = trial + 1;
   beginTrial(state);
 }

@@ -22,7 +22,7 @@ describe('simultaneous perturbation', () => {
     const trials = 30;
     const state = spsaLaw.init(parameters, [1]);
     let applied = 1;
-    while (state.trial < trials) {
+    while (state.own.trial < trials) {
       spsaLaw.step(state, { objective: -(applied ** 2), isValid: true }, 0.25);
       applied = (state.estimate[0] ?? NaN) + (state.dither[0] ?? NaN);
     }

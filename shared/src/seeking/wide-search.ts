@@ -2,8 +2,9 @@ import { z } from 'zod';
 import { createDwell, restartDwell, stepDwell, type Dwell } from './dwell.js';
 import { parameter } from './law-parameters.js';
 import { held } from './seek-box.js';
-import { at, isUsable } from './seek-core.js';
+import { at } from './seek-core.js';
 import type { SeekingInput, SeekingLaw, SeekingState } from './seeking-law.js';
+import { isUsable } from './usable-number.js';
 
 const duration = z.number().min(0).max(1e9);
 

@@ -1,7 +1,7 @@
 import type { CompiledExpression } from '../../expressions/expression.types.js';
 import { gradientLaw, type GradientLawState } from '../../seeking/gradient-law.js';
-import { isUsable } from '../../seeking/seek-core.js';
 import type { SeekingInput } from '../../seeking/seeking-law.js';
+import { isUsable } from '../../seeking/usable-number.js';
 import type { StepOf } from '../experiment.schema.js';
 import type { SequencerInput } from '../sequencer.types.js';
 import { ActuatorRamp, whereHeld } from './actuator-ramp.js';
