@@ -1,0 +1,3 @@
+import { describeDitherPlans } from './plan-dithers.property.fixture.js';
+
+describeDitherPlans(300);
