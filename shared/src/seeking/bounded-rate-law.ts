@@ -1,8 +1,8 @@
 import { z } from 'zod';
 import { writeEstimates } from './gradient-estimator.js';
 import { axesOf, gainParameter, periodicAxis, taperParameter } from './law-parameters.js';
-import { ditherWithin, held } from './seek-box.js';
-import { admit, at, createSeekCore, isSettled, remember, type SeekCore } from './seek-core.js';
+import { held } from './seek-box.js';
+import { admit, at, createSeekCore, fitDithers, isSettled, remember, type SeekCore } from './seek-core.js';
 import type { SeekingInput, SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
@@ -116,15 +116,16 @@ function climb(state: BoundedRateLawState, { objective }: SeekingInput, dtS: num
 }
 
 /** Holds the applied value in the box, the estimate in its own, and keeps their difference below the amplitude. */
-function placeAll({ own, estimate, dither, lowest, highest, min, max }: BoundedRateLawState): void {
+function placeAll(state: BoundedRateLawState): void {
+  const { own, estimate, dither, lowest, highest, min, max } = state;
   const { applied, ripple } = own;
   for (let i = 0; i < applied.length; i += 1) {
     const next = held(at(applied, i), at(min, i), at(max, i));
-    const middle = held(next - at(ripple, i), at(lowest, i), at(highest, i));
-    estimate[i] = middle;
-    dither[i] = ditherWithin(middle, next - middle, at(min, i), at(max, i));
-    applied[i] = middle + at(dither, i);
+    estimate[i] = held(next - at(ripple, i), at(lowest, i), at(highest, i));
+    dither[i] = next - at(estimate, i);
   }
+  fitDithers(state);
+  for (let i = 0; i < applied.length; i += 1) applied[i] = at(estimate, i) + at(dither, i);
 }
 
 function walkBack(state: BoundedRateLawState, dtS: number): void {

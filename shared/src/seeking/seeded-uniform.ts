@@ -5,7 +5,7 @@ export interface SeededUniform {
 
 /** @param seed any integer */
 export function createSeededUniform(seed: number): SeededUniform {
-  return { counter: seed >>> 0 };
+  return { counter: seed | 0 };
 }
 
 /**
@@ -15,14 +15,19 @@ export function createSeededUniform(seed: number): SeededUniform {
  * @realtime safe: allocates nothing
  */
 export function nextUniform(state: SeededUniform): number {
-  state.counter = (state.counter + 0x9e3779b9) >>> 0;
-  let x = state.counter;
-  x = Math.imul(x ^ (x >>> 16), 0x85ebca6b);
-  x = Math.imul(x ^ (x >>> 13), 0xc2b2ae35);
-  return ((x ^ (x >>> 16)) >>> 0) / 4_294_967_296;
+  return (nextBits(state) >>> 0) / 4_294_967_296;
 }
 
 /** +1 or −1, each as likely. */
 export function nextSign(state: SeededUniform): number {
-  return nextUniform(state) < 0.5 ? -1 : 1;
+  return nextBits(state) < 0 ? 1 : -1;
+}
+
+/** 32 bits as a signed integer. */
+function nextBits(state: SeededUniform): number {
+  state.counter = (state.counter + 0x9e3779b9) | 0;
+  let x = state.counter;
+  x = Math.imul(x ^ (x >>> 16), 0x85ebca6b);
+  x = Math.imul(x ^ (x >>> 13), 0xc2b2ae35);
+  return x ^ (x >>> 16);
 }

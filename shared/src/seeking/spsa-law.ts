@@ -57,6 +57,8 @@ interface SpsaOwn {
   /** 0 before the first point, +1 and −1 at the points of a trial. */
   side: number;
   readonly signs: Float64Array;
+  /** Perturbation of each actuator in this trial, c_k, actuator units. */
+  readonly reaches: Float64Array;
   readonly dwell: Dwell;
   /** Mean of the objective at the first point of the trial. */
   above: number;
@@ -109,6 +111,7 @@ export const spsaLaw: SeekingLaw<SpsaLawParameters, SpsaLawState> = {
         trial: 0,
         side: 0,
         signs: new Float64Array(axes.length),
+        reaches: new Float64Array(axes.length),
         dwell: createDwell(),
         above: NaN,
       },
@@ -141,31 +144,29 @@ export const spsaLaw: SeekingLaw<SpsaLawParameters, SpsaLawState> = {
 };
 
 function beginTrial(state: SpsaLawState): void {
-  const { own } = state;
-  for (let i = 0; i < own.signs.length; i += 1) own.signs[i] = nextSign(own.random);
+  const { parameters, signs, reaches, random, trial } = state.own;
+  const { axes, amplitudeExponent } = parameters;
+  const { scale } = state.taper;
+  for (let i = 0; i < signs.length; i += 1) {
+    const { amplitude } = axes[i] as { amplitude: number };
+    signs[i] = nextSign(random);
+    reaches[i] = scale * spsaAmplitude(amplitude, amplitudeExponent, trial);
+  }
   perturbTo(state, 1);
 }
 
 function perturbTo(state: SpsaLawState, side: number): void {
   const { own, dither } = state;
-  const { signs } = own;
-  const { axes } = own.parameters;
+  const { signs, reaches } = own;
   own.side = side;
   restartDwell(own.dwell);
-  for (let i = 0; i < signs.length; i += 1) {
-    const { amplitude } = axes[i] as { amplitude: number };
-    dither[i] = side * at(signs, i) * reachOf(state, amplitude);
-  }
+  for (let i = 0; i < signs.length; i += 1) dither[i] = side * at(signs, i) * at(reaches, i);
   fitDithers(state);
 }
 
-function reachOf({ own: { parameters, trial }, taper }: SpsaLawState, amplitude: number): number {
-  return taper.scale * spsaAmplitude(amplitude, parameters.amplitudeExponent, trial);
-}
-
 function endPoint(state: SpsaLawState): void {
-  const { own } = state;
-  const { parameters, dwell, signs, trial } = own;
+  const { own, change, signals } = state;
+  const { parameters, dwell, signs, reaches, trial } = own;
   const mean = dwell.sum / dwell.count;
   if (own.side === 1) {
     own.above = mean;
@@ -175,10 +176,10 @@ function endPoint(state: SpsaLawState): void {
   const { axes, stability, gainExponent, dwellS } = parameters;
   const decay = spsaGain((1 + stability) ** gainExponent, stability, gainExponent, trial);
   for (let i = 0; i < axes.length; i += 1) {
-    const { amplitude, gain } = axes[i] as { amplitude: number; gain: number };
-    const gradient = (own.above - mean) / (2 * reachOf(state, amplitude) * at(signs, i));
-    state.change[i] = gain * decay * gradient;
-    state.signals[i * signalNames.length + 1] = gradient;
+    const { gain } = axes[i] as { gain: number };
+    const gradient = (own.above - mean) / (2 * at(reaches, i) * at(signs, i));
+    change[i] = gain * decay * gradient;
+    signals[i * signalNames.length + 1] = gradient;
   }
   moveAll(state, 2 * dwellS);
   own.trial = trial + 1;

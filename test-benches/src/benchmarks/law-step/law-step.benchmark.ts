@@ -1,3 +1,5 @@
+import { setFlagsFromString } from 'node:v8';
+import { runInNewContext } from 'node:vm';
 import {
   seekingLaws,
   type SeekingInput,
@@ -70,6 +72,8 @@ function lawStep(law: SeekingLaw<object, SeekingState>, { parameters, bare }: Ca
         times.law.push(nsPerStep(() => climb(steps)));
         times.bare.push(nsPerStep(() => bare(steps, amplitude)));
       }
+      // What was left lying before is none of the law's; what it leaves itself stays counted.
+      collectGarbage();
       const before = process.memoryUsage().heapUsed;
       climb(heapSteps);
       const heapGrowthBytes = process.memoryUsage().heapUsed - before;
@@ -107,6 +111,12 @@ function climber(law: SeekingLaw<object, SeekingState>, settings: object): (coun
     }
     return applied;
   };
+}
+
+function collectGarbage(): void {
+  setFlagsFromString('--expose-gc');
+  const collect = runInNewContext('gc') as () => void;
+  collect();
 }
 
 function nsPerStep(act: () => number): number {
