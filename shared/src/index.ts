@@ -1,3 +1,6 @@
+export * from './dither/dither-amplitude.js';
+export * from './dither/dither-lines.js';
+export * from './dither/plan-dithers.js';
 export * from './envelopes/envelope.schema.js';
 export * from './envelopes/guard.js';
 export * from './envelopes/interlock-judge.js';
@@ -95,6 +98,8 @@ export * from './signals/sliding-statistics.js';
 export * from './signals/trace-peak.js';
 export * from './signals/trace-statistics.js';
 export * from './signals/windows.js';
+export * from './sizing/predict-seeking.js';
+export * from './sizing/size-seeking.js';
 export * from './units/channel-units.js';
 export * from './units/parse-unit.js';
 export * from './units/unit-table.js';
