@@ -93,18 +93,18 @@ export const boundedRateLaw: SeekingLaw<BoundedRateLawParameters, BoundedRateLaw
   },
 };
 
-function climb(state: BoundedRateLawState, { objective }: SeekingInput, dtS: number): void {
+function climb(state: BoundedRateLawState, input: SeekingInput, dtS: number): void {
   const { own, signals } = state;
   const { parameters, phases, applied, ripple } = own;
   const { scale } = state.taper;
-  if (own.reference !== own.reference) own.reference = objective;
+  if (own.reference !== own.reference) own.reference = input.objective;
   const isAdapting = isSettled(state, dtS);
   remember(state, dtS);
   for (let i = 0; i < applied.length; i += 1) {
     const { periodS, amplitude, gain } = parameters.axes[i] as Axis;
     const omega = (2 * Math.PI) / periodS;
     const reach = amplitude * scale;
-    const turn = isAdapting ? ((2 * gain) / (reach * reach * omega)) * (objective - own.reference) : 0;
+    const turn = isAdapting ? ((2 * gain) / (reach * reach * omega)) * (input.objective - own.reference) : 0;
     const middle = at(phases, i) + (omega * dtS) / 2;
     phases[i] = (at(phases, i) + omega * dtS) % (2 * Math.PI);
     const speed = reach * omega * Math.cos(middle - turn);
@@ -120,8 +120,8 @@ function placeAll(state: BoundedRateLawState): void {
   const { own, estimate, dither, lowest, highest, min, max } = state;
   const { applied, ripple } = own;
   for (let i = 0; i < applied.length; i += 1) {
-    const next = held(at(applied, i), at(min, i), at(max, i));
-    estimate[i] = held(next - at(ripple, i), at(lowest, i), at(highest, i));
+    const next = Math.max(Math.min(at(applied, i), at(max, i)), at(min, i));
+    estimate[i] = Math.max(Math.min(next - at(ripple, i), at(highest, i)), at(lowest, i));
     dither[i] = next - at(estimate, i);
   }
   fitDithers(state);

@@ -8,22 +8,22 @@ describe('the gradient filter', () => {
   it('is the closed form of the quadratic programme with one constraint', () => {
     // u = (1, 0), ∇h = (−1, −1), h = 0.1, c = 2: ∇h·u + c·h = −0.8, so u + ∇h·0.8/2 = (0.6, −0.4).
     const u = Float64Array.of(1, 0);
-    expect(filterDirection(u, Float64Array.of(-1, -1), 0.1, 2)).toBe(true);
+    expect(filterDirection(u, Float64Array.of(-1, -1), Float64Array.of(0.1), { approachRate: 2 })).toBe(true);
     expect(u[0]).toBeCloseTo(0.6, 12);
     expect(u[1]).toBeCloseTo(-0.4, 12);
   });
 
   it('changes nothing in the interior, nor where the slope is not known', () => {
     const u = Float64Array.of(1, 0);
-    expect(filterDirection(u, Float64Array.of(-1, -1), 1, 2)).toBe(false);
-    expect(filterDirection(u, Float64Array.of(0, 0), -1, 2)).toBe(false);
+    expect(filterDirection(u, Float64Array.of(-1, -1), Float64Array.of(1), { approachRate: 2 })).toBe(false);
+    expect(filterDirection(u, Float64Array.of(0, 0), Float64Array.of(-1), { approachRate: 2 })).toBe(false);
     expect([...u]).toEqual([1, 0]);
   });
 
   it('leads back at the approach rate from beyond the bound', () => {
     const u = Float64Array.of(0, 0);
     const slope = Float64Array.of(3, 4);
-    filterDirection(u, slope, -0.5, 2);
+    filterDirection(u, slope, Float64Array.of(-0.5), { approachRate: 2 });
     // ∇h·u = −c·h: the margin grows with 1 a second.
     expect(3 * (u[0] ?? NaN) + 4 * (u[1] ?? NaN)).toBeCloseTo(1, 12);
   });

@@ -135,31 +135,33 @@ export const constrainedLaw: SeekingLaw<ConstrainedLawParameters, ConstrainedLaw
 
   step(state, input, dtS) {
     const { signals } = state;
-    const { parameters, estimator, marginEstimator } = state.own;
-    const margin = marginOf(parameters, input);
+    const { estimator, marginEstimator } = state.own;
+    const isKnown = tellMargin(state.own, input);
     if (!admitPeriodic(state, input, dtS)) resetFilters(state.own);
-    else if (!isUsable(margin)) {
+    else if (!isKnown) {
       retreatPeriodic(state);
       resetFilters(state.own);
     } else {
       estimator.told[0] = input.objective;
-      marginEstimator.told[0] = margin;
       climb(state, dtS);
       perturb(state, dtS);
       writeGradientSignals(estimator, signals, stride);
       for (let i = 0; i < state.estimate.length; i += 1) {
         signals[i * stride + 4] = at(marginEstimator.gradient, i);
       }
-      signals[state.estimate.length * stride] = margin;
+      signals[state.estimate.length * stride] = at(marginEstimator.told, 0);
     }
     writeEstimates(state.estimate, signals, stride);
   },
 };
 
-function marginOf({ side, reserve }: ConstrainedLawParameters, input: SeekingInput): number {
+/** Writes the distance to the bound, above zero on the allowed side. @returns false where it is not known */
+function tellMargin({ parameters, marginEstimator }: ConstrainedOwn, input: SeekingInput): boolean {
   const { constraint, bound } = input;
-  if (constraint === undefined || bound === undefined) return NaN;
-  return (side === 'above' ? constraint - bound : bound - constraint) - reserve;
+  if (!isUsable(constraint) || !isUsable(bound)) return false;
+  const margin = parameters.side === 'above' ? constraint - bound : bound - constraint;
+  marginEstimator.told[0] = margin - parameters.reserve;
+  return true;
 }
 
 function resetFilters({ estimator, marginEstimator, marginFilter }: ConstrainedOwn): void {
@@ -171,7 +173,7 @@ function resetFilters({ estimator, marginEstimator, marginFilter }: ConstrainedO
 function climb(state: ConstrainedLawState, dtS: number): void {
   const { demodulators, change } = state;
   const { parameters, estimator, marginEstimator, marginFilter, direction, marginSlope } = state.own;
-  const { axes, method, approachRate } = parameters;
+  const { axes, method } = parameters;
   const margin = at(marginEstimator.told, 0);
   const isBarrier = method === 'barrier';
   if (isBarrier) {
@@ -190,7 +192,7 @@ function climb(state: ConstrainedLawState, dtS: number): void {
     direction[i] = (gain * at(estimator.gradient, i)) / amplitude;
     marginSlope[i] = at(marginEstimator.gradient, i) * amplitude;
   }
-  if (!isBarrier) filterDirection(direction, marginSlope, at(marginFilter.output, 0), approachRate);
+  if (!isBarrier) filterDirection(direction, marginSlope, marginFilter.output, parameters);
   for (let i = 0; i < axes.length; i += 1) {
     change[i] = at(direction, i) * (axes[i] as Axis).amplitude * dtS;
   }

@@ -5,8 +5,8 @@
  *
  * @param wanted direction, changed in place; all three in scaled actuator units, so that axes compare
  * @param slope ∇h
- * @param margin h
- * @param approachRate c, 1/s
+ * @param margin h, one number (in an array, so that it is not put on the heap on its way)
+ * @param limits c, 1/s
  * @returns true where the direction was changed
  * @source A. D. Ames, X. Xu, J. W. Grizzle and P. Tabuada (2017), "Control barrier function based quadratic
  * programs for safety critical systems", IEEE Transactions on Automatic Control 62:3861–3876 (from memory); with
@@ -16,8 +16,8 @@
 export function filterDirection(
   wanted: Float64Array,
   slope: Float64Array,
-  margin: number,
-  approachRate: number,
+  margin: Float64Array,
+  limits: { readonly approachRate: number },
 ): boolean {
   let along = 0;
   let square = 0;
@@ -26,7 +26,7 @@ export function filterDirection(
     along += s * (wanted[i] as number);
     square += s * s;
   }
-  const excess = along + approachRate * margin;
+  const excess = along + limits.approachRate * (margin[0] as number);
   if (!(excess < 0) || square === 0) return false;
   for (let i = 0; i < wanted.length; i += 1) {
     wanted[i] = (wanted[i] as number) - ((slope[i] as number) * excess) / square;

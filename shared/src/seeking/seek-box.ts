@@ -1,6 +1,6 @@
 /** @returns the value held between two limits; the lower limit wins where they contradict */
 export function held(value: number, lowest: number, highest: number): number {
-  return value > highest ? Math.max(highest, lowest) : value < lowest ? lowest : value;
+  return Math.max(Math.min(value, highest), lowest);
 }
 
 /** Largest value whose sum with `reach` does not round to more than `max`. */

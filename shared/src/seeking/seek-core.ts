@@ -132,8 +132,8 @@ export function isSettled(core: SeekCore, dtS: number): boolean {
 export function moveAll({ change, estimate, lowest, highest, speedMax }: SeekCore, dtS: number): void {
   for (let i = 0; i < change.length; i += 1) {
     const reach = at(speedMax, i) * dtS;
-    const next = at(estimate, i) + held(at(change, i), -reach, reach);
-    if (next === next) estimate[i] = held(next, at(lowest, i), at(highest, i));
+    const next = at(estimate, i) + Math.max(Math.min(at(change, i), reach), -reach);
+    if (next === next) estimate[i] = Math.max(Math.min(next, at(highest, i)), at(lowest, i));
   }
 }
 
