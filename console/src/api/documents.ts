@@ -1,97 +1,18 @@
-import type {
-  EnvelopeContent,
-  EnvelopeStatus,
-  ExperimentContent,
-  ObjectiveContent,
-  PreflightFault,
-  Rig,
-  RigStatus,
-  Role,
-  RunStatus,
-  Verdict,
-} from '@cresthold/shared';
+import type { components } from './schema.js';
 
-/** Documents as the API answers them; docs/api.md is the agreement, the generated schema the check. */
+/** Documents as the API answers them: taken from its description, so that they cannot drift from the server. */
+type Schemas = components['schemas'];
+
 export interface Page<Item> {
   items: Item[];
   nextCursor: string | null;
 }
 
-export interface Session {
-  account: string;
-  title: string;
-  roles: Role[];
-}
-
-export interface User extends Session {
-  isEnabled: boolean;
-}
-
-export interface RigDocument {
-  id: string;
-  revision: number;
-  content: Rig;
-  status: RigStatus | null;
-}
-
-export interface EnvelopeDocument {
-  id: string;
-  rigId: string;
-  version: number;
-  status: EnvelopeStatus;
-  revision: number;
-  author: string;
-  submittedBy: string | null;
-  decidedBy: string | null;
-  reason: string | null;
-  createdAt: string;
-  decidedAt: string | null;
-  content: EnvelopeContent;
-}
-
-export interface ObjectiveDocument {
-  id: string;
-  rigId: string;
-  revision: number;
-  content: ObjectiveContent;
-}
-
-export interface RunSummary {
-  id: string;
-  rigId: string;
-  experimentId: string;
-  experimentVersion: number;
-  experimentTitle: string;
-  status: RunStatus;
-  verdict: Verdict | null;
-  reason: string | null;
-  startedAt: string;
-  endedAt: string | null;
-  startedBy: string;
-  envelopeVersion: number;
-  scans: number;
-  /** Results of the steps by name, e.g. `survey.best.airTrim`. */
-  results: Record<string, number>;
-  /** What preflight warned of when it was started. */
-  warnings: PreflightFault[];
-  fileSha256: string | null;
-}
-
-export interface ExperimentSummary {
-  id: string;
-  rigId: string;
-  title: string;
-  latestVersion: number;
-  createdAt: string;
-  createdBy: string;
-}
-
-export interface ExperimentVersion {
-  experimentId: string;
-  version: number;
-  basedOn: number | null;
-  note: string;
-  createdAt: string;
-  createdBy: string;
-  content: ExperimentContent;
-}
+export type Session = Schemas['Session'];
+export type User = Schemas['User'];
+export type RigDocument = Schemas['RigDocument'];
+export type EnvelopeDocument = Schemas['Envelope'];
+export type ObjectiveDocument = Schemas['Objective'];
+export type ExperimentSummary = Schemas['Experiment'];
+export type ExperimentVersion = Schemas['ExperimentVersion'];
+export type RunSummary = Schemas['Run'];
