@@ -30,6 +30,9 @@ export class SeekCatchUp {
     const wanted = estimate + dither;
     const reached = withinReach(this.services, input, this.channel, wanted);
     this.isBehind = reached !== wanted;
-    return this.isBehind ? reached - dither : estimate;
+    if (!this.isBehind) return estimate;
+    // The sum is inside the envelope; the base must be so by itself, or the guard has to hold it.
+    const { min = -Infinity, max = Infinity } = this.services.limitOf(this.channel) ?? {};
+    return Math.min(Math.max(reached - dither, min), max);
   }
 }
