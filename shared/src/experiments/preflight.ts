@@ -5,6 +5,7 @@ import { FaultList, type PreflightInput } from './preflight/fault-list.js';
 import { checkLimits } from './preflight/limits.js';
 import { checkSeekTiming } from './preflight/seek-timing.js';
 import { checkStructure } from './preflight/structure.js';
+import { checkUnits } from './preflight/units.js';
 import { orderSteps } from './step-order.js';
 
 export type { PreflightInput } from './preflight/fault-list.js';
@@ -20,5 +21,6 @@ export function preflight(input: PreflightInput): PreflightFault[] {
   checkExpressions(found);
   checkLimits(found);
   checkSeekTiming(found);
+  checkUnits(found);
   return found.faults.faults;
 }

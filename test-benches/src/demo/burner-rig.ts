@@ -93,7 +93,7 @@ const derived: ChannelInput[] = [
     title: 'Stack loss',
     unit: '%',
     display: { min: 0, max: 15, decimals: 3 },
-    expression: '(flueTemp - airTemp) * (0.66 / (21 - o2) + 0.009)',
+    expression: '(flueTemp - airTemp) * (weight(0.66) / (21 - o2) + weight(0.009))',
   },
   {
     kind: 'derived',
