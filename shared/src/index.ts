@@ -52,6 +52,7 @@ export * from './metrics/tracker-efficiency.js';
 export * from './metrics/tracking-meter.js';
 export * from './metrics/transient.js';
 export * from './objectives/objective-evaluator.js';
+export * from './objectives/objective-examples.js';
 export * from './objectives/objective.schema.js';
 export * from './people/role.js';
 export * from './rigs/channel-id.js';
