@@ -108,7 +108,7 @@ export const expressionFunctions: readonly ExpressionFunction[] = [
     Operation.log10,
     'pure',
     'logarithm to base 10',
-    'No number for x of zero or below. Takes a pure number: divide by a reference, log10(power / 1).',
+    'No number for x of zero or below. Takes a pure number: divide by a reference, log10(power / weight(1)).',
     'log10(1000) // 3',
   ]),
   one(['sin', Operation.sin, 'pure', 'sine of an angle in radians', angleHelp, 'sin(pi / 2) // 1']),

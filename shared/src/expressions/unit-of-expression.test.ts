@@ -54,6 +54,7 @@ describe('the units of an expression', () => {
     ['sin(angle) + flame', ''],
     ['sin(phase * pi / 180)', ''],
     ['log10(co / 100)', ''],
+    ['log10(power / weight(1))', ''],
     ['co < 400 and flueTemp > 80', ''],
     ['20 < flueTemp <= 90', ''],
     ['flame > 0.5 ? co : 0', 'ppm'],

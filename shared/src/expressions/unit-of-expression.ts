@@ -203,7 +203,7 @@ function power(base: Term, exponent: Term, culprit: string): Term {
 function needPure(term: Term, what: string, culprit: string): void {
   if (term.kind !== 'measured' || isPure(term.unit)) return;
   throw new ExpressionFault(
-    `${what} must be a pure number, not ${named(term.unit)}: divide by a reference value first.`,
+    `${what} must be a pure number, not ${named(term.unit)}: divide by a reference, / weight(…).`,
     culprit,
   );
 }
