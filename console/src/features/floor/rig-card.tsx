@@ -111,7 +111,7 @@ function Facts({ rig, status }: { rig: RigDocument; status: RigStatus | null }) 
     >
       <div>
         <Box component="dt" sx={label}>
-          Best point of the run
+          Best point of the last run
         </Box>
         <dd>
           <BestPoint rig={rig.content} point={status?.bestPoint ?? {}} />
