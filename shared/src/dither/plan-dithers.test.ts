@@ -30,6 +30,19 @@ describe('a dither plan', () => {
     expect(plan.apartHz).toBeCloseTo(0.1, 12);
   });
 
+  it('is as the docstring says', () => {
+    const two = {
+      actuators: 2,
+      law: 'newton' as const,
+      scanS: 0.1,
+      lowestHz: 0.2,
+      highestHz: 1,
+      apartHz: 0.1,
+      windowS: 10,
+    };
+    expect(planDithers(two).frequenciesHz.map((hz) => Number(hz.toFixed(9)))).toEqual([0.2, 0.5]);
+  });
+
   it('keeps clear of mains and resonance', () => {
     const plan = planDithers(request({ forbidden: [{ fromHz: 0.45, toHz: 1.25 }] }));
     expect(Math.min(...plan.frequenciesHz)).toBeGreaterThan(1.25);

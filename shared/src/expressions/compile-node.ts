@@ -104,7 +104,8 @@ function compileOperator(node: OperatorNode, compiler: NodeCompiler): CompiledNo
     throw new ExpressionFault('An operator is missing between two values: write "*" to multiply.');
   const { builder } = compiler;
   if (args.length === 2 && (fn === 'add' || fn === 'subtract')) {
-    return { register: compileSum(node, compiler), isCondition: false };
+    const compile = (part: MathNode) => compileNode(part, compiler).register;
+    return { register: compileSum(node, builder, compile), isCondition: false };
   }
   const [a, b] = args.map((argument) => compileNode(argument, compiler));
   if (a && !b) {

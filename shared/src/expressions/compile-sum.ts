@@ -1,5 +1,4 @@
 import type { ConstantNode, MathNode, OperatorNode } from 'mathjs';
-import { compileNode, type NodeCompiler } from './compile-node.js';
 import { Operation } from './operations.js';
 import { contentOf, operatorOf } from './parsed-nodes.js';
 import type { ProgramBuilder, Term } from './program-builder.js';
@@ -7,21 +6,23 @@ import type { ProgramBuilder, Term } from './program-builder.js';
 /** From this many terms on a sum is quicker as one operation. */
 const termsMin = 3;
 
+/** Compiles any piece of the expression; gives the register of its value. */
+export type CompilePiece = (node: MathNode) => number;
+
 interface Summand {
   node: MathNode;
   sign: 1 | -1;
 }
 
 /** Compiles a chain of additions and subtractions, from left to right. */
-export function compileSum(node: OperatorNode, compiler: NodeCompiler): number {
-  const { builder } = compiler;
+export function compileSum(node: OperatorNode, builder: ProgramBuilder, compile: CompilePiece): number {
   const summands = summandsOf(node);
   if (summands.length < termsMin) {
-    const [first, second] = summands.map((part) => compileNode(part.node, compiler).register);
+    const [first, second] = summands.map((part) => compile(part.node));
     const operation = summands[1]?.sign === -1 ? Operation.subtract : Operation.add;
     return builder.emit(operation, first as number, second);
   }
-  return builder.sum(summands.map((summand) => termOf(summand, compiler)));
+  return builder.sum(summands.map((summand) => termOf(summand, builder, compile)));
 }
 
 /** The chain `a + b − c` is parsed as `(a + b) − c`. */
@@ -33,10 +34,10 @@ function summandsOf(node: MathNode): Summand[] {
 }
 
 /** A term such as `0.25 * x * y`; what is of another form is computed before and stands for x. */
-function termOf({ node, sign }: Summand, { builder, ...compiler }: NodeCompiler): Term {
+function termOf({ node, sign }: Summand, builder: ProgramBuilder, compile: CompilePiece): Term {
   const compiled = new Map<MathNode, number>();
   const registers = factorsOf(node).map((factor) => {
-    const register = compiled.get(factor) ?? compileNode(factor, { builder, ...compiler }).register;
+    const register = compiled.get(factor) ?? compile(factor);
     compiled.set(factor, register);
     return register;
   });

@@ -54,6 +54,13 @@ describe('a unit', () => {
     expect(Math.abs((size(text) ?? NaN) / expected - 1)).toBeLessThan(1e-6);
   });
 
+  it.each([
+    ['m^3 / h', 'm³/h'],
+    ['J/kg/K', 'J/(kg·K)'],
+    ['s-1', '1/s'],
+    ['', ''],
+  ])('%s is written %s', (text, written) => expect(unitText(parseUnit(text))).toBe(written));
+
   it('is a quantity of its own where it cannot be read', () => {
     for (const text of ['m//s', '(m', '/', 'm·', '3', 'a b c 7']) {
       const unit = parseUnit(text);

@@ -37,7 +37,7 @@ export function productOf(a: Unit, b: Unit, sign: 1 | -1): Unit {
   return {
     factors: productOfPowers(a.factors, b.factors, sign),
     dimension: productOfPowers(a.dimension, b.dimension, sign),
-    scale: isKnown ? (a.scale) * (b.scale) ** sign : null,
+    scale: isKnown ? a.scale * b.scale ** sign : null,
     hasOwnZero: false,
   };
 }
