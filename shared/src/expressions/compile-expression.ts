@@ -101,7 +101,7 @@ function expressionOf(
     unit,
     operations,
     evaluate: evaluator(program, symbols, registers),
-    bind: (source) => boundEvaluator(program, source, symbols, registers),
+    bind: (source, result) => boundEvaluator(program, source, symbols, registers, result),
   };
 }
 
@@ -121,22 +121,24 @@ function boundEvaluator(
   source: ValueSource,
   symbols: readonly string[],
   registers: Int32Array,
-) {
+  result: Float64Array,
+): () => void {
   const places = Int32Array.from(symbols, (symbol) => source.indexOf(symbol));
-  if (places.includes(-1)) return () => NaN;
+  if (places.includes(-1)) return () => void (result[0] = NaN);
   const { values, qualities } = source;
   const generated = generateFunction(program, registers, places);
-  if (generated) return () => generated(values, qualities);
+  if (generated) return () => generated(values, qualities, result);
   const target = program.registers;
-  return (): number => {
+  return () => {
+    result[0] = NaN;
     for (let i = 0; i < places.length; i += 1) {
       const place = places[i] as number;
       const value = values[place] as number;
       // The difference is 0 for finite numbers only.
-      if (qualities[place] !== Quality.good || value - value !== 0) return NaN;
+      if (qualities[place] !== Quality.good || value - value !== 0) return;
       target[registers[i] as number] = value;
     }
-    return runProgram(program);
+    result[0] = runProgram(program);
   };
 }
 

@@ -30,9 +30,11 @@ export interface CompiledExpression {
   /**
    * Looks the places of the symbols up once.
    *
+   * @param result where each evaluation puts its value, at index 0: a number that is handed back by a function is
+   * put on the heap, one in an array is not
    * @returns evaluates with what stands there at the time of the call; allocates nothing
    */
-  bind(source: ValueSource): () => number;
+  bind(source: ValueSource, result: Float64Array): () => void;
 }
 
 export type CompileOutcome =

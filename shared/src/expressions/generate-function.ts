@@ -37,7 +37,7 @@ const texts: Readonly<Record<number, Text>> = {
   [Operation.lowerEnd]: (a, b) => `${a} > ${b} ? NaN : ${a}`,
 };
 
-export type GeneratedFunction = (values: Float64Array, qualities: Uint8Array) => number;
+export type GeneratedFunction = (values: Float64Array, qualities: Uint8Array, result: Float64Array) => void;
 
 /**
  * Writes a program out as a function over the arrays of one scan. Its source is put together from the table
@@ -45,7 +45,7 @@ export type GeneratedFunction = (values: Float64Array, qualities: Uint8Array) =>
  *
  * @param registers those that hold symbols
  * @param places where each of them stands in the arrays
- * @returns a function that gives the very numbers of `runProgram`, several times as fast; null where the page
+ * @returns a function that puts out the very numbers of `runProgram`, several times as fast; null where the page
  * that it runs in forbids generated code
  */
 export function generateFunction(
@@ -55,7 +55,12 @@ export function generateFunction(
 ): GeneratedFunction | null {
   try {
     // eslint-disable-next-line @typescript-eslint/no-implied-eval -- made of our own table and numbers only, see docs/decisions
-    return new Function('values', 'qualities', sourceOf(program, registers, places)) as GeneratedFunction;
+    return new Function(
+      'values',
+      'qualities',
+      'result',
+      sourceOf(program, registers, places),
+    ) as GeneratedFunction;
   } catch {
     return null;
   }
@@ -71,7 +76,7 @@ function sourceOf(program: Program, registers: ArrayLike<number>, places: ArrayL
   const loads = Array.from(registers).flatMap((register, i) => [
     `const v${register} = values[${places[i]}];`,
     // The difference is 0 for finite numbers only; a quality of 0 is good.
-    `if (qualities[${places[i]}] !== 0 || v${register} - v${register} !== 0) return NaN;`,
+    `if (qualities[${places[i]}] !== 0 || v${register} - v${register} !== 0) { result[0] = NaN; return; }`,
   ]);
   const declared = [...written].map((register) => `v${register} = 0`);
   return [
@@ -79,7 +84,7 @@ function sourceOf(program: Program, registers: ArrayLike<number>, places: ArrayL
     ...loads,
     `let ${[...declared, 'spoilt = 0'].join(', ')};`,
     ...statementsOf(program, named),
-    `return ${named(program.result)} + spoilt;`,
+    `result[0] = ${named(program.result)} + spoilt;`,
   ].join('\n');
 }
 

@@ -15,7 +15,7 @@ export interface ObjectiveEvaluator {
    * The objective in one scan, with the sign that its expression gives it: the direction is not applied.
    *
    * @returns the same object each time, overwritten by the next call
-   * @realtime safe: allocates nothing
+   * @realtime safe: keeps nothing; the engine may box the value, 16 bytes that live until the next call
    */
   evaluate(readings: Readings): Readonly<ObjectiveSample>;
 }
@@ -61,22 +61,28 @@ interface Condition {
 /** An objective whose symbols have their places in one set of readings. */
 interface BoundObjective {
   readonly readings: Readings;
-  readonly value: () => number;
+  readonly evaluate: () => void;
   readonly conditions: readonly { isTrue: () => boolean; message: string }[];
 }
 
 function bindTo(
   readings: Readings,
+  result: Float64Array,
   value: CompiledExpression,
   conditions: readonly Condition[],
 ): BoundObjective {
   return {
     readings,
-    value: value.bind(readings),
+    evaluate: value.bind(readings, result),
     conditions: conditions.map(({ expression, message }) => {
-      const evaluate = expression?.bind(readings);
-      // A condition over a bad reading is NaN: not known to be true is not valid.
-      return { isTrue: () => evaluate?.() === 1, message };
+      const truth = new Float64Array(1);
+      const evaluate = expression?.bind(readings, truth);
+      const isTrue = () => {
+        evaluate?.();
+        // A condition over a bad reading is NaN: not known to be true is not valid.
+        return truth[0] === 1;
+      };
+      return { isTrue, message };
     }),
   };
 }
@@ -86,7 +92,13 @@ function evaluatorOf(
   value: CompiledExpression,
   conditions: readonly Condition[],
 ): ObjectiveEvaluator {
-  const sample: ObjectiveSample = { value: NaN, isGood: false, isValid: false, whyInvalid: null };
+  const result = new Float64Array(1);
+  const sample: ObjectiveSample = {
+    value: NaN,
+    isGood: false,
+    isValid: false,
+    whyInvalid: null,
+  };
   let bound: BoundObjective | null = null;
   const symbols = [value, ...conditions.flatMap(({ expression }) => expression ?? [])].flatMap(
     (e) => e.symbols,
@@ -96,9 +108,11 @@ function evaluatorOf(
     channels: [...new Set(symbols)],
     evaluate(readings) {
       // The readings of a rig are one object from scan to scan.
-      if (bound?.readings !== readings) bound = bindTo(readings, value, conditions);
-      sample.value = bound.value();
-      sample.isGood = Number.isFinite(sample.value);
+      if (bound?.readings !== readings) bound = bindTo(readings, result, value, conditions);
+      bound.evaluate();
+      const found = result[0] as number;
+      sample.value = found;
+      sample.isGood = Number.isFinite(found);
       sample.whyInvalid = sample.isGood
         ? firstViolated(bound)
         : 'A reading that the objective needs is not good.';
