@@ -8,7 +8,7 @@ export default defineConfig({
   resolve: { conditions: ['source', 'module', 'browser', 'development|production'] },
   server: { host: '127.0.0.1', proxy: { '/api': { target, ws: true } } },
   build: {
-    chunkSizeWarningLimit: 700,
+    chunkSizeWarningLimit: 800,
     // The core only declares: what a page does not use of it (the expression parser, say) is left out.
     rolldownOptions: { treeshake: { moduleSideEffects: [{ test: /\/shared\/src\//, sideEffects: false }] } },
   },

@@ -1309,6 +1309,11 @@ export interface components {
                 isConnected: boolean;
                 error: string | null;
             }[];
+            channelFaults: {
+                channel: string;
+                code: string;
+                message: string;
+            }[];
             interlocks: {
                 id: string;
                 /** @enum {string} */

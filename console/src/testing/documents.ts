@@ -49,6 +49,7 @@ export const demoStatus: RigStatus = {
   isPaused: false,
   envelopeVersion: 3,
   connections: [{ id: 'plc', isConnected: true, error: null }],
+  channelFaults: [],
   interlocks: [{ id: 'co-high', state: 'clear' }],
   armingObstacles: [],
   bestPoint: {},

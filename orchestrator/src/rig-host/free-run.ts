@@ -60,6 +60,7 @@ class WholeLoop {
     const publisher = new Publisher(rig, this.engine.readings, { sendDroppable }, () => ({
       ...this.engine.status(),
       connections: [],
+      channelFaults: [],
       scan: { count: 0, overruns: 0, latenessP99Ms: 0, wireMeanMs: 0 },
     }));
     this.recording = new RunRecording(this.recorder, rig, {

@@ -26,6 +26,13 @@ export interface LineChannel {
   address: unknown;
 }
 
+/** Why a channel is not delivered. */
+export interface ChannelFault {
+  channel: string;
+  code: string;
+  message: string;
+}
+
 export interface LineOwner {
   /** The connection opened. */
   onLineOpened(): void;
@@ -35,6 +42,10 @@ export interface LineOwner {
   onBug(error: unknown): void;
 }
 
+const notANumber = {
+  code: 'adapter.corrupt',
+  message: 'The device answers with something that is no number.',
+};
 const notYet = { code: 'adapter.disconnected', message: 'Not connected yet.' };
 
 /** One connection's share in each scan: one planned read, then the writes of its actuators. */
@@ -55,6 +66,8 @@ export class Line {
   private hasBeenRead = false;
   private startedInRound = 0;
   private readonly writes: PendingWrites;
+  /** What the last read said of each channel. */
+  private readonly faults: (DomainError | null)[];
 
   constructor(
     readonly definition: Connection,
@@ -65,6 +78,7 @@ export class Line {
     private readonly gathering: Gathering,
     private readonly owner: LineOwner,
   ) {
+    this.faults = channels.map(() => null);
     this.writes = new PendingWrites(new Map(channels.map((c) => [c.index, c.address])));
     this.firstAttempt = new Promise((resolve) => (this.settleFirst = resolve));
   }
@@ -90,6 +104,16 @@ export class Line {
 
   get isConnected(): boolean {
     return this.session !== null;
+  }
+
+  /** Channels that the last read did not bring although the line is up. */
+  channelFaults(): ChannelFault[] {
+    if (this.session === null || !this.hasBeenRead) return [];
+    return this.channels.flatMap(({ channel, index }, at) => {
+      const isBad = this.readings.qualities[index] === Quality.bad;
+      const fault = this.faults[at] ?? (isBad ? notANumber : null);
+      return fault ? [{ channel: channel.id, code: fault.code, message: fault.message }] : [];
+    });
   }
 
   /** @returns why it is down, or was since this was last asked; null where it was up throughout */
@@ -190,6 +214,7 @@ export class Line {
       const channel = this.channels[i];
       if (channel === undefined) continue;
       const fault = outcome.faults[i] ?? null;
+      this.faults[i] = fault;
       if (fault === null) this.readings.set(channel.index, outcome.values[i] ?? NaN, Quality.good);
       else this.mark(channel.index, this.qualityOf(fault));
     }

@@ -141,6 +141,7 @@ export class RigSession {
     return {
       ...this.engine.status(),
       connections: this.wire.connectionStatus(),
+      channelFaults: this.wire.channelFaults(),
       scan: {
         count: statistics.count,
         overruns: statistics.overruns,

@@ -100,6 +100,10 @@ export class Wire {
     }));
   }
 
+  channelFaults(): RigStatus['channelFaults'] {
+    return this.lines.flatMap((line) => line.channelFaults());
+  }
+
   /** @realtime fills the readings of this scan */
   async read(): Promise<void> {
     this.gathering.begin();

@@ -17,6 +17,7 @@ export function statusWithoutHost(
     isPaused: false,
     envelopeVersion: null,
     connections: [],
+    channelFaults: [],
     interlocks: [],
     armingObstacles: [obstacle],
     bestPoint: {},

@@ -169,6 +169,10 @@ describe('rig host, by every way to die', () => {
       ...[4, null, 0, 0, expect.anything(), 2],
       ...[null, null, null],
     ]);
+    const status = await host.untilStatus((s) => s.channelFaults.length > 0, 'a channel fault');
+    expect(status.channelFaults).toEqual([
+      { channel: 'stackTemperature', code: 'adapter.refused', message: expect.stringMatching(/register/i) },
+    ]);
   });
 
   it('NaN on the wire is no number: recorded as NULL, and trips by the staleness limit', async () => {

@@ -128,6 +128,22 @@ describe('wire', () => {
     expect([...readings.qualities]).toEqual([Quality.bad, Quality.bad]);
   });
 
+  it('says of each channel that does not come through why, and no longer once it does', async () => {
+    await wire.read();
+    expect(wire.channelFaults()).toEqual([]);
+    first.value = NaN;
+    second.faults = [new DomainError('adapter.refused', 'Register 5 is refused.')];
+    await wire.read();
+    expect(wire.channelFaults()).toEqual([
+      { channel: 'first', code: 'adapter.corrupt', message: expect.stringContaining('no number') },
+      { channel: 'second', code: 'adapter.refused', message: 'Register 5 is refused.' },
+    ]);
+    first.value = 1;
+    second.faults = [null];
+    await wire.read();
+    expect(wire.channelFaults()).toEqual([]);
+  });
+
   it('sends only the newest value once a busy device is free again', async () => {
     await wire.write([{ channel: 'first', value: 1 }]);
     first.isSlow = true;

@@ -42,6 +42,7 @@ function statusOf(rigId: string, phase: RigPhase): RigStatus {
     isPaused: false,
     envelopeVersion: null,
     connections: [],
+    channelFaults: [],
     interlocks: [],
     armingObstacles: [],
     bestPoint: {},

@@ -33,6 +33,8 @@ export const rigStatusSchema = z.object({
   isPaused: z.boolean(),
   envelopeVersion: z.int().nullable(),
   connections: z.array(z.object({ id: z.string(), isConnected: z.boolean(), error: z.string().nullable() })),
+  /** Channels that their connection does not deliver although it is up, and why. */
+  channelFaults: z.array(z.object({ channel: z.string(), code: z.string(), message: z.string() })),
   interlocks: z.array(interlockStatusSchema),
   /** What forbids arming, in words; empty where nothing does. */
   armingObstacles: z.array(z.string()),

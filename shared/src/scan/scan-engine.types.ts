@@ -93,5 +93,5 @@ export interface ScanEngine {
   /** True once every actuator is at rest and no run is open: the wire may be let go. */
   isAtRest(): boolean;
   /** All of the rig's status but what only the caller knows. */
-  status(): Omit<RigStatus, 'connections' | 'scan'>;
+  status(): Omit<RigStatus, 'connections' | 'channelFaults' | 'scan'>;
 }

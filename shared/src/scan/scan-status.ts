@@ -4,7 +4,7 @@ import { bestPoint } from './best-point.js';
 import type { EngineState } from './engine-state.js';
 
 /** All of the rig's status that the engine knows. */
-export function statusOf(engine: EngineState): Omit<RigStatus, 'connections' | 'scan'> {
+export function statusOf(engine: EngineState): Omit<RigStatus, 'connections' | 'channelFaults' | 'scan'> {
   const { rig, rigState, fitted, run } = engine;
   const { phase, isLockedOut, trip } = rigState;
   /** Once armed, the checklist has been passed and the watches take over. */

@@ -25,8 +25,27 @@ export function ConnectionPanel({ rig, status }: { rig: Rig; status: RigStatus |
           );
         })}
       </Box>
+      {status && status.channelFaults.length > 0 && <ChannelFaults rig={rig} faults={status.channelFaults} />}
       {status && <ScanFacts scan={status.scan} periodMs={rig.periodMs} />}
     </Panel>
+  );
+}
+
+/** Channels that do not come through although their connection is up. */
+function ChannelFaults({ rig, faults }: { rig: Rig; faults: RigStatus['channelFaults'] }) {
+  const titleOf = (id: string) => rig.channels.find((channel) => channel.id === id)?.title ?? id;
+  return (
+    <Box
+      component="ul"
+      aria-label="Channels that cannot be read"
+      sx={{ m: 0, mt: 1, p: 0, listStyle: 'none', display: 'grid', gap: 0.75, fontSize: '0.8125rem' }}
+    >
+      {faults.map((fault) => (
+        <Box component="li" key={fault.channel} sx={{ color: 'paper.warn' }}>
+          <strong>{titleOf(fault.channel)}</strong>: {fault.message}
+        </Box>
+      ))}
+    </Box>
   );
 }
 

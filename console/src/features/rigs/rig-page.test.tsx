@@ -146,3 +146,12 @@ it('says which connection is down and why', async () => {
   });
   expect(await screen.findByText('Connection refused by 127.0.0.1:1502.')).toBeDefined();
 });
+
+it('says which channel does not come through although its connection is up, and why', async () => {
+  openRig('technician', {
+    channelFaults: [{ channel: 'o2', code: 'adapter.refused', message: 'Register 999 is refused.' }],
+  });
+  const faults = within(await screen.findByRole('list', { name: 'Channels that cannot be read' }));
+  expect(faults.getByText('Oxygen in flue gas')).toBeDefined();
+  expect(faults.getByText(/Register 999 is refused/)).toBeDefined();
+});
