@@ -27,6 +27,7 @@ export interface ParameterFieldProps {
 export function ParameterField(props: ParameterFieldProps) {
   switch (props.field.kind) {
     case 'switch':
+    case 'presence':
       return <SwitchField {...props} />;
     case 'actuator':
     case 'channel':
@@ -170,14 +171,17 @@ function ChannelField(props: ParameterFieldProps) {
 
 function SwitchField(props: ParameterFieldProps) {
   const { value, take } = useParameter(props);
+  const isPresence = props.field.kind === 'presence';
+  const isOn = isPresence ? value !== null : value === true;
+  const switchTo = (on: boolean) => take(isPresence ? (on ? props.field.whenOn : null) : on);
   return (
     <div>
       <FormControlLabel
         label={props.field.label}
         control={
           <Switch
-            checked={value === true}
-            onChange={(event) => take(event.target.checked)}
+            checked={isOn}
+            onChange={(event) => switchTo(event.target.checked)}
             disabled={props.isReadOnly}
           />
         }

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { Step } from '@cresthold/shared';
 import { fieldName, valueAt } from '../graph/parameter-path.js';
 import { changeParameter, fieldText, readField } from './read-field.js';
+import { stepFields } from './step-fields.js';
 
 const move: Step = {
   kind: 'move',
@@ -45,5 +46,47 @@ describe('a change of one parameter', () => {
     const outcome = changeParameter(move, ['timeoutS'], -1);
     expect(outcome.isOk).toBe(false);
     expect(outcome.isOk ? '' : outcome.message).toMatch(/0/);
+  });
+});
+
+describe('the form of a seek', () => {
+  const seek: Step = {
+    kind: 'seek',
+    id: 'seek',
+    title: '',
+    position: { x: 0, y: 0 },
+    parameters: {
+      actuator: 'airTrim',
+      law: 'gradient',
+      ditherAmplitude: 1,
+      ditherPeriodS: 5,
+      washoutRatio: 0.3,
+      lowPassRatio: 0.3,
+      gain: 1,
+      phaseDeg: 0,
+      min: null,
+      max: null,
+      end: { afterS: 300, whenConverged: null, when: null },
+      invalidForS: 30,
+    },
+  };
+  const names = (step: Step) => stepFields(step).map(({ path }) => fieldName(path));
+
+  it('asks for band and time of convergence only where that may end it', () => {
+    expect(names(seek)).not.toContain('parameters.end.whenConverged.band');
+    const field = stepFields(seek).find(({ kind }) => kind === 'presence');
+    const outcome = changeParameter(seek, ['end', 'whenConverged'], field?.whenOn);
+    expect(outcome.isOk && names(outcome.step)).toContain('parameters.end.whenConverged.band');
+  });
+
+  it('reaches every parameter of the seek but the law, of which there is one', () => {
+    const converging = changeParameter(seek, ['end', 'whenConverged'], { band: 1, forS: 60 });
+    if (!converging.isOk) throw new Error(converging.message);
+    const reached = names(converging.step);
+    const { end, ...rest } = seek.parameters;
+    for (const name of Object.keys(rest)) {
+      if (name !== 'law') expect(reached).toContain(`parameters.${name}`);
+    }
+    for (const name of Object.keys(end)) expect(reached).toContain(`parameters.end.${name}`);
   });
 });

@@ -27,6 +27,7 @@ export function readField(kind: StepField['kind'], text: string): ReadOutcome {
     case 'actuator':
     case 'channel':
     case 'switch':
+    case 'presence':
       return { isOk: true, value: text };
   }
 }

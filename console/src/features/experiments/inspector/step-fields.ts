@@ -1,9 +1,12 @@
-import type { Step } from '@cresthold/shared';
+import type { Step, StepOf } from '@cresthold/shared';
 import type { ParameterPath } from '../graph/parameter-path.js';
 
 /** One field of a step's form. */
 export interface StepField {
-  /** `numeric` takes a number or an expression over earlier results. */
+  /**
+   * `numeric` takes a number or an expression over earlier results; `presence` switches a group of
+   * parameters on, with `whenOn` for its first values, or off (null).
+   */
   kind:
     | 'number'
     | 'numeric'
@@ -11,6 +14,7 @@ export interface StepField {
     | 'actuator'
     | 'channel'
     | 'switch'
+    | 'presence'
     | 'expression'
     | 'optional-expression';
   path: ParameterPath;
@@ -18,13 +22,14 @@ export interface StepField {
   /** `@actuator` stands for the unit of the step's actuator, `@channel` for that of its channel. */
   unit?: string;
   help?: string;
+  whenOn?: unknown;
 }
 
 const of = (
   kind: StepField['kind'],
   path: ParameterPath,
   label: string,
-  more: Pick<StepField, 'unit' | 'help'> = {},
+  more: Pick<StepField, 'unit' | 'help' | 'whenOn'> = {},
 ): StepField => ({ kind, path, label, ...more });
 
 /** The form of a step kind as data; targets of a Move have a form of their own. */
@@ -63,7 +68,7 @@ export function stepFields(step: Step): StepField[] {
         }),
       ];
     case 'seek':
-      return seekFields;
+      return seekFields(step);
     case 'check':
       return [
         of('expression', ['criterion'], 'Criterion', {
@@ -73,7 +78,25 @@ export function stepFields(step: Step): StepField[] {
   }
 }
 
-const seekFields: StepField[] = [
+const seekFields = (step: StepOf<'seek'>): StepField[] => [
+  ...lawFields,
+  ...(step.parameters.end.whenConverged === null ? [] : convergenceFields),
+  of('optional-expression', ['end', 'when'], 'Ends earlier when', { help: 'Empty: never by a condition.' }),
+  of('number', ['invalidForS'], 'Gives up when invalid for', {
+    unit: 's',
+    help: 'Until then it waits at the last good point.',
+  }),
+];
+
+const convergenceFields: StepField[] = [
+  of('number', ['end', 'whenConverged', 'band'], 'Converged within, peak to peak', {
+    unit: '@actuator',
+    help: 'Of the estimate, averaged over whole dither periods.',
+  }),
+  of('number', ['end', 'whenConverged', 'forS'], 'Converged for', { unit: 's' }),
+];
+
+const lawFields: StepField[] = [
   of('actuator', ['actuator'], 'Actuator'),
   of('numeric', ['ditherAmplitude'], 'Dither amplitude', {
     unit: '@actuator',
@@ -93,9 +116,7 @@ const seekFields: StepField[] = [
   of('optional-number', ['min'], 'Not below', { unit: '@actuator', help: 'Empty: as the envelope says.' }),
   of('optional-number', ['max'], 'Not above', { unit: '@actuator', help: 'Empty: as the envelope says.' }),
   of('number', ['end', 'afterS'], 'Ends after', { unit: 's' }),
-  of('optional-expression', ['end', 'when'], 'Ends earlier when', { help: 'Empty: never by a condition.' }),
-  of('number', ['invalidForS'], 'Gives up when invalid for', {
-    unit: 's',
-    help: 'Until then it waits at the last good point.',
+  of('presence', ['end', 'whenConverged'], 'Ends earlier when converged', {
+    whenOn: { band: 1, forS: 60 },
   }),
 ];
