@@ -26,7 +26,7 @@ const dampingMax = 1e12;
  * parameters apart, or no end is found
  * @source D. W. Marquardt (1963), "An algorithm for least-squares estimation of nonlinear parameters", SIAM J.
  * 11:431–441; scaling: J. J. Moré (1978), "The Levenberg-Marquardt algorithm: implementation and theory",
- * Lecture Notes in Mathematics 630
+ * LNM 630 (Springer)
  */
 export function fitNonlinear(
   model: NonlinearModel,
