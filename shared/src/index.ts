@@ -17,6 +17,7 @@ export * from './experiments/sequencer.js';
 export * from './experiments/sequencer.types.js';
 export * from './experiments/step-kinds.js';
 export * from './experiments/step-order.js';
+export { commandedActuators } from './experiments/step-parameters.js';
 export * from './expressions/closest-names.js';
 export * from './expressions/compile-expression.js';
 export * from './expressions/expression-functions.js';

@@ -1,4 +1,10 @@
-import type { Channel, ExperimentGraph, Rig, RunColumn } from '@cresthold/shared';
+import {
+  commandedActuators,
+  type Channel,
+  type ExperimentGraph,
+  type Rig,
+  type RunColumn,
+} from '@cresthold/shared';
 import type { ChartTrace } from '../../../components/strip-chart/index.js';
 
 /** One sheet of the run's charts. */
@@ -7,16 +13,6 @@ export interface ChartGroup {
   traces: ChartTrace[];
   /** What the experiment is about: the objective and the actuators that it commands. */
   isMain: boolean;
-}
-
-/** Actuators that any step of the experiment commands. */
-export function commandedActuators(graph: ExperimentGraph): ReadonlySet<string> {
-  return new Set(
-    graph.steps.flatMap((step) => {
-      if (step.kind === 'move') return step.parameters.targets.map(({ channel }) => channel);
-      return step.kind === 'survey' || step.kind === 'seek' ? [step.parameters.actuator] : [];
-    }),
-  );
 }
 
 /** The actuator that each Seek steers, by the step's id. */
@@ -34,7 +30,7 @@ export function seekActuators(graph: ExperimentGraph): ReadonlyMap<string, strin
  * rig host writes (a heartbeat) tell nothing and are left out.
  */
 export function chartGroups(columns: readonly RunColumn[], rig: Rig, graph: ExperimentGraph): ChartGroup[] {
-  const commanded = commandedActuators(graph);
+  const commanded = new Set(graph.steps.flatMap(commandedActuators).map(({ channel }) => channel));
   const actuators = rig.channels.filter(({ kind, id }) => kind === 'actuator' && commanded.has(id));
   const watched = rig.channels.filter(({ kind }) => kind !== 'actuator');
   return [
