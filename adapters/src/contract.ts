@@ -2,7 +2,7 @@ import type { DomainError } from '@cresthold/shared';
 import type { z } from 'zod';
 
 /** Version of this contract; a plug-in states the range that it was written for. */
-export const contractVersion = '1.0.0';
+export const contractVersion = '1.1.0';
 
 /** What an adapter is and what it must be told. */
 export interface AdapterManifest<Configuration, Address> {
@@ -25,6 +25,8 @@ export interface AddressFacts {
   /** Least and greatest value that the wire can carry, engineering unit. */
   min: number;
   max: number;
+  /** Values per read: 1 where left out; more for a trace. */
+  points?: number;
 }
 
 /** Reads joined into the fewest requests; made once, read each scan. */
@@ -42,6 +44,11 @@ export interface ReadPlan {
 export interface ReadOutcome {
   readonly values: Float64Array;
   readonly faults: (DomainError | null)[];
+  /**
+   * Arrays of the addresses that carry a trace, engineering values, null at all others; left out where no
+   * address of the plan does. The `values` entry of a trace is NaN. Since 1.1.
+   */
+  readonly traces?: readonly (Float64Array | null)[];
   /** Set where the connection is gone and nothing was read: the session is of no more use. */
   lost: DomainError | null;
 }
@@ -50,6 +57,23 @@ export interface ReadOutcome {
 export interface WriteOutcome {
   readonly faults: (DomainError | null)[];
   lost: DomainError | null;
+}
+
+/** What one address answers when it is tried by hand. */
+export interface ProbeOutcome {
+  /** What came over the wire, as a person would compare it with a manual, e.g. `holding-register 40: 0x01F4`. */
+  raw: string;
+  /** Engineering value; NaN for a trace and where there is a fault. */
+  value: number;
+  trace: Float64Array | null;
+  fault: DomainError | null;
+}
+
+/** What reading a list of addresses will cost, told without opening anything. */
+export interface ScanBudget {
+  requests: number;
+  /** Time on the wire with a device that answers at once, s; null where the wire sets no bound. */
+  wireS: number | null;
 }
 
 /**
@@ -70,6 +94,8 @@ export interface AdapterSession<Address> {
   read(plan: ReadPlan): Promise<ReadOutcome>;
   /** Writes engineering values, joined where neighbours allow, in the given order. */
   write(addresses: readonly Address[], values: ArrayLike<number>): Promise<WriteOutcome>;
+  /** Tries one address by itself, with what came over the wire. Since 1.1; without it a read is used. */
+  probe?(address: Address): Promise<ProbeOutcome>;
   close(): Promise<void>;
 }
 
@@ -80,4 +106,10 @@ export interface Adapter<Configuration = unknown, Address = unknown> {
    * aborting the signal rejects with `adapter.cancelled` and leaves nothing open.
    */
   open(configuration: Configuration, signal: AbortSignal): Promise<AdapterSession<Address>>;
+  /**
+   * Cost of one read of all `addresses`, without opening anything; pure. Since 1.1.
+   *
+   * @throws adapter.misconfigured naming the address at fault
+   */
+  estimate?(configuration: Configuration, addresses: readonly Address[]): ScanBudget;
 }

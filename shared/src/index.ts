@@ -58,6 +58,7 @@ export * from './objectives/objective.schema.js';
 export * from './people/role.js';
 export * from './rigs/channel-id.js';
 export * from './rigs/quality.js';
+export * from './rigs/rig-model.js';
 export * from './rigs/rig.schema.js';
 export * from './runs/run-columns.js';
 export * from './runs/run-event.schema.js';

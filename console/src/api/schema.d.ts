@@ -1272,6 +1272,29 @@ export interface components {
                 };
             } | {
                 /** @enum {string} */
+                kind: "trace";
+                id: string;
+                title: string;
+                /** @default  */
+                unit: string;
+                display: {
+                    min: number;
+                    max: number;
+                    decimals: number;
+                };
+                connection: string;
+                address: {
+                    [key: string]: unknown;
+                };
+                axis: {
+                    title: string;
+                    /** @default  */
+                    unit: string;
+                    from: number;
+                    step: number;
+                };
+            } | {
+                /** @enum {string} */
                 kind: "derived";
                 id: string;
                 title: string;
@@ -1375,6 +1398,29 @@ export interface components {
                 connection: string;
                 address: {
                     [key: string]: unknown;
+                };
+            } | {
+                /** @enum {string} */
+                kind: "trace";
+                id: string;
+                title: string;
+                /** @default  */
+                unit: string;
+                display: {
+                    min: number;
+                    max: number;
+                    decimals: number;
+                };
+                connection: string;
+                address: {
+                    [key: string]: unknown;
+                };
+                axis: {
+                    title: string;
+                    /** @default  */
+                    unit: string;
+                    from: number;
+                    step: number;
                 };
             } | {
                 /** @enum {string} */

@@ -30,10 +30,19 @@ const wired = {
   address: jsonObjectSchema,
 };
 
-/** One named quantity with a unit. Traces come with the adapters that can carry them. */
+/** What the points of a trace stand for: point i is at `from + i * step`, in `unit`. */
+export const traceAxisSchema = z.object({
+  title: titleSchema,
+  unit: z.string().max(16).default(''),
+  from: z.number(),
+  step: z.number().positive(),
+});
+
+/** One named quantity with a unit. A trace is an array per scan; how many points it has, its address says. */
 export const channelSchema = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('sensor'), ...channelBase, ...wired }),
   z.object({ kind: z.literal('actuator'), ...channelBase, ...wired }),
+  z.object({ kind: z.literal('trace'), ...channelBase, ...wired, axis: traceAxisSchema }),
   z.object({ kind: z.literal('derived'), ...channelBase, expression: z.string().min(1).max(500) }),
 ]);
 
@@ -95,4 +104,5 @@ function reportDuplicates(items: { id: string }[], list: string, context: z.Refi
 export type Connection = z.infer<typeof connectionSchema>;
 export type Channel = z.infer<typeof channelSchema>;
 export type WiredChannel = Exclude<Channel, { kind: 'derived' }>;
+export type TraceAxis = z.infer<typeof traceAxisSchema>;
 export type Rig = z.infer<typeof rigSchema>;
