@@ -11,7 +11,13 @@ module.exports = {
       { path: '^(adapters|orchestrator|console|test-benches)/' },
     ),
     rule('adapters-look-down', { path: '^adapters/src' }, { path: '^(orchestrator|console|test-benches)/' }),
-    rule('benches-look-down', { path: '^test-benches/src' }, { path: '^(adapters|orchestrator|console)/' }),
+    rule('benches-look-down', { path: '^test-benches/src' }, { path: '^(orchestrator|console)/' }),
+    // A bench speaks for itself on the wire: the product's own adapters read it in tests and benchmarks only.
+    rule(
+      'benches-stand-alone',
+      { path: '^test-benches/src', pathNot: '(\\.test\\.ts$|\\.fixture\\.ts$|/benchmarks/)' },
+      { path: '^adapters/' },
+    ),
     rule('console-looks-down', { path: '^console/src' }, { path: '^(adapters|orchestrator|test-benches)/' }),
     rule('orchestrator-looks-down', { path: '^orchestrator/src' }, { path: '^(console|test-benches)/' }),
     rule(

@@ -2,7 +2,7 @@
 // `--long` adds the suites that repeat kills and run full property counts.
 import { spawn } from 'node:child_process';
 import { existsSync, mkdtempSync, readFileSync, rmSync } from 'node:fs';
-import { tmpdir } from 'node:os';
+import { availableParallelism, tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { installDependencies } from './prepare.mjs';
@@ -93,10 +93,16 @@ await check('Format', 'npm', ['run', '--silent', 'format:check']);
 const long = isLong ? { CRESTHOLD_LONG: '1' } : {};
 const vitest = ['vitest', 'run', '--reporter=default', '--reporter=json'];
 await suite('Unit tests', 'npx', [...vitest, '--outputFile.json'], { env: long });
-await suite('Server tests', 'npx', ['jest', '--json', '--outputFile'], {
-  cwd: join(root, 'orchestrator'),
-  env: long,
-});
+// Server tests wait for processes more than they compute: one worker more than there are cores pays.
+await suite(
+  'Server tests',
+  'npx',
+  ['jest', `--maxWorkers=${availableParallelism() + 1}`, '--json', '--outputFile'],
+  {
+    cwd: join(root, 'orchestrator'),
+    env: long,
+  },
+);
 await suite(
   'Browser tests',
   'npx',
