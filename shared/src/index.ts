@@ -1,3 +1,8 @@
+export * from './calibrations/calibration.schema.js';
+export * from './calibrations/convert.js';
+export * from './calibrations/its-90.js';
+export * from './calibrations/platinum-resistance.js';
+export { thermocoupleTypes, type ThermocoupleType } from './calibrations/thermocouples.js';
 export * from './dither/dither-amplitude.js';
 export * from './dither/dither-lines.js';
 export * from './dither/plan-dithers.js';
