@@ -1,25 +1,16 @@
 import { DomainError } from '@cresthold/shared';
-import type { AdapterSession, AddressFacts, ReadOutcome, ReadPlan, WriteOutcome } from '../contract.js';
+import type {
+  AdapterSession,
+  AddressFacts,
+  ProbeOutcome,
+  ReadOutcome,
+  ReadPlan,
+  WriteOutcome,
+} from '../contract.js';
 import { parseOrMisconfigured } from '../parse-or-misconfigured.js';
 import { type InMemoryAddress, inMemoryAddressSchema } from './in-memory.schema.js';
+import { MemoryReadPlan } from './memory-read-plan.js';
 import type { MemoryStore } from './memory-store.js';
-
-class MemoryReadPlan implements ReadPlan {
-  readonly requests = 1;
-  readonly outcome: ReadOutcome;
-
-  constructor(readonly names: readonly string[]) {
-    this.outcome = {
-      values: new Float64Array(names.length).fill(NaN),
-      faults: new Array<DomainError | null>(names.length).fill(null),
-      lost: null,
-    };
-  }
-
-  get count(): number {
-    return this.names.length;
-  }
-}
 
 const ignore = (): void => undefined;
 
@@ -39,14 +30,14 @@ export class InMemorySession implements AdapterSession<InMemoryAddress> {
   }
 
   describe(address: InMemoryAddress): AddressFacts {
-    const { isWritable, quantum, min, max } = parseOrMisconfigured(inMemoryAddressSchema, address, 'address');
-    return { isWritable, quantum, quantumOrigin: 0, min, max };
+    const { points, quantum, min, max } = parseOrMisconfigured(inMemoryAddressSchema, address, 'address');
+    return { isWritable: this.isWritable(address), quantum, quantumOrigin: 0, min, max, points };
   }
 
   planRead(addresses: readonly InMemoryAddress[]): ReadPlan {
     return new MemoryReadPlan(
-      addresses.map(
-        (address, index) => parseOrMisconfigured(inMemoryAddressSchema, address, `addresses[${index}]`).name,
+      addresses.map((address, index) =>
+        parseOrMisconfigured(inMemoryAddressSchema, address, `addresses[${index}]`),
       ),
     );
   }
@@ -56,14 +47,20 @@ export class InMemorySession implements AdapterSession<InMemoryAddress> {
     return this.inTurn(async () => {
       const failure = await this.answer();
       if (!failure) this.store.onRead?.();
+      for (let i = 0; i < plan.count; i += 1) this.readOne(plan, i, failure);
       plan.outcome.lost = this.ended;
-      plan.names.forEach((name, index) => {
-        const value = failure ? undefined : this.store.get(name);
-        plan.outcome.values[index] = value ?? NaN;
-        plan.outcome.faults[index] = failure ?? (value === undefined ? this.unknown(name) : null);
-      });
       return plan.outcome;
     });
+  }
+
+  async probe(address: InMemoryAddress): Promise<ProbeOutcome> {
+    const plan = this.planRead([address]) as MemoryReadPlan;
+    const { values, faults } = await this.read(plan);
+    const fault = faults[0] ?? null;
+    const trace = fault ? null : (plan.traces[0] ?? null);
+    const value = values[0] ?? NaN;
+    const shown = trace ? `${trace.length} points` : String(value);
+    return { raw: fault ? '' : `${address.name} = ${shown}`, value, trace, fault };
   }
 
   async write(addresses: readonly InMemoryAddress[], values: ArrayLike<number>): Promise<WriteOutcome> {
@@ -84,16 +81,41 @@ export class InMemorySession implements AdapterSession<InMemoryAddress> {
     return Promise.resolve();
   }
 
+  private readOne(plan: MemoryReadPlan, index: number, failure: DomainError | null): void {
+    const address = plan.addresses[index];
+    if (address === undefined) return;
+    if (failure) return plan.fail(index, failure);
+    const { name, points } = address;
+    const found = points > 1 ? this.store.trace(name) : this.store.get(name);
+    if (found === undefined) plan.fail(index, this.unknown(name));
+    else if (typeof found === 'number') plan.take(index, found);
+    else if (found.length === points) plan.takeTrace(index, found);
+    else plan.fail(index, this.otherLength(name, found.length, points));
+  }
+
+  private isWritable({ name, points, isWritable }: InMemoryAddress): boolean {
+    return isWritable && points === 1 && (!this.store.has(name) || this.store.isWritable(name));
+  }
+
   private writeOne(address: InMemoryAddress, value: number): DomainError | null {
     const { name, quantum, min, max } = address;
-    if (!address.isWritable) return new DomainError('adapter.misconfigured', `"${name}" can only be read.`);
+    if (!this.isWritable(address))
+      return new DomainError('adapter.misconfigured', `"${name}" can only be read.`);
     if (!(value >= min && value <= max)) {
       const text = `"${name}": ${value} is outside what can be written: ${min} to ${max}.`;
       return new DomainError('adapter.misconfigured', text);
     }
     if (!this.store.has(name)) return this.unknown(name);
-    this.store.take(name, quantum > 0 ? Math.round(value / quantum) * quantum : value);
-    return null;
+    if (this.store.take(name, quantum > 0 ? Math.round(value / quantum) * quantum : value)) return null;
+    return new DomainError(
+      'adapter.refused',
+      `Store "${this.storeName}" did not take ${value} as "${name}".`,
+    );
+  }
+
+  private otherLength(name: string, has: number, asked: number): DomainError {
+    const text = `"${name}" of store "${this.storeName}" has ${has} points, not ${asked}.`;
+    return new DomainError('adapter.refused', text);
   }
 
   private unknown(name: string): DomainError {

@@ -10,7 +10,8 @@ export const inMemoryAddressSchema = z.strictObject({
   quantum: z.number().min(0).default(0).describe('Step of the values, engineering unit; 0 for none.'),
   min: z.number().default(-1e9).describe('Least value that can be written.'),
   max: z.number().default(1e9).describe('Greatest value that can be written.'),
-  isWritable: z.boolean().default(true),
+  isWritable: z.boolean().default(true).describe('Whether it may be written.'),
+  points: z.int().min(1).max(65_536).default(1).describe('Points per read: 1, or more for a trace.'),
 });
 
 export type InMemoryConfiguration = z.infer<typeof inMemoryConfigurationSchema>;

@@ -1,3 +1,6 @@
+import type { RigModel } from '@cresthold/shared';
+import { type MemoryValues, ModelValues, PlainValues } from './memory-values.js';
+
 /** How a store behaves towards the sessions on it. */
 export type MemoryMood =
   /** Answers. */
@@ -9,17 +12,36 @@ export type MemoryMood =
   /** Ends open sessions and takes no new ones. */
   | 'gone';
 
-/** Named values that sessions of one process share, with hooks for tests and rehearsals. */
+/**
+ * Named values that sessions of one process share, with hooks for tests and rehearsals. The values are set by
+ * hand, or shown by a model.
+ */
 export class MemoryStore {
   mood: MemoryMood = 'answering';
   /** Every accepted write in order; emptied by the test that looks. */
   readonly writes: { name: string; value: number }[] = [];
-  /** Called before each read, so that a model can set fresh values. */
+  /** Called before each read, so that fresh values can be set, or a model taken on. */
   onRead: (() => void) | null = null;
   /** Called after each accepted write. */
   onWrite: ((name: string, value: number) => void) | null = null;
-  private readonly values = new Map<string, number>();
+  private readonly plain = new PlainValues();
+  private values: MemoryValues = this.plain;
   private generation = 0;
+
+  /**
+   * From now on the store shows the model's values, and writes go to the model. Virtual time is the caller's:
+   * nothing moves until `model.advanceTo` is called.
+   *
+   * @example
+   * memoryStore('rehearsal').useModel(model);
+   * const session = await inMemoryAdapter.open({ store: 'rehearsal', timeoutMs: 100 }, signal);
+   * model.advanceTo(0.05);
+   * const outcome = await session.read(plan); // what the instruments show at 50 ms
+   */
+  useModel(model: RigModel): this {
+    this.values = new ModelValues(model);
+    return this;
+  }
 
   /** Ends the open sessions as a broken wire would; new ones are welcome. */
   endSessions(): void {
@@ -31,8 +53,19 @@ export class MemoryStore {
     return this.generation;
   }
 
+  /** @throws TypeError where a model shows the values */
   set(name: string, value: number): void {
-    this.values.set(name, value);
+    this.byHand().set(name, value);
+  }
+
+  /** @throws TypeError where a model shows the values */
+  setTrace(name: string, points: Float64Array): void {
+    this.byHand().setTrace(name, points);
+  }
+
+  /** @throws TypeError where a model shows the values */
+  remove(name: string): void {
+    this.byHand().remove(name);
   }
 
   /** The value, or undefined where the store has none of this name. */
@@ -40,19 +73,31 @@ export class MemoryStore {
     return this.values.get(name);
   }
 
+  /** The points of a trace, owned by the store; undefined where it has none of this name. */
+  trace(name: string): Float64Array | undefined {
+    return this.values.trace(name);
+  }
+
   has(name: string): boolean {
     return this.values.has(name);
   }
 
-  remove(name: string): void {
-    this.values.delete(name);
+  /** False for what only can be read, however it is addressed. */
+  isWritable(name: string): boolean {
+    return this.values.isWritable(name);
   }
 
-  /** What a session does with an accepted write. */
-  take(name: string, value: number): void {
-    this.values.set(name, value);
+  /** What a session does with a write. @returns whether it was accepted */
+  take(name: string, value: number): boolean {
+    if (!this.values.take(name, value)) return false;
     this.writes.push({ name, value });
     this.onWrite?.(name, value);
+    return true;
+  }
+
+  private byHand(): PlainValues {
+    if (this.values !== this.plain) throw new TypeError('a model shows the values of this store');
+    return this.plain;
   }
 }
 
