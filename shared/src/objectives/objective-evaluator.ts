@@ -15,7 +15,7 @@ export interface ObjectiveEvaluator {
    * The objective in one scan, with the sign that its expression gives it: the direction is not applied.
    *
    * @returns the same object each time, overwritten by the next call
-   * @realtime safe: keeps nothing; the engine may box the value, 16 bytes that live until the next call
+   * @realtime safe: allocates nothing
    */
   evaluate(readings: Readings): Readonly<ObjectiveSample>;
 }
@@ -87,18 +87,25 @@ function bindTo(
   };
 }
 
+/**
+ * A class, though it does nothing: the engine keeps numbers in place in objects of a shape of their own, whereas a
+ * literal shares its shape with every literal that begins with a `value`, whatever that is, and then each number
+ * written goes on the heap.
+ */
+class OwnSample implements ObjectiveSample {
+  value = NaN;
+  isGood = false;
+  isValid = false;
+  whyInvalid: string | null = null;
+}
+
 function evaluatorOf(
   content: ObjectiveContent,
   value: CompiledExpression,
   conditions: readonly Condition[],
 ): ObjectiveEvaluator {
   const result = new Float64Array(1);
-  const sample: ObjectiveSample = {
-    value: NaN,
-    isGood: false,
-    isValid: false,
-    whyInvalid: null,
-  };
+  const sample = new OwnSample();
   let bound: BoundObjective | null = null;
   const symbols = [value, ...conditions.flatMap(({ expression }) => expression ?? [])].flatMap(
     (e) => e.symbols,
@@ -110,9 +117,8 @@ function evaluatorOf(
       // The readings of a rig are one object from scan to scan.
       if (bound?.readings !== readings) bound = bindTo(readings, result, value, conditions);
       bound.evaluate();
-      const found = result[0] as number;
-      sample.value = found;
-      sample.isGood = Number.isFinite(found);
+      sample.value = result[0] as number;
+      sample.isGood = Number.isFinite(result[0]);
       sample.whyInvalid = sample.isGood
         ? firstViolated(bound)
         : 'A reading that the objective needs is not good.';

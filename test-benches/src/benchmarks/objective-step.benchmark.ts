@@ -1,5 +1,6 @@
 import { compileObjective, Quality, Readings, rigSchema, type ObjectiveEvaluator } from '@cresthold/shared';
 import type { Benchmark } from './benchmark.types.js';
+import { heapGrowthOf } from './heap-growth.js';
 
 const evaluationsPerRound = 200_000;
 const rounds = 11;
@@ -61,7 +62,7 @@ export const objectiveStep: Benchmark = {
       );
     }
     const [own, hand] = [median(times.objective), median(times.hand)];
-    const heapGrowthBytes = heapGrowth(() => evaluateOver(objective, readings, heapEvaluations));
+    const heapGrowthBytes = heapGrowthOf(() => evaluateOver(objective, readings, heapEvaluations));
     return Promise.resolve({
       name: this.name,
       value: own,
@@ -139,12 +140,6 @@ function nanoseconds(times: number, act: () => number): number {
   const tookMs = performance.now() - startMs;
   if (!Number.isFinite(sum)) throw new Error('The objective came to no number.');
   return (tookMs * 1e6) / times;
-}
-
-function heapGrowth(act: () => number): number {
-  const before = process.memoryUsage().heapUsed;
-  act();
-  return process.memoryUsage().heapUsed - before;
 }
 
 function median(values: number[]): number {

@@ -1,5 +1,3 @@
-import { setFlagsFromString } from 'node:v8';
-import { runInNewContext } from 'node:vm';
 import {
   seekingLaws,
   type SeekingInput,
@@ -8,6 +6,7 @@ import {
   type SeekingState,
 } from '@cresthold/shared';
 import type { Benchmark } from '../benchmark.types.js';
+import { heapGrowthOf } from '../heap-growth.js';
 import {
   bareBoundedRate,
   bareConstrained,
@@ -72,11 +71,7 @@ function lawStep(law: SeekingLaw<object, SeekingState>, { parameters, bare }: Ca
         times.law.push(nsPerStep(() => climb(steps)));
         times.bare.push(nsPerStep(() => bare(steps, amplitude)));
       }
-      // What was left lying before is none of the law's; what it leaves itself stays counted.
-      collectGarbage();
-      const before = process.memoryUsage().heapUsed;
-      climb(heapSteps);
-      const heapGrowthBytes = process.memoryUsage().heapUsed - before;
+      const heapGrowthBytes = heapGrowthOf(() => climb(heapSteps));
       const value = median(times.law);
       return Promise.resolve({
         name: this.name,
@@ -111,12 +106,6 @@ function climber(law: SeekingLaw<object, SeekingState>, settings: object): (coun
     }
     return applied;
   };
-}
-
-function collectGarbage(): void {
-  setFlagsFromString('--expose-gc');
-  const collect = runInNewContext('gc') as () => void;
-  collect();
 }
 
 function nsPerStep(act: () => number): number {
