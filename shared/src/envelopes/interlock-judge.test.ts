@@ -13,6 +13,8 @@ function compiled(text: string): CompiledExpression {
   return outcome.expression;
 }
 
+const readings = new Readings(['temp', 'co']);
+
 function judgeOf(...interlocks: Partial<Interlock>[]): InterlockJudge {
   const whole = interlocks.map((change, index) =>
     interlockSchema.parse({
@@ -28,20 +30,23 @@ function judgeOf(...interlocks: Partial<Interlock>[]): InterlockJudge {
   return new InterlockJudge(
     whole,
     whole.map(({ condition }) => compiled(condition)),
+    readings,
   );
 }
 
-const reading =
-  (temp: number, co = 0) =>
-  (symbol: string) =>
-    symbol === 'temp' ? temp : co;
+/** Judges a scan in which the sensors show this. */
+function judgeScan(judge: InterlockJudge, tS: number, temp: number, co = 0): void {
+  readings.set(0, temp, Quality.good);
+  readings.set(1, co, Quality.good);
+  judge.judge(tS);
+}
 const actedIds = ({ acted }: InterlockJudge) => acted.map(({ id }) => id);
 
 describe('an interlock', () => {
   it('acts in the first scan without a delay, and once per episode', () => {
     const judge = judgeOf({});
     const acted = [80, 91, 92, 89, 95].map((temp, i) => {
-      judge.judge(reading(temp), i);
+      judgeScan(judge, i, temp);
       return judge.acted.length;
     });
     expect(acted).toEqual([0, 1, 0, 0, 1]);
@@ -50,7 +55,7 @@ describe('an interlock', () => {
   it('acts exactly when its condition has held for the delay', () => {
     const judge = judgeOf({ delayS: 0.3 });
     const states = Array.from({ length: 5 }, (_, i) => {
-      judge.judge(reading(95), 7 + i * 0.1);
+      judgeScan(judge, 7 + i * 0.1, 95);
       return judge.stateOf('lock-0');
     });
     expect(states).toEqual(['pending', 'pending', 'pending', 'acted', 'acted']);
@@ -58,32 +63,32 @@ describe('an interlock', () => {
 
   it('does not act a scan too early', () => {
     const judge = judgeOf({ delayS: 0.3 });
-    for (const tS of [0, 0.1, 0.2, 0.299]) judge.judge(reading(95), tS);
+    for (const tS of [0, 0.1, 0.2, 0.299]) judgeScan(judge, tS, 95);
     expect(judge.stateOf('lock-0')).toBe('pending');
-    judge.judge(reading(95), 0.3);
+    judgeScan(judge, 0.3, 95);
     expect(judge.stateOf('lock-0')).toBe('acted');
   });
 
   it('begins its delay anew after the condition was false for one scan', () => {
     const judge = judgeOf({ delayS: 0.3 });
-    for (const [i, temp] of [95, 95, 95, 80, 95, 95, 95].entries()) judge.judge(reading(temp), i * 0.1);
+    for (const [i, temp] of [95, 95, 95, 80, 95, 95, 95].entries()) judgeScan(judge, i * 0.1, temp);
     expect(judge.stateOf('lock-0')).toBe('pending');
   });
 
   it('counts an input that is not a number as violated, whatever side the condition would be on', () => {
     for (const condition of ['temp > 90', 'temp < 90', 'not (temp > 90)', 'temp > 90 or co < 5']) {
       const judge = judgeOf({ condition });
-      judge.judge(reading(NaN), 0);
+      judgeScan(judge, 0, NaN);
       expect(judge.stateOf('lock-0')).toBe('acted');
     }
   });
 
   it('says once that it became clear after it had acted, and nothing of one that was only pending', () => {
     const judge = judgeOf({ delayS: 0 }, { delayS: 10 });
-    judge.judge(reading(95), 0);
-    judge.judge(reading(80), 0.1);
+    judgeScan(judge, 0, 95);
+    judgeScan(judge, 0.1, 80);
     expect(judge.cleared.map(({ id }) => id)).toEqual(['lock-0']);
-    judge.judge(reading(80), 0.2);
+    judgeScan(judge, 0.2, 80);
     expect(judge.cleared).toEqual([]);
   });
 
@@ -93,22 +98,22 @@ describe('an interlock', () => {
       { delayS: 0.2, condition: 'temp > 90' },
       { delayS: 0.28, condition: 'temp > 91' },
     );
-    for (const tS of [0, 0.1, 0.2 - 0.001, 0.3]) judge.judge(reading(95, 9), tS);
+    for (const tS of [0, 0.1, 0.2 - 0.001, 0.3]) judgeScan(judge, tS, 95, 9);
     expect(actedIds(judge)).toEqual(['lock-1', 'lock-0', 'lock-2']);
   });
 
   it('keeps the order of the envelope where they came due together', () => {
     const judge = judgeOf({ condition: 'co > 5' }, { condition: 'temp > 90' });
-    judge.judge(reading(95, 9), 0);
+    judgeScan(judge, 0, 95, 9);
     expect(actedIds(judge)).toEqual(['lock-0', 'lock-1']);
   });
 
   it('tells whether any state has changed, and whether it has judged at all', () => {
     const judge = judgeOf({});
     expect(judge.hasJudged).toBe(false);
-    judge.judge(reading(80), 0);
+    judgeScan(judge, 0, 80);
     expect([judge.hasJudged, judge.hasChanged]).toEqual([true, false]);
-    judge.judge(reading(95), 1);
+    judgeScan(judge, 1, 95);
     expect(judge.hasChanged).toBe(true);
   });
 });

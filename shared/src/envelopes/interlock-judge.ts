@@ -1,4 +1,4 @@
-import type { CompiledExpression, Lookup } from '../expressions/expression.types.js';
+import type { CompiledExpression, ValueSource } from '../expressions/expression.types.js';
 import type { Interlock, InterlockAction } from './envelope.schema.js';
 
 export type InterlockState = 'clear' | 'pending' | 'acted';
@@ -8,7 +8,8 @@ const sameTimeS = 1e-9;
 
 interface Judged {
   readonly interlock: Interlock;
-  readonly condition: CompiledExpression;
+  /** Puts whether the condition holds into the judge's `truth`. */
+  readonly evaluate: () => void;
   state: InterlockState;
   /** When the condition became true, s; NaN while it is false. */
   sinceS: number;
@@ -29,28 +30,38 @@ export class InterlockJudge {
   /** Before the first judgement nothing is known to be clear. */
   hasJudged = false;
   private readonly judged: Judged[];
+  private readonly truth = new Float64Array(1);
 
-  /** @param conditions one per interlock, in the same order */
-  constructor(interlocks: readonly Interlock[], conditions: readonly CompiledExpression[]) {
+  /**
+   * @param conditions one per interlock, in the same order
+   * @param source what they read in each scan: the readings
+   */
+  constructor(
+    interlocks: readonly Interlock[],
+    conditions: readonly CompiledExpression[],
+    source: ValueSource,
+  ) {
     this.judged = interlocks.flatMap((interlock, index) => {
-      const condition = conditions[index];
-      return condition ? [{ interlock, condition, state: 'clear' as const, sinceS: NaN }] : [];
+      const evaluate = conditions[index]?.bind(source, this.truth);
+      return evaluate ? [{ interlock, evaluate, state: 'clear' as const, sinceS: NaN }] : [];
     });
     if (this.judged.length !== interlocks.length) throw new Error('An interlock has no condition.');
   }
 
   /**
+   * Judges what stands in the source now.
+   *
    * @param tS monotonic time, s
    * @realtime safe: allocates only in a scan in which several interlocks act
    */
-  judge(lookup: Lookup, tS: number): void {
+  judge(tS: number): void {
     this.acted.length = 0;
     this.cleared.length = 0;
     this.hasChanged = false;
     this.hasJudged = true;
     for (const judged of this.judged) {
       const before = judged.state;
-      this.judgeOne(judged, lookup, tS);
+      this.judgeOne(judged, tS);
       if (judged.state !== before) this.hasChanged = true;
     }
     if (this.acted.length > 1) this.acted.sort((a, b) => this.dueS(a) - this.dueS(b));
@@ -77,9 +88,10 @@ export class InterlockJudge {
     return this.judged.map(({ interlock, state }) => ({ id: interlock.id, state }));
   }
 
-  private judgeOne(judged: Judged, lookup: Lookup, tS: number): void {
+  private judgeOne(judged: Judged, tS: number): void {
+    judged.evaluate();
     /** Only a plain 0 is safe: NaN is not. */
-    if (judged.condition.evaluate(lookup) === 0) {
+    if (this.truth[0] === 0) {
       if (judged.state === 'acted') this.cleared.push(judged.interlock);
       judged.state = 'clear';
       judged.sinceS = NaN;

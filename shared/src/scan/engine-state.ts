@@ -8,7 +8,6 @@ import {
 } from '../envelopes/rig-state-machine.js';
 import { motionOf } from '../envelopes/rig-moves.js';
 import { DomainError, type FieldFault } from '../errors/domain-error.js';
-import type { Lookup } from '../expressions/expression.types.js';
 import type { Rig } from '../rigs/rig.schema.js';
 import { type HeldActuator, releaseAll } from './actuator-bank.js';
 import { DerivedChannels } from './derived-channels.js';
@@ -27,7 +26,6 @@ export interface EngineState {
   readonly periodS: number;
   readonly grids: ReadonlyMap<string, ValueGrid>;
   readonly readings: Readings;
-  readonly lookup: Lookup;
   readonly derived: DerivedChannels;
   readonly wires: WireWatch;
   readonly isConnectionLost: (connection: string) => boolean;
@@ -64,7 +62,6 @@ export function createEngineState(configuration: ScanEngineConfiguration): Engin
     periodS: rig.periodMs / 1000,
     grids,
     readings,
-    lookup: (symbol) => readings.goodValue(readings.indexOf(symbol)),
     derived: new DerivedChannels(rig, readings),
     wires,
     isConnectionLost: (connection) => wires.isLost(connection),

@@ -44,7 +44,7 @@ export function fitEnvelope(
   return {
     inForce,
     actuators: createActuatorBank(rig, content.limits, grids, readings),
-    interlocks: new InterlockJudge(content.interlocks, conditions),
+    interlocks: new InterlockJudge(content.interlocks, conditions, readings),
     staleness: new StalenessJudge(content.staleness, readings),
     heartbeat: heartbeatOf(inForce, rig),
   };

@@ -30,7 +30,7 @@ export function runScan(engine: EngineState, input: ScanInput): ScanOutput {
   output.runTS = run ? run.runTS(input.tS) : null;
   log.beginScan(output.runTS, input.atMs);
   lookAtWires(engine, input);
-  engine.derived.fill(engine.lookup);
+  engine.derived.fill();
   judge(engine, input);
   watch(engine, input);
   run?.evaluateObjective();
@@ -77,7 +77,7 @@ function judge(engine: EngineState, input: ScanInput): void {
   const { fitted, log } = engine;
   if (!fitted) return;
   const { interlocks, staleness } = fitted;
-  interlocks.judge(engine.lookup, input.tS);
+  interlocks.judge(input.tS);
   staleness.judge(engine.readings, input.tS);
   if (interlocks.hasChanged) engine.isStatusChanged = true;
   for (const { id } of interlocks.cleared) log.add({ type: 'interlock.cleared', interlock: id });
