@@ -72,6 +72,7 @@ export * from './scan/fitted-envelope.js';
 export * from './scan/readings.js';
 export * from './scan/scan-engine.js';
 export * from './scan/scan-engine.types.js';
+export { calibrationFaults } from './scan/sensor-calibrations.js';
 export * from './scenario/scenario.schema.js';
 export * from './seeking/bounded-rate-law.js';
 export * from './seeking/constrained-law.js';

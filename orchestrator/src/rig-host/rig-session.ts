@@ -49,9 +49,9 @@ export class RigSession {
     link: ServerLink,
     private readonly onBug: (error: unknown) => void,
   ) {
-    const { envelope, trip, isLockedOut } = configuration;
+    const { envelope, trip, isLockedOut, calibrations } = configuration;
     this.envelope = envelope;
-    const setting = { rig, envelope, trip, isLockedOut, grids: this.grids };
+    const setting = { rig, envelope, trip, isLockedOut, grids: this.grids, calibrations };
     this.engine = createScanEngine(setting, { createSequencer, preflight });
     const { readings } = this.engine;
     const onOpened = () => this.learnGrids();

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { calibrationInForceSchema } from '../calibrations/calibration.schema.js';
 import { envelopeInForceSchema } from '../envelopes/envelope.schema.js';
 import type { ErrorRecord } from '../errors/domain-error.js';
 import { experimentGraphSchema } from '../experiments/experiment.schema.js';
@@ -32,6 +33,8 @@ export const hostCommandSchema = z.discriminatedUnion('type', [
     type: z.literal('configure'),
     rig: rigSchema,
     envelope: envelopeInForceSchema.nullable(),
+    /** One a sensor at most; left out where none is calibrated. */
+    calibrations: z.array(calibrationInForceSchema).optional(),
     /** A trip that was latched before this host began. */
     trip: tripSchema.nullable(),
     isLockedOut: z.boolean(),

@@ -14,6 +14,7 @@ import { DerivedChannels } from './derived-channels.js';
 import { EventLog } from './event-log.js';
 import { fitEnvelope, type FittedEnvelope } from './fitted-envelope.js';
 import { Readings } from './readings.js';
+import { SensorCalibrations } from './sensor-calibrations.js';
 import type { RunEnd, RunKeeper } from './run-keeper.js';
 import type { ScanEngineConfiguration, ScanOutput, ValueGrid } from './scan-engine.types.js';
 import { beginStopAction } from './stop-action.js';
@@ -26,6 +27,7 @@ export interface EngineState {
   readonly periodS: number;
   readonly grids: ReadonlyMap<string, ValueGrid>;
   readonly readings: Readings;
+  readonly calibrations: SensorCalibrations;
   readonly derived: DerivedChannels;
   readonly wires: WireWatch;
   readonly isConnectionLost: (connection: string) => boolean;
@@ -45,7 +47,7 @@ export interface EngineState {
 
 /** @throws expression.invalid, channel.not-found where rig or envelope do not fit together */
 export function createEngineState(configuration: ScanEngineConfiguration): EngineState {
-  const { rig, envelope, grids, trip, isLockedOut } = configuration;
+  const { rig, envelope, grids, trip, isLockedOut, calibrations = [] } = configuration;
   const readings = new Readings(rig.channels.map(({ id }) => id));
   const output: ScanOutput = {
     writes: [],
@@ -62,6 +64,7 @@ export function createEngineState(configuration: ScanEngineConfiguration): Engin
     periodS: rig.periodMs / 1000,
     grids,
     readings,
+    calibrations: new SensorCalibrations(calibrations, rig, readings),
     derived: new DerivedChannels(rig, readings),
     wires,
     isConnectionLost: (connection) => wires.isLost(connection),

@@ -19,7 +19,7 @@ import { isoTime } from './wall-time.js';
 import { watch } from './watchdogs.js';
 
 /**
- * One scan: derived channels, then judged before decided, and guarded after; then what is to be
+ * One scan: calibrated and derived channels, then judged before decided, and guarded after; then what is to be
  * written and recorded.
  */
 export function runScan(engine: EngineState, input: ScanInput): ScanOutput {
@@ -30,6 +30,7 @@ export function runScan(engine: EngineState, input: ScanInput): ScanOutput {
   output.runTS = run ? run.runTS(input.tS) : null;
   log.beginScan(output.runTS, input.atMs);
   lookAtWires(engine, input);
+  engine.calibrations.apply();
   engine.derived.fill();
   judge(engine, input);
   watch(engine, input);

@@ -1,3 +1,4 @@
+import type { CalibrationInForce } from '../calibrations/calibration.schema.js';
 import type { EnvelopeInForce } from '../envelopes/envelope.schema.js';
 import type { RunOrder } from '../live/host-message.schema.js';
 import type { RigStatus, Trip } from '../live/rig-status.schema.js';
@@ -23,6 +24,8 @@ export interface ScanEngineConfiguration {
    * connection comes up, so it may be filled once the wire is open.
    */
   grids: ReadonlyMap<string, ValueGrid>;
+  /** Calibrations of sensors, at most one each; a sensor without one is taken as the adapter gives it. */
+  calibrations?: readonly CalibrationInForce[] | undefined;
 }
 
 /** What the wire and the clock brought in one scan. */
