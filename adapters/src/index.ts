@@ -11,4 +11,4 @@ export type { ModbusAddress } from './modbus/modbus-address.schema.js';
 export { modbusTcpAdapter } from './modbus-tcp/modbus-tcp.adapter.js';
 export type { ModbusTcpConfiguration } from './modbus-tcp/modbus-tcp-configuration.schema.js';
 export * from './registry.js';
-export { listSerialPorts, type SerialPortListing } from './serial/open-serial-port.js';
+export { listSerialPorts, type SerialPortListing } from './serial/list-serial-ports.js';

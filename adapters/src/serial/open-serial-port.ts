@@ -1,16 +1,19 @@
 import { isMainThread } from 'node:worker_threads';
 import { DomainError } from '@cresthold/shared';
 import { SerialPort, type SerialPortMock } from 'serialport';
-import type { SerialLineConfiguration } from './serial-line.schema.js';
+import type { SerialPortSettings } from './serial-port.schema.js';
 
 export type OpenSerialPort = SerialPort | SerialPortMock;
 
 export interface SerialPortOptions {
   path: string;
   baudRate: number;
-  dataBits: SerialLineConfiguration['dataBits'];
-  parity: SerialLineConfiguration['parity'];
-  stopBits: SerialLineConfiguration['stopBits'];
+  dataBits: SerialPortSettings['dataBits'];
+  parity: SerialPortSettings['parity'];
+  stopBits: SerialPortSettings['stopBits'];
+  rtscts: boolean;
+  xon: boolean;
+  xoff: boolean;
   autoOpen: false;
 }
 
@@ -25,18 +28,17 @@ const makeRealPort: SerialPortMaker = (options) => new SerialPort(options);
  * @throws adapter.cancelled, adapter.disconnected naming the port and what to do
  */
 export async function openSerialPort(
-  configuration: SerialLineConfiguration,
+  settings: SerialPortSettings,
   signal: AbortSignal,
   makePort: SerialPortMaker = makeRealPort,
 ): Promise<OpenSerialPort> {
   // The binding aborts the whole process when it is opened in a worker thread.
   if (!isMainThread) throw new Error('serial ports are opened on the main thread only');
   if (signal.aborted) throw new DomainError('adapter.cancelled', 'Opening was cancelled.');
-  const { path, baudRate, dataBits, parity, stopBits } = configuration;
-  const port = makePort({ path, baudRate, dataBits, parity, stopBits, autoOpen: false });
+  const port = makePort(optionsOf(settings));
   await new Promise<void>((resolve, reject) => {
     port.open((error) => {
-      if (error) reject(portFault(path, error));
+      if (error) reject(portFault(settings.path, error));
       else resolve();
     });
   });
@@ -46,6 +48,22 @@ export async function openSerialPort(
     throw new DomainError('adapter.cancelled', 'Opening was cancelled.');
   }
   return port;
+}
+
+function optionsOf(settings: SerialPortSettings): SerialPortOptions {
+  const { path, baudRate, dataBits, parity, stopBits, flowControl = 'none' } = settings;
+  const hasXon = flowControl === 'xon-xoff';
+  return {
+    path,
+    baudRate,
+    dataBits,
+    parity,
+    stopBits,
+    rtscts: flowControl === 'rts-cts',
+    xon: hasXon,
+    xoff: hasXon,
+    autoOpen: false,
+  };
 }
 
 function isAborted(signal: AbortSignal): boolean {
@@ -78,25 +96,4 @@ export function portFault(path: string, error: Error): DomainError {
   return new DomainError('adapter.disconnected', `${path}: ${reason} (${error.message}).`, [], {
     cause: error,
   });
-}
-
-export interface SerialPortListing {
-  path: string;
-  manufacturer: string | null;
-  serialNumber: string | null;
-}
-
-/** The serial ports that the operating system knows, by path. */
-export async function listSerialPorts(
-  list: () => Promise<{ path: string; manufacturer?: string; serialNumber?: string }[]> = () =>
-    SerialPort.list(),
-): Promise<SerialPortListing[]> {
-  const ports = await list();
-  return ports
-    .map(({ path, manufacturer, serialNumber }) => ({
-      path,
-      manufacturer: manufacturer ?? null,
-      serialNumber: serialNumber ?? null,
-    }))
-    .sort((a, b) => a.path.localeCompare(b.path));
 }
