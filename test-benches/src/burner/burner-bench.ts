@@ -1,4 +1,4 @@
-import { benchClock } from './bench-clock.js';
+import { benchClock } from '../kit/bench-clock.js';
 import { openBenchLog, type BenchLogEntry } from './bench-log.js';
 import type { BurnerOptions } from './burner-options.js';
 import { burnerRegisterMap } from './burner-registers.js';

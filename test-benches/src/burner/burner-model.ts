@@ -7,7 +7,7 @@ import {
   type BestTrim,
   type FlueGas,
 } from './burner-physics.js';
-import { beatWatchdog, initialWatchdog, stepWatchdog, type WatchdogState } from './heartbeat-watchdog.js';
+import { beatWatchdog, initialWatchdog, stepWatchdog, type WatchdogState } from '../kit/heartbeat-watchdog.js';
 
 /** Where the damper goes when the watchdog acts: much air, so that nothing unburnt gathers. */
 export const safeTrimPct = 70;

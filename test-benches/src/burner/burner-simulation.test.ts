@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { noiseSigma } from './burner-model.js';
 import { BurnerFault, BurnerSimulation, type BurnerReadings } from './burner-simulation.js';
-import { seededRandom } from './seeded-random.js';
+import { seededRandom } from '../kit/seeded-random.js';
 
 const options = { seed: 7, isNoisy: true, isDrifting: false };
 

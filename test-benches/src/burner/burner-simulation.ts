@@ -10,7 +10,7 @@ import {
   type BurnerTruth,
 } from './burner-model.js';
 import { nominalAirTempC } from './burner-physics.js';
-import { seededRandom, type SeededRandom } from './seeded-random.js';
+import { seededRandom, type SeededRandom } from '../kit/seeded-random.js';
 
 /** What the burner's instruments show. */
 export interface BurnerReadings {

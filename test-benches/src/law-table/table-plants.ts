@@ -1,4 +1,4 @@
-import { seededRandom } from '../burner/seeded-random.js';
+import { seededRandom } from '../kit/seeded-random.js';
 
 /** A plant that a law is tried on: a map to be made large, best at `best`, and what stands behind it. */
 export interface TablePlant {
