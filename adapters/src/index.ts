@@ -1,5 +1,5 @@
 export * from './conformance/conformance-fixture.js';
-export { describeAdapterConformance } from './conformance/describe-adapter-conformance.js';
+export { describeAdapterConformance, describeAdapterLeaks } from './conformance/describe-adapter-conformance.js';
 export * from './contract.js';
 export * from './faults/fault-control.js';
 export { withFaults } from './faults/with-faults.js';
@@ -8,7 +8,10 @@ export type { InMemoryAddress, InMemoryConfiguration } from './in-memory/in-memo
 export * from './in-memory/memory-store.js';
 export * from './keep-connected.js';
 export type { ModbusAddress } from './modbus/modbus-address.schema.js';
+export { modbusRtuAdapter } from './modbus-rtu/modbus-rtu.adapter.js';
+export type { ModbusRtuConfiguration } from './modbus-rtu/modbus-rtu-configuration.schema.js';
 export { modbusTcpAdapter } from './modbus-tcp/modbus-tcp.adapter.js';
 export type { ModbusTcpConfiguration } from './modbus-tcp/modbus-tcp-configuration.schema.js';
 export * from './registry.js';
+export * from './timer-port.js';
 export { listSerialPorts, type SerialPortListing } from './serial/list-serial-ports.js';

@@ -3,7 +3,8 @@ import type { Adapter, AdapterSession } from './contract.js';
 import { inMemoryAdapter } from './in-memory/in-memory.adapter.js';
 import type { InMemoryAddress, InMemoryConfiguration } from './in-memory/in-memory.schema.js';
 import { type MemoryStore, memoryStore } from './in-memory/memory-store.js';
-import { keepConnected, type KeptConnection, type TimerPort } from './keep-connected.js';
+import { keepConnected, type KeptConnection } from './keep-connected.js';
+import type { TimerPort } from './timer-port.js';
 
 /** Waits end as soon as they can; a busy machine gets time. */
 const patient = { timeout: 4000, interval: 1 };

@@ -1,21 +1,8 @@
-import { DomainError } from '@cresthold/shared';
+import type { DomainError } from '@cresthold/shared';
 import type { Adapter, AdapterSession } from './contract.js';
+import { asDomainError } from './known-error.js';
+import { systemTimers, type TimerPort } from './timer-port.js';
 import { WatchedSession } from './watched-session.js';
-
-/** What `keepConnected` needs of a clock; the real one, or a fake in tests. */
-export interface TimerPort {
-  /** Runs `task` once after the delay; the answer cancels it. */
-  after(delayMs: number, task: () => void): () => void;
-}
-
-export const systemTimers: TimerPort = {
-  after(delayMs, task) {
-    const timer = setTimeout(task, delayMs);
-    return () => {
-      clearTimeout(timer);
-    };
-  },
-};
 
 export type LinkState =
   /** The adapter is being asked to open. */
@@ -135,8 +122,9 @@ class ConnectionKeeper<Configuration, Address> implements KeptConnection {
     }
   }
 
-  private judgeFailure(error: unknown): void {
-    if (!(error instanceof DomainError)) throw error;
+  private judgeFailure(thrown: unknown): void {
+    const error = asDomainError(thrown);
+    if (error === null) throw thrown;
     if (this.isClosed()) return;
     if (error.code === 'adapter.misconfigured') this.report('failed', error, null);
     else this.waitAndOpen(error);

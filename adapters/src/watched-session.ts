@@ -1,5 +1,12 @@
 import type { DomainError } from '@cresthold/shared';
-import type { AdapterSession, AddressFacts, ReadOutcome, ReadPlan, WriteOutcome } from './contract.js';
+import type {
+  AdapterSession,
+  AddressFacts,
+  ProbeOutcome,
+  ReadOutcome,
+  ReadPlan,
+  WriteOutcome,
+} from './contract.js';
 
 export interface SessionWatcher {
   /** At the first outcome that is not a loss and holds an answer of the device. */
@@ -8,15 +15,20 @@ export interface SessionWatcher {
   onLost(error: DomainError): void;
 }
 
-/** Passes everything on and tells of the first answer and of the loss. */
+/** Passes everything on, traces and probes as well, and tells of the first answer and of the loss. */
 export class WatchedSession<Address> implements AdapterSession<Address> {
+  /** Only where the inner session has one; what it brings is passed on and not watched. */
+  readonly probe?: (address: Address) => Promise<ProbeOutcome>;
   private hasAnswered = false;
   private isLost = false;
 
   constructor(
     private readonly inner: AdapterSession<Address>,
     private readonly watcher: SessionWatcher,
-  ) {}
+  ) {
+    const probe = inner.probe?.bind(inner);
+    if (probe) this.probe = probe;
+  }
 
   describe(address: Address): AddressFacts {
     return this.inner.describe(address);

@@ -1,6 +1,7 @@
 import assert from 'node:assert/strict';
-import { DomainError, type ErrorCode } from '@cresthold/shared';
+import type { DomainError, ErrorCode } from '@cresthold/shared';
 import type { AdapterSession } from '../contract.js';
+import { asDomainError } from '../known-error.js';
 import type { ConformanceCell, ConformanceFixture, ConformancePeer } from './conformance-fixture.js';
 
 /** What one check works with. */
@@ -38,12 +39,28 @@ export async function codeOfRejection(promise: Promise<unknown>): Promise<string
     await promise;
     return 'no error';
   } catch (error) {
-    return error instanceof DomainError ? error.code : `no DomainError: ${String(error)}`;
+    return asDomainError(error)?.code ?? `no error of the contract: ${String(error)}`;
   }
 }
 
+/** Every code that the contract knows. */
+const contractCodes: readonly string[] = [
+  'adapter.timeout',
+  'adapter.refused',
+  'adapter.corrupt',
+  'adapter.disconnected',
+  'adapter.misconfigured',
+  'adapter.cancelled',
+];
+
+/** The codes of an outcome; fails where a fault is none of the contract or says nothing. */
 export function codesOf(faults: readonly (DomainError | null)[]): (ErrorCode | null)[] {
-  return faults.map((fault) => fault?.code ?? null);
+  return faults.map((fault) => {
+    if (fault === null) return null;
+    assert.ok(contractCodes.includes(fault.code), `"${fault.code}" is no code of the contract`);
+    assert.notEqual(fault.message.trim(), '', `a fault with code "${fault.code}" says nothing`);
+    return fault.code;
+  });
 }
 
 /** Fails where a promise takes longer than the adapter may; two seconds are granted to a busy machine. */
@@ -77,6 +94,20 @@ export async function writeAll<C, A>({ session, cells }: Setting<C, A>, which: 0
     codesOf(outcome.faults),
     cells.map(() => null),
   );
+}
+
+/** Reads every cell and expects one of its two values. */
+export async function readAll<C, A>(setting: Setting<C, A>, which: 0 | 1): Promise<void> {
+  const { session, cells } = setting;
+  const outcome = await session.read(session.planRead(addressesOf(cells)));
+  assert.deepEqual([...outcome.values], valuesOf(cells, which));
+}
+
+/** The good cells with one more address in the middle. */
+export function withOneMore<C, A>({ cells }: Setting<C, A>, address: A): A[] {
+  const addresses = addressesOf(cells);
+  addresses.splice(1, 0, address);
+  return addresses;
 }
 
 /** What a fixture declares it can do it must bring. */

@@ -1,4 +1,5 @@
 import assert from 'node:assert/strict';
+import type { ReadPlan } from '../contract.js';
 import type { Provocation } from './conformance-fixture.js';
 import {
   addressesOf,
@@ -6,34 +7,35 @@ import {
   type Check,
   codeOfRejection,
   codesOf,
+  readAll,
   type Setting,
   valuesOf,
   within,
+  withOneMore,
   writeAll,
 } from './conformance-setting.js';
+import { keepForCheck } from './keep-for-check.js';
+import { traceChecks } from './trace-checks.js';
 
-/** The good cells with one more address in the middle. */
-function withOneMore<C, A>({ cells }: Setting<C, A>, address: A): A[] {
-  const addresses = addressesOf(cells);
-  addresses.splice(1, 0, address);
-  return addresses;
-}
-
-async function readAll<C, A>(setting: Setting<C, A>, which: 0 | 1): Promise<void> {
-  const { session, cells } = setting;
-  const outcome = await session.read(session.planRead(addressesOf(cells)));
-  assert.deepEqual([...outcome.values], valuesOf(cells, which));
-}
-
-/** All faults of one read and one write, with their time bound. */
-async function faultsOfBoth<C, A>(setting: Setting<C, A>): Promise<(string | null)[]> {
+/** All faults of one read of a plan that was read well before, and of one write, with their time bound. */
+async function faultsOfBoth<C, A>(setting: Setting<C, A>, plan: ReadPlan): Promise<(string | null)[]> {
   const { session, cells, fixture } = setting;
-  const plan = session.planRead(addressesOf(cells));
   const read = await within(fixture.timeoutMs, 'read', session.read(plan));
-  assert.ok([...read.values].every((value) => Number.isNaN(value)));
+  assert.ok(
+    [...read.values].every((value) => Number.isNaN(value)),
+    'a value where there is a fault must be NaN, never an older one',
+  );
   const writing = session.write(addressesOf(cells), valuesOf(cells, 1));
   const written = await within(fixture.timeoutMs, 'write', writing);
   return [...codesOf(read.faults), ...codesOf(written.faults)];
+}
+
+/** A plan that has values of an earlier read. */
+async function planReadWell<C, A>({ session, cells }: Setting<C, A>): Promise<ReadPlan> {
+  const plan = session.planRead(addressesOf(cells));
+  const outcome = await session.read(plan);
+  assert.deepEqual([...outcome.values], valuesOf(cells, 0));
+  return plan;
 }
 
 const refuseChecks: Record<string, Check> = {
@@ -76,8 +78,9 @@ const readOnlyChecks: Record<string, Check> = {
 const silenceChecks: Record<string, Check> = {
   'silence is adapter.timeout in time, and later answers are the right ones': async (setting) => {
     await writeAll(setting, 0);
+    const plan = await planReadWell(setting);
     brought(setting.peer.silence?.bind(setting.peer), 'silence')();
-    const codes = new Set(await faultsOfBoth(setting));
+    const codes = new Set(await faultsOfBoth(setting, plan));
     assert.deepEqual([...codes], ['adapter.timeout']);
     brought(setting.peer.recover?.bind(setting.peer), 'recover')();
     await writeAll(setting, 1);
@@ -102,8 +105,9 @@ const silenceChecks: Record<string, Check> = {
 const garbleChecks: Record<string, Check> = {
   'an answer that is none is adapter.corrupt, and later answers are the right ones': async (setting) => {
     await writeAll(setting, 0);
+    const plan = await planReadWell(setting);
     brought(setting.peer.garble?.bind(setting.peer), 'garble')();
-    const codes = new Set(await faultsOfBoth(setting));
+    const codes = new Set(await faultsOfBoth(setting, plan));
     assert.deepEqual([...codes], ['adapter.corrupt']);
     brought(setting.peer.recover?.bind(setting.peer), 'recover')();
     await writeAll(setting, 1);
@@ -128,6 +132,25 @@ const cutChecks: Record<string, Check> = {
       await again.close();
     }
   },
+
+  'kept connected, a cut connection is lost once and comes back by itself': async (setting) => {
+    const { session, cells, peer, fixture } = setting;
+    await writeAll(setting, 0);
+    await session.close();
+    const kept = keepForCheck(fixture.adapter, peer.configuration);
+    try {
+      const first = await within(fixture.timeoutMs, 'opening', kept.nextSession());
+      await first.read(first.planRead(addressesOf(cells)));
+      const second = kept.nextSession();
+      brought(peer.cut?.bind(peer), 'cut')();
+      const outcome = await within(fixture.timeoutMs, 'read', first.read(first.planRead(addressesOf(cells))));
+      assert.equal(outcome.lost?.code, 'adapter.disconnected');
+      await readAll({ ...setting, session: await within(fixture.timeoutMs, 'opening again', second) }, 0);
+      assert.deepEqual(kept.losses, ['adapter.disconnected']);
+    } finally {
+      await kept.close();
+    }
+  },
 };
 
 const unreachableChecks: Record<string, Check> = {
@@ -145,4 +168,5 @@ export const faultChecks: Record<Provocation, Record<string, Check>> = {
   garble: garbleChecks,
   cut: cutChecks,
   unreachable: unreachableChecks,
+  trace: traceChecks,
 };

@@ -8,6 +8,7 @@ import {
   type Check,
   codeOfRejection,
   codesOf,
+  valuesOf,
   within,
   writeAll,
 } from './conformance-setting.js';
@@ -31,6 +32,34 @@ export const lifecycleChecks: Record<string, Check> = {
     const outcome = await session.write([cells[0]?.address ?? assert.fail()], [0]);
     assert.equal(outcome.lost?.code, 'adapter.cancelled');
     assert.deepEqual(codesOf(outcome.faults), ['adapter.cancelled']);
+  },
+
+  'once it is open, the signal that it was opened with says nothing more': async (setting) => {
+    const { fixture, peer, session } = setting;
+    await session.close();
+    const abort = new AbortController();
+    const again = await fixture.adapter.open(peer.configuration, abort.signal);
+    try {
+      abort.abort();
+      await writeAll({ ...setting, session: again }, 1);
+    } finally {
+      await again.close();
+    }
+  },
+
+  'close in the middle of reads and writes ends them as outcomes, none hangs or throws': async (setting) => {
+    const { session, cells, fixture } = setting;
+    const plan = session.planRead(addressesOf(cells));
+    const calls = [
+      session.read(plan),
+      session.write(addressesOf(cells), valuesOf(cells, 0)),
+      session.read(session.planRead(addressesOf(cells))),
+    ];
+    await within(fixture.timeoutMs, 'close', session.close());
+    for (const { faults, lost } of await within(fixture.timeoutMs, 'calls', Promise.all(calls))) {
+      for (const code of codesOf(faults)) assert.ok(code === null || code === 'adapter.cancelled');
+      assert.ok(lost === null || lost.code === 'adapter.cancelled');
+    }
   },
 
   'the same peer can be opened again after close': async (setting) => {

@@ -1,5 +1,5 @@
 import assert from 'node:assert/strict';
-import { DomainError } from '@cresthold/shared';
+import type { DomainError } from '@cresthold/shared';
 import {
   addressesOf,
   type Check,
@@ -119,8 +119,9 @@ export const valueChecks: Record<string, Check> = {
     const planning = Promise.resolve().then(() => session.planRead([good, bad]));
     assert.equal(await codeOfRejection(planning), 'adapter.misconfigured');
     const error = await planning.catch((reason: unknown) => reason);
-    assert.ok(error instanceof DomainError && error.details.length > 0);
-    assert.ok(error.details.every(({ field }) => field.startsWith('addresses[1]')));
+    const details = (error as DomainError).details;
+    assert.ok(details.length > 0, 'the error has no details that name the field');
+    assert.ok(details.every(({ field }) => field.startsWith('addresses[1]')));
   },
 };
 

@@ -1,46 +1,22 @@
-import { DomainError } from '@cresthold/shared';
-import type { AdapterSession, AddressFacts, ReadOutcome, ReadPlan, WriteOutcome } from '../contract.js';
+import { DomainError, type WireFault } from '@cresthold/shared';
+import type {
+  AdapterSession,
+  AddressFacts,
+  ProbeOutcome,
+  ReadOutcome,
+  ReadPlan,
+  WriteOutcome,
+} from '../contract.js';
+import { damagedCatch, damagedWrite, faultOfCall, intactCount } from './damage.js';
 import type { FaultControl } from './fault-control.js';
-
-/** A read plan of the inner session with an outcome of its own, so that it can be held frozen. */
-class FaultyPlan implements ReadPlan {
-  readonly outcome: ReadOutcome;
-
-  constructor(readonly inner: ReadPlan) {
-    this.outcome = {
-      values: new Float64Array(inner.count).fill(NaN),
-      faults: new Array<DomainError | null>(inner.count).fill(null),
-      lost: null,
-    };
-  }
-
-  get count(): number {
-    return this.inner.count;
-  }
-
-  get requests(): number {
-    return this.inner.requests;
-  }
-
-  take({ values, faults, lost }: ReadOutcome): ReadOutcome {
-    this.outcome.values.set(values);
-    faults.forEach((fault, index) => (this.outcome.faults[index] = fault));
-    this.outcome.lost = lost;
-    return this.outcome;
-  }
-
-  fail(fault: DomainError, lost: DomainError | null): ReadOutcome {
-    this.outcome.values.fill(NaN);
-    this.outcome.faults.fill(fault);
-    this.outcome.lost = lost;
-    return this.outcome;
-  }
-}
+import { FaultyPlan } from './faulty-plan.js';
 
 const ignore = (): void => undefined;
 
 /** Passes calls on, or fails them as its control says; keeps the duties of the contract either way. */
 export class FaultySession<Address> implements AdapterSession<Address> {
+  /** Only where the inner session has one. */
+  readonly probe?: (address: Address) => Promise<ProbeOutcome>;
   private readonly generation: number;
   private tail: Promise<unknown> = Promise.resolve();
   private ended: DomainError | null = null;
@@ -51,6 +27,8 @@ export class FaultySession<Address> implements AdapterSession<Address> {
     private readonly control: FaultControl,
   ) {
     this.generation = control.sessionGeneration;
+    const probe = inner.probe?.bind(inner);
+    if (probe) this.probe = (address) => this.probeThrough(probe, address);
   }
 
   describe(address: Address): AddressFacts {
@@ -58,20 +36,16 @@ export class FaultySession<Address> implements AdapterSession<Address> {
   }
 
   planRead(addresses: readonly Address[]): ReadPlan {
-    return new FaultyPlan(this.inner.planRead(addresses));
+    return new FaultyPlan(this.inner.planRead(addresses), [...addresses]);
   }
 
   read(plan: ReadPlan): Promise<ReadOutcome> {
     if (!(plan instanceof FaultyPlan)) throw new TypeError('the plan is of another adapter');
     return this.inTurn(async () => {
-      const failure = await this.failure();
-      if (failure) return plan.fail(failure, this.ended);
-      const hasValues = plan.outcome.values.some((value) => !Number.isNaN(value));
-      if (this.control.fault.kind === 'freeze' && hasValues) return plan.outcome;
-      const outcome = await this.inner.read(plan.inner);
-      return this.control.fault.kind === 'corrupt' && !outcome.lost
-        ? plan.fail(corrupt(), null)
-        : plan.take(outcome);
+      const fault = this.control.draw();
+      const end = await this.suffer(fault, plan.count);
+      if (end) return plan.fail(end, end);
+      return plan.take(await this.inner.read(plan.inner), fault, this.control);
     });
   }
 
@@ -79,13 +53,10 @@ export class FaultySession<Address> implements AdapterSession<Address> {
     const asked = new Float64Array(values);
     const asking = [...addresses];
     return this.inTurn(async () => {
-      const failure = await this.failure();
-      if (failure) return { faults: asking.map(() => failure), lost: this.ended };
-      if (this.control.fault.kind === 'freeze') return { faults: asking.map(() => null), lost: null };
-      const outcome = await this.inner.write(asking, asked);
-      return this.control.fault.kind === 'corrupt' && !outcome.lost
-        ? { faults: asking.map(corrupt), lost: null }
-        : outcome;
+      const fault = this.control.draw();
+      const end = await this.suffer(fault, asking.length);
+      if (end) return { faults: asking.map(() => end), lost: end };
+      return fault ? this.writeDamaged(fault, asking, asked) : this.inner.write(asking, asked);
     });
   }
 
@@ -95,38 +66,82 @@ export class FaultySession<Address> implements AdapterSession<Address> {
     await this.inner.close();
   }
 
+  private probeThrough(
+    probe: (address: Address) => Promise<ProbeOutcome>,
+    address: Address,
+  ): Promise<ProbeOutcome> {
+    return this.inTurn(async () => {
+      const fault = this.control.draw();
+      const end = await this.suffer(fault, 1);
+      if (end) return { raw: '', value: NaN, trace: null, fault: end };
+      const outcome = await probe(address);
+      if (!fault || !this.control.concerns(address)) return outcome;
+      const seen = damagedCatch(fault, outcome, null);
+      return { ...seen, raw: faultOfCall(fault) ? '' : outcome.raw };
+    });
+  }
+
+  /** Sends what still reaches the device, and puts the answers together again. */
+  private async writeDamaged(
+    fault: WireFault,
+    addresses: readonly Address[],
+    values: Float64Array,
+  ): Promise<WriteOutcome> {
+    const concerned = [...addresses.keys()].filter((index) => this.control.concerns(addresses[index]));
+    const hit = new Set(concerned.slice(intactCount(fault, concerned.length)));
+    const damaged = [...values].map((value, index) =>
+      hit.has(index) ? damagedWrite(fault, value) : { sent: value },
+    );
+    const sentAt = [...damaged.keys()].filter((index) => damaged[index]?.sent !== null);
+    const outcome = await this.inner.write(
+      sentAt.flatMap((index) => addresses.slice(index, index + 1)),
+      sentAt.map((index) => damaged[index]?.sent ?? NaN),
+    );
+    if (outcome.lost) return { faults: addresses.map(() => outcome.lost), lost: outcome.lost };
+    const faults = damaged.map(({ answer }) => answer ?? null);
+    sentAt.forEach((index, at) => {
+      const own = outcome.faults[at] ?? null;
+      // What the adapter refuses to send is told as it is, whatever the wire does.
+      if (damaged[index]?.answer === undefined || own?.code === 'adapter.misconfigured') faults[index] = own;
+    });
+    return { faults, lost: null };
+  }
+
   private inTurn<T>(task: () => Promise<T>): Promise<T> {
     const turn = this.tail.then(task);
     this.tail = turn.catch(ignore);
     return turn;
   }
 
-  /** What befalls a call before it reaches the inner session; null where it gets through. */
-  private async failure(): Promise<DomainError | null> {
-    const { fault } = this.control;
-    if (!this.ended && fault.kind === 'delay') await this.wait(fault.delayMs);
-    if (!this.ended && fault.kind === 'drop') await this.wait(fault.timeoutMs);
-    if (!this.ended && this.control.sessionGeneration !== this.generation) {
-      this.ended = new DomainError('adapter.disconnected', 'The connection was cut on purpose.');
+  /** What befalls a call before it reaches the inner session. @returns why the session has ended, or null */
+  private async suffer(fault: WireFault | null, values: number): Promise<DomainError | null> {
+    const waitMs = fault ? this.waitMsOf(fault, values) : 0;
+    if (!this.ended && waitMs > 0) await this.wait(waitMs);
+    const isCut = fault?.kind === 'disconnect' || this.control.sessionGeneration !== this.generation;
+    if (!this.ended && isCut) {
+      this.ended = new DomainError('adapter.disconnected', 'Injected fault: the connection was cut.');
+      // The device sees the loss as well: the inner wire is let go now, not when somebody closes the ruin.
+      this.inner.close().catch(ignore);
     }
-    if (this.ended) return this.ended;
-    if (fault.kind !== 'drop') return null;
-    return new DomainError('adapter.timeout', `The answer was dropped on purpose (${fault.timeoutMs} ms).`);
+    return this.ended;
+  }
+
+  private waitMsOf(fault: WireFault, values: number): number {
+    if (fault.kind === 'delay') return fault.delayMs;
+    if (fault.kind === 'jitter') return fault.mostMs * this.control.uniform();
+    if (fault.kind === 'slow-device') return fault.perValueMs * values;
+    return fault.kind === 'drop' ? fault.timeoutMs : 0;
   }
 
   private wait(delayMs: number): Promise<void> {
     return new Promise((resolve) => {
       const finish = (): void => {
-        clearTimeout(timer);
+        cancel();
         this.cancelWait = null;
         resolve();
       };
-      const timer = setTimeout(finish, delayMs);
+      const cancel = this.control.timers.after(delayMs, finish);
       this.cancelWait = finish;
     });
   }
-}
-
-function corrupt(): DomainError {
-  return new DomainError('adapter.corrupt', 'The answer was corrupted on purpose.');
 }

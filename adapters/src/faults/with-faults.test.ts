@@ -66,7 +66,7 @@ describe('a slow wire', () => {
     control.fault = { kind: 'delay', delayMs: 1 };
     const plan = session.planRead([address('a')]);
     expect((await session.read(plan)).values[0]).toBe(5);
-    control.fault = { kind: 'delay', delayMs: 600_000 };
+    control.fault = { kind: 'delay', delayMs: 60_000 };
     const reading = session.read(plan);
     await new Promise((resolve) => setImmediate(resolve));
     await session.close();

@@ -1,51 +1,5 @@
 import { describe, it } from 'vitest';
-import type { ConformanceFixture } from '../conformance/conformance-fixture.js';
 import { describeAdapterConformance } from '../conformance/describe-adapter-conformance.js';
-import { inMemoryAdapter } from './in-memory.adapter.js';
-import type { InMemoryAddress, InMemoryConfiguration } from './in-memory.schema.js';
-import { dropMemoryStore, memoryStore } from './memory-store.js';
+import { inMemoryFixture } from './in-memory-conformance.fixture.js';
 
-const address = (name: string, quantum = 0): InMemoryAddress =>
-  inMemoryAdapter.manifest.addressSchema.parse({ name, quantum, min: -100, max: 100 });
-
-let started = 0;
-
-const fixture: ConformanceFixture<InMemoryConfiguration, InMemoryAddress> = {
-  title: 'in-memory',
-  adapter: inMemoryAdapter,
-  timeoutMs: 50,
-  provokes: ['refuse', 'read-only', 'silence', 'garble', 'cut', 'unreachable'],
-  malformedConfiguration: { store: '' },
-  malformedAddress: { name: 7 },
-  start() {
-    started += 1;
-    const name = `conformance-${started}`;
-    const store = memoryStore(name);
-    memoryStore(`${name}-gone`).mood = 'gone';
-    for (const id of ['a', 'b', 'c', 'fixed']) store.set(id, 0);
-    return Promise.resolve({
-      configuration: { store: name, timeoutMs: 50 },
-      cells: [
-        { address: address('a'), values: [1.25, -7] },
-        { address: address('b', 0.5), values: [2.5, 3] },
-        { address: address('c'), values: [0, 99] },
-      ],
-      peek: ({ name: id }) => store.get(id) ?? NaN,
-      refused: address('missing'),
-      readOnly: { ...address('fixed'), isWritable: false },
-      unreachable: { store: `${name}-gone`, timeoutMs: 50 },
-      silence: () => (store.mood = 'silent'),
-      garble: () => (store.mood = 'garbled'),
-      recover: () => (store.mood = 'answering'),
-      cut: () => {
-        store.endSessions();
-      },
-      stop: () => {
-        dropMemoryStore(name);
-        return Promise.resolve();
-      },
-    });
-  },
-};
-
-describeAdapterConformance(fixture, { describe, it });
+describeAdapterConformance(inMemoryFixture, { describe, it });

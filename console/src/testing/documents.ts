@@ -6,6 +6,7 @@ export const demoRig: Rig = {
   id: 'burner-1',
   title: 'Burner 1',
   description: 'Test burner of the Brackwater Test Station',
+  isBench: false,
   periodMs: 50,
   connections: [{ id: 'plc', title: 'Burner controller', adapter: 'modbus-tcp', configuration: {} }],
   channels: [
@@ -48,7 +49,7 @@ export const demoStatus: RigStatus = {
   activeSteps: [],
   isPaused: false,
   envelopeVersion: 3,
-  connections: [{ id: 'plc', isConnected: true, error: null }],
+  connections: [{ id: 'plc', isConnected: true, error: null, injectedFault: null }],
   channelFaults: [],
   interlocks: [{ id: 'co-high', state: 'clear' }],
   armingObstacles: [],

@@ -145,6 +145,8 @@ async function obey(session: RigSession, command: SessionCommand): Promise<void>
       return engine.resume(command.by);
     case 'stop':
       return engine.stop(command.by, command.reason);
+    case 'set-fault':
+      return session.setFault(command.connection, command.fault, command.by);
     case 'emergency-stop':
       return engine.emergencyStop(command.by, command.reason, Date.now());
     case 'reset':

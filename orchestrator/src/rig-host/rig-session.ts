@@ -10,6 +10,7 @@ import {
   type RunOrder,
   type ScanEngine,
   type ValueGrid,
+  type WireFault,
 } from '@cresthold/shared';
 import { PeriodPacer } from './pacer.js';
 import { Publisher } from './publisher.js';
@@ -115,6 +116,12 @@ export class RigSession {
 
   async startRun(order: RunOrder): Promise<void> {
     await this.run.start(order, this.engine, this.envelope);
+    this.publisher.requestStatus();
+  }
+
+  /** @throws rig.not-a-bench, connection.not-found, channel.not-found */
+  setFault(connection: string, fault: WireFault | null, by: string): void {
+    this.wire.setFault(connection, fault, by);
     this.publisher.requestStatus();
   }
 

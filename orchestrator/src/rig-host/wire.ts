@@ -1,6 +1,14 @@
 import type { Adapter } from '@cresthold/adapters';
-import { DomainError, type Readings, type Rig, type RigStatus, type ValueGrid } from '@cresthold/shared';
+import {
+  DomainError,
+  type Readings,
+  type Rig,
+  type RigStatus,
+  type ValueGrid,
+  type WireFault,
+} from '@cresthold/shared';
 import { Gathering } from './gathering.js';
+import { InjectedFaults } from './injected-faults.js';
 import { Line, type LineChannel } from './line.js';
 import { within } from './within.js';
 
@@ -22,6 +30,7 @@ export class Wire {
   private readonly lineByChannel: (Line | undefined)[];
   private readonly indexByChannel = new Map<string, number>();
   private readonly gathering: Gathering;
+  private readonly faults: InjectedFaults;
   private lost: LostConnection[] = [];
 
   /**
@@ -38,6 +47,7 @@ export class Wire {
     onChanged: () => void,
     onBug: (error: unknown) => void,
   ) {
+    this.faults = new InjectedFaults(rig);
     const gathering = new Gathering(Math.max(waitMinMs, rig.periodMs));
     this.gathering = gathering;
     rig.channels.forEach((channel, index) => this.indexByChannel.set(channel.id, index));
@@ -49,7 +59,8 @@ export class Wire {
       const field = `connections[${at}].configuration`;
       const configuration = parsed(configurationSchema, definition.configuration, field);
       const channels = channelsOf(rig, definition.id, adapter);
-      return new Line(definition, adapter, configuration, channels, this.readings, gathering, owner);
+      const wired = this.faults.wrap(definition.id, adapter, channels);
+      return new Line(definition, wired, configuration, channels, this.readings, gathering, owner);
     });
     this.lineByChannel = rig.channels.map((channel) =>
       channel.kind === 'derived' ? undefined : this.lines.find((l) => l.definition.id === channel.connection),
@@ -97,7 +108,13 @@ export class Wire {
       id: line.definition.id,
       isConnected: line.isConnected,
       error: line.isConnected ? null : (line.error?.message ?? notYet),
+      injectedFault: this.faults.status(line.definition.id),
     }));
+  }
+
+  /** @throws rig.not-a-bench, connection.not-found, channel.not-found */
+  setFault(connection: string, fault: WireFault | null, by: string): void {
+    this.faults.set(connection, fault, by);
   }
 
   channelFaults(): RigStatus['channelFaults'] {

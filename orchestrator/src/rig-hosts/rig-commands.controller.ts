@@ -6,10 +6,12 @@ import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { rigStatusDtoSchema } from '../rigs/dto/rig.dto.js';
 import {
   emergencyStopBody,
+  faultChangeSchema,
   lockoutSchema,
   moveSchema,
   reasonedSchema,
   rigStatusListSchema,
+  type FaultChange,
   type LockoutChange,
   type Move,
   type Reasoned,
@@ -113,5 +115,20 @@ export class RigCommandsController {
     @CurrentUser() user: SignedInUser,
   ): Promise<RigStatus> {
     return this.commands.setLockout(rigId, body, user.account);
+  }
+
+  @Put(':rigId/connections/:connection/fault')
+  @Roles('test-engineer')
+  @ApiOperation({
+    summary: 'Puts a fault on a connection of a bench, or takes it off; refused for any other rig.',
+  })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
+  setFault(
+    @Param('rigId') rigId: string,
+    @Param('connection') connection: string,
+    @Body({ schema: faultChangeSchema }) body: FaultChange,
+    @CurrentUser() user: SignedInUser,
+  ): Promise<RigStatus> {
+    return this.commands.setFault(rigId, connection, body, user.account);
   }
 }

@@ -1,8 +1,8 @@
 import { Injectable } from '@nestjs/common';
-import type { RigStatus } from '@cresthold/shared';
+import { DomainError, type RigStatus } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
 import { RigStore } from '../rigs/rig-store.js';
-import type { LockoutChange, Move } from './dto/rig-commands.dto.js';
+import type { FaultChange, LockoutChange, Move } from './dto/rig-commands.dto.js';
 import { RigHostsService } from './rig-hosts.service.js';
 
 /** What people do to a rig by hand; each act is kept with who did it. */
@@ -53,6 +53,21 @@ export class RigCommandsService {
   async reset(rigId: string, reason: string, by: string): Promise<RigStatus> {
     const status = await this.hosts.reset(rigId, by, reason);
     await this.audit.record({ account: by, action: 'rig.trip-reset', rigId, reason });
+    return status;
+  }
+
+  /**
+   * Puts a fault on a connection of a bench, or takes it off. It lasts no longer than the rig's host.
+   *
+   * @throws rig.not-a-bench for every other rig, whether its host is up or not
+   */
+  async setFault(rigId: string, connection: string, { fault }: FaultChange, by: string): Promise<RigStatus> {
+    const { content: rig } = await this.rigs.get(rigId);
+    if (!rig.isBench) throw new DomainError('rig.not-a-bench');
+    const status = await this.hosts.commandForStatus(rigId, { type: 'set-fault', connection, fault, by });
+    const action = fault ? 'rig.fault-injected' : 'rig.fault-cleared';
+    const reason = fault ? JSON.stringify(fault) : undefined;
+    await this.audit.record({ account: by, action, rigId, subject: connection, reason });
     return status;
   }
 

@@ -4,7 +4,7 @@ import type { Channel, Rig } from '@cresthold/shared';
 /**
  * True where a change of wiring gives channels another meaning, so that an envelope approved for the old
  * wiring says nothing about the new: channels added or taken, or another kind, unit, address, expression or
- * adapter. Titles, display ranges and where a connection leads (host, port) are no such change.
+ * adapter; or a machine that becomes a bench, or the other way, since benches may be made to fail on purpose. Titles, display ranges and where a connection leads (host, port) are no such change.
  */
 export function changesMeaning(before: Rig, after: Rig): boolean {
   return !isDeepStrictEqual(meaningOf(before), meaningOf(after));
@@ -12,7 +12,8 @@ export function changesMeaning(before: Rig, after: Rig): boolean {
 
 function meaningOf(rig: Rig) {
   const adapters = new Map(rig.connections.map((connection) => [connection.id, connection.adapter]));
-  return new Map(rig.channels.map((channel) => [channel.id, channelMeaning(channel, adapters)]));
+  const channels = new Map(rig.channels.map((channel) => [channel.id, channelMeaning(channel, adapters)]));
+  return { isBench: rig.isBench, channels };
 }
 
 function channelMeaning(channel: Channel, adapters: ReadonlyMap<string, string>) {

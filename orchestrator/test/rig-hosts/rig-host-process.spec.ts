@@ -38,6 +38,7 @@ class RecordingOwner implements RigHostOwner {
       title: 'Rig 1',
       description: '',
       periodMs: 50,
+      isBench: false,
       connections: [],
       channels: [],
     };

@@ -78,6 +78,11 @@ export const errorCatalogue = {
     'The rig is locked out: the person named on the lockout must lift it.',
   ),
   'rig.illegal-move': entry('not-allowed-now', 'The rig cannot do this in its present state.'),
+  'rig.not-a-bench': entry(
+    'not-allowed-now',
+    'Faults can be put on the connections of a bench only; this rig is not marked as one.',
+  ),
+  'connection.not-found': entry('not-found', 'The rig has no such connection.'),
   'envelope.not-found': entry('not-found', 'No such envelope.'),
   'envelope.none-in-force': entry(
     'not-allowed-now',
@@ -139,6 +144,23 @@ export const errorCatalogue = {
   ),
   'adapter.misconfigured': entry('invalid', 'The connection or channel is configured wrongly.'),
   'adapter.cancelled': entry('not-allowed-now', 'The request was cancelled.'),
+  'plug-in.not-found': entry(
+    'not-found',
+    'No package or folder of this name is there: check CRESTHOLD_PLUGINS and install the package.',
+  ),
+  'plug-in.not-loaded': entry(
+    'invalid',
+    'The plug-in failed while it was loaded: have its author mend what the message names.',
+  ),
+  'plug-in.malformed': entry(
+    'invalid',
+    'The plug-in does not have what an adapter must have: mend the parts named in "details".',
+  ),
+  'plug-in.other-contract': entry(
+    'invalid',
+    'The plug-in was written for another version of the adapter contract: install one that fits.',
+  ),
+  'plug-in.duplicate': entry('conflict', 'Another adapter has this id already: remove one of the two.'),
   'host.unavailable': entry('unavailable', 'The rig host is starting or has ended: try again in a moment.'),
   'host.timeout': entry('timeout', 'The rig host did not answer in time.'),
   'server.unhealthy': entry('unavailable', 'A part of the server does not work: see "details" for which.'),

@@ -5,6 +5,7 @@ import type { ErrorRecord } from '../errors/domain-error.js';
 import { experimentGraphSchema } from '../experiments/experiment.schema.js';
 import { objectiveContentSchema } from '../objectives/objective.schema.js';
 import { rigSchema } from '../rigs/rig.schema.js';
+import { wireFaultSchema } from '../rigs/wire-fault.schema.js';
 import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
 import { rigStatusSchema, tripSchema } from './rig-status.schema.js';
 import { telemetrySchema } from './telemetry.schema.js';
@@ -50,6 +51,13 @@ export const hostCommandSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('stop'), by: z.string(), reason: z.string() }),
   z.object({ type: z.literal('emergency-stop'), by: z.string(), reason: z.string() }),
   z.object({ type: z.literal('reset'), by: z.string(), reason: z.string() }),
+  /** Puts a fault on a connection of a bench, or takes it off; refused for a rig that is no bench. */
+  z.object({
+    type: z.literal('set-fault'),
+    connection: z.string(),
+    fault: wireFaultSchema.nullable(),
+    by: z.string(),
+  }),
   /** Stops in order, brings the rig to rest, closes the wire and ends the process. */
   z.object({ type: z.literal('shut-down') }),
 ]);

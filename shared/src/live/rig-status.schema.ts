@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { injectedFaultSchema } from '../rigs/wire-fault.schema.js';
 
 /** Where a rig is; lockout is beside it, not among it. */
 export const rigPhaseSchema = z.enum(['offline', 'idle', 'armed', 'running', 'stopping', 'tripped']);
@@ -32,7 +33,15 @@ export const rigStatusSchema = z.object({
   activeSteps: z.array(z.string()),
   isPaused: z.boolean(),
   envelopeVersion: z.int().nullable(),
-  connections: z.array(z.object({ id: z.string(), isConnected: z.boolean(), error: z.string().nullable() })),
+  connections: z.array(
+    z.object({
+      id: z.string(),
+      isConnected: z.boolean(),
+      error: z.string().nullable(),
+      /** A fault that was put on this connection of a bench; null where there is none. */
+      injectedFault: injectedFaultSchema.nullable(),
+    }),
+  ),
   /** Channels that their connection does not deliver although it is up, and why. */
   channelFaults: z.array(z.object({ channel: z.string(), code: z.string(), message: z.string() })),
   interlocks: z.array(interlockStatusSchema),

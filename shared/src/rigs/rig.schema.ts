@@ -52,6 +52,11 @@ export const rigSchema = z
     id: slugSchema,
     title: titleSchema,
     description: z.string().max(2000).default(''),
+    /**
+     * A simulated rig, on which faults may be injected. Never set it for a machine: a fault hides what the machine
+     * does. Changing it withdraws the envelope in force.
+     */
+    isBench: z.boolean().default(false),
     /** Time between two scans, ms, 1 to 10 000. */
     periodMs: z.number().min(1).max(10_000),
     connections: z.array(connectionSchema).min(1).max(16),

@@ -26,6 +26,7 @@ export function burnerRig({ benchHost, benchPort }: BenchAddress): RigInput {
     title: 'Burner 1',
     description:
       'Gas burner of the Brackwater Test Station, simulated. Less air wastes less heat, until CO soars; where that happens drifts with the fuel.',
+    isBench: true,
     periodMs: 50,
     connections: [
       {

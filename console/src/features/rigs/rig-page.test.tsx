@@ -142,7 +142,9 @@ describe('a trip', () => {
 it('says which connection is down and why', async () => {
   openRig('technician', {
     phase: 'offline',
-    connections: [{ id: 'plc', isConnected: false, error: 'Connection refused by 127.0.0.1:1502.' }],
+    connections: [
+      { id: 'plc', isConnected: false, error: 'Connection refused by 127.0.0.1:1502.', injectedFault: null },
+    ],
   });
   expect(await screen.findByText('Connection refused by 127.0.0.1:1502.')).toBeDefined();
 });

@@ -1,4 +1,4 @@
-import { channelIdSchema } from '@cresthold/shared';
+import { channelIdSchema, wireFaultSchema } from '@cresthold/shared';
 import { z } from 'zod';
 import { rigStatusDtoSchema } from '../../rigs/dto/rig.dto.js';
 
@@ -34,3 +34,11 @@ export const lockoutSchema = z
   .object({ isLockedOut: z.boolean(), reason: reasonSchema })
   .meta({ id: 'LockoutChange' });
 export type LockoutChange = z.infer<typeof lockoutSchema>;
+
+export const faultChangeSchema = z
+  .object({
+    /** The fault in place of the one before; null takes it off. */
+    fault: wireFaultSchema.nullable(),
+  })
+  .meta({ id: 'FaultChange' });
+export type FaultChange = z.infer<typeof faultChangeSchema>;

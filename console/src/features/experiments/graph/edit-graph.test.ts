@@ -10,6 +10,7 @@ const rig: Rig = {
   id: 'burner-1',
   title: 'Burner 1',
   description: '',
+  isBench: false,
   periodMs: 50,
   connections: [{ id: 'plc', title: 'PLC', adapter: 'in-memory', configuration: {} }],
   channels: [
