@@ -1,4 +1,5 @@
-import { channelSymbols } from '../objectives/objective-evaluator.js';
+import type { SymbolSet } from '../expressions/symbol-set.js';
+import { channelSymbols } from '../expressions/channel-symbols.js';
 import type { Rig } from '../rigs/rig.schema.js';
 import type { ExperimentGraph } from './experiment.schema.js';
 import { orderSteps } from './step-order.js';
@@ -12,6 +13,6 @@ export const objectiveSymbol = 'objective';
  *
  * @returns channels and the objective only, where the step is unknown or cannot be reached
  */
-export function expressionSymbols(rig: Rig, graph: ExperimentGraph, stepId: string): ReadonlySet<string> {
-  return new Set([...channelSymbols(rig), objectiveSymbol, ...orderSteps(graph).resultsBefore(stepId)]);
+export function expressionSymbols(rig: Rig, graph: ExperimentGraph, stepId: string): SymbolSet {
+  return channelSymbols(rig).with([objectiveSymbol, ...orderSteps(graph).resultsBefore(stepId)]);
 }

@@ -48,14 +48,18 @@ export class RunLedger implements StepServices {
     if (this.events.length > 0) this.events = [];
   }
 
-  readonly lookup: Lookup = (symbol) => {
+  readonly lookup: Lookup = Object.assign((symbol: string) => this.numberOf(symbol), {
+    trace: (symbol: string) => this.input?.readings.goodTrace(this.input.readings.indexOf(symbol)) ?? null,
+  });
+
+  private numberOf(symbol: string): number {
     const result = this.results.get(symbol);
     if (result !== undefined) return result;
     const { input } = this;
     if (!input) return NaN;
     if (symbol === objectiveSymbol) return input.objective.isValid ? input.objective.value : NaN;
     return input.readings.goodValue(input.readings.indexOf(symbol));
-  };
+  }
 
   limitOf(channel: string): ActuatorLimit | undefined {
     return this.limits.get(channel);

@@ -1,6 +1,6 @@
 import type { Sequencer, SequencerContext, SequencerInput, SequencerOutput } from './sequencer.types.js';
 import { RunLedger } from './run-ledger.js';
-import { channelSymbols } from '../objectives/objective-evaluator.js';
+import { channelSymbols } from '../expressions/channel-symbols.js';
 import { objectiveSymbol } from './expression-symbols.js';
 import { resultNames } from './step-kinds.js';
 import { orderSteps, type StepOrder } from './step-order.js';
@@ -34,9 +34,8 @@ class GraphSequencer implements Sequencer {
     this.order = orderSteps(context.graph);
     this.ledger = new RunLedger(context);
     const steps = [...this.order.steps.values()];
-    const compile = stepCompiler(
-      new Set([...channelSymbols(context.rig), objectiveSymbol, ...steps.flatMap(resultNames)]),
-    );
+    const known = channelSymbols(context.rig).with([objectiveSymbol, ...steps.flatMap(resultNames)]);
+    const compile = stepCompiler(known);
     this.runners = new Map(steps.map((step) => [step.id, createStepRunner(step, this.ledger, compile)]));
     const names: string[] = [];
     for (const runner of this.runners.values()) {

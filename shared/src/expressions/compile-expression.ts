@@ -3,12 +3,15 @@ import { Quality } from '../rigs/quality.js';
 import type { Unit } from '../units/unit.js';
 import { closestNames } from './closest-names.js';
 import { compileNode, type CompiledNode } from './compile-node.js';
+import { TraceSlots } from './compile-trace-call.js';
 import { ExpressionFault } from './expression-fault.js';
 import { expressionConstants } from './expression-functions.js';
 import type { CompiledExpression, CompileOutcome, Lookup, ValueSource } from './expression.types.js';
 import { generateFunction } from './generate-function.js';
 import { runProgram, type Program } from './operations.js';
 import { ProgramBuilder } from './program-builder.js';
+import { tracesAmong } from './symbol-set.js';
+import { TraceMeter } from './trace-program.js';
 import { unitOfExpression } from './unit-of-expression.js';
 
 /** Longest text of an expression, characters. */
@@ -36,8 +39,11 @@ const { parse } = create(parseDependencies ?? {}, {});
  * With `unitOf` the units are checked as well: sums, comparisons, choices and functions must be of quantities
  * that go together (`unitOfExpression` has the rules); otherwise the outcome is a fault that names both units.
  *
+ * A trace is no number: it is named as the first value of the functions of `traceFunctions` only, which make numbers
+ * of it. A trace that is not good makes the result NaN just as a number that is not.
+ *
  * @param text at most 500 characters
- * @param knownSymbols names that the text may use; they go before `pi` and `e`
+ * @param knownSymbols names that the text may use; they go before `pi` and `e`. A `SymbolSet` says which are traces.
  * @param unitOf unit of each symbol; without it units are not judged
  * @returns the compiled expression, whose `evaluate` allocates nothing, or what is wrong and where; never throws
  * @example
@@ -53,15 +59,17 @@ export function compileExpression(
   const { node } = outcome;
   const builder = new ProgramBuilder();
   const slots = new Map<string, number>();
+  const traces = new TraceSlots(tracesAmong(knownSymbols));
   try {
-    const symbolRegister = (name: string) => registerOf(name, knownSymbols, builder, slots);
-    const root = compileNode(node, { builder, symbolRegister });
+    const symbolRegister = (name: string) => registerOf(name, knownSymbols, traces, builder, slots);
+    const root = compileNode(node, { builder, symbolRegister, traces });
     const { operations } = builder;
     const program = builder.finish(root.register);
-    const isSymbol = (name: string) => slots.has(name);
-    const judged = unitOf ? judgeUnits(text, node, isSymbol, unitOf) : { unit: null };
+    const isSymbol = (name: string) => slots.has(name) || traces.slots.has(name);
+    const judged = unitOf ? judgeUnits(text, node, isSymbol, unitOf, traces.axes) : { unit: null };
     if ('message' in judged) return { isOk: false, ...judged, isUnitFault: true };
-    return { isOk: true, expression: expressionOf(text, program, root, slots, judged.unit, operations) };
+    const parts = { text, program, root, slots, traces, operations };
+    return { isOk: true, expression: expressionOf(parts, judged.unit) };
   } catch (fault) {
     if (!(fault instanceof ExpressionFault)) throw fault;
     return { isOk: false, message: fault.message, at: placeOf(text, fault.culprit) };
@@ -75,62 +83,87 @@ function judgeUnits(
   node: MathNode,
   isSymbol: (name: string) => boolean,
   unitOf: UnitLookup,
+  axes: TraceSlots['axes'],
 ): Judgement {
   try {
-    return { unit: unitOfExpression(node, (name) => (isSymbol(name) ? unitOf(name) : 'plain')) };
+    return { unit: unitOfExpression(node, (name) => (isSymbol(name) ? unitOf(name) : 'plain'), axes) };
   } catch (fault) {
     if (!(fault instanceof ExpressionFault)) throw fault;
     return { message: fault.message, at: placeOf(text, fault.culprit) };
   }
 }
 
-function expressionOf(
-  text: string,
-  program: Program,
-  { isCondition }: CompiledNode,
-  slots: ReadonlyMap<string, number>,
-  unit: Unit | null,
-  operations: number,
-): CompiledExpression {
-  const symbols = [...slots.keys()];
-  const registers = Int32Array.from(slots.values());
+interface Parts {
+  readonly text: string;
+  readonly program: Program;
+  readonly root: CompiledNode;
+  /** Register of each number. */
+  readonly slots: ReadonlyMap<string, number>;
+  readonly traces: TraceSlots;
+  readonly operations: number;
+}
+
+function expressionOf(parts: Parts, unit: Unit | null): CompiledExpression {
+  const { text, root, slots, traces, operations } = parts;
+  const traceSymbols = [...traces.slots.keys()];
   return {
     text,
-    symbols,
-    isCondition,
+    symbols: [...slots.keys(), ...traceSymbols],
+    traceSymbols,
+    isCondition: root.isCondition,
     unit,
     operations,
-    evaluate: evaluator(program, symbols, registers),
-    bind: (source, result) => boundEvaluator(program, source, symbols, registers, result),
+    tracePasses: traces.passes,
+    evaluate: evaluator(parts),
+    bind: (source, result) => boundEvaluator(parts, source, result),
   };
 }
 
-function evaluator(program: Program, symbols: readonly string[], registers: Int32Array) {
+function meterFor({ program, traces }: Parts): TraceMeter {
+  return new TraceMeter(traces.slots.size, program.traceCalls);
+}
+
+function evaluator(parts: Parts) {
+  const { program, slots, traces } = parts;
+  const [symbols, registers] = [[...slots.keys()], Int32Array.from(slots.values())];
+  const traceSymbols = [...traces.slots.keys()];
+  const meter = meterFor(parts);
   return (lookup: Lookup): number => {
     for (let i = 0; i < symbols.length; i += 1) {
       const value = lookup(symbols[i] as string);
       if (!Number.isFinite(value)) return NaN;
       program.registers[registers[i] as number] = value;
     }
-    return runProgram(program);
+    for (let i = 0; i < traceSymbols.length; i += 1) {
+      const trace = lookup.trace?.(traceSymbols[i] as string) ?? null;
+      if (trace === null) return NaN;
+      meter.slots[i] = trace;
+    }
+    return runProgram(program, meter);
   };
 }
 
-function boundEvaluator(
-  program: Program,
-  source: ValueSource,
-  symbols: readonly string[],
-  registers: Int32Array,
-  result: Float64Array,
-): () => void {
-  const places = Int32Array.from(symbols, (symbol) => source.indexOf(symbol));
+function boundEvaluator(parts: Parts, source: ValueSource, result: Float64Array): () => void {
+  const { program, slots, traces } = parts;
+  const registers = Int32Array.from(slots.values());
+  const places = Int32Array.from(slots.keys(), (symbol) => source.indexOf(symbol));
+  const tracePlaces = Int32Array.from(traces.slots.keys(), (symbol) => source.indexOf(symbol));
+  const meter = meterFor(parts);
+  for (let i = 0; i < tracePlaces.length; i += 1) {
+    const trace = source.traces?.[tracePlaces[i] as number];
+    if (!trace) return () => void (result[0] = NaN);
+    meter.slots[i] = trace;
+  }
   if (places.includes(-1)) return () => void (result[0] = NaN);
   const { values, qualities } = source;
-  const generated = generateFunction(program, registers, places);
-  if (generated) return () => generated(values, qualities, result);
+  const generated = generateFunction(program, registers, places, tracePlaces);
+  if (generated) return () => generated(values, qualities, result, meter.calls);
   const target = program.registers;
   return () => {
     result[0] = NaN;
+    for (let i = 0; i < tracePlaces.length; i += 1) {
+      if (qualities[tracePlaces[i] as number] !== Quality.good) return;
+    }
     for (let i = 0; i < places.length; i += 1) {
       const place = places[i] as number;
       const value = values[place] as number;
@@ -138,16 +171,23 @@ function boundEvaluator(
       if (qualities[place] !== Quality.good || value - value !== 0) return;
       target[registers[i] as number] = value;
     }
-    result[0] = runProgram(program);
+    result[0] = runProgram(program, meter);
   };
 }
 
 function registerOf(
   name: string,
   known: ReadonlySet<string>,
+  traces: TraceSlots,
   builder: ProgramBuilder,
   slots: Map<string, number>,
 ): number {
+  if (traces.axes.has(name)) {
+    throw new ExpressionFault(
+      `"${name}" is a trace, not a number: make one of it, as in mean(${name}) or peak(${name}).`,
+      name,
+    );
+  }
   if (!known.has(name)) {
     const constant = expressionConstants.get(name);
     if (constant !== undefined) return builder.constant(constant);

@@ -10,8 +10,10 @@ import { ExpressionFault } from './expression-fault.js';
 import { expressionFunctions, functionByName } from './expression-functions.js';
 import { Operation } from './operations.js';
 import { compileSum } from './compile-sum.js';
+import { compileTraceCall, type TraceSlots } from './compile-trace-call.js';
 import { contentOf, dottedName, functionNameOf, operatorOf, relationNames } from './parsed-nodes.js';
 import type { ProgramBuilder } from './program-builder.js';
+import { traceFunctionByName, traceFunctions } from './trace-functions.js';
 
 /** Where the value of a piece stands when the program has come past it. */
 export interface CompiledNode {
@@ -24,6 +26,7 @@ export interface NodeCompiler {
   readonly builder: ProgramBuilder;
   /** Gives the register of a symbol; throws an ExpressionFault for one that is not known. */
   readonly symbolRegister: (name: string) => number;
+  readonly traces: TraceSlots;
 }
 
 const arithmetic: Record<string, Operation> = {
@@ -153,9 +156,15 @@ function compileConditional(node: ConditionalNode, compiler: NodeCompiler): Comp
 
 function compileCall(node: FunctionNode, compiler: NodeCompiler): CompiledNode {
   const name = functionNameOf(node);
+  const { builder, traces } = compiler;
+  const compile = (part: MathNode) => compileNode(part, compiler).register;
+  const ofTrace = traceFunctionByName.get(name);
+  if (ofTrace) {
+    return { register: compileTraceCall(node, ofTrace, traces, builder, compile), isCondition: false };
+  }
   const known = functionByName.get(name);
   if (!known) {
-    const names = expressionFunctions.map((candidate) => candidate.name).join(', ');
+    const names = [...expressionFunctions, ...traceFunctions].map((candidate) => candidate.name).join(', ');
     throw new ExpressionFault(`There is no function "${name}": use one of ${names}.`, name);
   }
   const { operation, minArguments, maxArguments, signature } = known;
@@ -165,8 +174,7 @@ function compileCall(node: FunctionNode, compiler: NodeCompiler): CompiledNode {
       name,
     );
   }
-  const { builder } = compiler;
-  const values = node.args.map((argument) => compileNode(argument, compiler).register);
+  const values = node.args.map(compile);
   return {
     register: name === 'clamp' ? clamp(builder, values) : call(builder, operation, values),
     isCondition: false,

@@ -3,10 +3,20 @@ import { describe, expect, it } from 'vitest';
 import { Readings } from '../scan/readings.js';
 import { parseUnit } from '../units/parse-unit.js';
 import { randomText } from './against-mathjs.fixture.js';
+import { tracePassesMax } from './compile-trace-call.js';
+import { SymbolSet } from './symbol-set.js';
 import { compileExpression, expressionOperationsMax } from './compile-expression.js';
 
 const ids = ['a', 'b', 'c'];
-const known = new Set(ids);
+const axis = { title: 'Time', unit: 's', from: 0, step: 0.5 };
+const known = new SymbolSet(
+  [...ids, 't', 'u'],
+  new Map([
+    ['t', axis],
+    ['u', axis],
+  ]),
+);
+const lookup = Object.assign(() => 1, { trace: () => ({ points: [1, 4, 2], from: 0, step: 0.5 }) });
 const units = ['', '%', 'ppm', '°C', 'K', 'kW', 'm³/h', 'counts', 'not / a // unit'];
 const piece = fc.constantFrom(
   ...[
@@ -35,6 +45,11 @@ const piece = fc.constantFrom(
     'min(',
     'clamp(',
     'weight(',
+    'mean(',
+    'area(t',
+    'rmsDifference(',
+    't',
+    'u',
     'sqrt(',
     'not ',
     ' and ',
@@ -81,7 +96,8 @@ export function describeExpressionFuzz(numRuns: number): void {
               }
               compiled += 1;
               expect(outcome.expression.operations).toBeLessThanOrEqual(expressionOperationsMax);
-              const value = outcome.expression.evaluate(() => 1);
+              expect(outcome.expression.tracePasses).toBeLessThanOrEqual(tracePassesMax);
+              const value = outcome.expression.evaluate(lookup);
               expect(Number.isFinite(value) || Number.isNaN(value)).toBe(true);
             }
           },

@@ -3,8 +3,13 @@ import { compileExpression } from './compile-expression.js';
 import { expressionFunctions } from './expression-functions.js';
 import { expressionHelp } from './expression-help.js';
 import { expressionOperators } from './expression-operators.js';
+import { SymbolSet } from './symbol-set.js';
+import { exampleTrace, traceFunctions } from './trace-functions.js';
 
-const entries = [...expressionOperators, ...expressionFunctions];
+const entries = [...expressionOperators, ...expressionFunctions, ...traceFunctions];
+const { from, step } = exampleTrace;
+const symbols = new SymbolSet(['t'], new Map([['t', { title: 'Time', unit: 's', from, step }]]));
+const lookup = Object.assign(() => NaN, { trace: () => exampleTrace });
 
 describe('the help of the expression language', () => {
   it.each(entries.map((entry) => [entry.example, entry] as const))(
@@ -12,9 +17,9 @@ describe('the help of the expression language', () => {
     (_, { name, example, help, purpose }) => {
       const [call = '', value = ''] = example.split(' // ');
       for (const part of name.split(' ')) expect(call).toContain(part);
-      const outcome = compileExpression(call, new Set());
+      const outcome = compileExpression(call, symbols);
       expect(outcome).toMatchObject({ isOk: true });
-      expect(outcome.isOk && outcome.expression.evaluate(() => NaN)).toBeCloseTo(Number(value), 12);
+      expect(outcome.isOk && outcome.expression.evaluate(lookup)).toBeCloseTo(Number(value), 12);
       expect(Number.isFinite(Number(value))).toBe(true);
       expect(purpose.length).toBeGreaterThan(2);
       expect(help.length).toBeGreaterThan(10);

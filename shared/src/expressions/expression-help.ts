@@ -1,5 +1,6 @@
 import { expressionFunctions } from './expression-functions.js';
 import { expressionOperators } from './expression-operators.js';
+import { traceFunctions } from './trace-functions.js';
 
 interface Entry {
   signature: string;
@@ -18,6 +19,10 @@ export function expressionHelp(): string {
     '## Functions',
     '',
     table(expressionFunctions),
+    '',
+    '## Functions over traces',
+    '',
+    table(traceFunctions),
   ].join('\n');
 }
 

@@ -1,7 +1,12 @@
+import type { Trace } from '../signals/trace.types.js';
 import type { Unit } from '../units/unit.js';
 
 /** Looks a symbol up in one scan: its value where good, NaN where not. */
-export type Lookup = (symbol: string) => number;
+export interface Lookup {
+  (symbol: string): number;
+  /** The same for symbols that are traces, null where not good; without it no trace is. */
+  readonly trace?: (symbol: string) => Trace | null;
+}
 
 /** Where a bound expression reads its symbols, by index: `Readings` is one. */
 export interface ValueSource {
@@ -10,6 +15,8 @@ export interface ValueSource {
   readonly values: Float64Array;
   /** A `Quality` for each value. */
   readonly qualities: Uint8Array;
+  /** The traces, null where the value is a number; without it there are none. */
+  readonly traces?: readonly (Trace | null)[];
 }
 
 /**
@@ -18,14 +25,18 @@ export interface ValueSource {
  */
 export interface CompiledExpression {
   readonly text: string;
-  /** The symbols it reads, each once. */
+  /** The symbols it reads, each once; traces among them. */
   readonly symbols: readonly string[];
+  /** Those of them that are traces. */
+  readonly traceSymbols: readonly string[];
   /** Its result is a truth value: a comparison, `and or not`, or a choice between such. */
   readonly isCondition: boolean;
   /** The unit of its result; null where units were not given, or where it fits any unit. */
   readonly unit: Unit | null;
   /** Most operations that an evaluation takes; at most `expressionOperationsMax`. */
   readonly operations: number;
+  /** Most passes over traces that an evaluation takes; at most `tracePassesMax`. */
+  readonly tracePasses: number;
   evaluate(lookup: Lookup): number;
   /**
    * Looks the places of the symbols up once.

@@ -1,4 +1,5 @@
 import { instructionLength, Operation, type Program } from './operations.js';
+import { measured, type BoundTraceCall } from './trace-program.js';
 
 type Text = (a: string, b: string) => string;
 
@@ -37,7 +38,12 @@ const texts: Readonly<Record<number, Text>> = {
   [Operation.lowerEnd]: (a, b) => `${a} > ${b} ? NaN : ${a}`,
 };
 
-export type GeneratedFunction = (values: Float64Array, qualities: Uint8Array, result: Float64Array) => void;
+export type GeneratedFunction = (
+  values: Float64Array,
+  qualities: Uint8Array,
+  result: Float64Array,
+  calls: readonly BoundTraceCall[],
+) => void;
 
 /**
  * Writes a program out as a function over the arrays of one scan. Its source is put together from the table
@@ -45,6 +51,7 @@ export type GeneratedFunction = (values: Float64Array, qualities: Uint8Array, re
  *
  * @param registers those that hold symbols
  * @param places where each of them stands in the arrays
+ * @param tracePlaces where the traces stand that must be good
  * @returns a function that puts out the very numbers of `runProgram`, several times as fast; null where the page
  * that it runs in forbids generated code
  */
@@ -52,6 +59,7 @@ export function generateFunction(
   program: Program,
   registers: ArrayLike<number>,
   places: ArrayLike<number>,
+  tracePlaces: ArrayLike<number>,
 ): GeneratedFunction | null {
   try {
     // eslint-disable-next-line @typescript-eslint/no-implied-eval -- made of our own table and numbers only, see docs/decisions
@@ -59,14 +67,20 @@ export function generateFunction(
       'values',
       'qualities',
       'result',
-      sourceOf(program, registers, places),
+      'calls',
+      sourceOf(program, registers, places, tracePlaces),
     ) as GeneratedFunction;
   } catch {
     return null;
   }
 }
 
-function sourceOf(program: Program, registers: ArrayLike<number>, places: ArrayLike<number>): string {
+function sourceOf(
+  program: Program,
+  registers: ArrayLike<number>,
+  places: ArrayLike<number>,
+  tracePlaces: ArrayLike<number>,
+): string {
   const symbols = new Set(Array.from(registers));
   const written = writtenRegisters(program);
   const named = (register: number) =>
@@ -78,9 +92,14 @@ function sourceOf(program: Program, registers: ArrayLike<number>, places: ArrayL
     // The difference is 0 for finite numbers only; a quality of 0 is good.
     `if (qualities[${places[i]}] !== 0 || v${register} - v${register} !== 0) { result[0] = NaN; return; }`,
   ]);
+  const traces = Array.from(
+    tracePlaces,
+    (place) => `if (qualities[${place}] !== 0) { result[0] = NaN; return; }`,
+  );
   const declared = [...written].map((register) => `v${register} = 0`);
   return [
     '"use strict";',
+    ...traces,
     ...loads,
     `let ${[...declared, 'spoilt = 0'].join(', ')};`,
     ...statementsOf(program, named),
@@ -114,14 +133,26 @@ function statementsOf(program: Program, named: (register: number) => string): st
       statements.push('} else {');
       ends.set(target, (ends.get(target) ?? 0) + 1);
     } else {
+      if (operation === Operation.measure) statements.push(...measuring(program, named, left));
       const value =
         operation === Operation.sum
           ? sumText(program, named, left, right)
-          : texts[operation]?.(named(left), named(right));
+          : operation === Operation.measure
+            ? `calls[${left}].numbers[${measured}]`
+            : texts[operation]?.(named(left), named(right));
       statements.push(`v${target} = ${value};`, `spoilt += v${target} - v${target};`);
     }
   }
   return statements;
+}
+
+/** Puts the numbers of a call over traces in, and runs it. */
+function measuring({ traceCalls }: Program, named: (register: number) => string, at: number): string[] {
+  const numbers = [traceCalls[at]?.x ?? null, traceCalls[at]?.y ?? null];
+  const put = numbers.map((register, i) =>
+    register === null ? '' : `calls[${at}].numbers[${i}] = ${named(register)};`,
+  );
+  return [...put, `calls[${at}].run();`];
 }
 
 type Quad = [Operation, number, number, number];

@@ -1,3 +1,5 @@
+import { measured, type TraceCall, type TraceMeter } from './trace-program.js';
+
 /**
  * The operations that an expression is compiled into. Each reads two registers and writes one; those of one
  * operand get it twice.
@@ -38,10 +40,12 @@ export const Operation = {
   lowerEnd: 30,
   /** The sum of the terms from number `a` on, `b` of them. */
   sum: 31,
+  /** The result of call number `a` over traces. */
+  measure: 32,
   /** Goes to the instruction that stands in the place of the result. */
-  jump: 32,
+  jump: 33,
   /** Goes on where `a` is true, else to the instruction that stands in the place of the result. */
-  choose: 33,
+  choose: 34,
 } as const;
 export type Operation = (typeof Operation)[keyof typeof Operation];
 
@@ -60,6 +64,7 @@ export interface Program {
   readonly code: Int32Array;
   readonly registers: Float64Array;
   readonly terms: SumTerms;
+  readonly traceCalls: readonly TraceCall[];
   readonly result: number;
 }
 
@@ -68,10 +73,13 @@ export interface Program {
  * up instead, which is 0 for numbers and NaN as soon as one of them was none. So 1 / ∞, ∞ > 1 or exp(−∞) cannot
  * turn back into a number, and the side of a choice that is not taken does not count.
  *
+ * @param meter has the traces of this evaluation
  * @returns the value of the result's register; NaN where any value on the way to it was not finite
- * @realtime safe: allocates nothing, and takes at most as many steps as the program has instructions and terms
+ * @realtime safe: allocates nothing, and takes at most as many steps as the program has instructions and terms, and
+ * passes over traces
  */
-export function runProgram({ code, registers, terms, result }: Program): number {
+export function runProgram(program: Program, meter: TraceMeter): number {
+  const { code, registers, terms, result } = program;
   let spoilt = 0;
   for (let at = 0; at < code.length; at += instructionLength) {
     const operation = code[at] as Operation;
@@ -88,11 +96,24 @@ export function runProgram({ code, registers, terms, result }: Program): number 
       const value = sumOf(terms, registers, left, left + right);
       spoilt += value - value;
       registers[target] = value;
+    } else if (operation === Operation.measure) {
+      const value = measure(program, meter, left);
+      spoilt += value - value;
+      registers[target] = value;
     } else if (operation === Operation.jump || registers[left] === 0) {
       at = target - instructionLength;
     }
   }
   return (registers[result] as number) + spoilt;
+}
+
+function measure({ traceCalls, registers }: Program, meter: TraceMeter, at: number): number {
+  const { x, y } = traceCalls[at] as TraceCall;
+  const { numbers, run } = meter.calls[at] as TraceMeter['calls'][number];
+  if (x !== null) numbers[0] = registers[x] as number;
+  if (y !== null) numbers[1] = registers[y] as number;
+  run();
+  return numbers[measured] as number;
 }
 
 function sumOf({ factors, first, second }: SumTerms, registers: Float64Array, from: number, to: number) {

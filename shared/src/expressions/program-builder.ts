@@ -1,4 +1,5 @@
 import { applyOperation, instructionLength, Operation, type Program } from './operations.js';
+import type { TraceCall } from './trace-program.js';
 
 /** One term of a sum: a plain factor times one or two registers. */
 export interface Term {
@@ -12,6 +13,7 @@ export interface Term {
 export class ProgramBuilder {
   private readonly code: number[] = [];
   private readonly terms: Required<Term>[] = [];
+  private readonly traceCalls: TraceCall[] = [];
   /** What each register holds before the program runs. */
   private readonly initial: number[] = [];
   private readonly constants = new Map<number, number>();
@@ -57,6 +59,13 @@ export class ProgramBuilder {
     return target;
   }
 
+  /** A call over traces. */
+  measure(call: TraceCall): number {
+    const target = this.register();
+    this.code.push(Operation.measure, target, this.traceCalls.push(call) - 1, 0);
+    return target;
+  }
+
   /** A choice; only the side that is taken is computed. */
   choose(condition: number, yes: () => number, no: () => number): number {
     const target = this.register();
@@ -88,6 +97,7 @@ export class ProgramBuilder {
         first: Int32Array.from(this.terms, ({ first }) => first),
         second: Int32Array.from(this.terms, ({ second }) => second ?? one),
       },
+      traceCalls: this.traceCalls,
       result,
     };
   }

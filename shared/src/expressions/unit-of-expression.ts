@@ -6,42 +6,32 @@ import type {
   OperatorNode,
   RelationalNode,
 } from 'mathjs';
-import {
-  hasSameDimension,
-  isPure,
-  isSameUnit,
-  powerOf,
-  productOf,
-  pureUnit,
-  unitText,
-  type Unit,
-} from '../units/unit.js';
+import type { TraceAxis } from '../rigs/rig.schema.js';
+import { parseUnit } from '../units/parse-unit.js';
+import { isPure, isSameUnit, powerOf, productOf, pureUnit, type Unit } from '../units/unit.js';
 import { ExpressionFault } from './expression-fault.js';
 import { functionByName } from './expression-functions.js';
 import { contentOf, dottedName, functionNameOf, operatorOf, relationNames } from './parsed-nodes.js';
-
-/** A plain number of the text, with its value where that is a matter of arithmetic. */
-interface Plain {
-  readonly kind: 'plain';
-  readonly value: number | null;
-}
-/** A number that takes any unit: `weight(…)`, or a symbol whose unit is not known. */
-interface Fitting {
-  readonly kind: 'fitting';
-}
-interface Measured {
-  readonly kind: 'measured';
-  readonly unit: Unit;
-}
-type Term = Plain | Fitting | Measured;
+import { traceFunctionByName } from './trace-functions.js';
+import { termOfTraceCall } from './unit-of-trace-call.js';
+import {
+  alike,
+  comparing,
+  differenceOf,
+  fitting,
+  type Joining,
+  measured,
+  type Measured,
+  named,
+  plain,
+  type Plain,
+  type Term,
+  truthValue,
+  unlike,
+} from './unit-term.js';
 
 /** The unit of a symbol, null where it fits any, or `plain` for a constant such as `pi`. */
 export type SymbolUnit = (name: string) => Unit | null | 'plain';
-
-const fitting: Fitting = { kind: 'fitting' };
-const plain = (value: number | null = null): Plain => ({ kind: 'plain', value });
-const measured = (unit: Unit): Measured => ({ kind: 'measured', unit });
-const truthValue = measured(pureUnit);
 
 /**
  * The unit of an expression's result, by these rules:
@@ -53,18 +43,26 @@ const truthValue = measured(pureUnit);
  * - The difference of two temperatures in °C is in K, and K may be added to °C.
  * - `exp log log10 sin cos tan` need a pure number or radians; `sqrt` halves the powers; an exponent is a pure
  *   number, and a plain one over anything that has a unit.
+ * - Functions over traces give the unit of the values, of the axis, or a product of both; their numbers are in those.
  *
  * @param node of an expression that compiles
+ * @param axes of the symbols that are traces
  * @returns null where the result fits any unit: plain numbers only, or a weight
  * @throws ExpressionFault naming both units
  */
-export function unitOfExpression(node: MathNode, unitOf: SymbolUnit): Unit | null {
-  const term = termOf(node, unitOf);
+export function unitOfExpression(
+  node: MathNode,
+  unitOf: SymbolUnit,
+  axes: TraceAxes = new Map(),
+): Unit | null {
+  const term = termOf(node, unitOf, axes);
   return term.kind === 'measured' ? term.unit : null;
 }
 
-function termOf(node: MathNode, unitOf: SymbolUnit): Term {
-  const at = (part: MathNode) => termOf(part, unitOf);
+type TraceAxes = ReadonlyMap<string, TraceAxis>;
+
+function termOf(node: MathNode, unitOf: SymbolUnit, axes: TraceAxes): Term {
+  const at = (part: MathNode) => termOf(part, unitOf, axes);
   switch (node.type) {
     case 'ParenthesisNode':
       return at(contentOf(node));
@@ -85,7 +83,7 @@ function termOf(node: MathNode, unitOf: SymbolUnit): Term {
       return alike(at(trueExpr), at(falseExpr), choosing);
     }
     case 'FunctionNode':
-      return termOfCall(node as FunctionNode, at);
+      return termOfCall(node as FunctionNode, at, axes);
     default: {
       const unit = unitOf(dottedName(node) ?? '');
       return unit === 'plain' ? plain() : unit === null ? fitting : measured(unit);
@@ -93,11 +91,6 @@ function termOf(node: MathNode, unitOf: SymbolUnit): Term {
   }
 }
 
-interface Joining {
-  readonly verb: string;
-  readonly culprit: string | null;
-}
-const comparing: Joining = { verb: 'compared with', culprit: null };
 const choosing: Joining = { verb: 'chosen in place of', culprit: '?' };
 
 function termOfOperator(node: OperatorNode, at: (part: MathNode) => Term): Term {
@@ -128,29 +121,6 @@ function negated(a: Term, fn: string): Term {
   return a.kind === 'plain' && a.value !== null && fn === 'unaryMinus' ? plain(-a.value) : a;
 }
 
-/** @returns the one unit of both; the first where both are known */
-function alike(a: Term, b: Term, { verb, culprit }: Joining): Term {
-  if (a.kind === 'plain' && b.kind === 'plain') return plain();
-  if (a.kind !== 'measured') return b.kind === 'plain' ? a : b;
-  if (b.kind !== 'measured') return a;
-  if (!isSameUnit(a.unit, b.unit)) throw unlike(a.unit, b.unit, verb, culprit);
-  if (a.unit.hasOwnZero !== b.unit.hasOwnZero && a.unit.scale !== null && b.unit.scale !== null) {
-    throw unlike(a.unit, b.unit, verb, culprit);
-  }
-  return a.unit.scale === null ? b : a;
-}
-
-function unlike(a: Unit, b: Unit, verb: string, culprit: string | null): ExpressionFault {
-  const hint = hasSameDimension(a, b)
-    ? 'convert one of them first'
-    : 'give the factor between them a unit with weight(…)';
-  return new ExpressionFault(`${named(b)} cannot be ${verb} ${named(a)}: ${hint}.`, culprit);
-}
-
-function named(unit: Unit): string {
-  return unitText(unit) || 'a pure number';
-}
-
 /** Temperatures: K may be added to °C. */
 function sum(a: Term, b: Term, joining: Joining): Term {
   if (a.kind !== 'measured' || b.kind !== 'measured') return alike(a, b, joining);
@@ -165,10 +135,8 @@ function difference(a: Term, b: Term, joining: Joining): Term {
   if (!isSameUnit(a.unit, b.unit)) throw unlike(a.unit, b.unit, joining.verb, joining.culprit);
   if (!b.unit.hasOwnZero) return a.unit.scale === null ? b : a;
   if (!a.unit.hasOwnZero) throw unlike(a.unit, b.unit, joining.verb, joining.culprit);
-  return measured({ ...a.unit, hasOwnZero: false, factors: new Map([[stepName(a.unit), 1]]) });
+  return measured(differenceOf(a.unit));
 }
-
-const stepName = (scale: Unit) => (scale.scale === 1 ? 'K' : 'Δ°F');
 
 function product(a: Term, b: Term, sign: 1 | -1): Term {
   if (a.kind === 'fitting' || b.kind === 'fitting') return fitting;
@@ -208,9 +176,11 @@ function needPure(term: Term, what: string, culprit: string): void {
   );
 }
 
-function termOfCall(node: FunctionNode, at: (part: MathNode) => Term): Term {
+function termOfCall(node: FunctionNode, at: (part: MathNode) => Term, axes: TraceAxes): Term {
   const name = functionNameOf(node);
   const terms = node.args.map(at);
+  const ofTrace = traceFunctionByName.get(name);
+  if (ofTrace) return termOfTraceCall(ofTrace, terms, parseUnit(axisOf(node.args[0], axes)?.unit ?? ''));
   const [first = fitting, second = fitting] = terms;
   switch (functionByName.get(name)?.unitRule) {
     case 'pure':
@@ -234,4 +204,9 @@ function termOfCall(node: FunctionNode, at: (part: MathNode) => Term): Term {
       return joined.kind === 'plain' ? plain() : joined;
     }
   }
+}
+
+function axisOf(node: MathNode | undefined, axes: TraceAxes): TraceAxis | undefined {
+  if (node?.type === 'ParenthesisNode') return axisOf(contentOf(node), axes);
+  return node && axes.get(dottedName(node) ?? '');
 }

@@ -1,5 +1,6 @@
 import type { FieldFault } from '../errors/domain-error.js';
 import type { ObjectiveSample } from '../experiments/sequencer.types.js';
+import { channelSymbols } from '../expressions/channel-symbols.js';
 import { compileExpression } from '../expressions/compile-expression.js';
 import type { CompiledExpression } from '../expressions/expression.types.js';
 import type { Rig } from '../rigs/rig.schema.js';
@@ -24,11 +25,6 @@ export type ObjectiveOutcome =
   | { isOk: true; objective: ObjectiveEvaluator }
   /** Fields as in ObjectiveContent: `expression`, `validity[0].condition`. */
   | { isOk: false; faults: FieldFault[] };
-
-/** Names of every channel of a rig: what an expression over readings may use. */
-export function channelSymbols(rig: Rig): ReadonlySet<string> {
-  return new Set(rig.channels.map((channel) => channel.id));
-}
 
 /** Compiles an objective for a rig, or says which fields are at fault and what to do. */
 export function compileObjective(content: ObjectiveContent, rig: Rig): ObjectiveOutcome {

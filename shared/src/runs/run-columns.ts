@@ -12,14 +12,16 @@ export const runColumnSchema = z.object({
 export type RunColumn = z.infer<typeof runColumnSchema>;
 
 /**
- * The value columns of a run in their order: every channel; requested and applied value of each
+ * The value columns of a run in their order: every channel but the traces, which are arrays and have a table of their
+ * own; requested and applied value of each
  * actuator; the objective; the sequencer's signals. NULL in a row means not good in that scan.
  */
 export function runColumns(rig: Rig, objectiveUnit: string, signalNames: readonly string[]): RunColumn[] {
-  const columns: RunColumn[] = rig.channels.map((c) => ({
-    name: c.id,
-    title: c.title,
-    unit: c.unit,
+  const numbers = rig.channels.filter(({ kind }) => kind !== 'trace');
+  const columns: RunColumn[] = numbers.map(({ id, title, unit }) => ({
+    name: id,
+    title,
+    unit,
     kind: 'reading',
   }));
   for (const c of rig.channels) {

@@ -1,4 +1,5 @@
 import { DomainError } from '../errors/domain-error.js';
+import { channelSymbols } from '../expressions/channel-symbols.js';
 import type { CompiledExpression } from '../expressions/expression.types.js';
 import { Quality } from '../rigs/quality.js';
 import type { Rig } from '../rigs/rig.schema.js';
@@ -31,7 +32,7 @@ export class DerivedChannels {
     );
     const compiled = compileAll(
       texts.map(({ index, text }) => ({ field: `channels[${index}].expression`, text, isCondition: false })),
-      new Set(readings.channelIds),
+      channelSymbols(rig),
     );
     const open = new Map(
       texts.map(({ id, index }, i) => [id, { index, expression: compiled[i] as CompiledExpression }]),

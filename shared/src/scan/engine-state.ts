@@ -48,7 +48,7 @@ export interface EngineState {
 /** @throws expression.invalid, channel.not-found where rig or envelope do not fit together */
 export function createEngineState(configuration: ScanEngineConfiguration): EngineState {
   const { rig, envelope, grids, trip, isLockedOut, calibrations = [] } = configuration;
-  const readings = new Readings(rig.channels.map(({ id }) => id));
+  const readings = Readings.of(rig);
   const output: ScanOutput = {
     writes: [],
     applied: new Float64Array(readings.channelIds.length).fill(NaN),

@@ -115,6 +115,8 @@ export class FakePlant {
   readonly periodS = plantRig.periodMs / 1000;
   tS = 1000;
   lost: string[] = [];
+  /** Points of its trace channels, where its rig has some. */
+  readonly traces: Record<string, ArrayLike<number>> = {};
   /** Channels whose reads fail. */
   bad = new Set<string>();
   /** Actuators that take no write. */
@@ -124,8 +126,11 @@ export class FakePlant {
   /** Names of the columns of the run that was started last. */
   columns: string[] = [];
 
+  private readonly rig: Rig;
+
   constructor(options: PlantOptions = {}) {
     const { sequencer, faults = [], ...configuration } = options;
+    this.rig = configuration.rig ?? plantRig;
     this.engine = createScanEngine(
       {
         rig: plantRig,
@@ -203,9 +208,11 @@ export class FakePlant {
 
   private read(): void {
     const { readings } = this.engine;
-    plantRig.channels.forEach((channel, index) => {
+    this.rig.channels.forEach((channel, index) => {
       if (channel.kind === 'derived') return;
       const isLost = this.lost.includes(channel.connection);
+      const points = this.traces[channel.id];
+      if (points && !isLost && !this.bad.has(channel.id)) return readings.setTrace(index, points);
       const quality = isLost ? Quality.missing : this.bad.has(channel.id) ? Quality.bad : Quality.good;
       readings.set(index, this.at[channel.id] ?? NaN, quality);
     });

@@ -2,6 +2,7 @@ import type { EnvelopeInForce } from '../envelopes/envelope.schema.js';
 import { InterlockJudge } from '../envelopes/interlock-judge.js';
 import { StalenessJudge } from '../envelopes/staleness-judge.js';
 import { DomainError, type FieldFault } from '../errors/domain-error.js';
+import { channelSymbols } from '../expressions/channel-symbols.js';
 import type { Rig } from '../rigs/rig.schema.js';
 import { createActuatorBank, type HeldActuator } from './actuator-bank.js';
 import { compileAll } from './compile-all.js';
@@ -39,7 +40,7 @@ export function fitEnvelope(
       text: condition,
       isCondition: true,
     })),
-    new Set(readings.channelIds),
+    channelSymbols(rig),
   );
   return {
     inForce,

@@ -89,7 +89,9 @@ export class RunKeeper {
   fillRow(): Float64Array {
     let at = 0;
     const { channels } = this.rig;
-    for (let i = 0; i < channels.length; i++) this.row[at++] = this.readings.goodValue(i);
+    for (let i = 0; i < channels.length; i++) {
+      if (channels[i]?.kind !== 'trace') this.row[at++] = this.readings.goodValue(i);
+    }
     for (const channel of channels) {
       if (channel.kind !== 'actuator') continue;
       const actuator = this.findWritten(channel.id);

@@ -19,20 +19,32 @@ export interface TracePeak {
  * tracePeak([0, 3, 4, 3]) // { position: 2, height: 4, curvature: -2 }
  */
 export function tracePeak(values: ArrayLike<number>): TracePeak | null {
+  const peak = { position: NaN, height: NaN, curvature: NaN };
+  return findTracePeak(values, peak) ? peak : null;
+}
+
+/**
+ * The same, put into `peak`.
+ *
+ * @returns false where there is none; `peak` is then left as it is
+ * @realtime safe: one pass, allocates nothing
+ */
+export function findTracePeak(values: ArrayLike<number>, peak: TracePeak): boolean {
   let top = 0;
   for (let i = 0; i < values.length; i += 1) {
-    if (!Number.isFinite(values[i])) return null;
+    if (!Number.isFinite(values[i])) return false;
     if (values[i]! > values[top]!) top = i;
   }
-  if (values.length === 0) return null;
-  const height = values[top]!;
-  if (top === 0 || top === values.length - 1) return { position: top, height, curvature: 0 };
+  if (values.length === 0) return false;
+  peak.position = top;
+  peak.height = values[top]!;
+  peak.curvature = 0;
+  if (top === 0 || top === values.length - 1) return true;
   const slope = (values[top + 1]! - values[top - 1]!) / 2;
-  const curvature = values[top + 1]! - 2 * height + values[top - 1]!;
-  if (curvature === 0) return { position: top, height, curvature: 0 };
-  return {
-    position: top - slope / curvature,
-    height: height - (slope * slope) / (2 * curvature),
-    curvature,
-  };
+  const curvature = values[top + 1]! - 2 * peak.height + values[top - 1]!;
+  if (curvature === 0) return true;
+  peak.position = top - slope / curvature;
+  peak.height -= (slope * slope) / (2 * curvature);
+  peak.curvature = curvature;
+  return true;
 }

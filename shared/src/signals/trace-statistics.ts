@@ -1,9 +1,20 @@
 import { MomentReadings } from './moment-readings.js';
 import { Moment, momentStride } from './moments.js';
 
-class TraceStatistics extends MomentReadings {
-  constructor(values: ArrayLike<number>) {
-    super(momentsOf(values));
+/** Statistics of one trace after the other, in one place: where a scan measures again and again. */
+export class TraceStatistics extends MomentReadings {
+  constructor() {
+    super(new Float64Array(momentStride));
+  }
+
+  /**
+   * From now on the readings are those of `values`.
+   *
+   * @realtime safe: allocates nothing
+   */
+  measure(values: ArrayLike<number>): this {
+    fillMoments(this.group, values);
+    return this;
   }
 }
 
@@ -20,15 +31,15 @@ class TraceStatistics extends MomentReadings {
  * traceStatistics([1, 2, 3, 4]).mean // 2.5
  */
 export function traceStatistics(values: ArrayLike<number>): MomentReadings {
-  return new TraceStatistics(values);
+  return new TraceStatistics().measure(values);
 }
 
-function momentsOf(values: ArrayLike<number>): Float64Array {
-  const group = new Float64Array(momentStride);
+function fillMoments(group: Float64Array, values: ArrayLike<number>): void {
   const n = values.length;
-  if (n === 0) return group;
+  group.fill(0);
+  if (n === 0) return;
   const mean = meanOfTrace(values);
-  if (!Number.isFinite(mean)) return group.fill(NaN);
+  if (!Number.isFinite(mean)) return void group.fill(NaN);
   let [min, max] = [Infinity, -Infinity];
   let [residue, second, third, fourth, lag, before] = [0, 0, 0, 0, 0, 0];
   for (let i = 0; i < n; i += 1) {
@@ -54,7 +65,6 @@ function momentsOf(values: ArrayLike<number>): Float64Array {
   group[Moment.last] = values[n - 1]!;
   group[Moment.min] = min;
   group[Moment.max] = max;
-  return group;
 }
 
 function meanOfTrace(values: ArrayLike<number>): number {

@@ -75,5 +75,8 @@ function checkSensor(c: PreflightCase, step: Step): void {
   if (channel?.kind === 'actuator') {
     const message = `"${channel.id}" is an actuator: choose a sensor or a derived channel to wait for.`;
     c.faults.error('no-sensor', step.id, field, message);
+  } else if (channel?.kind === 'trace') {
+    const message = `"${channel.id}" is a trace: make a derived channel of it, as in mean(${channel.id}), and wait for that.`;
+    c.faults.error('no-sensor', step.id, field, message);
   }
 }

@@ -1,6 +1,7 @@
 import { compileExpression } from '../../expressions/compile-expression.js';
 import type { CompiledExpression } from '../../expressions/expression.types.js';
-import { channelSymbols } from '../../objectives/objective-evaluator.js';
+import type { SymbolSet } from '../../expressions/symbol-set.js';
+import { channelSymbols } from '../../expressions/channel-symbols.js';
 import { objectiveSymbol } from '../expression-symbols.js';
 import type { Step } from '../experiment.schema.js';
 import { resultNames } from '../step-kinds.js';
@@ -10,8 +11,7 @@ import type { PreflightCase } from './fault-list.js';
 /** Expressions of parameters and criteria. */
 export function checkExpressions(c: PreflightCase): void {
   const channels = channelSymbols(c.rig);
-  const everywhere = new Set([
-    ...channels,
+  const everywhere = channels.with([
     objectiveSymbol,
     ...[...c.order.steps.values()].flatMap(resultNames),
   ]);
@@ -35,11 +35,11 @@ export function checkExpressions(c: PreflightCase): void {
 }
 
 /** Names whose values are there when the step begins. */
-function availableTo(c: PreflightCase, step: Step, channels: ReadonlySet<string>): ReadonlySet<string> {
+function availableTo(c: PreflightCase, step: Step, channels: SymbolSet): SymbolSet {
   const results = [...c.order.resultsBefore(step.id)];
-  if (c.objective) return new Set([...channels, objectiveSymbol, ...results]);
+  if (c.objective) return channels.with([objectiveSymbol, ...results]);
   // Without an objective a Hold has no mean of it to leave behind.
-  return new Set([...channels, ...results.filter((name) => !name.endsWith('.objective'))]);
+  return channels.with(results.filter((name) => !name.endsWith('.objective')));
 }
 
 function compileAt(
@@ -47,10 +47,10 @@ function compileAt(
   step: Step,
   field: string,
   text: string,
-  here: ReadonlySet<string>,
-  everywhere: ReadonlySet<string>,
+  here: SymbolSet,
+  everywhere: SymbolSet,
 ): CompiledExpression | null {
-  const outcome = compileExpression(text, new Set([...here, ...everywhere]));
+  const outcome = compileExpression(text, here.with(everywhere));
   if (!outcome.isOk) {
     // Names that exist but are not there yet are no suggestion: say only what may be used.
     const narrow = compileExpression(text, here);

@@ -1,4 +1,5 @@
 import { compileExpression, type UnitLookup } from '../../expressions/compile-expression.js';
+import { channelSymbols } from '../../expressions/channel-symbols.js';
 import { channelUnits } from '../../units/channel-units.js';
 import { parseUnit } from '../../units/parse-unit.js';
 import { isSameUnit, unitText, type Unit } from '../../units/unit.js';
@@ -18,7 +19,7 @@ export function checkUnits(c: PreflightCase): void {
   const results = new Map(c.graph.steps.flatMap((step) => [...resultUnits(step, channels, objective)]));
   const unitOf: UnitLookup = (symbol) =>
     symbol === objectiveSymbol ? objective : (channels.get(symbol) ?? results.get(symbol) ?? null);
-  const known = new Set([...channels.keys(), objectiveSymbol, ...results.keys()]);
+  const known = channelSymbols(c.rig).with([objectiveSymbol, ...results.keys()]);
   const judge = (step: Step | null, field: string, text: string, wanted: Unit | null) => {
     const message = unitFault(text, known, unitOf, wanted);
     if (message !== null) c.faults.warning('units', step?.id ?? null, field, message);
