@@ -1,2 +1,2 @@
 export { demoScenario } from './demo/demo-scenario.js';
-export { burnerSeeking } from './demo/burner-experiment.js';
+export { burnerSeeking } from './burner/scenario/burner-experiment.js';

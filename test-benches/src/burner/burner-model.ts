@@ -7,7 +7,13 @@ import {
   type BestTrim,
   type FlueGas,
 } from './burner-physics.js';
-import { beatWatchdog, initialWatchdog, stepWatchdog, type WatchdogState } from '../kit/heartbeat-watchdog.js';
+import {
+  beatWatchdog,
+  initialWatchdog,
+  stepWatchdog,
+  waitingWatchdog,
+  type WatchdogState,
+} from '../kit/heartbeat-watchdog.js';
 
 /** Where the damper goes when the watchdog acts: much air, so that nothing unburnt gathers. */
 export const safeTrimPct = 70;
@@ -76,6 +82,17 @@ export function beatHeart(state: BurnerState, beat: number): BurnerState {
   return { ...state, watchdog: beatWatchdog(state.watchdog, beat, state.tS) };
 }
 
+/** After its controller lost power: command at rest, flame out until heartbeats come. */
+export function rebootBurner(state: BurnerState): BurnerState {
+  const { count } = state.watchdog;
+  return {
+    ...state,
+    commandPct: safeTrimPct,
+    isFlameOn: false,
+    watchdog: { ...waitingWatchdog(state.tS), count },
+  };
+}
+
 /** The burner `dtS` later; pure. Exact for a constant damper, so that the step may be long. */
 export function step(state: BurnerState, dtS: number, parameters: BurnerParameters): BurnerState {
   const tS = state.tS + dtS;
@@ -104,14 +121,14 @@ function lagged(from: FlueGas, to: FlueGas, share: number): FlueGas {
 }
 
 /** What only the instructor knows. */
-export interface BurnerTruth {
+export interface BurnerStanding {
   best: BestTrim;
   /** Efficiency at the damper's position without lag and noise, %; NaN with the flame out. */
   efficiencyPct: number;
   trimPct: number;
 }
 
-export function truthOf(state: BurnerState, parameters: BurnerParameters): BurnerTruth {
+export function truthOf(state: BurnerState, parameters: BurnerParameters): BurnerStanding {
   const criticalLambda = criticalLambdaAt(state.tS, parameters);
   return {
     best: bestTrim(criticalLambda),

@@ -1,3 +1,5 @@
+import { goldenSection } from '../kit/golden-section.js';
+
 /**
  * Combustion of natural gas with excess air, after textbook formulas. The pure map from air trim to
  * efficiency: no time, no lag, no noise. All percentages are 0–100.
@@ -144,17 +146,4 @@ export function bestTrim(criticalLambda: number): BestTrim {
   for (let trimPct = 1; trimPct <= 100; trimPct += 1) if (f(trimPct) > f(top)) top = trimPct;
   const trimPct = goldenSection(f, Math.max(0, top - 1), Math.min(100, top + 1));
   return { trimPct, efficiencyPct: f(trimPct) };
-}
-
-/** Maximum of a function with one peak between `low` and `high`, to 1e-7 of its argument. */
-function goldenSection(f: (x: number) => number, low: number, high: number): number {
-  const ratio = (Math.sqrt(5) - 1) / 2;
-  let [a, b] = [low, high];
-  while (b - a > 1e-7) {
-    const left = b - ratio * (b - a);
-    const right = a + ratio * (b - a);
-    if (f(left) > f(right)) b = right;
-    else a = left;
-  }
-  return (a + b) / 2;
 }

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { noiseSigma } from './burner-model.js';
-import { BurnerFault, BurnerSimulation, type BurnerReadings } from './burner-simulation.js';
+import { BurnerSimulation } from './burner-simulation.js';
 import { seededRandom } from '../kit/seeded-random.js';
 
 const options = { seed: 7, isNoisy: true, isDrifting: false };
@@ -12,13 +12,19 @@ function warm(overrides: Partial<typeof options> = {}): BurnerSimulation {
   return simulation;
 }
 
+type Shown = Record<string, number>;
+
+function readingsOf(simulation: BurnerSimulation): Shown {
+  return Object.fromEntries(simulation.values.map(({ name }) => [name, simulation.read(name)]));
+}
+
 /** Lets a host live from one bench time to another, s, and collects what the instruments show. */
-function course(simulation: BurnerSimulation, fromS: number, toS: number): BurnerReadings[] {
-  const shown: BurnerReadings[] = [];
+function course(simulation: BurnerSimulation, fromS: number, toS: number): Shown[] {
+  const shown: Shown[] = [];
   for (let i = Math.round(fromS * 100) + 1; i <= Math.round(toS * 100); i += 1) {
-    simulation.advanceTo(i / 100 + 1e-6);
-    simulation.writeHeartbeat(i & 0xffff);
-    shown.push(simulation.readings);
+    simulation.advanceTo(i / 100);
+    simulation.write('heartbeat', i & 0xffff);
+    shown.push(readingsOf(simulation));
   }
   return shown;
 }
@@ -32,19 +38,19 @@ const deviation = (values: number[]) => {
 describe('the noise', () => {
   it('has the stated deviation and no bias', () => {
     const simulation = warm();
-    const quiet = warm({ isNoisy: false }).readings;
+    const quiet = readingsOf(warm({ isNoisy: false }));
     const shown = course(simulation, 20, 60);
-    const o2 = shown.map((readings) => readings.o2Pct);
+    const o2 = shown.map((readings) => readings['o2'] ?? NaN);
     // 4000 samples: the standard error of the deviation is 1.1 %, of the mean 0.0003 %.
     expect(deviation(o2) / noiseSigma.o2Pct).toBeCloseTo(1, 1);
-    expect(Math.abs(mean(o2) - quiet.o2Pct)).toBeLessThan((4 * noiseSigma.o2Pct) / Math.sqrt(4000));
-    const temperatures = shown.map((readings) => readings.flueTempC);
+    expect(Math.abs(mean(o2) - (quiet['o2'] ?? NaN))).toBeLessThan((4 * noiseSigma.o2Pct) / Math.sqrt(4000));
+    const temperatures = shown.map((readings) => readings['flueTemp'] ?? NaN);
     expect(deviation(temperatures) / noiseSigma.flueTempC).toBeCloseTo(1, 1);
   });
 
   it('repeats itself for the same seed and differs for another', () => {
-    expect(warm().readings).toEqual(warm().readings);
-    expect(warm({ seed: 8 }).readings).not.toEqual(warm().readings);
+    expect(readingsOf(warm())).toEqual(readingsOf(warm()));
+    expect(readingsOf(warm({ seed: 8 }))).not.toEqual(readingsOf(warm()));
   });
 });
 
@@ -62,30 +68,21 @@ describe('the seeded generator', () => {
   });
 });
 
-describe('the instruments', () => {
-  it('keep what they showed while they are frozen', () => {
+describe('a restart of the controller', () => {
+  it('leaves the flame out and the damper at rest until heartbeats and a command come', () => {
     const simulation = warm();
-    simulation.fault = BurnerFault.frozen;
-    simulation.writeTrim(30);
-    const frozen = simulation.readings;
+    simulation.write('airTrim', 40);
     course(simulation, 20, 30);
-    expect(simulation.readings).toEqual(frozen);
-    expect(simulation.now.damperPct).toBeCloseTo(30, 9);
-    simulation.fault = BurnerFault.none;
-    course(simulation, 30, 30.1);
-    expect(simulation.readings.damperPct).toBeCloseTo(30, 9);
-  });
-
-  it('tell of every trip of the watchdog', () => {
-    const simulation = warm();
-    const told: [boolean, number][] = [];
-    simulation.onWatchdog = (isTripped, count) => told.push([isTripped, count]);
-    simulation.advanceTo(30);
-    course(simulation, 30, 32);
-    expect(told).toEqual([
-      [true, 1],
-      [false, 1],
-    ]);
-    expect(simulation.truth.efficiencyPct).toBeGreaterThan(80);
+    simulation.reboot();
+    simulation.advanceTo(40);
+    expect(readingsOf(simulation)).toMatchObject({
+      airTrim: 70,
+      flame: 0,
+      watchdogFlag: 1,
+      watchdogCount: 0,
+    });
+    expect(simulation.truth).toMatchObject({ loss: null, at: { airTrim: 70 } });
+    course(simulation, 40, 42);
+    expect(readingsOf(simulation)).toMatchObject({ airTrim: 70, flame: 1, watchdogFlag: 0 });
   });
 });

@@ -1,7 +1,11 @@
 import { scenarioSchema, type Scenario } from '@cresthold/shared';
-import { burnerEnvelope } from './burner-envelope.js';
-import { burnerExperiment, burnerObjective } from './burner-experiment.js';
-import { burnerRig, type BenchAddress } from './burner-rig.js';
+import { burnerEntry } from '../burner/scenario/burner-entry.js';
+
+/** Where the burner bench listens. */
+export interface BenchAddress {
+  benchHost: string;
+  benchPort: number;
+}
 
 /** The Brackwater Test Station, an invented place: people by role, and a burner that is a bench. */
 export function demoScenario(bench: BenchAddress): Scenario {
@@ -13,27 +17,7 @@ export function demoScenario(bench: BenchAddress): Scenario {
       { account: 'technician', title: 'Technician', roles: ['technician'] },
       { account: 'reader', title: 'Reader', roles: ['reader'] },
     ],
-    rigs: [
-      {
-        rig: burnerRig(bench),
-        envelope: {
-          content: burnerEnvelope,
-          author: 'engineer',
-          approvedBy: 'officer',
-          reason: 'First envelope of the demonstration bench; the burner is simulated.',
-        },
-        objectives: [{ key: 'efficiency', content: burnerObjective, author: 'engineer' }],
-        experiments: [
-          {
-            key: 'find-air-trim',
-            objectiveKey: 'efficiency',
-            content: burnerExperiment,
-            author: 'engineer',
-            note: 'Sized for the burner bench at five times its speed.',
-          },
-        ],
-      },
-    ],
+    rigs: [burnerEntry({ host: bench.benchHost, port: bench.benchPort })],
     start: { rigId: 'burner-1', experimentKey: 'find-air-trim', by: 'engineer' },
   });
 }

@@ -16,14 +16,13 @@ export const watchdogTimeoutS = 2;
 /** Changes for this long without a gap clear it, s of bench time. */
 export const watchdogRecoveryS = 1;
 
-/** Waits for its first heartbeat: nothing burns before a host is known to live. */
-export const initialWatchdog: WatchdogState = {
-  beat: 0,
-  changedS: -watchdogTimeoutS,
-  liveSinceS: -watchdogTimeoutS,
-  isTripped: true,
-  count: 0,
-};
+/** Waits for its first heartbeat: nothing runs before a host is known to live. @param nowS bench time, s */
+export function waitingWatchdog(nowS: number): WatchdogState {
+  const longAgoS = nowS - watchdogTimeoutS;
+  return { beat: 0, changedS: longAgoS, liveSinceS: longAgoS, isTripped: true, count: 0 };
+}
+
+export const initialWatchdog: WatchdogState = waitingWatchdog(0);
 
 /** Allows for the rounding of summed time steps, s. */
 const roundingS = 1e-9;

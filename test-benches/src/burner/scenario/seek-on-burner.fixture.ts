@@ -1,6 +1,6 @@
 import { gradientLaw, type GradientLawParameters } from '@cresthold/shared';
-import { efficiencyOf } from '../burner/burner-physics.js';
-import { BurnerSimulation } from '../burner/burner-simulation.js';
+import { efficiencyOf } from '../burner-physics.js';
+import { BurnerSimulation } from '../burner-simulation.js';
 import { burnerSeeking, seekForS, seekStartPct } from './burner-experiment.js';
 
 const scanS = 0.05;
@@ -25,9 +25,9 @@ export function seekOnBurner(seed: number, warmUpS: number): SeekCourse {
   const simulation = new BurnerSimulation({ seed, isNoisy: true, isDrifting: true });
   let scans = 0;
   const scan = (trimPct: number): number => {
-    simulation.writeTrim(onGrid(trimPct, 0.01));
-    simulation.writeHeartbeat((scans += 1) & 0xffff);
-    simulation.advanceTo(scans * scanS * speed + 1e-6);
+    simulation.write('airTrim', onGrid(trimPct, 0.01));
+    simulation.write('heartbeat', (scans += 1) & 0xffff);
+    simulation.advanceTo(scans * scanS * speed);
     return measuredEfficiency(simulation);
   };
   let objective = NaN;
@@ -40,9 +40,9 @@ export function seekOnBurner(seed: number, warmUpS: number): SeekCourse {
     const [estimate = NaN] = law.estimate;
     const [dither = NaN] = law.dither;
     objective = scan(estimate + dither);
-    const { best, efficiencyPct } = simulation.truth;
-    course.shortfalls.push(best.efficiencyPct - efficiencyPct);
-    course.errors.push(estimate - best.trimPct);
+    const { loss, bestTrim } = simulation.truth;
+    course.shortfalls.push(loss ?? NaN);
+    course.errors.push(estimate - bestTrim);
     course.objectives.push(objective);
   }
   return course;
@@ -70,10 +70,13 @@ function lawParameters(): GradientLawParameters {
   };
 }
 
-function measuredEfficiency({ readings }: BurnerSimulation): number {
-  const { o2Pct, coPpm, flueTempC, airTempC } = readings;
-  const gas = { o2Pct: onGrid(o2Pct, 0.01), coPpm: Math.fround(coPpm), flueTempC: onGrid(flueTempC, 0.1) };
-  return efficiencyOf(gas, onGrid(airTempC, 0.1));
+function measuredEfficiency(burner: BurnerSimulation): number {
+  const gas = {
+    o2Pct: onGrid(burner.read('o2'), 0.01),
+    coPpm: Math.fround(burner.read('co')),
+    flueTempC: onGrid(burner.read('flueTemp'), 0.1),
+  };
+  return efficiencyOf(gas, onGrid(burner.read('airTemp'), 0.1));
 }
 
 function onGrid(value: number, quantum: number): number {

@@ -1,4 +1,4 @@
-import type { EnvelopeInput } from './demo-input.js';
+import type { EnvelopeInput } from '../../kit/scenario-input.js';
 
 /** What holds for Burner 1, in real seconds. */
 export const burnerEnvelope: EnvelopeInput = {

@@ -1,4 +1,4 @@
-import type { ExperimentInput, ObjectiveInput } from './demo-input.js';
+import { at, edge, type ExperimentInput, type ObjectiveInput } from '../../kit/scenario-input.js';
 
 export const burnerObjective: ObjectiveInput = {
   title: 'Combustion efficiency',
@@ -44,8 +44,6 @@ export const seekStartPct = 60;
 export const seekForS = 300;
 /** Least gain that passes, points of efficiency. */
 const leastGain = 2;
-
-const at = (x: number, y: number) => ({ position: { x, y } });
 
 export const burnerExperiment: ExperimentInput = {
   title: 'Find and hold the best air trim',
@@ -119,7 +117,3 @@ export const burnerExperiment: ExperimentInput = {
     ],
   },
 };
-
-function edge(from: string, port: string, to: string) {
-  return { id: `${from}-${port}-${to}`, from, port, to };
-}

@@ -1,10 +1,4 @@
-import type { RigInput } from './demo-input.js';
-
-/** Where the burner bench listens. */
-export interface BenchAddress {
-  benchHost: string;
-  benchPort: number;
-}
+import type { RigInput, TcpPlace } from '../../kit/scenario-input.js';
 
 const register = (address: number, type: 'u16' | 'i16' | 'f32', scale = 1) => ({
   unit: 1,
@@ -20,7 +14,7 @@ const wire = { connection: 'plc' } as const;
  * Burner 1 of the Brackwater Test Station: a gas burner with an air damper. All times of its documents are
  * real seconds; the bench runs five times as fast as they say.
  */
-export function burnerRig({ benchHost, benchPort }: BenchAddress): RigInput {
+export function burnerRig({ host, port }: TcpPlace): RigInput {
   return {
     id: 'burner-1',
     title: 'Burner 1',
@@ -33,7 +27,7 @@ export function burnerRig({ benchHost, benchPort }: BenchAddress): RigInput {
         id: 'plc',
         title: 'Burner controller',
         adapter: 'modbus-tcp',
-        configuration: { host: benchHost, port: benchPort, timeoutMs: 500 },
+        configuration: { host, port, timeoutMs: 500 },
       },
     ],
     channels: [...actuators, ...sensors, ...derived],
