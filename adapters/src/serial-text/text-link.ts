@@ -1,0 +1,297 @@
+import { DomainError } from '@cresthold/shared';
+import { closeSerialPort, type OpenSerialPort, portFault } from '../serial/open-serial-port.js';
+import { plainText, showText } from './escaped-text.js';
+import { type Expectation, type Frame, FrameReader } from './frame-reader.js';
+import { LineCodec } from './line-codec.js';
+import { fitsAny, fitsPattern } from './pattern.js';
+import { PortOutput } from './port-output.js';
+import type { SerialTextConfiguration } from './serial-text-configuration.js';
+import { StreamBoard } from './stream-board.js';
+import { Waiter } from './waiter.js';
+
+export interface TextRequest {
+  /** What is sent, without checksum and terminator. */
+  command: string;
+  /** Null where the device sends no reply. */
+  expectation: Expectation | null;
+}
+
+/** The text of a line, the bytes of a block, an empty text where none is due; or why there is none. */
+export type TextReply = string | Buffer | DomainError;
+
+const line: Expectation = { kind: 'line' };
+
+/**
+ * One command on the wire at a time, its reply as a value.
+ *
+ * Which reply belongs to which command only their order tells. After a missed or corrupt reply, or a line that nobody
+ * asked for, the link is out of step: before the next command it drops what comes until the line has been silent for
+ * `resyncMs`, and where an identification is configured it then asks for that and drops everything before its reply,
+ * which the device cannot send before the replies it still owes.
+ */
+export class TextLink {
+  /** Set for good once the port is of no more use. */
+  lost: DomainError | null = null;
+  /** Told of everything that is sent and received. */
+  onTraffic: ((direction: 'sent' | 'received', text: string) => void) | null = null;
+  readonly board: StreamBoard;
+  private readonly codec: LineCodec;
+  private readonly reader: FrameReader;
+  private readonly output: PortOutput;
+  private readonly waiter = new Waiter();
+  private isBusy = false;
+  private isInStep = true;
+  /** When the last thing that does not belong here came, or a reply was missed. */
+  private disturbedMs = 0;
+  private lastByteMs = 0;
+  private silences = 0;
+  private released: Promise<void> | null = null;
+
+  constructor(
+    private readonly port: OpenSerialPort,
+    private readonly settings: SerialTextConfiguration,
+    private readonly nowMs: () => number,
+  ) {
+    this.codec = new LineCodec(settings);
+    this.board = new StreamBoard(this.codec, settings.unsolicited);
+    this.reader = new FrameReader(plainText(settings.replyTerminator), settings.mostReplyChars);
+    const around = { nowMs, waiter: this.waiter, lost: () => this.lost };
+    this.output = new PortOutput(port, settings, around);
+    port.on('data', this.receive);
+    port.on('error', (error: Error) => void this.end(portFault(settings.path, error)));
+    port.on('close', () => {
+      void this.end(new DomainError('adapter.disconnected', `${settings.path}: the port is gone.`));
+    });
+  }
+
+  prepare(): Promise<DomainError | null> {
+    return this.output.prepare();
+  }
+
+  /** @param deadlineMs when the outcome must be there, on the clock of the link */
+  async exchange(request: TextRequest, deadlineMs: number): Promise<TextReply> {
+    if (this.isBusy) throw new Error('another command is on the wire');
+    this.isBusy = true;
+    try {
+      return (await this.comeIntoStep(deadlineMs)) ?? (await this.ask(request, deadlineMs));
+    } finally {
+      this.isBusy = false;
+      this.dropIdleLines();
+    }
+  }
+
+  /** Waits for the next unsolicited line. @returns false where none came in time */
+  async awaitStream(deadlineMs: number): Promise<boolean> {
+    let hasCome = false;
+    this.board.onLine = () => {
+      hasCome = true;
+      this.waiter.wake();
+    };
+    for (let leftMs = 1; leftMs > 0 && !hasCome && !this.lost; leftMs = deadlineMs - this.nowMs()) {
+      await this.waiter.wait(Math.max(1, deadlineMs - this.nowMs()));
+    }
+    this.board.onLine = null;
+    return hasCome;
+  }
+
+  /** Ends the link: the command under way ends with the given error, later ones too. */
+  end(error: DomainError): Promise<void> {
+    this.lost ??= error;
+    this.waiter.wake();
+    this.released ??= closeSerialPort(this.port);
+    return this.released;
+  }
+
+  private readonly receive = (chunk: Buffer): void => {
+    this.lastByteMs = this.nowMs();
+    this.reader.push(chunk);
+    if (this.isBusy) this.waiter.wake();
+    else this.dropIdleLines();
+  };
+
+  private async ask({ command, expectation }: TextRequest, deadlineMs: number): Promise<TextReply> {
+    const { text, wire } = this.codec.encode(command);
+    // Noise without an end would stand before the reply. What may be the start of an unsolicited line is kept.
+    if (!this.board.expectsLines) this.reader.discard();
+    this.onTraffic?.('sent', wire);
+    const fault = await this.output.send(wire, deadlineMs);
+    if (fault) return this.outOfStep(this.lost ?? fault);
+    if (this.settings.hasEcho) {
+      const echoFault = await this.awaitEcho(text, deadlineMs);
+      if (echoFault) return echoFault;
+    }
+    if (!expectation) return '';
+    const waitMs = this.output.wireMs(wire) + this.settings.replyTimeoutMs;
+    return this.awaitReply(text, expectation, this.nowMs() + waitMs, deadlineMs);
+  }
+
+  private async awaitEcho(text: string, deadlineMs: number): Promise<DomainError | null> {
+    const limitMs = this.nowMs() + 2 * this.output.wireMs(text) + this.settings.replyTimeoutMs;
+    for (;;) {
+      if (this.lost) return this.lost;
+      const echo = this.reader.takeEcho(text);
+      if (echo === 'taken') {
+        this.onTraffic?.('received', text);
+        return null;
+      }
+      if (echo === 'other') {
+        const frame = this.reader.next(line);
+        if (frame) {
+          if (frame.kind === 'line' && this.board.take(frame.text, this.nowMs())) continue;
+          return this.corrupt(text, frame, 'the echo is not what was sent');
+        }
+      }
+      if (!(await this.waitUntil(limitMs, deadlineMs))) return this.silence(text);
+    }
+  }
+
+  private async awaitReply(
+    text: string,
+    expectation: Expectation,
+    limitMs: number,
+    deadlineMs: number,
+  ): Promise<TextReply> {
+    for (;;) {
+      if (this.lost) return this.lost;
+      const frame = this.reader.next(expectation);
+      const reply = frame ? this.judge(text, frame, expectation) : null;
+      if (reply !== null) return reply;
+      if (!frame && !(await this.waitUntil(limitMs, deadlineMs))) return this.silence(text);
+    }
+  }
+
+  /** Waits for more. A reply that has begun gets time for each further character. @returns false when time is up */
+  private async waitUntil(limitMs: number, deadlineMs: number): Promise<boolean> {
+    const { replyTimeoutMs } = this.settings;
+    const hasBegun = this.reader.pendingChars > 0;
+    const extendedMs = hasBegun ? Math.max(limitMs, this.lastByteMs + replyTimeoutMs) : limitMs;
+    const leftMs = Math.min(extendedMs, deadlineMs) - this.nowMs();
+    if (leftMs <= 0) return false;
+    await this.waiter.wait(leftMs);
+    return true;
+  }
+
+  /** Null where the frame is no reply. */
+  private judge(text: string, frame: Frame, expectation: Expectation): TextReply | null {
+    if (frame.kind === 'noise') return this.corrupt(text, frame, frame.fault);
+    this.tellFrame(frame);
+    if (frame.kind === 'block') {
+      this.silences = 0;
+      return frame.bytes;
+    }
+    if (this.board.take(frame.text, this.nowMs())) return null;
+    const reply = this.codec.decode(frame.text);
+    if (typeof reply !== 'string') return this.corrupt(text, frame, reply.fault);
+    if (fitsAny(reply, this.settings.refusals)) {
+      this.silences = 0;
+      const message = `${this.place(text)}: the device answered "${showText(reply)}".`;
+      return new DomainError('adapter.refused', message);
+    }
+    if (expectation.kind === 'block') return this.corrupt(text, frame, 'a line came in place of a block');
+    this.silences = 0;
+    return reply;
+  }
+
+  private async comeIntoStep(deadlineMs: number): Promise<DomainError | null> {
+    this.dropIdleLines();
+    if (this.lost || this.isInStep) return this.lost;
+    if (this.settings.flowControl !== 'none') await this.output.flush();
+    const fault = (await this.awaitSilence(deadlineMs)) ?? (await this.identify(deadlineMs));
+    if (!fault) this.isInStep = true;
+    return fault;
+  }
+
+  private async awaitSilence(deadlineMs: number): Promise<DomainError | null> {
+    const { resyncMs } = this.settings;
+    for (;;) {
+      this.dropIdleLines();
+      if (this.lost) return this.lost;
+      // What came last may be the start of a line that somebody reads: that is judged when it is whole.
+      const unknownMs = this.reader.pendingChars > 0 ? this.lastByteMs : 0;
+      const leftMs = Math.max(this.disturbedMs, unknownMs) + resyncMs - this.nowMs();
+      if (leftMs <= 0) break;
+      if (this.nowMs() + leftMs > deadlineMs) return this.noTime();
+      await this.waiter.wait(leftMs);
+    }
+    this.reader.discard();
+    return null;
+  }
+
+  /** Everything that the device still owes comes before the reply to a question whose answer is known. */
+  private async identify(deadlineMs: number): Promise<DomainError | null> {
+    const { identification, identificationQuery, replyTimeoutMs } = this.settings;
+    if (identification === '') return null;
+    const { text, wire } = this.codec.encode(plainText(identificationQuery));
+    const sent = await this.output.send(wire, deadlineMs);
+    if (sent) return sent;
+    const limitMs = this.nowMs() + this.output.wireMs(wire) + replyTimeoutMs;
+    for (;;) {
+      if (this.lost) return this.lost;
+      const frame = this.reader.next(line);
+      if (!frame) {
+        if (!(await this.waitUntil(limitMs, deadlineMs))) return this.silence(text);
+      } else if (frame.kind === 'line' && !this.board.take(frame.text, this.nowMs())) {
+        const reply = this.codec.decode(frame.text);
+        if (typeof reply === 'string' && fitsPattern(reply, identification)) return null;
+      }
+    }
+  }
+
+  /** Takes unsolicited lines off what has come; any other line belongs to no command. */
+  private dropIdleLines(): void {
+    for (let frame = this.reader.next(line); frame; frame = this.reader.next(line)) {
+      if (frame.kind === 'line' && this.board.take(frame.text, this.nowMs())) continue;
+      this.isInStep = false;
+      this.disturbedMs = this.nowMs();
+    }
+  }
+
+  private silence(text: string): DomainError {
+    this.silences += 1;
+    const begun = this.reader.begun;
+    // The commonest slip of a new connection shows here: a terminator that the device does not send.
+    const what = begun === '' ? 'no reply in time' : `the reply "${showText(begun, 60)}" did not end in time`;
+    const message = `${this.place(text)}: ${what}.`;
+    if (this.silences < this.settings.silencesUntilLost) {
+      return this.outOfStep(new DomainError('adapter.timeout', message));
+    }
+    const lost = new DomainError(
+      'adapter.disconnected',
+      `${message} ${this.silences} commands in a row were left unanswered: the connection counts as lost.`,
+    );
+    void this.end(lost);
+    return lost;
+  }
+
+  private corrupt(text: string, frame: Frame, fault: string): DomainError {
+    this.silences = 0;
+    const shown = frame.kind === 'line' ? ` "${showText(frame.text)}"` : '';
+    const message = `${this.place(text)}: no valid reply${shown}: ${fault}.`;
+    return this.outOfStep(new DomainError('adapter.corrupt', message));
+  }
+
+  private noTime(): DomainError {
+    const message = `${this.settings.path}: not asked: no time was left after waiting for a late reply.`;
+    return new DomainError('adapter.timeout', message);
+  }
+
+  private outOfStep(fault: DomainError): DomainError {
+    this.isInStep = false;
+    this.disturbedMs = this.nowMs();
+    return fault;
+  }
+
+  private tellFrame(frame: Frame): void {
+    if (frame.kind === 'line') this.onTraffic?.('received', frame.text);
+    else if (frame.kind === 'block') {
+      const first = [...frame.bytes.subarray(0, 16)]
+        .map((byte) => byte.toString(16).padStart(2, '0'))
+        .join(' ');
+      this.onTraffic?.('received', `#… ${frame.bytes.length} bytes: ${first} …`);
+    }
+  }
+
+  private place(text: string): string {
+    return `${this.settings.path}, "${showText(text, 60)}"`;
+  }
+}
