@@ -1,5 +1,8 @@
 export * from './conformance/conformance-fixture.js';
-export { describeAdapterConformance, describeAdapterLeaks } from './conformance/describe-adapter-conformance.js';
+export {
+  describeAdapterConformance,
+  describeAdapterLeaks,
+} from './conformance/describe-adapter-conformance.js';
 export * from './contract.js';
 export * from './faults/fault-control.js';
 export { withFaults } from './faults/with-faults.js';
@@ -15,3 +18,11 @@ export type { ModbusTcpConfiguration } from './modbus-tcp/modbus-tcp-configurati
 export * from './registry.js';
 export * from './timer-port.js';
 export { listSerialPorts, type SerialPortListing } from './serial/list-serial-ports.js';
+export {
+  type InstrumentProfile,
+  type ProfileChannel,
+  instrumentProfiles,
+} from './serial-text/instrument-profiles.js';
+export type { SerialTextAddress } from './serial-text/serial-text-address.schema.js';
+export { makeSerialTextAdapter, serialTextAdapter } from './serial-text/serial-text.adapter.js';
+export type { SerialTextConfiguration } from './serial-text/serial-text-configuration.js';

@@ -1,99 +1,177 @@
-import { DomainError, type FieldFault } from '@cresthold/shared';
-import { z } from 'zod';
-import { type Adapter, contractVersion } from './contract.js';
-import { inMemoryAdapter } from './in-memory/in-memory.adapter.js';
-import { modbusTcpAdapter } from './modbus-tcp/modbus-tcp.adapter.js';
+import { readFileSync } from 'node:fs';
+import { DomainError, type ErrorRecord, type FieldFault } from '@cresthold/shared';
+import type { Adapter } from './contract.js';
 import { fieldFaultsOf } from './parse-or-misconfigured.js';
-import { meetsRange } from './semver-range.js';
+import { formSchemaOf, type JsonSchema, requireContract } from './plug-ins/check-adapter.js';
+import { loadPlugIn, type LoadedPlugIn } from './plug-ins/load-plug-in.js';
+import { shippedAdapters } from './shipped-adapters.js';
 
-/**
- * Adapters by id.
- *
- * @throws adapter.misconfigured naming the plug-in that is there twice or was written for another contract
- */
-export function registerAdapters(adapters: readonly Adapter[]): ReadonlyMap<string, Adapter> {
-  const byId = new Map<string, Adapter>();
-  for (const adapter of adapters) {
-    const { id, contract } = adapter.manifest;
-    if (byId.has(id)) {
-      throw new DomainError('adapter.misconfigured', `Two adapters have the id "${id}": remove one.`);
-    }
-    if (!meetsRange(contractVersion, contract)) {
-      throw new DomainError(
-        'adapter.misconfigured',
-        `Adapter "${id}" was written for contract ${contract}, this is ${contractVersion}: install a matching one.`,
-      );
-    }
-    byId.set(id, adapter);
-  }
-  return byId;
-}
-
-export const installedAdapters: ReadonlyMap<string, Adapter> = registerAdapters([
-  modbusTcpAdapter,
-  inMemoryAdapter,
-]);
-
-/** @throws adapter.unknown with the ids that are installed */
-export function findAdapter(id: string): Adapter {
-  const adapter = installedAdapters.get(id);
-  if (adapter) return adapter;
-  const known = [...installedAdapters.keys()].join(', ');
-  throw new DomainError('adapter.unknown', `No adapter "${id}" is installed: use one of ${known}.`, [
-    { field: 'adapter', message: `Use one of ${known}.` },
-  ]);
-}
-
-/**
- * Faults of a connection, by field below `root`: an adapter that is not installed, or a
- * configuration that its schema does not take.
- *
- * @example
- * checkConnection({ adapter: 'modbus-tcp', configuration: {} }, 'connections[0]') // one fault, at connections[0].configuration.host
- */
-export function checkConnection(
-  connection: { adapter: string; configuration: unknown },
-  root = '',
-): FieldFault[] {
-  return check(connection.adapter, 'configurationSchema', connection.configuration, root, 'configuration');
-}
-
-/** Faults of a channel address for an adapter, by field below `root`. */
-export function checkAddress(adapterId: string, address: unknown, root = ''): FieldFault[] {
-  return check(adapterId, 'addressSchema', address, root, 'address');
-}
-
-function check(
-  adapterId: string,
-  schema: 'configurationSchema' | 'addressSchema',
-  value: unknown,
-  root: string,
-  field: string,
-): FieldFault[] {
-  const prefix = root === '' ? '' : `${root}.`;
-  const adapter = installedAdapters.get(adapterId);
-  if (!adapter) {
-    const known = [...installedAdapters.keys()].join(', ');
-    return [
-      { field: `${prefix}adapter`, message: `No adapter "${adapterId}" is installed: use one of ${known}.` },
-    ];
-  }
-  return fieldFaultsOf(adapter.manifest[schema], value, `${prefix}${field}`);
-}
-
-/** An adapter as screens and scripts see it; the schemas are JSON Schema of what may be given. */
-export interface AdapterSummary {
-  id: string;
+/** An adapter as screens and scripts see it. */
+export interface AdapterListing {
+  /** Null where a broken plug-in does not tell. */
+  id: string | null;
   title: string;
-  configurationSchema: Record<string, unknown>;
-  addressSchema: Record<string, unknown>;
+  /** Of its package; null where that has none. */
+  version: string | null;
+  /** Semver range of the contract that it was written for; null where it does not tell. */
+  contract: string | null;
+  origin: 'shipped' | 'plug-in';
+  /** What the configuration calls the plug-in; null for a shipped adapter. */
+  reference: string | null;
+  state: 'ready' | 'broken';
+  /** Why it is broken; null where it is not. */
+  error: ErrorRecord | null;
+  /** JSON Schema of what may be given; null where it is broken. */
+  configurationSchema: JsonSchema | null;
+  addressSchema: JsonSchema | null;
 }
 
-export function adapterSummaries(): AdapterSummary[] {
-  return [...installedAdapters.values()].map(({ manifest }) => ({
+/** The adapters of one process: those that ship, and those of the plug-ins that are in order. */
+export class AdapterRegistry {
+  readonly adapters: ReadonlyMap<string, Adapter>;
+  /** Every adapter, the broken ones too: shipped first, then plug-ins as configured. */
+  readonly listings: readonly AdapterListing[];
+
+  /**
+   * An id that is taken already makes the later plug-in a broken one.
+   *
+   * @throws plug-in.duplicate, plug-in.other-contract for shipped adapters, whose faults are the product's own
+   */
+  constructor(shipped: readonly Adapter[], plugIns: readonly LoadedPlugIn[] = []) {
+    const byId = new Map<string, Adapter>();
+    const listings = shipped.map((adapter) => {
+      requireContract(adapter);
+      if (byId.has(adapter.manifest.id)) throw duplicate(adapter.manifest.id);
+      byId.set(adapter.manifest.id, adapter);
+      return listingOf(adapter, { version: productVersion(), origin: 'shipped', reference: null });
+    });
+    for (const loaded of plugIns) listings.push(takePlugIn(byId, loaded));
+    this.adapters = byId;
+    this.listings = listings;
+  }
+
+  /** @throws adapter.unknown with the ids that are ready, and why a plug-in of this id is not */
+  find(id: string): Adapter {
+    const adapter = this.adapters.get(id);
+    if (adapter) return adapter;
+    const message = this.unknownText(id);
+    throw new DomainError('adapter.unknown', message, [{ field: 'adapter', message }]);
+  }
+
+  /**
+   * Faults of a connection, by field below `root`: an adapter that is not there, or a configuration that its
+   * schema does not take.
+   *
+   * @example
+   * registry.checkConnection({ adapter: 'modbus-tcp', configuration: {} }, 'connections[0]') // one fault, at connections[0].configuration.host
+   */
+  checkConnection(connection: { adapter: string; configuration: unknown }, root = ''): FieldFault[] {
+    return this.check(
+      connection.adapter,
+      'configurationSchema',
+      connection.configuration,
+      root,
+      'configuration',
+    );
+  }
+
+  /** Faults of a channel address for an adapter, by field below `root`. */
+  checkAddress(adapterId: string, address: unknown, root = ''): FieldFault[] {
+    return this.check(adapterId, 'addressSchema', address, root, 'address');
+  }
+
+  private check(
+    adapterId: string,
+    schema: 'configurationSchema' | 'addressSchema',
+    value: unknown,
+    root: string,
+    field: string,
+  ): FieldFault[] {
+    const prefix = root === '' ? '' : `${root}.`;
+    const adapter = this.adapters.get(adapterId);
+    if (!adapter) return [{ field: `${prefix}adapter`, message: this.unknownText(adapterId) }];
+    return fieldFaultsOf(adapter.manifest[schema], value, `${prefix}${field}`);
+  }
+
+  private unknownText(id: string): string {
+    const broken = this.listings.find((listing) => listing.id === id);
+    if (broken?.error) return `The plug-in with adapter "${id}" is broken: ${broken.error.message}`;
+    return `No adapter "${id}" is installed: use one of ${[...this.adapters.keys()].join(', ')}.`;
+  }
+}
+
+/** The adapters that ship, without plug-ins. */
+export const shippedRegistry = new AdapterRegistry(shippedAdapters);
+
+/**
+ * The adapters of this process: those that ship and those of the plug-ins, each imported and checked. A plug-in
+ * that is broken is listed with the reason; it stops nothing.
+ *
+ * @param references folders or files (they begin with `.` or `/`), or names of installed packages
+ * @param base folder from which paths and packages are looked for
+ */
+export async function loadRegistry(
+  references: readonly string[],
+  base = process.cwd(),
+): Promise<AdapterRegistry> {
+  if (references.length === 0) return shippedRegistry;
+  const loaded = await Promise.all(references.map((reference) => loadPlugIn(reference, base)));
+  return new AdapterRegistry(shippedAdapters, loaded.flat());
+}
+
+function takePlugIn(byId: Map<string, Adapter>, loaded: LoadedPlugIn): AdapterListing {
+  const { reference, version, adapter } = loaded;
+  const isTaken = adapter !== null && byId.has(adapter.manifest.id);
+  const error = isTaken ? duplicate(adapter.manifest.id) : loaded.error;
+  if (error !== null || adapter === null) return brokenListing(loaded, error);
+  byId.set(adapter.manifest.id, adapter);
+  return listingOf(adapter, { version, origin: 'plug-in', reference });
+}
+
+function listingOf(
+  { manifest }: Adapter,
+  from: Pick<AdapterListing, 'version' | 'origin' | 'reference'>,
+): AdapterListing {
+  return {
     id: manifest.id,
     title: manifest.title,
-    configurationSchema: z.toJSONSchema(manifest.configurationSchema, { io: 'input' }),
-    addressSchema: z.toJSONSchema(manifest.addressSchema, { io: 'input' }),
-  }));
+    contract: manifest.contract,
+    ...from,
+    state: 'ready',
+    error: null,
+    configurationSchema: formSchemaOf(manifest.configurationSchema),
+    addressSchema: formSchemaOf(manifest.addressSchema),
+  };
+}
+
+function brokenListing(
+  { reference, version, id, title, contract }: LoadedPlugIn,
+  error: DomainError | null,
+): AdapterListing {
+  return {
+    id,
+    title: title ?? reference,
+    contract,
+    version,
+    origin: 'plug-in',
+    reference,
+    state: 'broken',
+    error: error?.toRecord() ?? null,
+    configurationSchema: null,
+    addressSchema: null,
+  };
+}
+
+function duplicate(id: string): DomainError {
+  return new DomainError('plug-in.duplicate', `Two adapters have the id "${id}": remove one, or rename it.`);
+}
+
+let versionRead: string | null = null;
+
+/** The shipped adapters have the version of the product. */
+function productVersion(): string {
+  if (versionRead !== null) return versionRead;
+  const file = new URL('../package.json', import.meta.url);
+  versionRead = (JSON.parse(readFileSync(file, 'utf8')) as { version: string }).version;
+  return versionRead;
 }
