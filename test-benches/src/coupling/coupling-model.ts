@@ -4,6 +4,7 @@ import {
   beatWatchdog,
   initialWatchdog,
   stepWatchdog,
+  waitingWatchdog,
   type WatchdogState,
 } from '../kit/heartbeat-watchdog.js';
 import { seededRandom, type SeededRandom } from '../kit/seeded-random.js';
@@ -103,7 +104,7 @@ export class CouplingModel extends FixedStepModel {
   reboot(): void {
     this.driveX = restDriveV;
     this.driveY = restDriveV;
-    this.watchdog = { ...initialWatchdog, count: this.watchdog.count };
+    this.watchdog = { ...waitingWatchdog(this.tS), count: this.watchdog.count };
   }
 
   protected step(tS: number, dtS: number): void {

@@ -58,7 +58,7 @@ export function cultureRates(
   };
 }
 
-const scanPoints = 400;
+const scanPoints = 100;
 
 /**
  * The steady state with the least substrate, which a culture keeps when the feed is raised slowly. With what is fed

@@ -1,3 +1,4 @@
+import { goldenSection } from '../kit/golden-section.js';
 import { steadyState, type Feed, type Kinetics } from './chemostat-physics.js';
 
 /** A culture tank on the distributor. */
@@ -57,8 +58,7 @@ export interface Hill extends Product {
   position: number;
 }
 
-const gridStep = 1;
-const golden = (Math.sqrt(5) - 1) / 2;
+const gridStep = 2;
 
 /** All hills at a drift, best first. */
 export function hillsOf(vigour: readonly number[]): Hill[] {
@@ -69,14 +69,7 @@ export function hillsOf(vigour: readonly number[]): Hill[] {
   for (let i = 1; i < count; i += 1) {
     const here = grid[i] ?? NaN;
     if (here < (grid[i - 1] ?? NaN) || here <= (grid[i + 1] ?? NaN)) continue;
-    let [low, high] = [(i - 1) * gridStep, (i + 1) * gridStep];
-    for (let k = 0; k < 30; k += 1) {
-      const left = high - golden * (high - low);
-      const right = low + golden * (high - low);
-      if (yieldAt(left) < yieldAt(right)) low = left;
-      else high = right;
-    }
-    const position = (low + high) / 2;
+    const position = goldenSection(yieldAt, (i - 1) * gridStep, (i + 1) * gridStep, 1e-5);
     hills.push({ position, ...settledProduct(position, vigour) });
   }
   return hills.sort((a, b) => b.biomass - a.biomass);

@@ -87,9 +87,9 @@ export function ramps(test: RampTest): Irradiance {
 
 /** Broken cloud, chosen here: how bright, how long and with what edges, each even between two ends. */
 const clouds = {
-  clear: { irradiance: [850, 1050], meanS: 18, leastS: 4 },
-  covered: { irradiance: [180, 420], meanS: 10, leastS: 3 },
-  edgeS: [1, 4],
+  clear: { irradiance: [850, 1050], meanS: 9, leastS: 3 },
+  covered: { irradiance: [120, 400], meanS: 7, leastS: 2 },
+  edgeS: [0.7, 3],
 } as const;
 
 /** Clear and covered in turns of random length with edges of a few seconds. */

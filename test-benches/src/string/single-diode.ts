@@ -17,6 +17,8 @@ export interface SingleDiode {
 export const boltzmannVPerK = 1.380649e-23 / 1.602176634e-19;
 
 const iterationsMax = 100;
+/** From tens of volts down to rounding. */
+const halvings = 60;
 
 /** Current of the cells at a junction voltage, A. */
 export function currentAtJunction(cells: SingleDiode, junctionV: number): number {
@@ -86,7 +88,7 @@ export function maximumPower(cells: SingleDiode): PowerPoint {
     const currentA = currentAtJunction(cells, junctionV);
     return { currentA, voltageV: junctionV - seriesOhm * currentA };
   };
-  for (let i = 0; i < iterationsMax; i += 1) {
+  for (let i = 0; i < halvings; i += 1) {
     const middle = (low + high) / 2;
     const { currentA, voltageV } = at(middle);
     const slope = slopeAtJunction(cells, middle);

@@ -4,6 +4,7 @@ import {
   beatWatchdog,
   initialWatchdog,
   stepWatchdog,
+  waitingWatchdog,
   type WatchdogState,
 } from '../kit/heartbeat-watchdog.js';
 import { seededRandom } from '../kit/seeded-random.js';
@@ -64,7 +65,7 @@ export class StringModel extends FixedStepModel {
         { name: 'watchdogCount' },
       ],
       settings,
-      { stepS: 0.01, stepsPerReading: 1 },
+      { stepS: 0.01, stepsPerReading: 2 },
     );
     // A sequence of its own: the weather does not hang on how many readings were taken.
     this.weather = weatherOf(settings.profile, seededRandom(settings.seed * 7919 + 17));
@@ -111,7 +112,7 @@ export class StringModel extends FixedStepModel {
 
   reboot(): void {
     this.setpointV = restVoltageV;
-    this.watchdog = { ...initialWatchdog, count: this.watchdog.count };
+    this.watchdog = { ...waitingWatchdog(this.tS), count: this.watchdog.count };
   }
 
   protected step(tS: number, dtS: number): void {
@@ -127,10 +128,10 @@ export class StringModel extends FixedStepModel {
     this.sensedIrradiance = follow(this.sensedIrradiance, this.irradiance, sensorLagS);
     if (this.settings.isDrifting) this.pace = 1 + ripple.wander * Math.sin((2 * Math.PI * tS) / 97);
     this.phase = (this.phase + (2 * Math.PI * this.pace * dtS) / ripple.periodS) % (2 * Math.PI);
-    this.lightUp();
   }
 
   protected takeReadings(): void {
+    this.lightUp();
     const { voltageV, currentA, powerW } = this.operatingPoint;
     this.show('voltageSetpoint', this.setpointV);
     this.show('heartbeat', this.watchdog.beat);

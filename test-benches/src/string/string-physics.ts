@@ -1,5 +1,12 @@
+import { goldenSection } from '../kit/golden-section.js';
 import { bypassesPerModule, cellsOfModule, cellsPerBypass } from './kc200gt.js';
-import { shortCircuitCurrent, voltageAtCurrent, type PowerPoint, type SingleDiode } from './single-diode.js';
+import {
+  maximumPower,
+  shortCircuitCurrent,
+  voltageAtCurrent,
+  type PowerPoint,
+  type SingleDiode,
+} from './single-diode.js';
 
 /** Modules in series. */
 export const modulesInString = 6;
@@ -83,8 +90,9 @@ export function stringCurrent(sections: readonly Section[], voltageV: number): n
   return (low + high) / 2;
 }
 
-const scanPoints = 160;
-const golden = (Math.sqrt(5) - 1) / 2;
+const scanPoints = 120;
+/** A. */
+const currentTolerance = 1e-6;
 
 /** All points of locally greatest power, best first; several where sections stand in different light. */
 export function powerPeaks(sections: readonly Section[]): PowerPoint[] {
@@ -95,33 +103,24 @@ export function powerPeaks(sections: readonly Section[]): PowerPoint[] {
   for (let i = 1; i < scanPoints; i += 1) {
     const here = powers[i] ?? NaN;
     if (here < (powers[i - 1] ?? NaN) || here <= (powers[i + 1] ?? NaN)) continue;
-    peaks.push(
-      refine(sections, powerAt, (highestA * (i - 1)) / scanPoints, (highestA * (i + 1)) / scanPoints),
+    const currentA = goldenSection(
+      powerAt,
+      (highestA * (i - 1)) / scanPoints,
+      (highestA * (i + 1)) / scanPoints,
+      currentTolerance,
     );
+    const voltageV = stringVoltage(sections, currentA);
+    peaks.push({ voltageV, currentA, powerW: voltageV * currentA });
   }
   return peaks.sort((a, b) => b.powerW - a.powerW);
 }
 
-/** The greatest power between two currents, by golden section. */
-function refine(
-  sections: readonly Section[],
-  powerAt: (currentA: number) => number,
-  from: number,
-  to: number,
-): PowerPoint {
-  let [low, high] = [from, to];
-  for (let i = 0; i < 40; i += 1) {
-    const left = high - golden * (high - low);
-    const right = low + golden * (high - low);
-    if (powerAt(left) < powerAt(right)) low = left;
-    else high = right;
-  }
-  const currentA = (low + high) / 2;
-  const voltageV = stringVoltage(sections, currentA);
-  return { voltageV, currentA, powerW: voltageV * currentA };
-}
-
 /** The greatest power to be had; all 0 in the dark. */
 export function bestPower(sections: readonly Section[]): PowerPoint {
+  const [only, another] = sections;
+  if (only && !another) {
+    const { voltageV, currentA } = maximumPower(only.cells);
+    return { voltageV: voltageV * only.groups, currentA, powerW: voltageV * currentA * only.groups };
+  }
   return powerPeaks(sections)[0] ?? { voltageV: 0, currentA: 0, powerW: 0 };
 }

@@ -1,0 +1,3 @@
+import { describeMixerExperiments } from './mixer-experiment.fixture.js';
+
+describeMixerExperiments(20);

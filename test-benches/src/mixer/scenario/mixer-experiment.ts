@@ -1,0 +1,146 @@
+import { at, edge, type ExperimentInput, type ObjectiveInput } from '../../kit/scenario-input.js';
+
+const whilePumping = [{ condition: 'pumpRunning > 0.5', message: 'Without feed the figure means nothing.' }];
+
+export const yieldObjective: ObjectiveInput = {
+  title: 'Yield',
+  direction: 'maximise',
+  expression: 'biomass',
+  unit: 'g/L',
+  validity: whilePumping,
+};
+
+export const wasteObjective: ObjectiveInput = {
+  title: 'Waste',
+  direction: 'minimise',
+  expression: 'substrate',
+  unit: 'g/L',
+  validity: whilePumping,
+};
+
+/**
+ * How Mixer 1 is sought, in real seconds; the bench runs at five times its speed.
+ *
+ * - Survey: a hill is 16 % wide at least half of its height, so that a point every 4 % cannot miss one. The
+ *   cultures take 25 to 40 s of bench time to settle, hence 7 s at each point.
+ * - Period 12 s, 60 s of bench time: cultures, dead time and analyser leave 70 % of the dither and lag about
+ *   55°; the washout leads by 16.7°.
+ * - Amplitude 1.5 %: on the best hill f'' = −0.037 g/L per (%)², so it costs f''a²/4 = 0.02 g/L, half a percent.
+ * - Gain 2 for the yield: the error decays with 2 · 0.037 · 0.7 = 0.05 1/s, a tenth of ω = 0.52 rad/s and a fifth
+ *   of the low-pass. A gram of yield is two of substrate, so for the waste it is 1.
+ * - The drift moves the best place by 0.7 % · 2π / 260 s = 0.02 %/s at most, which the estimate trails by 0.4 %.
+ */
+export const mixerSeeking = {
+  ditherAmplitude: 1.5,
+  ditherPeriodS: 12,
+  washoutRatio: 0.3,
+  lowPassRatio: 0.5,
+  phaseDeg: 38,
+  min: 6,
+  max: 94,
+} as const;
+
+export const seekForS = 300;
+
+/** The way of both experiments: look at all hills, climb the best, hold it. */
+function findHill(
+  title: string,
+  channel: string,
+  gain: number,
+  settleBand: number,
+  criterion: string,
+): ExperimentInput {
+  return {
+    title,
+    objectiveId: null,
+    graph: {
+      steps: [
+        { kind: 'start', id: 'start', title: '', ...at(0, 120), parameters: {} },
+        {
+          kind: 'survey',
+          id: 'survey',
+          title: 'Look at all hills',
+          ...at(220, 120),
+          parameters: {
+            actuator: 'distributor',
+            from: 6,
+            to: 94,
+            points: 23,
+            settleS: 7,
+            averageS: 1,
+            isUpAndDown: false,
+          },
+        },
+        {
+          kind: 'move',
+          id: 'move',
+          title: 'Go to the best of them',
+          ...at(460, 120),
+          parameters: {
+            targets: [{ channel: 'distributor', value: { expression: 'survey.best.distributor' } }],
+            rampS: 3,
+            timeoutS: 30,
+          },
+        },
+        {
+          kind: 'settle',
+          id: 'settle',
+          title: 'Let it settle',
+          ...at(700, 120),
+          parameters: { channel, band: settleBand, forS: 4, timeoutS: 40 },
+        },
+        {
+          kind: 'seek',
+          id: 'seek',
+          title: 'Seek and hold the best',
+          ...at(940, 120),
+          parameters: {
+            actuator: 'distributor',
+            law: 'gradient',
+            ...mixerSeeking,
+            gain,
+            end: { afterS: seekForS, whenConverged: null, when: null },
+            invalidForS: 10,
+          },
+        },
+        {
+          kind: 'check',
+          id: 'check',
+          title: 'As good as surveyed',
+          ...at(1180, 120),
+          parameters: { criterion },
+        },
+        { kind: 'finish', id: 'finish', title: '', ...at(1420, 120), parameters: {} },
+      ],
+      edges: [
+        edge('start', 'done', 'survey'),
+        edge('survey', 'done', 'move'),
+        edge('survey', 'failed', 'finish'),
+        edge('move', 'done', 'settle'),
+        edge('move', 'timeout', 'finish'),
+        edge('settle', 'done', 'seek'),
+        edge('settle', 'timeout', 'seek'),
+        edge('seek', 'done', 'check'),
+        edge('seek', 'failed', 'finish'),
+        edge('check', 'yes', 'finish'),
+        edge('check', 'no', 'finish'),
+      ],
+    },
+  };
+}
+
+export const yieldExperiment = findHill(
+  'Find and hold the best yield',
+  'biomass',
+  2,
+  0.15,
+  'seek.objective >= survey.best.objective - 0.1',
+);
+
+export const wasteExperiment = findHill(
+  'Find and hold the least waste',
+  'substrate',
+  1,
+  0.3,
+  'seek.objective <= survey.best.objective + 0.2',
+);
