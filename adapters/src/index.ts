@@ -15,7 +15,11 @@ export { modbusRtuAdapter } from './modbus-rtu/modbus-rtu.adapter.js';
 export type { ModbusRtuConfiguration } from './modbus-rtu/modbus-rtu-configuration.schema.js';
 export { modbusTcpAdapter } from './modbus-tcp/modbus-tcp.adapter.js';
 export type { ModbusTcpConfiguration } from './modbus-tcp/modbus-tcp-configuration.schema.js';
+export { formSchemaOf, type JsonSchema } from './plug-ins/check-adapter.js';
+export { isPath } from './plug-ins/find-entry.js';
+export type { AdapterListing } from './adapter-listing.js';
 export * from './registry.js';
+export { shippedAdapters } from './shipped-adapters.js';
 export * from './timer-port.js';
 export { listSerialPorts, type SerialPortListing } from './serial/list-serial-ports.js';
 export {

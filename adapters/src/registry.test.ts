@@ -1,39 +1,64 @@
 import { describe, expect, it } from 'vitest';
+import type { Adapter } from './contract.js';
 import { inMemoryAdapter } from './in-memory/in-memory.adapter.js';
-import {
-  adapterSummaries,
-  checkAddress,
-  checkConnection,
-  findAdapter,
-  installedAdapters,
-  registerAdapters,
-} from './registry.js';
+import { AdapterRegistry, shippedRegistry } from './registry.js';
 
-const withManifest = (more: object) => ({
+const withManifest = (more: object): Adapter => ({
   ...inMemoryAdapter,
   manifest: { ...inMemoryAdapter.manifest, ...more },
 });
 
-describe('registering', () => {
-  it('names the adapter that is there twice', () => {
-    expect(() => registerAdapters([inMemoryAdapter, inMemoryAdapter])).toThrow(/"in-memory"/);
+const loaded = (adapter: Adapter, reference = './plug-in') => ({
+  reference,
+  version: '0.3.1',
+  id: adapter.manifest.id,
+  title: adapter.manifest.title,
+  contract: adapter.manifest.contract,
+  adapter,
+  error: null,
+});
+
+describe('a registry', () => {
+  it('of shipped adapters names the one that is there twice', () => {
+    expect(() => new AdapterRegistry([inMemoryAdapter, inMemoryAdapter])).toThrow(/"in-memory"/);
   });
 
-  it('names the adapter that was written for another contract', () => {
-    expect(() => registerAdapters([withManifest({ id: 'old', contract: '^0.9.0' })])).toThrow(
+  it('of shipped adapters names the one that was written for another contract', () => {
+    expect(() => new AdapterRegistry([withManifest({ id: 'old', contract: '^0.9.0' })])).toThrow(
       /"old" was written for contract \^0\.9\.0/,
     );
   });
+
+  it('takes plug-ins beside them', () => {
+    const mine = withManifest({ id: 'mine', title: 'Mine' });
+    const registry = new AdapterRegistry([inMemoryAdapter], [loaded(mine)]);
+    expect(registry.find('mine')).toBe(mine);
+    expect(registry.listings.map(({ id, state, origin, version }) => [id, state, origin, version])).toEqual([
+      ['in-memory', 'ready', 'shipped', expect.stringMatching(/^\d+\.\d+\.\d+$/)],
+      ['mine', 'ready', 'plug-in', '0.3.1'],
+    ]);
+  });
+
+  it('keeps the first of two adapters with one id, and lists the second as broken', () => {
+    const registry = new AdapterRegistry([inMemoryAdapter], [loaded(withManifest({ title: 'Usurper' }))]);
+    expect(registry.find('in-memory')).toBe(inMemoryAdapter);
+    expect(registry.listings[1]).toMatchObject({
+      title: 'Usurper',
+      state: 'broken',
+      error: { code: 'plug-in.duplicate' },
+      configurationSchema: null,
+    });
+  });
 });
 
-describe('installed adapters', () => {
+describe('shipped adapters', () => {
   it('are found by id', () => {
-    expect(findAdapter('modbus-tcp').manifest.title).toBe('Modbus TCP');
-    expect([...installedAdapters.keys()]).toContain('in-memory');
+    expect(shippedRegistry.find('modbus-tcp').manifest.title).toBe('Modbus TCP');
+    expect([...shippedRegistry.adapters.keys()]).toContain('in-memory');
   });
 
   it('that are not there are adapter.unknown, with those that are', () => {
-    expect(() => findAdapter('telepathy')).toThrow(
+    expect(() => shippedRegistry.find('telepathy')).toThrow(
       expect.objectContaining({
         code: 'adapter.unknown',
         message: expect.stringMatching(/"telepathy".*modbus-tcp/),
@@ -42,25 +67,24 @@ describe('installed adapters', () => {
   });
 
   it('have schemas that a form can be drawn from, without what has a default among the required', () => {
-    const summary = adapterSummaries().find(({ id }) => id === 'modbus-tcp');
-    expect(summary?.configurationSchema).toMatchObject({
+    const listing = shippedRegistry.listings.find(({ id }) => id === 'modbus-tcp');
+    expect(listing?.configurationSchema).toMatchObject({
       type: 'object',
       required: ['host'],
       properties: { port: { type: 'integer', minimum: 1, maximum: 65_535, default: 502 } },
       additionalProperties: false,
     });
-    expect(summary?.addressSchema).toMatchObject({
-      required: ['table', 'address', 'type'],
-      properties: { type: { enum: ['bit', 'u16', 'i16', 'u32', 'i32', 'f32'] } },
-    });
-    expect(JSON.parse(JSON.stringify(summary))).toEqual(summary);
+    expect(listing?.addressSchema).toMatchObject({ required: expect.arrayContaining(['table', 'address']) });
+    expect(JSON.parse(JSON.stringify(listing))).toEqual(listing);
   });
 });
 
 describe('checks name the field', () => {
   it('of a connection', () => {
-    expect(checkConnection({ adapter: 'modbus-tcp', configuration: { host: 'rig' } })).toEqual([]);
-    const faults = checkConnection(
+    expect(
+      shippedRegistry.checkConnection({ adapter: 'modbus-tcp', configuration: { host: 'rig' } }),
+    ).toEqual([]);
+    const faults = shippedRegistry.checkConnection(
       { adapter: 'modbus-tcp', configuration: { host: ' ', port: 0, baud: 1 } },
       'connections[2]',
     );
@@ -72,16 +96,19 @@ describe('checks name the field', () => {
   });
 
   it('of an adapter that is not installed', () => {
-    expect(checkConnection({ adapter: 'telepathy', configuration: {} }, 'connections[0]')).toMatchObject([
-      { field: 'connections[0].adapter' },
-    ]);
+    const faults = shippedRegistry.checkConnection(
+      { adapter: 'telepathy', configuration: {} },
+      'connections[0]',
+    );
+    expect(faults).toMatchObject([{ field: 'connections[0].adapter' }]);
   });
 
   it('of an address', () => {
-    expect(checkAddress('modbus-tcp', { table: 'coil', address: 1, type: 'bit' })).toEqual([]);
-    expect(checkAddress('modbus-tcp', { table: 'coil', address: 1, type: 'u16' }, 'channels[1]')).toEqual([
-      { field: 'channels[1].address.type', message: 'A coil holds one bit: use type "bit".' },
-    ]);
-    expect(checkAddress('modbus-tcp', 'x')).toMatchObject([{ field: 'address' }]);
+    const coil = { table: 'coil', address: 1 };
+    expect(shippedRegistry.checkAddress('modbus-tcp', { ...coil, type: 'bit' })).toEqual([]);
+    expect(shippedRegistry.checkAddress('modbus-tcp', { ...coil, type: 'u16' }, 'channels[1]')).toMatchObject(
+      [{ field: 'channels[1].address.type' }],
+    );
+    expect(shippedRegistry.checkAddress('modbus-tcp', 'x')).toMatchObject([{ field: 'address' }]);
   });
 });

@@ -1,30 +1,11 @@
-import { readFileSync } from 'node:fs';
-import { DomainError, type ErrorRecord, type FieldFault } from '@cresthold/shared';
+import { DomainError, type FieldFault } from '@cresthold/shared';
+import { type AdapterListing, brokenListing, listingOf } from './adapter-listing.js';
 import type { Adapter } from './contract.js';
 import { fieldFaultsOf } from './parse-or-misconfigured.js';
-import { formSchemaOf, type JsonSchema, requireContract } from './plug-ins/check-adapter.js';
+import { requireContract } from './plug-ins/check-adapter.js';
 import { loadPlugIn, type LoadedPlugIn } from './plug-ins/load-plug-in.js';
+import { productVersion } from './product-version.js';
 import { shippedAdapters } from './shipped-adapters.js';
-
-/** An adapter as screens and scripts see it. */
-export interface AdapterListing {
-  /** Null where a broken plug-in does not tell. */
-  id: string | null;
-  title: string;
-  /** Of its package; null where that has none. */
-  version: string | null;
-  /** Semver range of the contract that it was written for; null where it does not tell. */
-  contract: string | null;
-  origin: 'shipped' | 'plug-in';
-  /** What the configuration calls the plug-in; null for a shipped adapter. */
-  reference: string | null;
-  state: 'ready' | 'broken';
-  /** Why it is broken; null where it is not. */
-  error: ErrorRecord | null;
-  /** JSON Schema of what may be given; null where it is broken. */
-  configurationSchema: JsonSchema | null;
-  addressSchema: JsonSchema | null;
-}
 
 /** The adapters of one process: those that ship, and those of the plug-ins that are in order. */
 export class AdapterRegistry {
@@ -43,7 +24,7 @@ export class AdapterRegistry {
       requireContract(adapter);
       if (byId.has(adapter.manifest.id)) throw duplicate(adapter.manifest.id);
       byId.set(adapter.manifest.id, adapter);
-      return listingOf(adapter, { version: productVersion(), origin: 'shipped', reference: null });
+      return listingOf(adapter, { version: productVersion, origin: 'shipped', reference: null });
     });
     for (const loaded of plugIns) listings.push(takePlugIn(byId, loaded));
     this.adapters = byId;
@@ -128,50 +109,6 @@ function takePlugIn(byId: Map<string, Adapter>, loaded: LoadedPlugIn): AdapterLi
   return listingOf(adapter, { version, origin: 'plug-in', reference });
 }
 
-function listingOf(
-  { manifest }: Adapter,
-  from: Pick<AdapterListing, 'version' | 'origin' | 'reference'>,
-): AdapterListing {
-  return {
-    id: manifest.id,
-    title: manifest.title,
-    contract: manifest.contract,
-    ...from,
-    state: 'ready',
-    error: null,
-    configurationSchema: formSchemaOf(manifest.configurationSchema),
-    addressSchema: formSchemaOf(manifest.addressSchema),
-  };
-}
-
-function brokenListing(
-  { reference, version, id, title, contract }: LoadedPlugIn,
-  error: DomainError | null,
-): AdapterListing {
-  return {
-    id,
-    title: title ?? reference,
-    contract,
-    version,
-    origin: 'plug-in',
-    reference,
-    state: 'broken',
-    error: error?.toRecord() ?? null,
-    configurationSchema: null,
-    addressSchema: null,
-  };
-}
-
 function duplicate(id: string): DomainError {
   return new DomainError('plug-in.duplicate', `Two adapters have the id "${id}": remove one, or rename it.`);
-}
-
-let versionRead: string | null = null;
-
-/** The shipped adapters have the version of the product. */
-function productVersion(): string {
-  if (versionRead !== null) return versionRead;
-  const file = new URL('../package.json', import.meta.url);
-  versionRead = (JSON.parse(readFileSync(file, 'utf8')) as { version: string }).version;
-  return versionRead;
 }

@@ -1,16 +1,18 @@
 import { resolve } from 'node:path';
+import { isPath } from '@cresthold/adapters';
 import { z } from 'zod';
 
 const port = z.coerce.number().int().min(0).max(65_535);
-const addresses = z
-  .string()
-  .transform((text) =>
-    text
-      .split(',')
-      .map((address) => address.trim())
-      .filter((address) => address !== ''),
-  )
-  .pipe(z.array(z.email()));
+
+/** The parts of a comma-separated text. */
+function listed(text: string): string[] {
+  return text
+    .split(',')
+    .map((part) => part.trim())
+    .filter((part) => part !== '');
+}
+
+const addresses = z.string().transform(listed).pipe(z.array(z.email()));
 
 /** What the environment may set; every name begins with CRESTHOLD_. */
 const environmentSchema = z.object({
@@ -23,6 +25,7 @@ const environmentSchema = z.object({
   CRESTHOLD_SMTP_URL: z.url({ protocol: /^smtps?$/ }).optional(),
   CRESTHOLD_MAIL_FROM: z.email().optional(),
   CRESTHOLD_MAIL_TO: addresses.default([]),
+  CRESTHOLD_PLUGINS: z.string().transform(listed).default([]),
 });
 
 /** The mail server and who hears of a trip. */
@@ -47,6 +50,8 @@ export interface Config {
   proxies: number;
   /** Null where no mail is to be sent. */
   mail: MailConfig | null;
+  /** Adapters from outside: absolute paths of folders or files, or names of installed packages. */
+  plugIns: string[];
 }
 
 /** All faults of the environment at once, one a line. */
@@ -78,6 +83,7 @@ export function parseConfig(environment: NodeJS.ProcessEnv, defaultConsoleFolder
     isHttps: env.CRESTHOLD_HTTPS === 'on',
     proxies: env.CRESTHOLD_PROXIES,
     mail: mailOf(env),
+    plugIns: env.CRESTHOLD_PLUGINS.map((plugIn) => (isPath(plugIn) ? resolve(plugIn) : plugIn)),
   };
 }
 

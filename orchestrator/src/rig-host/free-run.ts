@@ -2,7 +2,7 @@ import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { serialize } from 'node:v8';
-import { installedAdapters } from '@cresthold/adapters';
+import { shippedRegistry } from '@cresthold/adapters';
 import { createScanEngine, createSequencer, preflight, type ScanEngine } from '@cresthold/shared';
 import { z } from 'zod';
 import { BareLoop } from './bare-loop.js';
@@ -55,7 +55,7 @@ class WholeLoop {
     this.rig = rig;
     this.engine = createScanEngine(setting, { createSequencer, preflight });
     const ignore = () => undefined;
-    this.wire = new Wire(rig, installedAdapters, this.engine.readings, ignore, ignore, fail);
+    this.wire = new Wire(rig, shippedRegistry.adapters, this.engine.readings, ignore, ignore, fail);
     const sendDroppable = (message: unknown) => serialize(message).length > 0;
     const publisher = new Publisher(rig, this.engine.readings, { sendDroppable }, () => ({
       ...this.engine.status(),

@@ -9,7 +9,9 @@ if (process.send === undefined) {
   process.exit(64);
 }
 
-const host = new RigHost(process, (code) => process.exit(code));
+/** Arguments: the id of the rig, for whoever lists processes, then the plug-ins that the server was configured with. */
+const [, , , ...plugIns] = process.argv;
+const host = new RigHost(process, plugIns, (code) => process.exit(code));
 
 // What is printed may have nowhere to go once the server is gone: no reason to leave a rig.
 process.stdout.on('error', () => undefined);

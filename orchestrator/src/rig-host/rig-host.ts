@@ -1,5 +1,5 @@
 import { setTimeout as delay } from 'node:timers/promises';
-import { installedAdapters } from '@cresthold/adapters';
+import { loadRegistry, shippedRegistry } from '@cresthold/adapters';
 import { DomainError, type HostCommand } from '@cresthold/shared';
 import { Recorder } from './recorder.js';
 import { RigSession } from './rig-session.js';
@@ -25,10 +25,15 @@ export class RigHost {
   private ending: Promise<void> | null = null;
   private readonly link: ServerLink;
   private readonly recorder: Recorder;
+  private adapters = shippedRegistry.adapters;
 
-  /** @param exit ends the process; called once */
+  /**
+   * @param plugIns adapters from outside: absolute paths, or names of installed packages
+   * @param exit ends the process; called once
+   */
   constructor(
     channel: NodeJS.Process,
+    private readonly plugIns: readonly string[],
     private readonly exit: (code: number) => void,
   ) {
     this.recorder = new Recorder((message) => this.onRecorderFailed(message));
@@ -38,10 +43,20 @@ export class RigHost {
     });
   }
 
-  /** Says READY once the recorder can take a run. */
+  /** Says READY once the adapters are there and the recorder can take a run. */
   async announce(): Promise<void> {
+    await this.loadAdapters();
     await this.recorder.ready;
     this.link.send({ type: 'ready', pid: process.pid });
+  }
+
+  /** A broken plug-in is told; only a rig whose wires need it is the worse for it. */
+  private async loadAdapters(): Promise<void> {
+    const registry = await loadRegistry(this.plugIns);
+    this.adapters = registry.adapters;
+    for (const { state, reference, error } of registry.listings) {
+      if (state === 'broken') this.link.log('warn', `Plug-in ${reference} is broken: ${error?.message}`);
+    }
   }
 
   /** Brings the rig to rest in order and ends the process. */
@@ -72,7 +87,7 @@ export class RigHost {
   private async configure(command: Extract<HostCommand, { type: 'configure' }>): Promise<void> {
     if (this.ending !== null) throw new DomainError('host.unavailable', 'The rig host is ending.');
     if (this.session?.isFree === false) throw new DomainError('rig.busy');
-    const next = new RigSession(command.rig, command, installedAdapters, this.recorder, this.link, (error) =>
+    const next = new RigSession(command.rig, command, this.adapters, this.recorder, this.link, (error) =>
       this.onBug(error),
     );
     await this.session?.end();

@@ -1,6 +1,7 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import type { Logger } from '@nestjs/common';
 import { DomainError, type FromHost, type HostCommand, type RigStatus, type Trip } from '@cresthold/shared';
+import type { Config } from '../config/config.schema.js';
 import type { EnvelopeStore } from '../envelopes/envelope-store.js';
 import { firstValueFrom, Subject } from 'rxjs';
 import type { RunRecords } from '../recordings/run-records.service.js';
@@ -42,7 +43,7 @@ export class RigHost implements RigHostOwner {
 
   constructor(
     readonly rigId: string,
-    private readonly settings: RigHostSettings & { dataFolder: string },
+    private readonly settings: RigHostSettings & Pick<Config, 'dataFolder' | 'plugIns'>,
     private readonly parts: RigHostParts,
   ) {
     this.process = new RigHostProcess(this, settings.timing, settings.restartPolicy);
@@ -107,7 +108,7 @@ export class RigHost implements RigHostOwner {
     const reason = 'The server ended while the run was going on.';
     if (await this.interruptOpenRun(reason)) await this.latch('server-silent', reason);
     const { outputFile } = hostFiles(this.settings.dataFolder, this.rigId);
-    return { file: this.settings.program, args: [this.rigId], outputFile };
+    return { file: this.settings.program, args: [this.rigId, ...this.settings.plugIns], outputFile };
   }
 
   onForked(pid: number): void {

@@ -156,7 +156,7 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
     const { config, rigs, envelopes, records, trips, feed, logger } = this;
     const host = new RigHost(
       rigId,
-      { ...this.settings, dataFolder: config.dataFolder },
+      { ...this.settings, dataFolder: config.dataFolder, plugIns: config.plugIns },
       { rigs, envelopes, records, trips, feed, logger },
     );
     this.hosts.set(rigId, host);

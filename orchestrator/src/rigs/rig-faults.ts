@@ -1,30 +1,27 @@
-import { checkAddress, checkConnection } from '@cresthold/adapters';
+import type { AdapterRegistry } from '@cresthold/adapters';
 import { DerivedChannels, Readings, type FieldFault, type Rig } from '@cresthold/shared';
 import { faultsOf } from '../documents/prefix-faults.js';
 
 /** What is wrong with a rig beyond its schema: wiring that its adapters refuse, expressions that do not compile. */
-export function rigFaults(rig: Rig): FieldFault[] {
-  return [...connectionFaults(rig), ...addressFaults(rig), ...derivedFaults(rig)];
+export function rigFaults(rig: Rig, adapters: AdapterRegistry): FieldFault[] {
+  return [...connectionFaults(rig, adapters), ...addressFaults(rig, adapters), ...derivedFaults(rig)];
 }
 
-function connectionFaults(rig: Rig): FieldFault[] {
-  return rig.connections.flatMap((connection, index) => checkConnection(connection, `connections[${index}]`));
+function connectionFaults(rig: Rig, adapters: AdapterRegistry): FieldFault[] {
+  return rig.connections.flatMap((connection, index) =>
+    adapters.checkConnection(connection, `connections[${index}]`),
+  );
 }
 
-function addressFaults(rig: Rig): FieldFault[] {
+function addressFaults(rig: Rig, adapters: AdapterRegistry): FieldFault[] {
   const adapterOf = new Map(rig.connections.map((connection) => [connection.id, connection.adapter]));
   return rig.channels.flatMap((channel, index) => {
     if (channel.kind === 'derived') return [];
     const adapter = adapterOf.get(channel.connection);
     // A connection that is missing, or an adapter that is not installed, is a fault already.
-    if (adapter === undefined || checkConnection({ adapter, configuration: {} }).some(isUnknownAdapter))
-      return [];
-    return checkAddress(adapter, channel.address, `channels[${index}]`);
+    if (adapter === undefined || !adapters.adapters.has(adapter)) return [];
+    return adapters.checkAddress(adapter, channel.address, `channels[${index}]`);
   });
-}
-
-function isUnknownAdapter(fault: FieldFault): boolean {
-  return fault.field === 'adapter';
 }
 
 /** Judged by the code that evaluates them in the scan, so that what is taken here also runs there. */

@@ -1,4 +1,5 @@
 import { Module } from '@nestjs/common';
+import { AdaptersModule } from '../adapters/adapters.module.js';
 import { AuditModule } from '../audit/audit.module.js';
 import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
 import { RigStoreModule } from './rig-store.module.js';
@@ -6,7 +7,7 @@ import { RigsController } from './rigs.controller.js';
 import { RigsService } from './rigs.service.js';
 
 @Module({
-  imports: [AuditModule, EnvelopeStoreModule, RigStoreModule],
+  imports: [AdaptersModule, AuditModule, EnvelopeStoreModule, RigStoreModule],
   controllers: [RigsController],
   providers: [RigsService],
   exports: [RigsService],

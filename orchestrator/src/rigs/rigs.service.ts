@@ -1,4 +1,5 @@
 import { Injectable } from '@nestjs/common';
+import { AdapterRegistry } from '@cresthold/adapters';
 import { DomainError, type Rig } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
 import { insertRow, updateRow } from '../database/rows.js';
@@ -23,6 +24,7 @@ export class RigsService {
     private readonly envelopes: EnvelopeWithdrawal,
     private readonly queue: TransactionQueue,
     private readonly audit: AuditService,
+    private readonly adapters: AdapterRegistry,
   ) {}
 
   async list(query: PageQuery): Promise<Page<RigDocument>> {
@@ -47,7 +49,7 @@ export class RigsService {
    * @throws rig.exists
    */
   async create(rig: Rig, by: string): Promise<RigDocument> {
-    refuseFaults(rigFaults(rig));
+    refuseFaults(rigFaults(rig, this.adapters));
     const now = new Date().toISOString();
     const row = { id: rig.id, revision: 1, content: rig, createdAt: now, changedAt: now };
     await this.queue.transaction(async (manager) => {
@@ -75,7 +77,7 @@ export class RigsService {
       refuseFaults([{ field: 'id', message: `The id of a rig never changes: keep "${rigId}".` }]);
     }
     await this.store.get(rigId);
-    refuseFaults(rigFaults(rig));
+    refuseFaults(rigFaults(rig, this.adapters));
     const row = await this.queue.transaction(async (manager) => {
       const before = await this.store.get(rigId);
       requireRevision(before.revision, revision);

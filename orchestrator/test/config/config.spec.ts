@@ -20,6 +20,7 @@ describe('the configuration', () => {
       isHttps: false,
       proxies: 0,
       mail: null,
+      plugIns: [],
     });
   });
 

@@ -38,6 +38,7 @@ export async function createScriptedServer(
     isHttps: false,
     proxies: 0,
     mail: null,
+    plugIns: [],
   };
   const module = await Test.createTestingModule({ imports: [AppModule.register(config)] })
     .overrideProvider(RIG_HOST_SETTINGS)

@@ -99,5 +99,6 @@ function testConfig(): Config {
     isHttps: false,
     proxies: 0,
     mail: null,
+    plugIns: [],
   };
 }
