@@ -1,6 +1,7 @@
 import { Module, type DynamicModule } from '@nestjs/common';
 import { AdaptersModule } from './adapters/adapters.module.js';
 import { AuthModule } from './auth/auth.module.js';
+import { CalibrationsModule } from './calibrations/calibrations.module.js';
 import { ConfigModule } from './config/config.module.js';
 import type { Config } from './config/config.schema.js';
 import { DatabaseModule } from './database/database.module.js';
@@ -23,6 +24,7 @@ import { UsersModule } from './users/users.module.js';
 const documentModules = [
   AdaptersModule,
   AuthModule,
+  CalibrationsModule,
   EnvelopesModule,
   ExperimentsModule,
   ObjectivesModule,

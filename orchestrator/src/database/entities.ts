@@ -1,4 +1,6 @@
 import { AuditEntry } from '../audit/entities/audit-entry.entity.js';
+import { CalibrationCertificateEntity } from '../calibrations/entities/calibration-certificate.entity.js';
+import { CalibrationEntity } from '../calibrations/entities/calibration.entity.js';
 import { EnvelopeEntity } from '../envelopes/entities/envelope.entity.js';
 import { ExperimentVersionEntity } from '../experiments/entities/experiment-version.entity.js';
 import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
@@ -11,6 +13,8 @@ import { UserEntity } from '../users/entities/user.entity.js';
 /** Every table of the main database; a new entity is listed here and gets a migration. */
 export const entities = [
   AuditEntry,
+  CalibrationCertificateEntity,
+  CalibrationEntity,
   EnvelopeEntity,
   ExperimentEntity,
   ExperimentVersionEntity,

@@ -13,7 +13,7 @@ export class EnvelopeWithdrawal {
   ) {}
 
   /** Does nothing where no envelope is in force. */
-  async withdraw(rigId: string, by: string): Promise<void> {
+  async withdraw(rigId: string, by: string, reason = 'The wiring of the rig changed.'): Promise<void> {
     await this.queue.transaction(async (manager) => {
       const inForce = await manager.findOneBy(EnvelopeEntity, { rigId, status: 'in-force' });
       if (inForce === null) return;
@@ -23,7 +23,7 @@ export class EnvelopeWithdrawal {
         action: 'envelope.withdrawn',
         rigId,
         subject: inForce.id,
-        reason: 'The wiring of the rig changed.',
+        reason,
       });
     });
   }

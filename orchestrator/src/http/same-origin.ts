@@ -1,12 +1,15 @@
 import { toErrorRecord, DomainError } from '@cresthold/shared';
 import type { NextFunction, Request, Response } from 'express';
+import { certificateTypes } from '../calibrations/certificates.service.js';
 import { sendProblem } from '../problem-details/problem-details.filter.js';
 
+/** JSON, and the files that calibrations take: none of them can a plain HTML form send. */
+const bodyTypes = ['application/json', ...certificateTypes];
 const safeMethods = new Set(['GET', 'HEAD', 'OPTIONS']);
 
 /**
  * Refuses changes that a page of another origin asks for, beside the cookie's SameSite=Strict, and bodies
- * that are no JSON, since a plain HTML form cannot send JSON. Scripts send no Origin and are let through:
+ * of types that a plain HTML form can send. Scripts send no Origin and are let through:
  * they hold no cookie that somebody else could ride on.
  */
 export function sameOrigin(request: Request, response: Response, next: NextFunction): void {
@@ -14,7 +17,7 @@ export function sameOrigin(request: Request, response: Response, next: NextFunct
   if (!isFromHere(request.headers)) {
     return sendProblem(response, toErrorRecord(new DomainError('request.cross-origin')));
   }
-  if (hasBody(request) && request.is('application/json') === false && !isEmergencyStop(request)) {
+  if (hasBody(request) && request.is(bodyTypes) === false && !isEmergencyStop(request)) {
     return sendProblem(response, toErrorRecord(new DomainError('request.media-type')));
   }
   next();

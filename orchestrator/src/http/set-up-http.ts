@@ -1,4 +1,5 @@
 import type { NestExpressApplication } from '@nestjs/platform-express';
+import { certificateBytesMax, certificateTypes } from '../calibrations/certificates.service.js';
 import type { Config } from '../config/config.schema.js';
 import { serveOpenApi } from './open-api.js';
 import { refuseElsewhere, serveConsole } from './serve-console.js';
@@ -19,6 +20,7 @@ export function setUpHttp(app: NestExpressApplication, config: Config): void {
   app.use(securityHeaders(config.isHttps));
   app.use(sameOrigin);
   app.useBodyParser('json', { limit: bodyLimit });
+  app.useBodyParser('raw', { type: [...certificateTypes], limit: certificateBytesMax });
   app.setGlobalPrefix(apiPrefix);
   serveConsole(app, config.consoleFolder);
   serveOpenApi(app);

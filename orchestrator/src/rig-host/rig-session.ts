@@ -58,7 +58,12 @@ export class RigSession {
     const onOpened = () => this.learnGrids();
     this.wire = new Wire(rig, adapters, readings, onOpened, () => this.publisher.requestStatus(), onBug);
     this.publisher = new Publisher(rig, readings, link, () => this.status());
-    this.run = new RunRecording(recorder, rig, {
+    const traces = new TracePublisher(rig, readings, link);
+    const useRun = (run: Parameters<Publisher['useRun']>[0]) => {
+      this.publisher.useRun(run);
+      traces.useRun(run?.id ?? null);
+    };
+    this.run = new RunRecording(recorder, rig, calibrations ?? [], {
       send: (message) => link.send(message),
       onRunBegun: (run) => this.publisher.useRun(run),
       onRunOver: () => this.publisher.useRun(null),

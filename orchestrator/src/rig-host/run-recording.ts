@@ -1,5 +1,6 @@
 import {
   DomainError,
+  type CalibrationInForce,
   type EnvelopeInForce,
   type FromHost,
   type Rig,
@@ -55,6 +56,7 @@ export class RunRecording implements ScanSink {
   ) {}
 
   get isOpen(): boolean {
+    private readonly calibrations: readonly CalibrationInForce[],
     return this.runId !== null || this.isStarting;
   }
 
@@ -117,7 +119,7 @@ export class RunRecording implements ScanSink {
     this.k = 0;
     this.sequence = 0;
     this.step = '';
-    this.recorder.begin(manifestOf(order, this.rig, envelope, columns), this.rig.periodMs / 1000);
+    this.recorder.begin(this.manifestOf(order, envelope, columns), this.rig.periodMs / 1000);
     this.owner.onRunBegun({ id: order.runId, columns });
   }
 
@@ -163,21 +165,18 @@ export class RunRecording implements ScanSink {
   }
 }
 
-function manifestOf(
-  order: RunOrder,
-  rig: Rig,
-  envelope: EnvelopeInForce,
-  columns: readonly RunColumn[],
-): RunManifest {
-  return {
-    schema_version: runFileSchemaVersion,
-    run: { id: order.runId, startedBy: order.by, startedAt: new Date().toISOString() },
-    experiment: order.experiment,
-    objective: order.objective,
-    rig,
-    envelope,
-    columns: [...columns],
-    software: softwareVersions(),
-    extra: order.manifest,
-  };
+  private manifestOf(order: RunOrder, envelope: EnvelopeInForce, columns: readonly RunColumn[]): RunManifest {
+    return {
+      schema_version: runFileSchemaVersion,
+      run: { id: order.runId, startedBy: order.by, startedAt: new Date().toISOString() },
+      experiment: order.experiment,
+      objective: order.objective,
+      rig: this.rig,
+      envelope,
+      calibrations: [...this.calibrations],
+      columns: [...columns],
+      software: softwareVersions(),
+      extra: order.manifest,
+    };
+  }
 }

@@ -1,6 +1,7 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import type { Logger } from '@nestjs/common';
 import { DomainError, type FromHost, type HostCommand, type RigStatus, type Trip } from '@cresthold/shared';
+import type { CalibrationStore } from '../calibrations/calibration-store.js';
 import type { Config } from '../config/config.schema.js';
 import type { EnvelopeStore } from '../envelopes/envelope-store.js';
 import { firstValueFrom, Subject } from 'rxjs';
@@ -18,6 +19,7 @@ import type { RigHostSettings } from './rig-host-settings.js';
 export interface RigHostParts {
   rigs: RigStore;
   envelopes: EnvelopeStore;
+  calibrations: CalibrationStore;
   trips: LatchedTrips;
   records: RunRecords;
   feed: HostFeed;
@@ -116,11 +118,18 @@ export class RigHost implements RigHostOwner {
   }
 
   async configuration(): Promise<HostConfiguration> {
-    const { rigs, envelopes } = this.parts;
+    const { rigs, envelopes, calibrations } = this.parts;
     const { content: rig } = await rigs.get(this.rigId);
     const { trip, lockout } = await rigs.state(this.rigId);
     const envelope = await envelopes.inForce(this.rigId);
-    return { type: 'configure', rig, envelope, trip, isLockedOut: lockout !== null };
+    return {
+      type: 'configure',
+      rig,
+      envelope,
+      trip,
+      isLockedOut: lockout !== null,
+      calibrations: await calibrations.inForce(this.rigId),
+    };
   }
 
   onMessage(message: FromHost): void {

@@ -1,5 +1,6 @@
 import { Global, Module } from '@nestjs/common';
 import { AuditModule } from '../audit/audit.module.js';
+import { CalibrationStoreModule } from '../calibrations/calibration-store.module.js';
 import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
 import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsPort } from '../rigs/rig-hosts.port.js';
@@ -14,7 +15,7 @@ import { RigHostsService } from './rig-hosts.service.js';
 /** Supervises one rig host per rig; the only part of the server that talks to rigs. */
 @Global()
 @Module({
-  imports: [AuditModule, EnvelopeStoreModule, RecordingsModule, RigStoreModule],
+  imports: [AuditModule, CalibrationStoreModule, EnvelopeStoreModule, RecordingsModule, RigStoreModule],
   controllers: [RigCommandsController],
   providers: [
     HostFeed,

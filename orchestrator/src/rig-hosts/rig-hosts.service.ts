@@ -8,6 +8,7 @@ import {
 import { DomainError, type HostCommand, type RigStatus, type Trip } from '@cresthold/shared';
 import { CONFIG } from '../config/config.module.js';
 import type { Config } from '../config/config.schema.js';
+import { CalibrationStore } from '../calibrations/calibration-store.js';
 import { EnvelopeStore } from '../envelopes/envelope-store.js';
 import { RunRecords } from '../recordings/run-records.service.js';
 import type { RigHostsPort } from '../rigs/rig-hosts.port.js';
@@ -33,6 +34,7 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
     @Inject(RIG_HOST_SETTINGS) private readonly settings: RigHostSettings,
     private readonly rigs: RigStore,
     private readonly envelopes: EnvelopeStore,
+    private readonly calibrations: CalibrationStore,
     private readonly records: RunRecords,
     private readonly trips: LatchedTrips,
     private readonly feed: HostFeed,
@@ -153,11 +155,11 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
   }
 
   private add(rigId: string): RigHost {
-    const { config, rigs, envelopes, records, trips, feed, logger } = this;
+    const { config, rigs, envelopes, calibrations, records, trips, feed, logger } = this;
     const host = new RigHost(
       rigId,
       { ...this.settings, dataFolder: config.dataFolder, plugIns: config.plugIns },
-      { rigs, envelopes, records, trips, feed, logger },
+      { rigs, envelopes, calibrations, records, trips, feed, logger },
     );
     this.hosts.set(rigId, host);
     return host;

@@ -2,6 +2,7 @@ import { Injectable } from '@nestjs/common';
 import { AdapterRegistry } from '@cresthold/adapters';
 import { DomainError, type Rig } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
+import { UnfitCalibrations } from '../calibrations/unfit-calibrations.js';
 import { insertRow, updateRow } from '../database/rows.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { requireRevision } from '../documents/etag.js';
@@ -22,6 +23,7 @@ export class RigsService {
     private readonly store: RigStore,
     private readonly hosts: RigHostsPort,
     private readonly envelopes: EnvelopeWithdrawal,
+    private readonly calibrations: UnfitCalibrations,
     private readonly queue: TransactionQueue,
     private readonly audit: AuditService,
     private readonly adapters: AdapterRegistry,
@@ -91,6 +93,7 @@ export class RigsService {
         reason: `revision ${revision + 1}`,
       });
       if (changesMeaning(before.content, rig)) await this.envelopes.withdraw(rigId, by);
+      await this.calibrations.withdraw(before.content, rig, by);
       return { ...before, ...changed };
     });
     await this.hosts.reconfigure(rigId);

@@ -9,6 +9,8 @@ import {
   type PreflightFault,
 } from '@cresthold/shared';
 import { DataSource } from 'typeorm';
+import { CalibrationStore } from '../calibrations/calibration-store.js';
+import { dueStateOf } from '../calibrations/due-state.js';
 import { EnvelopeStore } from '../envelopes/envelope-store.js';
 import { ExperimentVersionEntity } from '../experiments/entities/experiment-version.entity.js';
 import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
@@ -32,6 +34,7 @@ export class RunOrders {
     private readonly dataSource: DataSource,
     private readonly rigs: RigStore,
     private readonly envelopes: EnvelopeStore,
+    private readonly calibrations: CalibrationStore,
   ) {}
 
   /** @throws experiment.not-found, objective.not-found, envelope.none-in-force, experiment.preflight-failed */
@@ -47,7 +50,27 @@ export class RunOrders {
     if (errors.length > 0) {
       throw new DomainError('experiment.preflight-failed', undefined, errors.map(toFieldFault));
     }
-    return { rigId: rig.id, experiment, objective, envelope, warnings: faults };
+    return {
+      rigId: rig.id,
+      experiment,
+      objective,
+      envelope,
+      warnings: [...faults, ...(await this.overdue(rig.id))],
+    };
+  }
+
+  /** A run may start on overdue calibrations; its record says so. */
+  private async overdue(rigId: string): Promise<PreflightFault[]> {
+    const calibrations = await this.calibrations.inForce(rigId);
+    return calibrations
+      .filter(({ dueOn }) => dueStateOf(dueOn, Date.now()) === 'overdue')
+      .map(({ channel, dueOn }) => ({
+        severity: 'warning',
+        code: 'preflight.calibration-overdue',
+        step: null,
+        field: `calibrations.${channel}`,
+        message: `The calibration of "${channel}" was due on ${dueOn}: have it calibrated.`,
+      }));
   }
 
   private async experiment(experimentId: string, wanted: number | undefined) {

@@ -1,5 +1,6 @@
 import { Module } from '@nestjs/common';
 import { AuditModule } from '../audit/audit.module.js';
+import { CalibrationStoreModule } from '../calibrations/calibration-store.module.js';
 import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
 import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsModule } from '../rig-hosts/rig-hosts.module.js';
@@ -11,8 +12,15 @@ import { RunsController } from './runs.controller.js';
 import { RunsService } from './runs.service.js';
 
 @Module({
-  imports: [AuditModule, EnvelopeStoreModule, RecordingsModule, RigHostsModule, RigStoreModule],
-  controllers: [RunsController, RunDataController],
-  providers: [RunOrders, RunStarter, RunsService],
+  imports: [
+    AuditModule,
+    CalibrationStoreModule,
+    EnvelopeStoreModule,
+    RecordingsModule,
+    RigHostsModule,
+    RigStoreModule,
+  ],
+  controllers: [RunsController, RunDataController, RunTracesController],
+  providers: [RunOrders, RunStarter, RunsService, RunTraces],
 })
 export class RunsModule {}

@@ -21,6 +21,7 @@ export function testManifest(): RunManifest {
     objective: null,
     rig,
     envelope: testEnvelope(),
+    calibrations: [],
     columns: runColumns(rig, '', []),
     software: { cresthold: '0.0.0' },
     extra: { warnings: ['none'] },

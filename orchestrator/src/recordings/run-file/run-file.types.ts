@@ -1,4 +1,5 @@
 import {
+  calibrationInForceSchema,
   envelopeInForceSchema,
   objectiveContentSchema,
   rigSchema,
@@ -34,6 +35,8 @@ export const runManifestSchema = z.object({
   columns: z.array(runColumnSchema),
   software: z.record(z.string(), z.string()),
   /** What the server adds: warnings of preflight and the like. */
+  /** Of sensors, as they converted in this run; missing from files of earlier versions. */
+  calibrations: z.array(calibrationInForceSchema).default([]),
   extra: z.record(z.string(), z.unknown()),
 });
 export type RunManifest = z.infer<typeof runManifestSchema>;
