@@ -63,7 +63,7 @@ class WholeLoop {
       channelFaults: [],
       scan: { count: 0, overruns: 0, latenessP99Ms: 0, wireMeanMs: 0 },
     }));
-    this.recording = new RunRecording(this.recorder, rig, {
+    this.recording = new RunRecording(this.recorder, rig, [], {
       send: (message) => void serialize(message),
       onRunBegun: (run) => publisher.useRun(run),
       onRunOver: () => fail('The run ended in mid-benchmark.'),

@@ -24,7 +24,7 @@ const recorder = {
 
 async function begun() {
   const sent: FromHost[] = [];
-  const recording = new RunRecording(recorder, testRig(1), {
+  const recording = new RunRecording(recorder, testRig(1), [], {
     send: (message) => sent.push(message),
     onRunBegun: () => undefined,
     onRunOver: () => undefined,

@@ -93,6 +93,13 @@ export const errorCatalogue = {
     'The author of an envelope cannot approve it: somebody else with the role must.',
   ),
   'envelope.wrong-status': entry('not-allowed-now', 'The envelope is not at the stage that this needs.'),
+  'calibration.not-found': entry('not-found', 'No such calibration.'),
+  'calibration.not-in-force': entry('not-allowed-now', 'The calibration is not in force.'),
+  'calibration.no-certificate': entry('not-found', 'No certificate was uploaded for this calibration.'),
+  'calibration.has-certificate': entry(
+    'conflict',
+    'The calibration has its certificate already: it is part of the record and stays.',
+  ),
   'channel.not-found': entry('invalid', 'The rig has no such channel.'),
   'channel.no-limit': entry(
     'not-allowed-now',
