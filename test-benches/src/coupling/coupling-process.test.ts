@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { readBenchLog, until } from '../kit/bench-process.fixture.js';
 import { forkBench, type ForkedBench } from '../kit/forked-bench.fixture.js';
-import { mbpollRead, mbpollWrite, type MbpollRequest } from '../kit/mbpoll.fixture.js';
+import { mbpollRead, mbpollWrite, type MbpollRequest } from '../kit/mbpoll-client.fixture.js';
 
 const folder = mkdtempSync(join(tmpdir(), 'coupling-bench-'));
 const logFile = join(folder, 'bench.log');

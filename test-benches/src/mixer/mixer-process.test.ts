@@ -5,7 +5,7 @@ import modbus from 'modbus-serial';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { beatHeart, readBenchLog, until } from '../kit/bench-process.fixture.js';
 import { forkBench, type ForkedBench } from '../kit/forked-bench.fixture.js';
-import { mbpollRead, mbpollWrite, type MbpollRequest } from '../kit/mbpoll.fixture.js';
+import { mbpollRead, mbpollWrite, type MbpollRequest } from '../kit/mbpoll-client.fixture.js';
 import { settledProduct } from './mixer-physics.js';
 import { restPositionPct } from './mixer-model.js';
 
