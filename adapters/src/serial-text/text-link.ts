@@ -287,7 +287,7 @@ export class TextLink {
       const first = [...frame.bytes.subarray(0, 16)]
         .map((byte) => byte.toString(16).padStart(2, '0'))
         .join(' ');
-      this.onTraffic?.('received', `#… ${frame.bytes.length} bytes: ${first} …`);
+      this.onTraffic?.('received', `#... ${frame.bytes.length} bytes: ${first} ...`);
     }
   }
 
