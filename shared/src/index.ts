@@ -120,8 +120,17 @@ export * from './signals/trace-shape.js';
 export * from './signals/trace-statistics.js';
 export * from './signals/trace.types.js';
 export * from './signals/windows.js';
-export * from './sizing/predict-seeking.js';
+export * from './sizing/describe-plant.js';
+export * from './sizing/law-size.types.js';
+export { predictSeeking, type PredictionInput, type SeekingPrediction } from './sizing/predict-seeking.js';
+export * from './sizing/size-law.js';
 export * from './sizing/size-seeking.js';
+export {
+  sizingDemandsSchema,
+  sizingPlantSchema,
+  type SizingDemands,
+  type SizingPlant,
+} from './sizing/sizing-plant.schema.js';
 export * from './units/channel-units.js';
 export * from './units/parse-unit.js';
 export * from './units/unit-table.js';

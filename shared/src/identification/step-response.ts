@@ -4,6 +4,7 @@ import type { Estimate } from '../signals/estimate.js';
 import { fitNonlinear, type NonlinearModel } from './fit-nonlinear.js';
 import type { LeastSquaresFit } from './least-squares.js';
 import { checkStepRecord, type StepRecord, type StepResponse } from './step-record.js';
+import { stepBetweenSamples } from './step-at-once.js';
 import { twoPointStepResponse } from './two-point-step-response.js';
 
 export interface StepResponseFit extends StepResponse<Estimate> {
@@ -24,6 +25,9 @@ type Parameters = [start: number, change: number, timeConstantS: number, deadTim
  * coarse grid as well, because noise can lead the two points astray; the better end counts. The record should
  * begin before the step, and last four time constants or more after it.
  *
+ * A plant that answers between two samples leaves time constant and dead time undetermined: they come out as 0 and
+ * as the whole samples that it waited, with the standard error of anything within a sample, dt/√12.
+ *
  * Standard errors are those of the linearised model: right while the noise is below about a sixth of the change
  * (with some hundred samples), too small above.
  *
@@ -36,7 +40,7 @@ export function fitStepResponse(record: StepRecord): StepResponseFit {
     descend(model, record, start),
   );
   const [first] = fits;
-  if (!first) throw new DomainError('analysis.no-fit');
+  if (!first) return atOnce(record);
   const fit = fits.reduce((a, b) => (b.sumOfSquares < a.sumOfSquares ? b : a), first);
   const estimate = (i: number, scale = 1): Estimate => ({
     value: fit.parameters[i]! / scale,
@@ -47,6 +51,24 @@ export function fitStepResponse(record: StepRecord): StepResponseFit {
     gain: estimate(1, record.stepSize),
     timeConstantS: estimate(2),
     deadTimeS: estimate(3),
+    noise: fit.sigma,
+    residualAutocorrelation: autocorrelation(fit.residuals, 1)[1]!,
+  };
+}
+
+function atOnce(record: StepRecord): StepResponseFit {
+  const { timesS, stepAtS, stepSize } = record;
+  const { fit, firstSample } = stepBetweenSamples(record);
+  const withinSample = (timesS[firstSample]! - timesS[firstSample - 1]!) / Math.sqrt(12);
+  const level = (i: number, scale: number): Estimate => ({
+    value: fit.parameters[i]! / scale,
+    standardError: fit.standardErrors[i]! / Math.abs(scale),
+  });
+  return {
+    start: level(0, 1),
+    gain: level(1, stepSize),
+    timeConstantS: { value: 0, standardError: withinSample },
+    deadTimeS: { value: Math.max(0, timesS[firstSample - 1]! - stepAtS), standardError: withinSample },
     noise: fit.sigma,
     residualAutocorrelation: autocorrelation(fit.residuals, 1)[1]!,
   };

@@ -28,7 +28,7 @@ export interface SeekingPrediction {
 }
 
 /** The distance that counts as converged, of that at the start. */
-const convergedShare = 0.1;
+export const convergedShare = 0.1;
 
 /**
  * Predicts the gradient law on a quadratic.
@@ -61,7 +61,13 @@ export function predictSeeking(input: PredictionInput): SeekingPrediction {
   };
 }
 
-function convergenceTime(loop: AveragedLoop, rate: number): number {
+/**
+ * Time until a tenth of the distance is left: the filters settle for a period, then the averaged loop of second
+ * order, whose low-pass holds a share of the slope by then.
+ *
+ * @param rate with which the error would decay without low-pass, 1/s
+ */
+export function convergenceTime(loop: AveragedLoop, rate: number): number {
   const settleS = (2 * Math.PI) / loop.omegaRadPerS;
   const slow = slowRate(loop);
   const fast = loop.lowPassRadPerS - slow;
