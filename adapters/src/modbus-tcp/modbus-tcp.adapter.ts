@@ -1,19 +1,19 @@
 import type { Socket } from 'node:net';
 import { performance } from 'node:perf_hooks';
 import { DomainError } from '@cresthold/shared';
-import modbus from 'modbus-serial';
 import type { Adapter } from '../contract.js';
-import { type ModbusAddress, modbusAddressSchema } from '../modbus/modbus-address.schema.js';
+import { type ModbusAddress, modbusTcpAddressSchema } from '../modbus/modbus-address.schema.js';
 import { ModbusLink } from '../modbus/modbus-link.js';
+import { parseAddresses } from '../modbus/parse-addresses.js';
+import { ModbusReadPlan } from '../modbus/modbus-plan.js';
 import { ModbusSession } from '../modbus/modbus-session.js';
 import { parseOrMisconfigured } from '../parse-or-misconfigured.js';
+import { MbapPort } from './mbap-port.js';
 import {
   type ModbusTcpConfiguration,
   modbusTcpConfigurationSchema,
 } from './modbus-tcp-configuration.schema.js';
 import { connectionFault, destroySocket, openSocket } from './open-socket.js';
-
-const ModbusClientClass = modbus.default;
 
 /**
  * Modbus TCP. A peer that closes or resets is lost at once; one that falls silent (a cut cable sends
@@ -23,37 +23,46 @@ export const modbusTcpAdapter: Adapter<ModbusTcpConfiguration, ModbusAddress> = 
   manifest: {
     id: 'modbus-tcp',
     title: 'Modbus TCP',
-    contract: '^1.0.0',
+    contract: '^1.1.0',
     configurationSchema: modbusTcpConfigurationSchema,
-    addressSchema: modbusAddressSchema,
+    addressSchema: modbusTcpAddressSchema,
   },
 
   async open(configuration, signal) {
     const parsed = parseOrMisconfigured(modbusTcpConfigurationSchema, configuration);
     const socket = await openSocket(parsed, signal);
-    const link = await linkOver(socket, parsed);
-    const { timeoutMs, gap } = parsed;
-    return new ModbusSession(link, { timeoutMs, gap, nowMs: () => performance.now() });
+    const { timeoutMs, gap, readBack, units, mostBackOffMs } = parsed;
+    return new ModbusSession(linkOver(socket, parsed), {
+      addressSchema: modbusTcpAddressSchema,
+      timeoutMs,
+      unitTimeoutMs: parsed.unitTimeoutMs ?? timeoutMs,
+      units,
+      mostBackOffMs,
+      gap,
+      readBack,
+      nowMs: () => performance.now(),
+    });
+  },
+
+  estimate(configuration, addresses) {
+    const { gap } = parseOrMisconfigured(modbusTcpConfigurationSchema, configuration);
+    const parsed = parseAddresses(modbusTcpAddressSchema, addresses);
+    return { requests: new ModbusReadPlan(parsed, gap).requests, wireS: null };
   },
 };
 
-/** The socket is ours, not the library's: it tells of resets, which the library keeps to itself. */
-async function linkOver(socket: Socket, configuration: ModbusTcpConfiguration): Promise<ModbusLink> {
-  const client = new ModbusClientClass();
+/** The socket tells of resets, which no answer does. */
+function linkOver(socket: Socket, configuration: ModbusTcpConfiguration): ModbusLink {
   const target = { host: configuration.host, port: configuration.port };
-  await client.linkTCP(socket, { port: configuration.port });
-  const link = new ModbusLink(client, {
-    label: `${target.host}:${target.port}`,
+  const label = `${target.host}:${target.port}`;
+  const link = new ModbusLink(new MbapPort(socket, label), {
+    label,
     silencesUntilLost: configuration.silencesUntilLost,
-    release: async () => {
-      // Also stops the library's timer of the request under way.
-      client.destroy(() => undefined);
-      await destroySocket(socket);
-    },
+    release: () => destroySocket(socket),
   });
   socket.on('error', (error) => void link.end(connectionFault(target, error)));
   socket.on('close', () => {
-    const message = `${target.host}:${target.port}: the device closed the connection.`;
+    const message = `${label}: the device closed the connection.`;
     void link.end(new DomainError('adapter.disconnected', message));
   });
   return link;

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { decodeValue, encodeRaw, factsOfCoding, type ModbusCoding, wordsOfRaw } from './codec.js';
+import { decodeValue, encodeRaw, factsOfCoding, type ModbusCoding, wireMaskOf, wordsOfRaw } from './codec.js';
 import { modbusTypes } from './modbus-address.schema.js';
 
 const plain: ModbusCoding = { type: 'u16', wordOrder: 'big', byteOrder: 'big', scale: 1, offset: 0 };
@@ -73,6 +73,74 @@ describe('words and floats', () => {
   });
 });
 
+describe('values of 64 bits', () => {
+  const orders = [
+    ['0123 4567 89AB CDEF', 'big', 'big'],
+    ['CDEF 89AB 4567 0123', 'little', 'big'],
+    ['2301 6745 AB89 EFCD', 'big', 'little'],
+    ['EFCD AB89 6745 2301', 'little', 'little'],
+  ] as const;
+
+  it.each(orders)('%s with %s words and %s bytes is 0123456789ABCDEF', (hex, wordOrder, byteOrder) => {
+    const of = coding({ type: 'u64', wordOrder, byteOrder });
+    expect(decodeHex(hex, of)).toBe(Number(0x0123456789abcdefn));
+  });
+
+  // IEEE 754 binary64 encodings: 1.5 is 3FF8…; π as every table has it.
+  it.each([
+    ['3FF8 0000 0000 0000', 1.5],
+    ['4009 21FB 5444 2D18', Math.PI],
+    ['C05D A800 0000 0000', -118.625],
+  ] as const)('%s as f64 is %d', (hex, value) => {
+    expect(decodeHex(hex, { type: 'f64' })).toBe(value);
+    expect(bytesOf(wordsOfRaw(value, coding({ type: 'f64' })))).toEqual(
+      Buffer.from(hex.replaceAll(' ', ''), 'hex'),
+    );
+  });
+
+  it('reads what the platform reads, and writes what it writes', () => {
+    const bytes = Buffer.alloc(8);
+    fc.assert(
+      fc.property(fc.bigInt(-(2n ** 63n), 2n ** 63n - 1n), fc.maxSafeInteger(), (big, small) => {
+        bytes.writeBigInt64BE(big);
+        expect(decodeValue(bytes, 0, coding({ type: 'i64' }))).toBe(Number(big));
+        expect(decodeValue(bytes, 0, coding({ type: 'u64' }))).toBe(Number(bytes.readBigUInt64BE()));
+        bytes.writeBigInt64BE(BigInt(small));
+        expect(bytesOf(wordsOfRaw(small, coding({ type: 'i64' })))).toEqual(bytes);
+      }),
+    );
+  });
+
+  it('are written only as far as a number is exact', () => {
+    expect(encodeRaw(2 ** 53, coding({ type: 'u64' }))).toHaveProperty('fault');
+    expect(encodeRaw(2 ** 53 - 1, coding({ type: 'u64' }))).toBe(2 ** 53 - 1);
+  });
+});
+
+describe('bit fields', () => {
+  const field = (from: number, count: number, byteOrder: 'big' | 'little' = 'big'): ModbusCoding =>
+    coding({ bits: { from, count }, byteOrder });
+
+  it('are read from their place', () => {
+    expect(decodeHex('0B40', field(8, 4))).toBe(11);
+    expect(decodeHex('0B40', field(6, 1))).toBe(1);
+    expect(decodeHex('400B', field(8, 4, 'little'))).toBe(11);
+    expect(decodeHex('FFFF', field(0, 16))).toBe(65_535);
+  });
+
+  it('are written to their place, with a mask of their own bits', () => {
+    expect(wordsOfRaw(11, field(8, 4))).toEqual([0x0b00]);
+    expect(wireMaskOf(field(8, 4))).toBe(0x0f00);
+    expect(wordsOfRaw(11, field(8, 4, 'little'))).toEqual([0x000b]);
+    expect(wireMaskOf(field(8, 4, 'little'))).toBe(0x000f);
+  });
+
+  it('carry what fits into their bits', () => {
+    expect(encodeRaw(16, field(8, 4))).toHaveProperty('fault');
+    expect(factsOfCoding(field(8, 4))).toMatchObject({ min: 0, max: 15, quantum: 1 });
+  });
+});
+
 describe('encoding', () => {
   it('rounds to the nearest raw value, also where the division is not exact', () => {
     expect(encodeRaw(0.3, coding({ scale: 0.1 }))).toBe(3);
@@ -115,7 +183,7 @@ describe('every coding', () => {
     fc.assert(
       fc.property(anyCoding, fc.double({ min: 0, max: 1, noNaN: true }), (of, place) => {
         const { min, max, quantum } = factsOfCoding(of);
-        const bound = of.type === 'f32' ? 1e6 : Infinity;
+        const bound = of.type === 'f32' || of.type === 'f64' ? 1e6 : Infinity;
         const low = Math.max(min, -bound);
         const value = low + place * (Math.min(max, bound) - low);
         const error = Math.abs(roundTrip(value, of) - value);
@@ -141,7 +209,7 @@ describe('every coding', () => {
   it('brings raw words back unchanged', () => {
     fc.assert(
       fc.property(anyCoding, fc.nat(0xffff), fc.nat(0xffff), (of, first, second) => {
-        fc.pre(of.type !== 'bit' && of.type !== 'f32');
+        fc.pre(['u16', 'i16', 'u32', 'i32'].includes(of.type));
         const whole = { ...of, scale: 1, offset: 0 };
         const width = of.type === 'u16' || of.type === 'i16' ? 1 : 2;
         const words = [first, second].slice(0, width);

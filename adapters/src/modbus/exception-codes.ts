@@ -25,3 +25,8 @@ export function exceptionText(code: number): string {
 export function isAboutContent(code: number): boolean {
   return code >= 1 && code <= 3;
 }
+
+/** Codes that say "not now": the same request may succeed a moment later. */
+export function isBusy(code: number): boolean {
+  return code === 5 || code === 6;
+}

@@ -1,36 +1,30 @@
-import type modbus from 'modbus-serial';
 import { DomainError } from '@cresthold/shared';
 import { exceptionText } from './exception-codes.js';
 import { isBitTable, type ModbusTable, placeText } from './modbus-address.schema.js';
 
-export type ModbusClient = InstanceType<typeof modbus.default>;
-
 /** One request as the application protocol has it. */
 export type ModbusRequest =
+  /** Function codes 01 to 04, by table. */
   | { kind: 'read'; unit: number; table: ModbusTable; address: number; count: number }
+  /** Function code 06 for one register, 16 for more. */
   | { kind: 'write-registers'; unit: number; address: number; words: number[] }
-  | { kind: 'write-coil'; unit: number; address: number; isOn: boolean };
+  /** Function code 23: writes, then reads the same registers back. */
+  | { kind: 'write-and-read-back'; unit: number; address: number; words: number[] }
+  /** Function code 22: register = (register AND andMask) OR (orMask AND NOT andMask). */
+  | { kind: 'mask-write'; unit: number; address: number; andMask: number; orMask: number }
+  /** Function code 05 for one coil, 15 for more. */
+  | { kind: 'write-coils'; unit: number; address: number; states: boolean[] };
 
 /** The device answered with an exception. */
 export class ModbusRefusal extends DomainError {
   constructor(
     place: string,
     readonly exceptionCode: number,
+    advice = '',
   ) {
-    super('adapter.refused', `${place}: the device answered ${exceptionText(exceptionCode)}.`);
+    super('adapter.refused', `${place}: the device answered ${exceptionText(exceptionCode)}.${advice}`);
   }
 }
-
-/** What any answer of the library can hold. */
-interface Answer {
-  buffer?: Buffer;
-  address?: number;
-  length?: number;
-  value?: number;
-  state?: boolean;
-}
-
-export type AnswerCallback = (error: unknown, answer: Answer | undefined) => void;
 
 /** Where a request goes, in words. */
 export function placeOf(request: ModbusRequest): string {
@@ -38,68 +32,48 @@ export function placeOf(request: ModbusRequest): string {
     case 'read':
       return placeText(request.unit, request.table, request.address, request.count);
     case 'write-registers':
+    case 'write-and-read-back':
       return placeText(request.unit, 'holding-register', request.address, request.words.length);
-    case 'write-coil':
-      return placeText(request.unit, 'coil', request.address, 1);
+    case 'mask-write':
+      return placeText(request.unit, 'holding-register', request.address, 1);
+    case 'write-coils':
+      return placeText(request.unit, 'coil', request.address, request.states.length);
   }
 }
 
-/** Puts the request on the wire: FC01 to FC04 by table, FC05, FC06 for one register, FC16 for more. */
-export function sendRequest(client: ModbusClient, request: ModbusRequest, done: AnswerCallback): void {
+/** Bytes of unit number and PDU of a request and of its good answer. */
+export interface ExchangeBytes {
+  request: number;
+  answer: number;
+}
+
+/**
+ * What a request and its answer take on the wire, without checksum or header.
+ *
+ * @source MODBUS Application Protocol V1.1b3, 6.1 to 6.6, 6.11, 6.12, 6.16, 6.17
+ */
+export function bytesOfExchange(request: ModbusRequest): ExchangeBytes {
   switch (request.kind) {
     case 'read':
-      sendRead(client, request, done);
-      return;
+      return { request: 6, answer: 3 + payloadBytes(request.table, request.count) };
     case 'write-registers': {
-      const { unit, address, words } = request;
-      const [only] = words;
-      if (words.length === 1 && only !== undefined) client.writeFC6(unit, address, only, done);
-      else client.writeFC16(unit, address, words, done);
-      return;
+      const count = request.words.length;
+      return { request: count === 1 ? 6 : 7 + 2 * count, answer: 6 };
     }
-    case 'write-coil':
-      client.writeFC5(request.unit, request.address, request.isOn, done);
+    case 'write-and-read-back': {
+      const count = request.words.length;
+      return { request: 11 + 2 * count, answer: 3 + 2 * count };
+    }
+    case 'mask-write':
+      return { request: 8, answer: 8 };
+    case 'write-coils': {
+      const count = request.states.length;
+      return { request: count === 1 ? 6 : 7 + Math.ceil(count / 8), answer: 6 };
+    }
   }
 }
 
-function sendRead(
-  client: ModbusClient,
-  { unit, table, address, count }: Extract<ModbusRequest, { kind: 'read' }>,
-  done: AnswerCallback,
-): void {
-  switch (table) {
-    case 'coil':
-      client.writeFC1(unit, address, count, done);
-      return;
-    case 'discrete-input':
-      client.writeFC2(unit, address, count, done);
-      return;
-    case 'holding-register':
-      client.writeFC3(unit, address, count, done);
-      return;
-    case 'input-register':
-      client.writeFC4(unit, address, count, done);
-  }
-}
-
-const nothing = Buffer.alloc(0);
-
-/** The payload of a good answer (empty for writes), or null where it does not fit the request. */
-export function payloadOf(request: ModbusRequest, answer: Answer | undefined): Buffer | null {
-  if (!answer) return null;
-  switch (request.kind) {
-    case 'read': {
-      const bytes = isBitTable(request.table) ? Math.ceil(request.count / 8) : request.count * 2;
-      return answer.buffer?.length === bytes ? answer.buffer : null;
-    }
-    case 'write-registers': {
-      const isEcho =
-        request.words.length === 1
-          ? answer.value === request.words[0]
-          : answer.length === request.words.length;
-      return isEcho && answer.address === request.address ? nothing : null;
-    }
-    case 'write-coil':
-      return answer.state === request.isOn && answer.address === request.address ? nothing : null;
-  }
+/** Bytes of the values of a read answer. */
+export function payloadBytes(table: ModbusTable, count: number): number {
+  return isBitTable(table) ? Math.ceil(count / 8) : count * 2;
 }

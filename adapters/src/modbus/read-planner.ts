@@ -1,4 +1,10 @@
-import { isBitTable, type ModbusAddress, type ModbusTable, widthOf } from './modbus-address.schema.js';
+import {
+  isBitTable,
+  isTrace,
+  type ModbusAddress,
+  type ModbusTable,
+  widthOf,
+} from './modbus-address.schema.js';
 
 /** One address of a plan inside its block. */
 export interface ReadMember {
@@ -34,7 +40,7 @@ export const protocolReadLimits: ReadLimits = { bits: 2000, registers: 125 };
 type Indexed = readonly [index: number, address: ModbusAddress];
 
 /**
- * Joins addresses into the fewest requests, per unit and table.
+ * Joins addresses into the fewest requests, per unit and table. Traces are left out: they go by themselves.
  *
  * @param gap most registers or bits, which nobody asked for, that may lie between two joined addresses
  * @returns blocks in the order of unit, table, address; every address is wholly inside one block
@@ -46,6 +52,7 @@ export function planReads(
 ): ReadBlock[] {
   const groups = new Map<string, Indexed[]>();
   addresses.forEach((address, index) => {
+    if (isTrace(address)) return;
     const key = `${String(address.unit).padStart(3, '0')} ${address.table}`;
     const group = groups.get(key);
     if (group) group.push([index, address]);
