@@ -1,6 +1,8 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import { Injectable, Logger } from '@nestjs/common';
 import { DomainError } from '@cresthold/shared';
+import { AuditService } from '../audit/audit.service.js';
+import { sealAction } from '../audit/verify-audit.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { RunEntity } from './entities/run.entity.js';
 import { sealFile } from './run-file/index.js';
@@ -15,7 +17,10 @@ export class RunSealer {
 
   private tail: Promise<void> = Promise.resolve();
 
-  constructor(private readonly queue: TransactionQueue) {}
+  constructor(
+    private readonly queue: TransactionQueue,
+    private readonly audit: AuditService,
+  ) {}
 
   /** Seals when the files asked for before are done. */
   sealSoon(runId: string, file: string): void {
@@ -34,8 +39,7 @@ export class RunSealer {
   private async seal(runId: string, file: string): Promise<void> {
     for (let attempt = 1; attempt <= attemptsMax; attempt++) {
       try {
-        const fileSha256 = await sealFile(file);
-        await this.queue.transaction((manager) => manager.update(RunEntity, { id: runId }, { fileSha256 }));
+        await this.keep(runId, await sealFile(file));
         return;
       } catch (error) {
         if (error instanceof DomainError && error.code === 'run.no-samples') return;
@@ -43,5 +47,16 @@ export class RunSealer {
         else this.logger.warn(`The file of run ${runId} is not sealed yet.`, error);
       }
     }
+  }
+
+  /** In the run's row and, in the same transaction, in the audit chain. */
+  private async keep(runId: string, fileSha256: string): Promise<void> {
+    await this.queue.transaction(async (manager) => {
+      const run = await manager.findOneByOrFail(RunEntity, { id: runId });
+      await manager.update(RunEntity, { id: runId }, { fileSha256 });
+      const { rigId } = run;
+      const act = { account: 'server', action: sealAction, rigId, subject: runId };
+      await this.audit.record({ ...act, after: { sha256: fileSha256 } });
+    });
   }
 }

@@ -23,7 +23,7 @@ describe('TransactionQueue', () => {
   });
 
   const add = (manager: EntityManager, action: string) =>
-    manager.insert(AuditEntry, { at: '', account: 'test', action, rigId: null, subject: null, reason: null });
+    manager.insert(AuditEntry, { at: '', account: 'test', action, previousHash: '', hash: '' });
   const actions = async () => (await database.getRepository(AuditEntry).find()).map((row) => row.action);
 
   it('runs what was asked for at once in order, each whole', async () => {

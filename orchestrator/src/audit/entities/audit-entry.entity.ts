@@ -3,6 +3,7 @@ import { Column, Entity, Index, PrimaryGeneratedColumn } from 'typeorm';
 /** One safety-relevant act. Rows are only ever added: triggers in the database refuse anything else. */
 @Entity('audit')
 export class AuditEntry {
+  /** Counts from 1 without a gap. */
   @PrimaryGeneratedColumn()
   id!: number;
 
@@ -28,4 +29,19 @@ export class AuditEntry {
 
   @Column('text', { nullable: true })
   reason!: string | null;
+
+  /** What it was before and what it became, as JSON; null where that is not kept. */
+  @Column('text', { nullable: true })
+  before!: string | null;
+
+  @Column('text', { nullable: true })
+  after!: string | null;
+
+  /** Hash of the entry before. */
+  @Column('text')
+  previousHash!: string;
+
+  /** See `hashOf`. */
+  @Column('text')
+  hash!: string;
 }
