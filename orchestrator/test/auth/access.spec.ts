@@ -12,6 +12,7 @@ import { createTestServer, type TestServer } from '../server/create-test-server.
 /** Who may do what, as docs/api.md says it; written out a second time so that a slip in one shows. */
 const expected: Record<string, Access[]> = {
   'GET /adapters': ['signed-in'],
+  'GET /adapters/serial-ports': ['signed-in'],
   'GET /auth/session': ['signed-in'],
   'POST /auth/sign-in': ['anyone'],
   'POST /auth/sign-out': ['signed-in'],
