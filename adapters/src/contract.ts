@@ -25,7 +25,10 @@ export interface AddressFacts {
   /** Least and greatest value that the wire can carry, engineering unit. */
   min: number;
   max: number;
-  /** Values per read: 1 where left out; more for a trace. */
+  /**
+   * Values per read: 1 where left out; more for a trace. Addresses that can read a trace say how many points
+   * by a field `points` of their parsed form, so that they are checked against their channel before a rig is saved.
+   */
   points?: number;
 }
 

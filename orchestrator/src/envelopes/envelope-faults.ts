@@ -6,7 +6,9 @@ import { faultsOf, prefixFaults } from '../documents/prefix-faults.js';
  * do not compile. Judged by the code that applies it in the scan, so that what is approved also runs there.
  */
 export function envelopeFaults(content: EnvelopeContent, rig: Rig): FieldFault[] {
-  const readings = new Readings(rig.channels.map((channel) => channel.id));
-  const faults = faultsOf(() => fitEnvelope({ id: '', version: 0, content }, rig, new Map(), readings), '');
+  const faults = faultsOf(
+    () => fitEnvelope({ id: '', version: 0, content }, rig, new Map(), Readings.of(rig)),
+    '',
+  );
   return prefixFaults(faults, 'content');
 }

@@ -1,5 +1,5 @@
 import { Injectable } from '@nestjs/common';
-import type { FromLive, Telemetry } from '@cresthold/shared';
+import type { FromLive, LiveTrace, Telemetry } from '@cresthold/shared';
 import type { LiveClient } from './live-client.js';
 
 /** Everybody who listens, and who of them hears what. */
@@ -32,12 +32,21 @@ export class LiveHub {
     }
   }
 
-  /** To those who subscribed to the rig and can take it. Made into text once, and only where somebody listens. */
+  /** To those who subscribed to the rig and can take it. */
   telemetry(telemetry: Telemetry): void {
+    this.toThoseWithRoom(telemetry.rigId, { type: 'telemetry', telemetry });
+  }
+
+  /** Likewise: a newer trace stands for one that was dropped. */
+  trace(trace: LiveTrace): void {
+    this.toThoseWithRoom(trace.rigId, { type: 'trace', trace });
+  }
+
+  /** Made into text once, and only where somebody listens. */
+  private toThoseWithRoom(rigId: string, message: FromLive): void {
     let text: string | null = null;
     for (const client of this.clients) {
-      if (!client.isSubscribed(telemetry.rigId)) continue;
-      client.sendIfRoom((text ??= JSON.stringify({ type: 'telemetry', telemetry } satisfies FromLive)));
+      if (client.isSubscribed(rigId)) client.sendIfRoom((text ??= JSON.stringify(message)));
     }
   }
 }

@@ -20,6 +20,7 @@ export class LiveRelay implements OnModuleInit, OnModuleDestroy {
     this.subscriptions.push(
       feed.statuses.subscribe((status) => hub.toAll({ type: 'rig-status', status })),
       feed.telemetry.subscribe((telemetry) => hub.telemetry(telemetry)),
+      feed.traces.subscribe((trace) => hub.trace(trace)),
       feed.runEvents.subscribe(({ rigId, runId, event }) =>
         hub.toSubscribers(rigId, { type: 'run-event', runId, event }),
       ),

@@ -11,6 +11,7 @@ import {
 import {
   DomainError,
   Quality,
+  tracePointsMax,
   type Connection,
   type Readings,
   type ValueGrid,
@@ -46,7 +47,23 @@ const notANumber = {
   code: 'adapter.corrupt',
   message: 'The device answers with something that is no number.',
 };
+const noTrace = {
+  code: 'adapter.corrupt',
+  message: `The device answers with a trace of no points, of more than ${tracePointsMax}, or with a point that is no number.`,
+};
 const notYet = { code: 'adapter.disconnected', message: 'Not connected yet.' };
+
+const noPoints = new Float64Array(0);
+
+/** A trace needs an address with points, every other channel one without. */
+function requirePoints({ id, kind }: WiredChannel, points: number): void {
+  if ((kind === 'trace') === points > 1) return;
+  const message =
+    kind === 'trace'
+      ? `The address of trace "${id}" gives one value only: give it points.`
+      : `The address of ${kind} "${id}" gives ${points} points: make it a trace.`;
+  throw new DomainError('adapter.misconfigured', message);
+}
 
 /** One connection's share in each scan: one planned read, then the writes of its actuators. */
 export class Line {
@@ -111,7 +128,7 @@ export class Line {
     if (this.session === null || !this.hasBeenRead) return [];
     return this.channels.flatMap(({ channel, index }, at) => {
       const isBad = this.readings.qualities[index] === Quality.bad;
-      const fault = this.faults[at] ?? (isBad ? notANumber : null);
+      const fault = this.faults[at] ?? (isBad ? (channel.kind === 'trace' ? noTrace : notANumber) : null);
       return fault ? [{ channel: channel.id, code: fault.code, message: fault.message }] : [];
     });
   }
@@ -158,8 +175,9 @@ export class Line {
 
   private use(session: AdapterSession<unknown>): void {
     for (const { channel, address } of this.channels) {
-      if (channel.kind !== 'actuator') continue;
       const facts = session.describe(address);
+      requirePoints(channel, facts.points ?? 1);
+      if (channel.kind !== 'actuator') continue;
       if (!facts.isWritable) {
         const message = `The address of actuator "${channel.id}" cannot be written.`;
         throw new DomainError('adapter.misconfigured', message);
@@ -215,11 +233,16 @@ export class Line {
       if (channel === undefined) continue;
       const fault = outcome.faults[i] ?? null;
       this.faults[i] = fault;
-      if (fault === null) this.readings.set(channel.index, outcome.values[i] ?? NaN, Quality.good);
+      if (fault === null) this.put(channel, i, outcome);
       else this.mark(channel.index, this.qualityOf(fault));
     }
     this.isFresh = true;
     this.hasBeenRead = true;
+  }
+
+  private put({ channel, index }: LineChannel, at: number, { values, traces }: ReadOutcome): void {
+    if (channel.kind === 'trace') this.readings.setTrace(index, traces?.[at] ?? noPoints);
+    else this.readings.set(index, values[at] ?? NaN, Quality.good);
   }
 
   private qualityOf(fault: DomainError): Quality {

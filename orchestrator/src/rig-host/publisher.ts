@@ -24,6 +24,8 @@ export interface Link {
 /** Sends scans and status to screens: at most 20 batches a second, dropped rather than queued. */
 export class Publisher implements ScanSink {
   private readonly rigColumns: string[];
+  /** Channel indices of all but the traces, which are no numbers. */
+  private readonly numbers: readonly number[];
   /** Channel indices of the actuators, in the order of the rig. */
   private readonly actuators: readonly number[];
   private columns: string[];
@@ -42,8 +44,10 @@ export class Publisher implements ScanSink {
     private readonly status: () => RigStatus,
   ) {
     this.actuators = rig.channels.flatMap(({ kind }, index) => (kind === 'actuator' ? [index] : []));
-    const applied = this.actuators.map((index) => `${readings.channelIds[index]}.applied`);
-    this.rigColumns = [...readings.channelIds, ...applied];
+    this.numbers = rig.channels.flatMap(({ kind }, index) => (kind === 'trace' ? [] : [index]));
+    const nameOf = (index: number) => readings.channelIds[index] ?? '';
+    const applied = this.actuators.map((index) => `${nameOf(index)}.applied`);
+    this.rigColumns = [...this.numbers.map(nameOf), ...applied];
     this.columns = this.rigColumns;
   }
 
@@ -79,8 +83,7 @@ export class Publisher implements ScanSink {
   /** In the order of `rigColumns`. */
   private rigValues({ applied }: ScanOutput): (number | null)[] {
     const values: (number | null)[] = [];
-    const { length } = this.readings.channelIds;
-    for (let i = 0; i < length; i += 1) values.push(numberOrNull(this.readings.goodValue(i)));
+    for (const index of this.numbers) values.push(numberOrNull(this.readings.goodValue(index)));
     for (const index of this.actuators) values.push(numberOrNull(applied[index] ?? NaN));
     return values;
   }

@@ -1,12 +1,14 @@
 import { rm } from 'node:fs/promises';
 import { setTimeout as delay } from 'node:timers/promises';
 import type { RunEvent } from '@cresthold/shared';
-import { RunFileWriter, type RunEnd, type ScanBatch } from '../recordings/run-file/index.js';
+import { RunFileWriter, type RunEnd, type ScanBatch, type TraceBatch } from '../recordings/run-file/index.js';
 import type { FromRecorder, ToRecorder } from './recorder-messages.js';
+import { buffersOf } from './trace-buffer.js';
 
 interface Held {
   batch: ScanBatch & { data: Float64Array<ArrayBuffer> };
   events: RunEvent[];
+  traces: TraceBatch | null;
 }
 
 /** How often the last rows are tried again before the end of a run is given up. */
@@ -34,7 +36,7 @@ export class RecorderQueue {
         return this.attempt(() => this.begin(message.manifest));
       case 'batch':
         this.labels.push(...message.newLabels);
-        this.hold({ data: message.data, rows: message.rows, labels: this.labels }, message.events);
+        this.hold(message);
         return this.attempt(() => this.commitHeld());
       case 'end':
         return this.end(message.end);
@@ -64,17 +66,18 @@ export class RecorderQueue {
     this.isBegun = true;
   }
 
-  private hold(batch: Held['batch'], events: RunEvent[]): void {
-    this.held.push({ batch, events });
+  private hold({ data, rows, events, traces }: Extract<ToRecorder, { type: 'batch' }>): void {
+    this.held.push({ batch: { data, rows, labels: this.labels }, events, traces });
   }
 
   private async commitHeld(): Promise<void> {
     if (this.writer === null || !this.isBegun) throw new Error('The run file was never begun.');
     for (let next = this.held[0]; next !== undefined; next = this.held[0]) {
-      await this.writer.append(next.batch, next.events);
+      await this.writer.append(next.batch, next.events, next.traces);
       this.held.shift();
       const { data } = next.batch;
-      this.post({ type: 'committed', data }, [data.buffer]);
+      const { traces } = next;
+      this.post({ type: 'committed', data, traces }, [data.buffer, ...buffersOf(traces)]);
     }
   }
 

@@ -4,6 +4,7 @@ import { rowLead, type RunEnd, type RunManifest } from '../recordings/run-file/i
 import { Bell } from './bell.js';
 import { monotonicS } from './monotonic-clock.js';
 import type { FromRecorder, ToRecorder } from './recorder-messages.js';
+import { buffersOf, TraceBuffer } from './trace-buffer.js';
 import { within } from './within.js';
 
 /** Rows wait at most this long before they go to the recorder thread, ms. */
@@ -31,6 +32,7 @@ export class Recorder {
   private readonly postedAtS: number[] = [];
   private newLabels: string[] = [];
   private events: RunEvent[] = [];
+  private traces = new TraceBuffer();
   private width = 0;
   private capacity = 0;
   private data: Float64Array<ArrayBuffer> = new Float64Array(0);
@@ -89,6 +91,7 @@ export class Recorder {
     this.labelIndex.clear();
     this.newLabels = [];
     this.events = [];
+    this.traces = new TraceBuffer();
     this.rows = 0;
     this.hasFailed = false;
     this.data = this.takeBuffer();
@@ -110,6 +113,16 @@ export class Recorder {
     this.rows += 1;
     if (this.rows === this.capacity) this.flush();
     else this.flushTimer ??= setTimeout(() => this.flush(), flushAfterMs);
+  }
+
+  /**
+   * A trace of the scan whose row is appended next.
+   *
+   * @realtime copies the points
+   * @param channel index among the run's trace channels
+   */
+  appendTrace(k: number, channel: number, points: Float32Array): void {
+    this.traces.append(k, channel, points);
   }
 
   appendEvent(event: RunEvent): void {
@@ -152,7 +165,9 @@ export class Recorder {
     this.flushTimer = null;
     if (this.rows === 0 && this.events.length === 0) return;
     const { data, rows, newLabels, events } = this;
-    this.post({ type: 'batch', data, rows, newLabels, events }, [data.buffer]);
+    const traces = this.traces.take();
+    const message = { type: 'batch' as const, data, rows, newLabels, events, traces };
+    this.post(message, [data.buffer, ...buffersOf(traces)]);
     this.postedAtS.push(monotonicS());
     this.data = this.takeBuffer();
     this.rows = 0;
@@ -183,6 +198,7 @@ export class Recorder {
       case 'committed':
         this.postedAtS.shift();
         if (message.data.length === this.capacity * this.width) this.free.push(message.data);
+        if (message.traces) this.traces.giveBack(message.traces);
         return;
       case 'failed':
         return this.fail(message.message);

@@ -17,6 +17,7 @@ import { Publisher } from './publisher.js';
 import type { Recorder } from './recorder.js';
 import { RunRecording } from './run-recording.js';
 import { ScanLoop } from './scan-loop.js';
+import { TracePublisher } from './trace-publisher.js';
 import type { ServerLink } from './server-link.js';
 import { Wire } from './wire.js';
 
@@ -65,8 +66,8 @@ export class RigSession {
     };
     this.run = new RunRecording(recorder, rig, calibrations ?? [], {
       send: (message) => link.send(message),
-      onRunBegun: (run) => this.publisher.useRun(run),
-      onRunOver: () => this.publisher.useRun(null),
+      onRunBegun: useRun,
+      onRunOver: () => useRun(null),
       log: (level, text) => link.log(level, text),
     });
     this.pacer = new PeriodPacer(rig.periodMs / 1000);
@@ -76,7 +77,7 @@ export class RigSession {
       pacer: this.pacer,
       periodS: rig.periodMs / 1000,
       serverSilentS: link.serverSilentS,
-      sinks: [this.run, this.publisher],
+      sinks: [this.run, this.publisher, traces],
     });
   }
 

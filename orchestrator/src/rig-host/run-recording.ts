@@ -3,6 +3,7 @@ import {
   type CalibrationInForce,
   type EnvelopeInForce,
   type FromHost,
+  type Readings,
   type Rig,
   type RunColumn,
   type RunEventBody,
@@ -46,17 +47,22 @@ export class RunRecording implements ScanSink {
   private k = 0;
   private sequence = 0;
   private step = '';
+  /** Indices of the rig's trace channels, and the readings that hold them while a run is open. */
+  private readonly traceIndices: readonly number[];
+  private readings: Readings | null = null;
   /** Settles when the file of the last run is closed. */
   private closing: Promise<void> = Promise.resolve();
 
   constructor(
     private readonly recorder: Recorder,
     private readonly rig: Rig,
+    private readonly calibrations: readonly CalibrationInForce[],
     private readonly owner: RunRecordingOwner,
-  ) {}
+  ) {
+    this.traceIndices = rig.channels.flatMap(({ kind }, index) => (kind === 'trace' ? [index] : []));
+  }
 
   get isOpen(): boolean {
-    private readonly calibrations: readonly CalibrationInForce[],
     return this.runId !== null || this.isStarting;
   }
 
@@ -89,6 +95,7 @@ export class RunRecording implements ScanSink {
     for (const event of output.events) this.addEvent(event);
     if (output.row !== null && output.runTS !== null) {
       this.k += 1;
+      this.appendTraces();
       this.recorder.append(this.k, output.runTS, _input.atMs, this.step, output.row);
     }
     this.recorder.watch(_input.tS);
@@ -116,11 +123,20 @@ export class RunRecording implements ScanSink {
       throw error;
     }
     this.runId = order.runId;
+    this.readings = engine.readings;
     this.k = 0;
     this.sequence = 0;
     this.step = '';
     this.recorder.begin(this.manifestOf(order, envelope, columns), this.rig.periodMs / 1000);
     this.owner.onRunBegun({ id: order.runId, columns });
+  }
+
+  /** Those that are good, before the row of their scan: both go to the file in one piece. */
+  private appendTraces(): void {
+    for (let i = 0; i < this.traceIndices.length; i += 1) {
+      const trace = this.readings?.goodTrace(this.traceIndices[i] as number);
+      if (trace) this.recorder.appendTrace(this.k, i, trace.points);
+    }
   }
 
   private addEvent({ runTS, atMs, body }: ScanOutput['events'][number]): void {
@@ -163,7 +179,6 @@ export class RunRecording implements ScanSink {
       this.owner.log('error', error instanceof Error ? error.message : String(error));
     }
   }
-}
 
   private manifestOf(order: RunOrder, envelope: EnvelopeInForce, columns: readonly RunColumn[]): RunManifest {
     return {

@@ -1,5 +1,5 @@
 import { Injectable } from '@nestjs/common';
-import type { FromHost, RigStatus, RunEvent, Telemetry, Trip } from '@cresthold/shared';
+import type { FromHost, LiveTrace, RigStatus, RunEvent, Telemetry, Trip } from '@cresthold/shared';
 import { Subject } from 'rxjs';
 
 export type RunEnding = Extract<FromHost, { type: 'run-ended' }>;
@@ -9,6 +9,7 @@ export type RunEnding = Extract<FromHost, { type: 'run-ended' }>;
 export class HostFeed {
   readonly statuses = new Subject<RigStatus>();
   readonly telemetry = new Subject<Telemetry>();
+  readonly traces = new Subject<LiveTrace>();
   readonly runEvents = new Subject<{ rigId: string; runId: string; event: RunEvent }>();
   /** A trip that had not been latched before. */
   readonly trips = new Subject<{ rigId: string; trip: Trip }>();

@@ -139,6 +139,8 @@ export class RigHost implements RigHostOwner {
         return this.onStatus(message.status);
       case 'telemetry':
         return feed.telemetry.next(message.telemetry);
+      case 'trace':
+        return feed.traces.next(message.trace);
       case 'run-event':
         return feed.runEvents.next({ rigId: this.rigId, runId: message.runId, event: message.event });
       case 'run-status':

@@ -8,6 +8,8 @@ import { RigStoreModule } from '../rigs/rig-store.module.js';
 import { RunDataController } from './run-data.controller.js';
 import { RunOrders } from './run-orders.service.js';
 import { RunStarter } from './run-start.service.js';
+import { RunTracesController } from './run-traces.controller.js';
+import { RunTraces } from './run-traces.service.js';
 import { RunsController } from './runs.controller.js';
 import { RunsService } from './runs.service.js';
 

@@ -7,6 +7,11 @@ describe('rigs', () => {
   let engineer: Client;
   const fieldsOf = (body: { errors: { field: string }[] }) => body.errors.map((error) => error.field);
   const channels = rigInput().channels;
+  const trace = (points: object): (typeof channels)[number] => ({
+    ...{ kind: 'trace', id: 'beam', title: 'Beam', unit: 'mV', display: channels[1]!.display },
+    ...{ connection: 'memory', address: { name: 'beam', ...points } },
+    axis: { title: 'Place', unit: 'mm', from: 0, step: 0.5 },
+  });
 
   beforeEach(async () => {
     server = await createTestServer();
@@ -53,6 +58,22 @@ describe('rigs', () => {
     [
       'connections[0].configuration.store',
       { connections: [{ ...rigInput().connections[0]!, configuration: {} }] },
+    ],
+    ['channels[4].address.points', { channels: [...channels, trace({})] }],
+    ['channels[4].address.points', { channels: [...channels, trace({ points: 5000 })] }],
+    [
+      'channels[1].address.points',
+      { channels: channels.with(1, { ...channels[1]!, address: { name: 'o2', points: 8 } } as never) },
+    ],
+    [
+      'channels[5].expression',
+      {
+        channels: [
+          ...channels,
+          trace({ points: 8 }),
+          { ...channels[3]!, id: 'sum', expression: '2 * beam' } as never,
+        ],
+      },
     ],
     ['channels[1].address.name', { channels: [channels[0]!, { ...channels[1]!, address: { name: '' } }] }],
     [
@@ -144,6 +165,12 @@ describe('rigs', () => {
       await change('"2"', { channels: rewired }).expect(200);
       expect((await engineer.get(envelope)).body.status).toBe('superseded');
     });
+  });
+
+  it('take a trace whose address has points, and measures of it', async () => {
+    const peak = { ...channels[3]!, id: 'peak', expression: 'peakAt(beam)', unit: 'mm' } as never;
+    const traced = rigInput({ channels: [...channels, trace({ points: 512 }), peak] });
+    await engineer.post('/api/v1/rigs').send(traced).expect(201);
   });
 
   it('keep a trip and a lockout apart from each other, on disk', async () => {

@@ -7,6 +7,7 @@ import { objectiveContentSchema } from '../objectives/objective.schema.js';
 import { rigSchema } from '../rigs/rig.schema.js';
 import { wireFaultSchema } from '../rigs/wire-fault.schema.js';
 import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
+import { liveTraceSchema } from './live-trace.schema.js';
 import { rigStatusSchema, tripSchema } from './rig-status.schema.js';
 import { telemetrySchema } from './telemetry.schema.js';
 
@@ -81,6 +82,7 @@ export const fromHostSchema = z.discriminatedUnion('type', [
   /** On every change and once a second; also the sign that the host lives. */
   z.object({ type: z.literal('status'), status: rigStatusSchema }),
   z.object({ type: z.literal('telemetry'), telemetry: telemetrySchema }),
+  z.object({ type: z.literal('trace'), trace: liveTraceSchema }),
   z.object({ type: z.literal('run-event'), runId: z.string(), event: runEventSchema }),
   z.object({ type: z.literal('run-status'), runId: z.string(), status: runStatusSchema }),
   z.object({

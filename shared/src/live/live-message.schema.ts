@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
+import { liveTraceSchema } from './live-trace.schema.js';
 import { rigStatusSchema } from './rig-status.schema.js';
 import { telemetrySchema } from './telemetry.schema.js';
 
@@ -15,6 +16,7 @@ export type ToLive = z.infer<typeof toLiveSchema>;
 export const fromLiveSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('rig-status'), status: rigStatusSchema }),
   z.object({ type: z.literal('telemetry'), telemetry: telemetrySchema }),
+  z.object({ type: z.literal('trace'), trace: liveTraceSchema }),
   z.object({ type: z.literal('run-event'), runId: z.string(), event: runEventSchema }),
   z.object({
     type: z.literal('run-changed'),

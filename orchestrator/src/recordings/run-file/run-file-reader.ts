@@ -2,6 +2,14 @@ import { DomainError, runEventBodySchema, type RunColumn, type RunEvent } from '
 import type { DataSource } from 'typeorm';
 import { runEndSchema, runManifestSchema, type StoredManifest } from './run-file.types.js';
 import { openRunFileSource } from './run-file-source.js';
+import {
+  queryScanTraces,
+  queryTraces,
+  traceChannels,
+  type RecordedTrace,
+  type TraceChannel,
+  type TracesQuery,
+} from './run-file-traces.js';
 import { querySamples, type Samples, type SamplesQuery } from './run-file-samples.js';
 
 export interface LastScan {
@@ -80,6 +88,29 @@ export class RunFileReader {
    */
   async samples(query: SamplesQuery): Promise<Samples> {
     return querySamples(this.source, await this.columns(), query);
+  }
+
+  /** The channels whose traces the run records. */
+  async traceChannels(): Promise<TraceChannel[]> {
+    return traceChannels((await this.manifest()).rig);
+  }
+
+  /**
+   * Traces of one channel, in the order of their scans.
+   *
+   * @throws request.invalid where the run has no such trace channel
+   */
+  async traces(query: TracesQuery): Promise<RecordedTrace[]> {
+    const ids = (await this.traceChannels()).map(({ id }) => id);
+    if (ids.includes(query.channel)) return queryTraces(this.source, query);
+    const have = ids.length === 0 ? 'it has none' : `choose from ${ids.join(', ')}`;
+    const message = `The run has no trace channel "${query.channel}": ${have}.`;
+    throw new DomainError('request.invalid', undefined, [{ field: 'channel', message }]);
+  }
+
+  /** @throws run.no-samples where the run has no such scan */
+  scanTraces(scan: number): ReturnType<typeof queryScanTraces> {
+    return queryScanTraces(this.source, scan);
   }
 
   async close(): Promise<void> {

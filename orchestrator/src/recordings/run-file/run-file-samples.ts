@@ -92,7 +92,7 @@ function collect(columns: string[], isExact: boolean, rows: readonly SampleRow[]
 }
 
 /** The rows of a span of time. Time grows with k, so a search by halves needs no index beside the key. */
-async function rowSpan(source: DataSource, fromS: number, toS: number): Promise<RowSpan | null> {
+export async function rowSpan(source: DataSource, fromS: number, toS: number): Promise<RowSpan | null> {
   const ends: { firstK: number | null; lastK: number | null }[] = await source.query(
     'SELECT (SELECT min(k) FROM scan) AS firstK, (SELECT max(k) FROM scan) AS lastK',
   );

@@ -1,7 +1,9 @@
 import type { RunColumn, RunEvent } from '@cresthold/shared';
 import type { DataSource } from 'typeorm';
 import { foldLog, inTransaction, openRunFileSource, quoted } from './run-file-source.js';
+import { insertTraces, traceChannels, traceTableSql } from './run-file-traces.js';
 import { rowLead, type ScanBatch } from './scan-batch.js';
+import type { TraceBatch } from './trace-batch.js';
 import type { RunEnd, RunManifest } from './run-file.types.js';
 
 /** SQLite takes at most 32 766 parameters in one statement. */
@@ -12,6 +14,7 @@ const statementRows = [64, 16, 4, 1];
 /** Writes one run file. Calls must not overlap: one connection has one transaction. */
 export class RunFileWriter {
   private columnCount = 0;
+  private traceIds: string[] = [];
   private insertHead = '';
   private scans = 0;
 
@@ -26,6 +29,7 @@ export class RunFileWriter {
           'CREATE TABLE event (sequence INTEGER PRIMARY KEY, t_s REAL NOT NULL, at TEXT NOT NULL, type TEXT NOT NULL, body TEXT NOT NULL)',
         );
         await source.query('CREATE TABLE manifest (name TEXT PRIMARY KEY, value TEXT NOT NULL)');
+        await source.query(traceTableSql);
       });
     } catch (error) {
       await source.destroy();
@@ -37,6 +41,7 @@ export class RunFileWriter {
   /** Creates table `scan` with one column per run column and records the manifest. */
   async begin(manifest: RunManifest): Promise<void> {
     this.columnCount = manifest.columns.length;
+    this.traceIds = traceChannels(manifest.rig).map(({ id }) => id);
     const names = manifest.columns.map((column) => quoted(column.name));
     this.insertHead = `INSERT INTO scan (${['k', 't_s', 'at_ms', 'step', ...names].join(', ')}) VALUES `;
     await inTransaction(this.source, async () => {
@@ -45,10 +50,15 @@ export class RunFileWriter {
     });
   }
 
-  /** Appends rows and events, all or nothing. */
-  async append(batch: ScanBatch, events: readonly RunEvent[]): Promise<void> {
+  /** Appends rows, traces and events, all or nothing. */
+  async append(
+    batch: ScanBatch,
+    events: readonly RunEvent[],
+    traces: TraceBatch | null = null,
+  ): Promise<void> {
     await inTransaction(this.source, async () => {
       await this.insertRows(batch);
+      if (traces) await insertTraces(this.source, traces, this.traceIds);
       for (const event of events) await this.insertEvent(event);
     });
     this.scans += batch.rows;

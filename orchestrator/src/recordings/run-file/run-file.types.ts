@@ -10,8 +10,11 @@ import {
 } from '@cresthold/shared';
 import { z } from 'zod';
 
-/** Version of the layout of a run file; raised when a table or a manifest entry changes its meaning. */
-export const runFileSchemaVersion = 1;
+/**
+ * Version of the layout of a run file; raised when a table comes, or a table or manifest entry changes its meaning.
+ * 1: scan, event, manifest. 2: and trace. Files of every version are read.
+ */
+export const runFileSchemaVersion = 2;
 
 /** How a run ended; absent from a file whose run has not ended yet. */
 export const runEndSchema = z.object({
@@ -32,11 +35,11 @@ export const runManifestSchema = z.object({
   objective: objectiveContentSchema.nullable(),
   rig: rigSchema,
   envelope: envelopeInForceSchema,
+  /** Of sensors, as they converted in this run; missing from files of earlier versions. */
+  calibrations: z.array(calibrationInForceSchema).default([]),
   columns: z.array(runColumnSchema),
   software: z.record(z.string(), z.string()),
   /** What the server adds: warnings of preflight and the like. */
-  /** Of sensors, as they converted in this run; missing from files of earlier versions. */
-  calibrations: z.array(calibrationInForceSchema).default([]),
   extra: z.record(z.string(), z.unknown()),
 });
 export type RunManifest = z.infer<typeof runManifestSchema>;

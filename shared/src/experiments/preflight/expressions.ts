@@ -11,10 +11,7 @@ import type { PreflightCase } from './fault-list.js';
 /** Expressions of parameters and criteria. */
 export function checkExpressions(c: PreflightCase): void {
   const channels = channelSymbols(c.rig);
-  const everywhere = channels.with([
-    objectiveSymbol,
-    ...[...c.order.steps.values()].flatMap(resultNames),
-  ]);
+  const everywhere = channels.with([objectiveSymbol, ...[...c.order.steps.values()].flatMap(resultNames)]);
   for (const step of c.graph.steps) {
     const here = availableTo(c, step, channels);
     for (const { field, parameter } of numericFields(step)) {
