@@ -11,8 +11,25 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** Lists the installed adapters with what they must be told. */
+        /** Lists the adapters, shipped and plugged in, with what they must be told; the broken ones with why. */
         get: operations["adapters_list"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/adapters/serial-ports": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists the serial ports of this machine, with what is known of them. */
+        get: operations["adapters_listSerialPorts"];
         put?: never;
         post?: never;
         delete?: never;
@@ -65,6 +82,79 @@ export interface paths {
         /** Says who is signed in. */
         get: operations["auth_session"];
         put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/calibrations": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists the calibrations of a rig, newest first. */
+        get: operations["calibrations_list"];
+        put?: never;
+        /**
+         * Puts a calibration of a sensor in force.
+         * @description Only while the rig is at rest. Where it converts otherwise than the one before, the envelope in force is withdrawn: it was approved for other values.
+         */
+        post: operations["calibrations_create"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/calibrations/{id}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Reads a calibration. */
+        get: operations["calibrations_get"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/calibrations/{id}/withdraw": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Takes a calibration out of force; withdraws the envelope in force as well. */
+        post: operations["calibrations_withdraw"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/calibrations/{id}/certificate": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Downloads the certificate. */
+        get: operations["calibrations_getCertificate"];
+        /** Uploads the certificate, once; at most 5 MB. */
+        put: operations["calibrations_putCertificate"];
         post?: never;
         delete?: never;
         options?: never;
@@ -507,6 +597,23 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/v1/rigs/{rigId}/connections/{connection}/fault": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        /** Puts a fault on a connection of a bench, or takes it off; refused for any other rig. */
+        put: operations["rigCommands_setFault"];
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/v1/runs": {
         parameters: {
             query?: never;
@@ -644,6 +751,57 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/v1/runs/{id}/trace-channels": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** List the channels whose traces a run records, with their axes. */
+        get: operations["runTraces_channels"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/runs/{id}/traces": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Read the traces of a channel, in the order of their scans. */
+        get: operations["runTraces_list"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/runs/{id}/traces/{scan}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Read all traces of one scan. */
+        get: operations["runTraces_ofScan"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/v1/health": {
         parameters: {
             query?: never;
@@ -661,6 +819,60 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/v1/audit": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Searches the audit log, newest first. */
+        get: operations["audit_list"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/audit/verification": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /**
+         * Recomputes the hash chain of the audit log.
+         * @description Says where the chain breaks first, and which runs have another seal than the one kept in it. Note the head hash elsewhere from time to time: it proves that nothing was cut off since.
+         */
+        get: operations["audit_verify"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/audit/export": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Exports the entries that match as CSV (RFC 4180), oldest first. */
+        get: operations["audit_export"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
 }
 export type webhooks = Record<string, never>;
 export interface components {
@@ -670,14 +882,29 @@ export interface components {
             nextCursor: string | null;
         };
         Adapter: {
-            id: string;
+            id: string | null;
             title: string;
+            version: string | null;
+            contract: string | null;
+            /** @enum {string} */
+            origin: "shipped" | "plug-in";
+            reference: string | null;
+            /** @enum {string} */
+            state: "ready" | "broken";
+            error: {
+                code: string;
+                message: string;
+                details: {
+                    field: string;
+                    message: string;
+                }[];
+            } | null;
             configurationSchema: {
                 [key: string]: unknown;
-            };
+            } | null;
             addressSchema: {
                 [key: string]: unknown;
-            };
+            } | null;
         };
         ProblemDetails: {
             type: string;
@@ -685,11 +912,23 @@ export interface components {
             status: number;
             detail: string;
             /** @enum {string} */
-            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
+            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
             errors: {
                 field: string;
                 message: string;
             }[];
+        };
+        SerialPortPage: {
+            items: components["schemas"]["SerialPort"][];
+            nextCursor: string | null;
+        };
+        SerialPort: {
+            path: string;
+            stablePath: string | null;
+            manufacturer: string | null;
+            serialNumber: string | null;
+            vendorId: string | null;
+            productId: string | null;
         };
         SignIn: {
             account: string;
@@ -699,6 +938,193 @@ export interface components {
             account: string;
             title: string;
             roles: ("administrator" | "safety-officer" | "test-engineer" | "technician" | "reader")[];
+        };
+        CalibrationPage: {
+            items: components["schemas"]["Calibration"][];
+            nextCursor: string | null;
+        };
+        Calibration: {
+            id: string;
+            rigId: string;
+            channel: string;
+            version: number;
+            /** @enum {string} */
+            status: "in-force" | "superseded" | "withdrawn";
+            author: string;
+            createdAt: string;
+            endedAt: string | null;
+            content: components["schemas"]["CalibrationContent"];
+            certificateFile: components["schemas"]["CalibrationCertificate"] | null;
+            /** @enum {string} */
+            dueState: "current" | "due-soon" | "overdue";
+        };
+        CalibrationContent: {
+            conversion: {
+                /** @enum {string} */
+                kind: "linear";
+                /**
+                 * Gain
+                 * @description Value = gain · raw + offset.
+                 */
+                gain: number;
+                /**
+                 * Offset
+                 * @description Value = gain · raw + offset.
+                 */
+                offset: number;
+            } | {
+                /** @enum {string} */
+                kind: "polynomial";
+                /**
+                 * Coefficients
+                 * @description From the constant upward: c0 + c1 · raw + c2 · raw² …
+                 */
+                coefficients: number[];
+                /**
+                 * Valid from
+                 * @description Least raw value that the fit covers.
+                 */
+                from: number;
+                /**
+                 * Valid to
+                 * @description Greatest raw value that the fit covers.
+                 */
+                to: number;
+            } | {
+                /** @enum {string} */
+                kind: "table";
+                /**
+                 * Points
+                 * @description Straight lines between them; outside them the value is bad.
+                 */
+                points: {
+                    raw: number;
+                    value: number;
+                }[];
+            } | {
+                /** @enum {string} */
+                kind: "thermocouple";
+                /**
+                 * Type
+                 * @description Letter type of the ITS-90 tables.
+                 * @enum {string}
+                 */
+                type: "B" | "E" | "J" | "K" | "N" | "R" | "S" | "T";
+                /**
+                 * Cold junction
+                 * @description Its temperature, °C, or the channel that measures it.
+                 */
+                coldJunction: {
+                    celsius: number;
+                } | {
+                    channel: string;
+                };
+            } | {
+                /** @enum {string} */
+                kind: "platinum";
+                /**
+                 * Resistance at 0 °C
+                 * @description ohm; 100 for a Pt100.
+                 */
+                r0Ohm: number;
+            };
+            /** Format: date */
+            calibratedOn: string;
+            /** Format: date */
+            dueOn: string | null;
+            expandedUncertainty: number | null;
+            certificate: string;
+            note: string;
+        };
+        CalibrationCertificate: {
+            mediaType: string;
+            sha256: string;
+            bytes: number;
+        };
+        NewCalibration: {
+            channel: string;
+            content: components["schemas"]["CalibrationContentInput"];
+        };
+        CalibrationContentInput: {
+            conversion: {
+                /** @enum {string} */
+                kind: "linear";
+                /**
+                 * Gain
+                 * @description Value = gain · raw + offset.
+                 */
+                gain: number;
+                /**
+                 * Offset
+                 * @description Value = gain · raw + offset.
+                 */
+                offset: number;
+            } | {
+                /** @enum {string} */
+                kind: "polynomial";
+                /**
+                 * Coefficients
+                 * @description From the constant upward: c0 + c1 · raw + c2 · raw² …
+                 */
+                coefficients: number[];
+                /**
+                 * Valid from
+                 * @description Least raw value that the fit covers.
+                 */
+                from: number;
+                /**
+                 * Valid to
+                 * @description Greatest raw value that the fit covers.
+                 */
+                to: number;
+            } | {
+                /** @enum {string} */
+                kind: "table";
+                /**
+                 * Points
+                 * @description Straight lines between them; outside them the value is bad.
+                 */
+                points: {
+                    raw: number;
+                    value: number;
+                }[];
+            } | {
+                /** @enum {string} */
+                kind: "thermocouple";
+                /**
+                 * Type
+                 * @description Letter type of the ITS-90 tables.
+                 * @enum {string}
+                 */
+                type: "B" | "E" | "J" | "K" | "N" | "R" | "S" | "T";
+                /**
+                 * Cold junction
+                 * @description Its temperature, °C, or the channel that measures it.
+                 */
+                coldJunction: {
+                    celsius: number;
+                } | {
+                    channel: string;
+                };
+            } | {
+                /** @enum {string} */
+                kind: "platinum";
+                /**
+                 * Resistance at 0 °C
+                 * @description ohm; 100 for a Pt100.
+                 */
+                r0Ohm: number;
+            };
+            /** Format: date */
+            calibratedOn: string;
+            /** Format: date */
+            dueOn: string | null;
+            expandedUncertainty: number | null;
+            certificate: string;
+            note: string;
+        };
+        CalibrationWithdrawal: {
+            reason: string;
         };
         EnvelopePage: {
             items: components["schemas"]["Envelope"][];
@@ -1229,6 +1655,8 @@ export interface components {
             title: string;
             /** @default  */
             description: string;
+            /** @default false */
+            isBench: boolean;
             periodMs: number;
             connections: {
                 id: string;
@@ -1331,6 +1759,171 @@ export interface components {
                 id: string;
                 isConnected: boolean;
                 error: string | null;
+                injectedFault: {
+                    fault: {
+                        /** @enum {string} */
+                        kind: "delay";
+                        delayMs: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "jitter";
+                        mostMs: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "slow-device";
+                        perValueMs: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "drop";
+                        timeoutMs: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "truncate";
+                        /** @default 0.5 */
+                        keptShare: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "corrupt";
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "freeze";
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "wrong-unit";
+                        /** @default 17 */
+                        answeringUnit: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "wrong-scale";
+                        /** @default 1.8 */
+                        factor: number;
+                        /** @default 32 */
+                        offset: number;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "exception";
+                        /** @default illegal data address */
+                        text: string;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    } | {
+                        /** @enum {string} */
+                        kind: "disconnect";
+                        /** @default true */
+                        canReconnect: boolean;
+                        /** @default 1 */
+                        probability: number;
+                        /** @default 1 */
+                        seed: number;
+                        /** @default 0 */
+                        fromS: number;
+                        /** @default null */
+                        untilS: number | null;
+                        /** @default null */
+                        channels: string[] | null;
+                    };
+                    by: string;
+                    at: string;
+                    isActive: boolean;
+                } | null;
             }[];
             channelFaults: {
                 channel: string;
@@ -1358,6 +1951,8 @@ export interface components {
             title: string;
             /** @default  */
             description: string;
+            /** @default false */
+            isBench: boolean;
             periodMs: number;
             connections: {
                 id: string;
@@ -1479,6 +2074,168 @@ export interface components {
         LockoutChange: {
             isLockedOut: boolean;
             reason: string;
+        };
+        FaultChange: {
+            fault: ({
+                /** @enum {string} */
+                kind: "delay";
+                delayMs: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "jitter";
+                mostMs: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "slow-device";
+                perValueMs: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "drop";
+                timeoutMs: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "truncate";
+                /** @default 0.5 */
+                keptShare: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "corrupt";
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "freeze";
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "wrong-unit";
+                /** @default 17 */
+                answeringUnit: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "wrong-scale";
+                /** @default 1.8 */
+                factor: number;
+                /** @default 32 */
+                offset: number;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "exception";
+                /** @default illegal data address */
+                text: string;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            } | {
+                /** @enum {string} */
+                kind: "disconnect";
+                /** @default true */
+                canReconnect: boolean;
+                /** @default 1 */
+                probability: number;
+                /** @default 1 */
+                seed: number;
+                /** @default 0 */
+                fromS: number;
+                /** @default null */
+                untilS: number | null;
+                /** @default null */
+                channels: string[] | null;
+            }) | null;
         };
         RunPage: {
             items: components["schemas"]["Run"][];
@@ -1639,6 +2396,72 @@ export interface components {
                 message: string;
             };
         };
+        TraceChannel: {
+            id: string;
+            title: string;
+            unit: string;
+            display: {
+                min: number;
+                max: number;
+                decimals: number;
+            };
+            axis: {
+                title: string;
+                /** @default  */
+                unit: string;
+                from: number;
+                step: number;
+            };
+        };
+        RunTracePage: {
+            items: components["schemas"]["RunTrace"][];
+            nextCursor: string | null;
+        };
+        RunTrace: {
+            scan: number;
+            tS: number;
+            atMs: number;
+            /** @description The points as little-endian Float32 in base64, bit for bit those of the run file. */
+            points: string;
+        };
+        ScanTraces: {
+            scan: number;
+            tS: number;
+            atMs: number;
+            traces: {
+                channel: string;
+                /** @description The points as little-endian Float32 in base64, bit for bit those of the run file. */
+                points: string;
+            }[];
+        };
+        AuditPage: {
+            items: components["schemas"]["AuditEntry"][];
+            nextCursor: string | null;
+        };
+        AuditEntry: {
+            id: number;
+            at: string;
+            account: string;
+            action: string;
+            rigId: string | null;
+            subject: string | null;
+            reason: string | null;
+            /** @description What it was before; null where that is not kept. */
+            before: unknown;
+            /** @description What it became; null where that is not kept. */
+            after: unknown;
+            hash: string;
+        };
+        AuditVerification: {
+            isIntact: boolean;
+            entries: number;
+            headHash: string;
+            firstBreak: {
+                id: number;
+                what: string;
+            } | null;
+            badSeals: string[];
+        };
     };
     responses: never;
     parameters: never;
@@ -1663,6 +2486,52 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["AdapterPage"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    adapters_listSerialPorts: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["SerialPortPage"];
                 };
             };
             /** @description Not signed in. */
@@ -1785,6 +2654,319 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["Session"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    calibrations_list: {
+        parameters: {
+            query?: {
+                limit?: number;
+                cursor?: string;
+                channel?: string;
+                status?: "in-force" | "superseded" | "withdrawn";
+            };
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["CalibrationPage"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    calibrations_create: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["NewCalibration"];
+            };
+        };
+        responses: {
+            201: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Calibration"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    calibrations_get: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Calibration"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    calibrations_withdraw: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["CalibrationWithdrawal"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Calibration"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    calibrations_getCertificate: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/pdf": string;
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/pdf": components["schemas"]["ProblemDetails"];
+                    "image/png": components["schemas"]["ProblemDetails"];
+                    "image/jpeg": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/pdf": components["schemas"]["ProblemDetails"];
+                    "image/png": components["schemas"]["ProblemDetails"];
+                    "image/jpeg": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/pdf": components["schemas"]["ProblemDetails"];
+                    "image/png": components["schemas"]["ProblemDetails"];
+                    "image/jpeg": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    calibrations_putCertificate: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/pdf": string;
+                "image/png": string;
+                "image/jpeg": string;
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["CalibrationCertificate"];
                 };
             };
             /** @description Not signed in. */
@@ -3552,6 +4734,59 @@ export interface operations {
             };
         };
     };
+    rigCommands_setFault: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                connection: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["FaultChange"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
     runs_list: {
         parameters: {
             query?: {
@@ -4007,6 +5242,158 @@ export interface operations {
             };
         };
     };
+    runTraces_channels: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["TraceChannel"][];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    runTraces_list: {
+        parameters: {
+            query: {
+                limit?: number;
+                cursor?: string;
+                channel: string;
+                fromS?: number;
+                toS?: number;
+                every?: number;
+            };
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RunTracePage"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    runTraces_ofScan: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+                scan: number;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ScanTraces"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
     health_check: {
         parameters: {
             query?: never;
@@ -4160,6 +5547,170 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    audit_list: {
+        parameters: {
+            query?: {
+                limit?: number;
+                cursor?: string;
+                rigId?: string;
+                account?: string;
+                /** @description An action, or its beginning: `envelope.` */
+                action?: string;
+                subject?: string;
+                /** @description Not before this time. */
+                from?: string;
+                /** @description Before this time. */
+                to?: string;
+                /** @description Part of the reason. */
+                text?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["AuditPage"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    audit_verify: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["AuditVerification"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    audit_export: {
+        parameters: {
+            query?: {
+                rigId?: string;
+                account?: string;
+                /** @description An action, or its beginning: `envelope.` */
+                action?: string;
+                subject?: string;
+                /** @description Not before this time. */
+                from?: string;
+                /** @description Before this time. */
+                to?: string;
+                /** @description Part of the reason. */
+                text?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "text/csv": string;
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "text/csv": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "text/csv": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "text/csv": components["schemas"]["ProblemDetails"];
                 };
             };
         };
