@@ -66,6 +66,29 @@ async function ensureChromium() {
   }
 }
 
+/** Debian packages of the peers that the adapters are tested against, each with a file that shows it is there. */
+const peerPackages = {
+  gcc: '/usr/bin/gcc',
+  'libc6-dev': '/usr/include/stdio.h',
+  'libmodbus-dev': '/usr/include/modbus/modbus.h',
+  mbpoll: '/usr/bin/mbpoll',
+  'python3-pymodbus': '/usr/lib/python3/dist-packages/pymodbus/__init__.py',
+  // Recommended by python3-pymodbus, and its server does not start without it.
+  'python3-serial-asyncio': '/usr/lib/python3/dist-packages/serial_asyncio/__init__.py',
+  socat: '/usr/bin/socat',
+};
+
+async function ensurePeers() {
+  const missing = Object.entries(peerPackages)
+    .filter(([, file]) => !existsSync(file))
+    .map(([name]) => name);
+  if (missing.length === 0) return;
+  heading(`Peers for the tests of the wires: ${missing.join(', ')}`);
+  const install = `apt-get install -y --no-install-recommends ${missing.join(' ')}`;
+  const code = await run('sh', ['-c', `${install} || (apt-get update && ${install})`]);
+  if (code !== 0) console.error(`Could not install ${missing.join(', ')}: install them by hand.`);
+}
+
 function finish() {
   rmSync(reports, { recursive: true, force: true });
   console.log(`\n${totals.passed} passed, ${totals.failed} failed`);
@@ -74,6 +97,7 @@ function finish() {
 
 await installDependencies();
 await ensureChromium();
+await ensurePeers();
 const isBuilt =
   (await check('Types', 'npm', ['run', '--silent', 'build:types'])) &&
   (await check('OpenAPI document and client', 'npm', ['run', '--silent', 'build:api'])) &&

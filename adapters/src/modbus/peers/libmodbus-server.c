@@ -7,7 +7,7 @@
  * Prints one line, "ready PORT" or "ready", and answers until it is killed or its standard input ends.
  */
 #include <errno.h>
-#include <modbus.h>
+#include <modbus/modbus.h>
 #include <poll.h>
 #include <stdio.h>
 #include <stdlib.h>
