@@ -6,7 +6,7 @@ import { bytesInUse, growthOf, type ProcessUsage, processUsage } from './process
 
 const warmUpCycles = 10;
 /** Both ends need a moment to let go of a socket, ms. */
-const settleBoundMs = 4000;
+const settleBoundMs = 2000;
 /** What a cycle may leave behind, bytes: the least session with its plan is more than this. */
 const bytesPerCycleMax = 1000;
 /** What the runtime itself may take meanwhile (compiled code, inline caches), bytes. */

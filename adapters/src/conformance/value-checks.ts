@@ -99,7 +99,8 @@ export const valueChecks: Record<string, Check> = {
     for (const bad of [NaN, Infinity, beyond(setting)]) await checkBadValue(setting, bad);
   },
 
-  'describe names a grid and a range that hold the values': ({ session, cells }) => {
+  'describe names a grid and a range that hold the values': async ({ session, cells }) => {
+    await Promise.resolve();
     for (const { address, values } of cells) {
       const facts = session.describe(address);
       assert.equal(facts.isWritable, true);
@@ -110,7 +111,6 @@ export const valueChecks: Record<string, Check> = {
         assert.ok(Math.abs(steps - Math.round(steps)) < 1e-6, `${value} is off the grid`);
       }
     }
-    return Promise.resolve();
   },
 
   'a malformed address is adapter.misconfigured and named': async ({ session, cells, fixture }) => {

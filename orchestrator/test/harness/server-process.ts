@@ -15,12 +15,19 @@ export class ServerProcess {
     readonly output: { text: string },
   ) {}
 
-  static async start(dataFolder: string): Promise<ServerProcess> {
+  /** @param env what it is configured with besides */
+  static async start(dataFolder: string, env: Record<string, string> = {}): Promise<ServerProcess> {
     if (!existsSync(program)) throw new Error(`${program} is missing: build the workspaces first.`);
     const child = fork(program, [], {
       execArgv: [],
       silent: true,
-      env: { ...process.env, CRESTHOLD_DATA: dataFolder, CRESTHOLD_PORT: '0', NODE_ENV: 'production' },
+      env: {
+        ...process.env,
+        CRESTHOLD_DATA: dataFolder,
+        CRESTHOLD_PORT: '0',
+        NODE_ENV: 'production',
+        ...env,
+      },
     });
     const output = { text: '' };
     child.stdout?.on('data', (data: Buffer) => (output.text += data.toString()));
