@@ -102,7 +102,7 @@ function findHill(
             ...mixerSeeking,
             gain,
             end: { afterS: seekForS, whenConverged: null, when: null },
-            invalidForS: 10,
+            invalidForS: 30,
           },
         },
         {
