@@ -16,3 +16,5 @@ export type ObjectiveDocument = Schemas['Objective'];
 export type ExperimentSummary = Schemas['Experiment'];
 export type ExperimentVersion = Schemas['ExperimentVersion'];
 export type RunSummary = Schemas['Run'];
+/** An experiment as requests carry it. */
+export type ExperimentBody = Schemas['ExperimentContentInput'];

@@ -1,6 +1,7 @@
 export { answerOf, client, ifMatch } from './client.js';
 export type {
   EnvelopeDocument,
+  ExperimentBody,
   ExperimentSummary,
   ExperimentVersion,
   ObjectiveDocument,

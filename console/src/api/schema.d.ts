@@ -1322,17 +1322,25 @@ export interface components {
                         y: number;
                     };
                     parameters: {
-                        actuator: string;
-                        from: number | {
-                            expression: string;
-                        };
-                        to: number | {
-                            expression: string;
-                        };
-                        points: number;
+                        actuators: {
+                            channel: string;
+                            from: number | {
+                                expression: string;
+                            };
+                            to: number | {
+                                expression: string;
+                            };
+                            points: number;
+                            /** @default true */
+                            isUpAndDown?: boolean;
+                        }[];
                         settleS: number;
                         averageS: number;
-                        isUpAndDown: boolean;
+                        /**
+                         * @default highest
+                         * @enum {string}
+                         */
+                        choose?: "highest" | "most-prominent";
                     };
                 } | {
                     /** @enum {string} */
@@ -1345,23 +1353,670 @@ export interface components {
                         y: number;
                     };
                     parameters: {
-                        actuator: string;
-                        /** @enum {string} */
-                        law: "gradient";
-                        ditherAmplitude: number | {
-                            expression: string;
+                        law: {
+                            /** @enum {string} */
+                            id: "gradient";
+                            parameters: {
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 * @default 0.2
+                                 */
+                                washoutRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 * @default 0.2
+                                 */
+                                lowPassRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "discrete";
+                            parameters: {
+                                /**
+                                 * Washout h
+                                 * @description The washout is (z − 1)/(z + h): its pole lies at −h; nearer to −1 for a lower corner.
+                                 * @default -0.9
+                                 */
+                                washoutPole?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "newton";
+                            parameters: {
+                                /**
+                                 * Convergence rate
+                                 * @description Rate with which the estimate approaches the peak, the same in every direction; a tenth of the dither frequency at most.
+                                 */
+                                rate: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Rate of the inverse Hessian
+                                 * @description How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.
+                                 */
+                                inverseRate: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 * @default 0.2
+                                 */
+                                washoutRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 * @default 0.2
+                                 */
+                                lowPassRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass of the Hessian
+                                 * @description Corner of the filter that takes the ripple off the second derivatives.
+                                 * @default 0.05
+                                 */
+                                hessianRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Lag of the plant
+                                 * @description The second derivatives show at other frequencies than the dither; this makes up for the lag there.
+                                 * @default {}
+                                 */
+                                lag?: {
+                                    /**
+                                     * Time constant
+                                     * @description From Identify.
+                                     * @default 0
+                                     */
+                                    timeConstantS?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Dead time
+                                     * @description From Identify.
+                                     * @default 0
+                                     */
+                                    deadTimeS?: number | {
+                                        expression: string;
+                                    };
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "least-squares";
+                            parameters: {
+                                /**
+                                 * Memory
+                                 * @description Time constant with which older samples are forgotten; longer is less noisy and slower.
+                                 * @default 1
+                                 */
+                                memoryPeriods?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "bounded-rate";
+                            parameters: {
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "slope";
+                            parameters: {
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 * @default 0.2
+                                 */
+                                washoutRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 * @default 0.2
+                                 */
+                                lowPassRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "constrained";
+                            parameters: {
+                                /**
+                                 * Allowed side
+                                 * @description Whether the constrained quantity is to stay above or below its bound.
+                                 * @enum {string}
+                                 */
+                                side: "above" | "below";
+                                /**
+                                 * Method
+                                 * @description Filter: goes up to the bound and slides along it. Barrier: keeps off the bound, the farther the greater its weight.
+                                 * @default filter
+                                 * @enum {string}
+                                 */
+                                method?: "filter" | "barrier";
+                                /**
+                                 * Approach rate
+                                 * @description Filter: the distance to the bound shrinks no faster than with this rate, and grows back with it.
+                                 * @default 0.1
+                                 */
+                                approachRate?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Reserve
+                                 * @description Distance from the bound that is kept on average; choose it above the ripple that the dither makes there.
+                                 * @default 0
+                                 */
+                                reserve?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Barrier weight
+                                 * @description Barrier: what a distance to the bound e times as large is worth.
+                                 * @default 1
+                                 */
+                                barrierWeight?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Barrier knee
+                                 * @description Barrier: below this distance it rises as a parabola, so that it stays finite beyond the bound.
+                                 * @default 0.01
+                                 */
+                                barrierKnee?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 * @default 0.2
+                                 */
+                                washoutRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 * @default 0.2
+                                 */
+                                lowPassRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "spsa";
+                            parameters: {
+                                /**
+                                 * Dwell
+                                 * @description Time at each point that is tried.
+                                 */
+                                dwellS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Settling
+                                 * @description First part of the dwell, in which the plant settles and the objective is not used.
+                                 * @default 0
+                                 */
+                                settleS?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Decay of the gain
+                                 * @description Exponent with which the gain decays from trial to trial; 0 keeps it, to follow a best point that drifts.
+                                 * @default 0.602
+                                 */
+                                gainExponent?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Decay of the amplitude
+                                 * @description Exponent with which the perturbation decays from trial to trial; 0 keeps it.
+                                 * @default 0.101
+                                 */
+                                amplitudeExponent?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Stability constant A
+                                 * @description Keeps the first steps small; about a tenth of the trials that are planned.
+                                 * @default 0
+                                 */
+                                stability?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Seed
+                                 * @description The same seed gives the same perturbations.
+                                 * @default 1
+                                 */
+                                seed?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "perturb-observe";
+                            parameters: {
+                                /**
+                                 * Dwell
+                                 * @description Time at each point that is tried.
+                                 */
+                                dwellS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Settling
+                                 * @description First part of the dwell, in which the plant settles and the objective is not used.
+                                 * @default 0
+                                 */
+                                settleS?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 * @default null
+                                 */
+                                taper?: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     * @default 0.05
+                                     */
+                                    band?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     * @default 5
+                                     */
+                                    afterPeriods?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     * @default 0.2
+                                     */
+                                    floor?: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
                         };
-                        ditherPeriodS: number | {
+                        actuators: {
+                            channel: string;
+                            /** @default null */
+                            min?: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default null */
+                            max?: (number | {
+                                expression: string;
+                            }) | null;
+                            amplitude: number | {
+                                expression: string;
+                            };
+                            /** @default null */
+                            periodS?: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default 0 */
+                            phaseDeg?: number | {
+                                expression: string;
+                            };
+                            /**
+                             * @default null
+                             * @enum {string|null}
+                             */
+                            dither?: "sine" | "square" | "measured" | null;
+                            /** @default null */
+                            measuredChannel?: string | null;
+                            /** @default null */
+                            gain?: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default null */
+                            speedMax?: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default {} */
+                            own?: {
+                                [key: string]: (number | {
+                                    expression: string;
+                                }) | null;
+                            };
+                        }[];
+                        /** @default null */
+                        constraint?: {
                             expression: string;
-                        };
-                        washoutRatio: number;
-                        lowPassRatio: number;
-                        gain: number | {
-                            expression: string;
-                        };
-                        phaseDeg: number;
-                        min: number | null;
-                        max: number | null;
+                            bound: number | {
+                                expression: string;
+                            };
+                        } | null;
+                        /** @default null */
+                        wideSearch?: {
+                            starts: {
+                                /** @enum {string} */
+                                by: "grid";
+                                points: number;
+                            } | {
+                                /** @enum {string} */
+                                by: "spread";
+                                count: number;
+                            } | {
+                                /** @enum {string} */
+                                by: "list";
+                                points: (number | {
+                                    expression: string;
+                                })[][];
+                            };
+                            visit: {
+                                /**
+                                 * Settling
+                                 * @description After each move: until actuator and plant have arrived.
+                                 */
+                                settleS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Seeking
+                                 * @description Seeks so long from each start before it is judged; 0 for a survey.
+                                 */
+                                seekS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Averaging
+                                 * @description Time over which the objective is averaged at each point, without dither.
+                                 */
+                                averageS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Again every
+                                 * @description Visits all starts again after so long, to notice that another hill has become the highest; empty for once.
+                                 * @default null
+                                 */
+                                everyS?: (number | {
+                                    expression: string;
+                                }) | null;
+                                /**
+                                 * Least advantage
+                                 * @description By so much must another start be better than the point that is held.
+                                 * @default 0
+                                 */
+                                advantage?: number | {
+                                    expression: string;
+                                };
+                            };
+                        } | null;
                         end: {
                             afterS: number;
                             whenConverged: {
@@ -1508,17 +2163,25 @@ export interface components {
                         y: number;
                     };
                     parameters: {
-                        actuator: string;
-                        from: number | {
-                            expression: string;
-                        };
-                        to: number | {
-                            expression: string;
-                        };
-                        points: number;
+                        actuators: {
+                            channel: string;
+                            from: number | {
+                                expression: string;
+                            };
+                            to: number | {
+                                expression: string;
+                            };
+                            points: number;
+                            /** @default true */
+                            isUpAndDown: boolean;
+                        }[];
                         settleS: number;
                         averageS: number;
-                        isUpAndDown: boolean;
+                        /**
+                         * @default highest
+                         * @enum {string}
+                         */
+                        choose: "highest" | "most-prominent";
                     };
                 } | {
                     /** @enum {string} */
@@ -1531,23 +2194,607 @@ export interface components {
                         y: number;
                     };
                     parameters: {
-                        actuator: string;
-                        /** @enum {string} */
-                        law: "gradient";
-                        ditherAmplitude: number | {
-                            expression: string;
+                        law: {
+                            /** @enum {string} */
+                            id: "gradient";
+                            parameters: {
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 */
+                                washoutRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 */
+                                lowPassRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "discrete";
+                            parameters: {
+                                /**
+                                 * Washout h
+                                 * @description The washout is (z − 1)/(z + h): its pole lies at −h; nearer to −1 for a lower corner.
+                                 */
+                                washoutPole: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "newton";
+                            parameters: {
+                                /**
+                                 * Convergence rate
+                                 * @description Rate with which the estimate approaches the peak, the same in every direction; a tenth of the dither frequency at most.
+                                 */
+                                rate: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Rate of the inverse Hessian
+                                 * @description How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.
+                                 */
+                                inverseRate: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 */
+                                washoutRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 */
+                                lowPassRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass of the Hessian
+                                 * @description Corner of the filter that takes the ripple off the second derivatives.
+                                 */
+                                hessianRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Lag of the plant
+                                 * @description The second derivatives show at other frequencies than the dither; this makes up for the lag there.
+                                 */
+                                lag: {
+                                    /**
+                                     * Time constant
+                                     * @description From Identify.
+                                     */
+                                    timeConstantS: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Dead time
+                                     * @description From Identify.
+                                     */
+                                    deadTimeS: number | {
+                                        expression: string;
+                                    };
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "least-squares";
+                            parameters: {
+                                /**
+                                 * Memory
+                                 * @description Time constant with which older samples are forgotten; longer is less noisy and slower.
+                                 */
+                                memoryPeriods: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "bounded-rate";
+                            parameters: {
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "slope";
+                            parameters: {
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 */
+                                washoutRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 */
+                                lowPassRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "constrained";
+                            parameters: {
+                                /**
+                                 * Allowed side
+                                 * @description Whether the constrained quantity is to stay above or below its bound.
+                                 * @enum {string}
+                                 */
+                                side: "above" | "below";
+                                /**
+                                 * Method
+                                 * @description Filter: goes up to the bound and slides along it. Barrier: keeps off the bound, the farther the greater its weight.
+                                 * @enum {string}
+                                 */
+                                method: "filter" | "barrier";
+                                /**
+                                 * Approach rate
+                                 * @description Filter: the distance to the bound shrinks no faster than with this rate, and grows back with it.
+                                 */
+                                approachRate: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Reserve
+                                 * @description Distance from the bound that is kept on average; choose it above the ripple that the dither makes there.
+                                 */
+                                reserve: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Barrier weight
+                                 * @description Barrier: what a distance to the bound e times as large is worth.
+                                 */
+                                barrierWeight: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Barrier knee
+                                 * @description Barrier: below this distance it rises as a parabola, so that it stays finite beyond the bound.
+                                 */
+                                barrierKnee: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Washout
+                                 * @description Corner of the high-pass that takes the mean of the objective away.
+                                 */
+                                washoutRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Low-pass
+                                 * @description Corner of the filter that takes the ripple off the gradient.
+                                 */
+                                lowPassRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "spsa";
+                            parameters: {
+                                /**
+                                 * Dwell
+                                 * @description Time at each point that is tried.
+                                 */
+                                dwellS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Settling
+                                 * @description First part of the dwell, in which the plant settles and the objective is not used.
+                                 */
+                                settleS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Decay of the gain
+                                 * @description Exponent with which the gain decays from trial to trial; 0 keeps it, to follow a best point that drifts.
+                                 */
+                                gainExponent: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Decay of the amplitude
+                                 * @description Exponent with which the perturbation decays from trial to trial; 0 keeps it.
+                                 */
+                                amplitudeExponent: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Stability constant A
+                                 * @description Keeps the first steps small; about a tenth of the trials that are planned.
+                                 */
+                                stability: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Seed
+                                 * @description The same seed gives the same perturbations.
+                                 */
+                                seed: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
+                        } | {
+                            /** @enum {string} */
+                            id: "perturb-observe";
+                            parameters: {
+                                /**
+                                 * Dwell
+                                 * @description Time at each point that is tried.
+                                 */
+                                dwellS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Settling
+                                 * @description First part of the dwell, in which the plant settles and the objective is not used.
+                                 */
+                                settleS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Taper
+                                 * @description Makes the dither smaller while the estimate stands still, and large again when it moves.
+                                 */
+                                taper: {
+                                    /**
+                                     * Band
+                                     * @description The estimate counts as standing still while its mean moves less than this from period to period.
+                                     */
+                                    band: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * After
+                                     * @description So long must it stand still.
+                                     */
+                                    afterPeriods: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Floor
+                                     * @description The dither is not made smaller than this.
+                                     */
+                                    floor: number | {
+                                        expression: string;
+                                    };
+                                } | null;
+                            };
                         };
-                        ditherPeriodS: number | {
+                        actuators: {
+                            channel: string;
+                            /** @default null */
+                            min: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default null */
+                            max: (number | {
+                                expression: string;
+                            }) | null;
+                            amplitude: number | {
+                                expression: string;
+                            };
+                            /** @default null */
+                            periodS: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default 0 */
+                            phaseDeg: number | {
+                                expression: string;
+                            };
+                            /**
+                             * @default null
+                             * @enum {string|null}
+                             */
+                            dither: "sine" | "square" | "measured" | null;
+                            /** @default null */
+                            measuredChannel: string | null;
+                            /** @default null */
+                            gain: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default null */
+                            speedMax: (number | {
+                                expression: string;
+                            }) | null;
+                            /** @default {} */
+                            own: {
+                                [key: string]: (number | {
+                                    expression: string;
+                                }) | null;
+                            };
+                        }[];
+                        /** @default null */
+                        constraint: {
                             expression: string;
-                        };
-                        washoutRatio: number;
-                        lowPassRatio: number;
-                        gain: number | {
-                            expression: string;
-                        };
-                        phaseDeg: number;
-                        min: number | null;
-                        max: number | null;
+                            bound: number | {
+                                expression: string;
+                            };
+                        } | null;
+                        /** @default null */
+                        wideSearch: {
+                            starts: {
+                                /** @enum {string} */
+                                by: "grid";
+                                points: number;
+                            } | {
+                                /** @enum {string} */
+                                by: "spread";
+                                count: number;
+                            } | {
+                                /** @enum {string} */
+                                by: "list";
+                                points: (number | {
+                                    expression: string;
+                                })[][];
+                            };
+                            visit: {
+                                /**
+                                 * Settling
+                                 * @description After each move: until actuator and plant have arrived.
+                                 */
+                                settleS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Seeking
+                                 * @description Seeks so long from each start before it is judged; 0 for a survey.
+                                 */
+                                seekS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Averaging
+                                 * @description Time over which the objective is averaged at each point, without dither.
+                                 */
+                                averageS: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Again every
+                                 * @description Visits all starts again after so long, to notice that another hill has become the highest; empty for once.
+                                 */
+                                everyS: (number | {
+                                    expression: string;
+                                }) | null;
+                                /**
+                                 * Least advantage
+                                 * @description By so much must another start be better than the point that is held.
+                                 */
+                                advantage: number | {
+                                    expression: string;
+                                };
+                            };
+                        } | null;
                         end: {
                             afterS: number;
                             whenConverged: {
@@ -2341,12 +3588,21 @@ export interface components {
                 standardError: number | null;
                 /** @enum {string} */
                 branch: "up" | "down";
+                second?: {
+                    actuator: string;
+                    value: number;
+                    /** @enum {string} */
+                    branch: "up" | "down";
+                };
                 isValid: boolean;
             } | {
                 /** @enum {string} */
                 type: "seek.retreated";
                 step: string;
                 to: number;
+                point?: {
+                    [key: string]: number;
+                };
                 reason: string;
             } | {
                 /** @enum {string} */

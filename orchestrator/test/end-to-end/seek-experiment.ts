@@ -1,4 +1,4 @@
-import type { ExperimentContent, NumericParameter } from '@cresthold/shared';
+import type { ExperimentContent } from '@cresthold/shared';
 
 export interface SeekPlan {
   objectiveId: string;
@@ -20,13 +20,12 @@ export function seekExperiment(plan: SeekPlan): ExperimentContent {
     title: '',
     position,
     parameters: {
-      actuator: 'airTrim',
-      from: 16 as NumericParameter,
-      to: 64 as NumericParameter,
-      points: Math.max(surveyPoints, 3),
+      actuators: [
+        { channel: 'airTrim', from: 16, to: 64, points: Math.max(surveyPoints, 3), isUpAndDown: false },
+      ],
       settleS: 1.2,
       averageS: 0.2,
-      isUpAndDown: false,
+      choose: 'highest' as const,
     },
   };
   const edges = isSurveyed
@@ -52,16 +51,24 @@ export function seekExperiment(plan: SeekPlan): ExperimentContent {
           title: '',
           position,
           parameters: {
-            actuator: 'airTrim',
-            law: 'gradient',
-            ditherAmplitude: 1.2,
-            ditherPeriodS: 2.5,
-            washoutRatio: 0.3,
-            lowPassRatio: 0.5,
-            gain: 12,
-            phaseDeg: 35,
-            min: 12,
-            max: 75,
+            law: { id: 'gradient', parameters: { washoutRatio: 0.3, lowPassRatio: 0.5, taper: null } },
+            actuators: [
+              {
+                channel: 'airTrim',
+                min: 12,
+                max: 75,
+                amplitude: 1.2,
+                periodS: 2.5,
+                phaseDeg: 35,
+                dither: 'sine',
+                measuredChannel: null,
+                gain: 12,
+                speedMax: null,
+                own: {},
+              },
+            ],
+            constraint: null,
+            wideSearch: null,
             end: { afterS: seekForS, whenConverged: null, when: null },
             invalidForS: 10,
           },

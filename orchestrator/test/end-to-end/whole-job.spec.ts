@@ -161,9 +161,9 @@ describe('the whole job over HTTP alone, on the real bench', () => {
   });
 
   step('has climbed to the best point that the bench itself knows', async () => {
-    const query = 'columns=seek.estimate,objective&points=5000';
+    const query = 'columns=seek.estimate.airTrim,objective&points=5000';
     const samples = await station.as('reader').get(`runs/${ids.run}/samples?${query}`);
-    expect(samples.columns).toEqual(['seek.estimate', 'objective']);
+    expect(samples.columns).toEqual(['seek.estimate.airTrim', 'objective']);
     const estimates = samples.mean[0].filter((value: number | null) => value !== null);
     const best = truths().at(-1)?.bestTrim ?? NaN;
     const missAtStart = Math.abs(estimates[0] - best);
@@ -177,7 +177,7 @@ describe('the whole job over HTTP alone, on the real bench', () => {
     const reader = station.as('reader');
     const columns = await reader.get(`runs/${ids.run}/columns`);
     expect(columns.map((column: { name: string }) => column.name)).toEqual(
-      expect.arrayContaining(['airTrim', 'airTrim.applied', 'objective', 'seek.estimate']),
+      expect.arrayContaining(['airTrim', 'airTrim.applied', 'objective', 'seek.estimate.airTrim']),
     );
     const coarse = await reader.get(`runs/${ids.run}/samples?columns=airTrim.applied&points=20`);
     expect(coarse.isExact).toBe(false);

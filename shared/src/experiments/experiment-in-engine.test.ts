@@ -11,6 +11,8 @@ import {
   testObjective,
   testRig,
   testStep as s,
+  testSeek,
+  testSurvey,
 } from './experiment.fixture.js';
 import type { ExperimentGraph } from './experiment.schema.js';
 
@@ -100,9 +102,9 @@ const envelope = testEnvelope({ limits });
 
 describe('an experiment in the scan engine', () => {
   const graph = testChain(
-    s('survey', { from: -6, to: 6, points: 7, averageS: 0.2 }),
+    testSurvey({ from: -6, to: 6, points: 7, averageS: 0.2 }),
     s('move', { targets: [{ channel: 'trim', value: { expression: 'survey.best.trim' } }] }),
-    s('seek', { end: { afterS: 300, whenConverged: { band: 0.02, forS: 20 }, when: null } }),
+    testSeek({ end: { afterS: 300, whenConverged: { band: 0.02, forS: 20 }, when: null } }),
     s('check', { criterion: 'abs(seek.best.trim - 2.3) < 0.05 and seek.isAtEdge == 0' }),
   );
 
@@ -138,11 +140,11 @@ describe('an experiment in the scan engine', () => {
 
   const end = { afterS: 30, whenConverged: null, when: null };
   const ordinary = [
-    s('survey', { from: -6, to: 6, points: 13, settleS: 0.1, averageS: 0.1 }),
+    testSurvey({ from: -6, to: 6, points: 13, settleS: 0.1, averageS: 0.1 }),
     s('move', { targets: [{ channel: 'trim', value: -3.3 }], rampS: 0, timeoutS: 30 }),
     s('settle', { channel: 'yield', band: 0.5, forS: 0.2 }),
   ];
-  const seeking = testChain(...ordinary, s('seek', { ditherPeriodS: 2, end }));
+  const seeking = testChain(...ordinary, testSeek({ periodS: 2, end }));
 
   it.each([...grids, coarse].flatMap(([name, grid]) => [1, 2, 3].map((seed) => [name, seed, grid] as const)))(
     'leaves the guard nothing to do where scans come as they like, on a wire that is %s (seed %i)',
@@ -161,7 +163,7 @@ describe('an experiment in the scan engine', () => {
     'walks back at the slew limit when the objective is invalid, and on (seed %i)',
     (seed) => {
       const graph = testChain(
-        s('seek', { ditherPeriodS: 2, gain: 0.5, end, invalidForS: 5 }),
+        testSeek({ periodS: 2, gain: 0.5, end, invalidForS: 5 }),
         s('hold', { durationS: 1 }),
       );
       // Out for 0.8 s of every 7.3 s: in another phase of the dither each time.
@@ -181,12 +183,7 @@ describe('an experiment in the scan engine', () => {
   );
 
   it('takes the dither out at the slew limit where a seek fails, and the next step holds', () => {
-    const steps = [
-      s('start'),
-      s('seek', { end, invalidForS: 0.5 }),
-      s('hold', { durationS: 1 }),
-      s('finish'),
-    ];
+    const steps = [s('start'), testSeek({ end, invalidForS: 0.5 }), s('hold', { durationS: 1 }), s('finish')];
     const graph = testGraph(steps, [
       'start.done>seek',
       'seek.done>finish',

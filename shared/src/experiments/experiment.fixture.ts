@@ -65,18 +65,31 @@ const parameters: { [K in StepKind]: StepOf<K>['parameters'] } = {
   move: { targets: [{ channel: 'trim', value: 1 }], rampS: 1, timeoutS: 10 },
   settle: { channel: 'yield', band: 0.5, forS: 1, timeoutS: 10 },
   hold: { durationS: 1 },
-  survey: { actuator: 'trim', from: -5, to: 5, points: 11, settleS: 0.2, averageS: 0.5, isUpAndDown: true },
+  survey: {
+    actuators: [{ channel: 'trim', from: -5, to: 5, points: 11, isUpAndDown: true }],
+    settleS: 0.2,
+    averageS: 0.5,
+    choose: 'highest',
+  },
   seek: {
-    actuator: 'trim',
-    law: 'gradient',
-    ditherAmplitude: 0.5,
-    ditherPeriodS: 1,
-    washoutRatio: 0.3,
-    lowPassRatio: 0.3,
-    gain: 0.05,
-    phaseDeg: 0,
-    min: null,
-    max: null,
+    law: { id: 'gradient', parameters: { washoutRatio: 0.3, lowPassRatio: 0.3, taper: null } },
+    actuators: [
+      {
+        channel: 'trim',
+        min: null,
+        max: null,
+        amplitude: 0.5,
+        periodS: 1,
+        phaseDeg: 0,
+        dither: null,
+        measuredChannel: null,
+        gain: 0.05,
+        speedMax: null,
+        own: {},
+      },
+    ],
+    constraint: null,
+    wideSearch: null,
     end: { afterS: 60, whenConverged: null, when: null },
     invalidForS: 2,
   },
@@ -96,6 +109,48 @@ export function testStep<K extends StepKind>(
     position: { x: 0, y: 0 },
     parameters: { ...parameters[kind], ...change },
   });
+}
+
+type Seek = StepOf<'seek'>['parameters'];
+type SeekActuator = Seek['actuators'][number];
+type Survey = StepOf<'survey'>['parameters'];
+
+/** A Seek of the gradient law on `trim`; what is named as in an actuator goes into it, the ratios into the law. */
+export type SeekChange = Partial<Seek> &
+  Partial<SeekActuator> & { washoutRatio?: number; lowPassRatio?: number };
+
+export function testSeek(change: SeekChange = {}, id = 'seek'): Step {
+  const { washoutRatio = 0.3, lowPassRatio = 0.3, ...rest } = change;
+  const [actuator] = parameters.seek.actuators;
+  const { own, ofStep } = parted(actuator as SeekActuator, rest);
+  return testStep(
+    'seek',
+    {
+      law: { id: 'gradient', parameters: { washoutRatio, lowPassRatio, taper: null } },
+      actuators: [own],
+      ...ofStep,
+    },
+    id,
+  );
+}
+
+/** A Survey over `trim`; what is named as in an actuator goes into it. */
+export function testSurvey(
+  change: Partial<Survey> & Partial<Survey['actuators'][number]> = {},
+  id = 'survey',
+): Step {
+  const [actuator] = parameters.survey.actuators;
+  const { own, ofStep } = parted(actuator as Survey['actuators'][number], change);
+  return testStep('survey', { actuators: [own], ...ofStep }, id);
+}
+
+function parted<T extends object>(actuator: T, change: object): { own: T; ofStep: object } {
+  const isOwn = ([name]: [string, unknown]) => name in actuator;
+  const entries = Object.entries(change) as [string, unknown][];
+  return {
+    own: { ...actuator, ...Object.fromEntries(entries.filter(isOwn)) },
+    ofStep: Object.fromEntries(entries.filter((entry) => !isOwn(entry))),
+  };
 }
 
 /** A graph with edges written as `from.port>to`. */

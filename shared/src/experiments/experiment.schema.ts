@@ -1,15 +1,10 @@
 import { z } from 'zod';
 import { channelIdSchema, titleSchema } from '../rigs/channel-id.js';
+import { numericParameterSchema } from './numeric-parameter.schema.js';
+import { seekParametersSchema } from './seek/seek-parameters.schema.js';
+import { surveyParametersSchema } from './survey/survey-parameters.schema.js';
 
-/**
- * A numeric parameter: a number in the unit that the field states, or an expression over the results
- * of earlier steps and over channels, e.g. `survey.best.airTrim`, evaluated when the step starts.
- */
-export const numericParameterSchema = z.union([
-  z.number(),
-  z.object({ expression: z.string().min(1).max(500) }),
-]);
-export type NumericParameter = z.infer<typeof numericParameterSchema>;
+export * from './numeric-parameter.schema.js';
 
 const stepBase = {
   /** Name of the step in expressions over its results, e.g. `survey`. */
@@ -56,56 +51,16 @@ export const holdStepSchema = z.object({
   parameters: z.object({ durationS: z.number().positive().max(604_800) }),
 });
 
-/** Maps the objective over one actuator, up and then down again to show hysteresis. */
 export const surveyStepSchema = z.object({
   kind: z.literal('survey'),
   ...stepBase,
-  parameters: z.object({
-    actuator: channelIdSchema,
-    from: numericParameterSchema,
-    to: numericParameterSchema,
-    points: z.int().min(3).max(500),
-    settleS: z.number().min(0).max(3600),
-    averageS: z.number().positive().max(3600),
-    isUpAndDown: z.boolean(),
-  }),
+  parameters: surveyParametersSchema,
 });
 
-/** Steers one actuator to the best side of the objective by a seeking law. */
 export const seekStepSchema = z.object({
   kind: z.literal('seek'),
   ...stepBase,
-  parameters: z.object({
-    actuator: channelIdSchema,
-    /** The gradient law of Krstić and Wang (2000): washout, demodulation, low-pass, integrator. */
-    law: z.literal('gradient'),
-    /** Half of peak to peak, in the actuator's unit. */
-    ditherAmplitude: numericParameterSchema,
-    ditherPeriodS: numericParameterSchema,
-    /** Corner of the washout (high-pass) as a fraction of the dither frequency. */
-    washoutRatio: z.number().positive().max(2),
-    /** Corner of the low-pass as a fraction of the dither frequency. */
-    lowPassRatio: z.number().positive().max(2),
-    /** Integrator gain: actuator unit per second per (objective unit per actuator unit); always positive. */
-    gain: numericParameterSchema,
-    /** Lag of the demodulating sine that makes up for the plant's lag at the dither frequency, degrees. */
-    phaseDeg: z.number().min(-180).max(180),
-    /** Box within which the estimate may move, in the actuator's unit; null leaves it to the envelope. */
-    min: z.number().nullable(),
-    max: z.number().nullable(),
-    end: z.object({
-      /** Ends by `done` after this, s. */
-      afterS: z.number().positive().max(604_800),
-      /** Ends earlier by `done` when the estimate stayed within `band` (peak to peak) for `forS`. */
-      whenConverged: z
-        .object({ band: z.number().positive(), forS: z.number().positive().max(86_400) })
-        .nullable(),
-      /** Ends earlier by `done` when this expression is true. */
-      when: z.string().min(1).max(500).nullable(),
-    }),
-    /** Invalid objective for longer than this ends by `failed`, s; until then it retreats to the last good point. */
-    invalidForS: z.number().positive().max(3600),
-  }),
+  parameters: seekParametersSchema,
 });
 
 /** A criterion; all checks of a run together decide its verdict. */

@@ -7,6 +7,9 @@ import {
   testObjective,
   testRig,
   testStep,
+  testSeek,
+  testSurvey,
+  type SeekChange,
 } from './experiment.fixture.js';
 import { edgeSchema, type ExperimentGraph, type Step, type StepKind } from './experiment.schema.js';
 import { expressionSymbols } from './expression-symbols.js';
@@ -34,9 +37,9 @@ describe('preflight', () => {
       s('move'),
       s('settle'),
       s('hold'),
-      s('survey'),
+      testSurvey(),
       s('move', { targets: [{ channel: 'trim', value: { expression: 'survey.best.trim' } }] }, 'toBest'),
-      s('seek'),
+      testSeek(),
       s('check', { criterion: 'seek.objective > hold.objective and survey.hysteresis < 1' }),
     );
     expect(codes(graph)).toEqual([]);
@@ -100,7 +103,7 @@ describe('preflight of the structure', () => {
 
 const target = (channel: string, value: number | { expression: string } = 1) => ({ channel, value });
 const move = (...targets: ReturnType<typeof target>[]) => testChain(s('move', { targets }));
-const seek = (change: Parameters<typeof s<'seek'>>[1]) => testChain(s('seek', change));
+const seek = (change: SeekChange) => testChain(testSeek(change));
 
 describe('preflight of channels', () => {
   const cases: [string, ExperimentGraph, string[]][] = [
@@ -135,7 +138,7 @@ describe('preflight of channels', () => {
       'error no-limit move parameters.targets[0].channel',
     ]);
     expect(codes(move(target('load')), { envelope: null })).toEqual(['error no-envelope null null']);
-    const graph = testChain(s('survey'), s('seek'), s('check', { criterion: 'objective > 1' }));
+    const graph = testChain(testSurvey(), testSeek(), s('check', { criterion: 'objective > 1' }));
     expect(codes(graph, { objective: null })).toEqual([
       'error no-objective survey null',
       'error no-objective seek null',
@@ -171,7 +174,7 @@ describe('preflight of expressions', () => {
     ['one that is out of the envelope', move(value('2 * 6')), [`error outside-envelope ${field}`]],
     [
       'a result of a later step',
-      testChain(s('move', { targets: [value('survey.best.trim')] }), s('survey')),
+      testChain(s('move', { targets: [value('survey.best.trim')] }), testSurvey()),
       [`error not-available ${field}`],
     ],
     [
@@ -189,7 +192,13 @@ describe('preflight of expressions', () => {
 
   const fork = (edges: string[]) =>
     testGraph(
-      [s('start'), s('check'), s('survey'), s('move', { targets: [value('survey.best.trim')] }), s('finish')],
+      [
+        s('start'),
+        s('check'),
+        testSurvey(),
+        s('move', { targets: [value('survey.best.trim')] }),
+        s('finish'),
+      ],
       ['start.done>check', 'check.yes>survey', 'survey.done>move', 'move.done>finish', ...edges],
     );
 
@@ -210,8 +219,14 @@ describe('preflight of expressions', () => {
       ...channels,
       'survey.best.trim',
       'survey.best.objective',
-      'survey.hysteresis',
       'survey.peaks',
+      'survey.prominence',
+      'survey.curvature.trim',
+      'survey.curvatureError.trim',
+      'survey.noise',
+      'survey.hysteresis',
+      'survey.backlash.trim',
+      'survey.backlashError.trim',
     ]);
     expect([...expressionSymbols(testRig(), graph, 'nowhere')]).toEqual(channels);
   });
@@ -237,61 +252,67 @@ describe('preflight of settings', () => {
     ],
     [
       'a survey outside the envelope',
-      testChain(s('survey', { from: -11, to: 11 })),
-      ['error outside-envelope survey parameters.from', 'error outside-envelope survey parameters.to'],
+      testChain(testSurvey({ from: -11, to: 11 })),
+      [
+        'error outside-envelope survey parameters.actuators[0].from',
+        'error outside-envelope survey parameters.actuators[0].to',
+      ],
     ],
     [
       'a survey of one point',
-      testChain(s('survey', { from: 3, to: 3 })),
-      ['error survey-span survey parameters.to'],
+      testChain(testSurvey({ from: 3, to: 3 })),
+      ['error survey-span survey parameters.actuators[0].to'],
     ],
     [
       'averaging under two scans',
-      testChain(s('survey', { averageS: 0.06 })),
+      testChain(testSurvey({ averageS: 0.06 })),
       ['warning average-too-short survey parameters.averageS'],
     ],
-    ['a box upside down', seek({ min: 2, max: 2 }), ['error seek-box seek parameters.min']],
+    ['a box upside down', seek({ min: 2, max: 2 }), ['error seek-box seek parameters.actuators[0].min']],
     [
       'a box outside the envelope',
       seek({ min: -20, max: 20 }),
-      ['error outside-envelope seek parameters.min', 'error outside-envelope seek parameters.max'],
+      [
+        'error outside-envelope seek parameters.actuators[0].min',
+        'error outside-envelope seek parameters.actuators[0].max',
+      ],
     ],
-    ['a box that the dither fills', seek({ min: 9.5 }), ['error seek-box seek parameters.min']],
+    ['a box that the dither fills', seek({ min: 9.5 }), ['error seek-box seek parameters.actuators[0].min']],
     [
       'a dither above the envelope',
-      seek({ ditherAmplitude: 1.5 }),
-      ['error dither-above-envelope seek parameters.ditherAmplitude'],
+      seek({ amplitude: 1.5 }),
+      ['error dither-above-envelope seek parameters.actuators[0].amplitude'],
     ],
-    ['a gain of zero', seek({ gain: 0 }), ['error not-positive seek parameters.gain']],
+    ['a gain of zero', seek({ gain: 0 }), ['error not-positive seek parameters.actuators[0].gain']],
     [
       'a period of zero',
-      seek({ ditherPeriodS: { expression: '1 - 1' } }),
-      ['error not-positive seek parameters.ditherPeriodS'],
+      seek({ periodS: { expression: '1 - 1' } }),
+      ['error not-positive seek parameters.actuators[0].periodS'],
     ],
     [
       'a dither at a third of the scan rate',
-      seek({ ditherPeriodS: 0.15 }),
-      ['error dither-too-fast seek parameters.ditherPeriodS'],
+      seek({ periodS: 0.15 }),
+      ['error dither-too-fast seek parameters.actuators[0].periodS'],
     ],
     [
       'a dither above an eighth of the scan rate',
-      seek({ ditherPeriodS: 0.35 }),
-      ['warning dither-fast seek parameters.ditherPeriodS'],
+      seek({ periodS: 0.35 }),
+      ['warning dither-fast seek parameters.actuators[0].periodS'],
     ],
     [
       'a washout at the dither',
       seek({ washoutRatio: 1 }),
-      ['warning washout-ratio seek parameters.washoutRatio'],
+      ['warning washout-ratio seek parameters.law.parameters.washoutRatio'],
     ],
     [
       'a washout that hardly forgets',
       seek({ washoutRatio: 0.01 }),
-      ['warning washout-slow seek parameters.washoutRatio'],
+      ['warning washout-slow seek parameters.law.parameters.washoutRatio'],
     ],
     [
       'a low-pass at the dither',
       seek({ lowPassRatio: 1 }),
-      ['warning low-pass-ratio seek parameters.lowPassRatio'],
+      ['warning low-pass-ratio seek parameters.law.parameters.lowPassRatio'],
     ],
     [
       'too little time',
@@ -315,23 +336,6 @@ describe('preflight of settings', () => {
     ],
   ];
   it.each(cases)('finds %s', (_name, graph, expected) => expect(codes(graph)).toEqual(expected));
-
-  it('finds a dither faster than the slew limit: 0.5 % in 1 s needs π % a second', () => {
-    const withSlew = (slewPerS: number) =>
-      testEnvelope({ limits: testEnvelope().limits.map((limit) => ({ ...limit, slewPerS })) });
-    expect(codes(seek({}), { envelope: withSlew(3.15) })).toEqual([]);
-    expect(codes(seek({}), { envelope: withSlew(3.14) })).toEqual([
-      'error dither-slew seek parameters.ditherAmplitude',
-    ]);
-  });
-
-  it('finds what the grid of the actuator cannot carry', () => {
-    const grids = new Map([['trim', { step: 0.6, origin: 0 }]]);
-    expect(codes(seek({}), { grids })).toEqual(['error dither-below-grid seek parameters.ditherAmplitude']);
-    expect(codes(testChain(s('survey', { points: 101 })), { grids })).toEqual([
-      'warning points-below-grid survey parameters.points',
-    ]);
-  });
 });
 
 describe('preflight of any graph', () => {
@@ -350,9 +354,10 @@ describe('preflight of any graph', () => {
       if (made.kind === 'move') made.parameters.targets = [target(channel, a), target('trim', b)];
       if (made.kind === 'settle') made.parameters.channel = channel;
       if (made.kind === 'check') made.parameters.criterion = text;
-      if (made.kind === 'survey') Object.assign(made.parameters, { actuator: channel, from: a, to: b });
+      if (made.kind === 'survey')
+        Object.assign(made.parameters.actuators[0] ?? {}, { channel, from: a, to: b });
       if (made.kind === 'seek') {
-        Object.assign(made.parameters, { actuator: channel, ditherAmplitude: a, ditherPeriodS: b, gain: c });
+        Object.assign(made.parameters.actuators[0] ?? {}, { channel, amplitude: a, periodS: b, gain: c });
       }
       return made;
     });

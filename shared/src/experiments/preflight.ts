@@ -3,7 +3,7 @@ import { checkChannels } from './preflight/channels.js';
 import { checkExpressions } from './preflight/expressions.js';
 import { FaultList, type PreflightInput } from './preflight/fault-list.js';
 import { checkLimits } from './preflight/limits.js';
-import { checkSeekTiming } from './preflight/seek-timing.js';
+import { checkSeeks } from './preflight/seek.js';
 import { checkStructure } from './preflight/structure.js';
 import { checkUnits } from './preflight/units.js';
 import { orderSteps } from './step-order.js';
@@ -20,7 +20,7 @@ export function preflight(input: PreflightInput): PreflightFault[] {
   checkChannels(found);
   checkExpressions(found);
   checkLimits(found);
-  checkSeekTiming(found);
+  checkSeeks(found);
   checkUnits(found);
   return found.faults.faults;
 }

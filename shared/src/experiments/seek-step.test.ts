@@ -1,9 +1,16 @@
 import { describe, expect, it } from 'vitest';
-import { testChain, testEnvelope, testObjective, testRig, testStep as s } from './experiment.fixture.js';
+import {
+  testChain,
+  testEnvelope,
+  testObjective,
+  testRig,
+  testStep as s,
+  testSeek,
+  type SeekChange,
+} from './experiment.fixture.js';
 import { hill, runScript, type Plant } from './scripted-plant.fixture.js';
 
-type SeekChange = Parameters<typeof s<'seek'>>[1];
-const seek = (change: SeekChange = {}) => testChain(s('seek', change));
+const seek = (change: SeekChange = {}) => testChain(testSeek(change));
 const end = (afterS: number, change = {}) => ({ afterS, whenConverged: null, when: null, ...change });
 const exit = (run: ReturnType<typeof runScript>) => run.of('step.ended').find(({ step }) => step === 'seek');
 const trims = (run: ReturnType<typeof runScript>) =>
@@ -78,12 +85,12 @@ describe('seek', () => {
   });
 
   it('records its inner signals while it seeks and nothing else', () => {
-    const run = runScript({ graph: testChain(s('hold'), s('seek', { end: end(20) })), plant: hill });
+    const run = runScript({ graph: testChain(s('hold'), testSeek({ end: end(20) })), plant: hill });
     expect(run.sequencer.signalNames).toEqual([
-      'seek.estimate',
-      'seek.washout',
-      'seek.demodulated',
-      'seek.gradient',
+      'seek.estimate.trim',
+      'seek.washout.trim',
+      'seek.demodulated.trim',
+      'seek.gradient.trim',
     ]);
     expect(run.scans[3]?.signals).toEqual([NaN, NaN, NaN, NaN]);
     expect(run.scans[200]?.signals.every(Number.isFinite)).toBe(true);
@@ -117,25 +124,29 @@ describe('the end of a seek', () => {
   it.each([
     [
       'a dither amplitude that is no number',
-      { ditherAmplitude: { expression: '1 / (flame - 1)' } },
-      'dither amplitude',
+      { amplitude: { expression: '1 / (flame - 1)' } },
+      '"Dither amplitude" of "trim" came out as no number',
     ],
     [
       'a dither above the envelope',
-      { ditherAmplitude: { expression: '2 * flame' } },
+      { amplitude: { expression: '2 * flame' } },
       'above the 1 of the envelope',
     ],
     [
       'a dither that nothing could show',
-      { ditherAmplitude: { expression: 'flame * 5e-324' } },
+      { amplitude: { expression: 'flame * 5e-324' } },
       'is too small for "trim" to show',
     ],
     [
       'a period of zero',
-      { ditherPeriodS: { expression: 'flame - 1' } },
-      'dither period must be a number above zero',
+      { periodS: { expression: 'flame - 1' } },
+      '"Dither period" of "trim": Too small: expected number to be >0',
     ],
-    ['a gain below zero', { gain: { expression: '-flame' } }, 'gain must be a number above zero'],
+    [
+      'a gain below zero',
+      { gain: { expression: '-flame' } },
+      '"Gain" of "trim": Too small: expected number to be >0',
+    ],
     ['a box without room', { min: 9.8 }, 'no room is left'],
   ])('comes at once with %s', (_name, change: SeekChange, reason) => {
     const run = runScript({ graph: seek(change), plant: hill });

@@ -7,6 +7,8 @@ import {
   testObjective,
   testRig,
   testStep as s,
+  testSeek,
+  testSurvey,
 } from './experiment.fixture.js';
 import { hill, runScript } from './scripted-plant.fixture.js';
 import { createSequencer } from './sequencer.js';
@@ -216,7 +218,7 @@ describe('sequencer', () => {
     ],
     [
       'a survey that fails into itself',
-      testGraph([s('start'), s('survey', { from: 1, to: 1 })], ['start.done>survey', 'survey.failed>survey']),
+      testGraph([s('start'), testSurvey({ from: 1, to: 1 })], ['start.done>survey', 'survey.failed>survey']),
       'The steps lead back to themselves without taking time.',
     ],
   ])('ends a run of %s', (_name, graph, reason) => {
@@ -226,9 +228,9 @@ describe('sequencer', () => {
   it('surveys, moves, seeks and checks its way to the optimum of a quadratic', () => {
     const best = { expression: 'survey.best.trim' };
     const graph = testChain(
-      s('survey', { from: -6, to: 6, points: 7, averageS: 0.2 }),
+      testSurvey({ from: -6, to: 6, points: 7, averageS: 0.2 }),
       s('move', { targets: [{ channel: 'trim', value: best }] }),
-      s('seek', { end: { afterS: 300, whenConverged: { band: 0.01, forS: 20 }, when: null } }),
+      testSeek({ end: { afterS: 300, whenConverged: { band: 0.01, forS: 20 }, when: null } }),
       s('check', {
         criterion: 'abs(seek.best.trim - 2.3) < 0.02 and seek.objective > survey.best.objective - 0.2',
       }),
@@ -250,7 +252,7 @@ describe('sequencer', () => {
   });
 
   it('gives the columns of every seek', () => {
-    const graph = testChain(s('seek', {}, 'first'), s('hold'), s('seek', {}, 'second'));
+    const graph = testChain(testSeek({}, 'first'), s('hold'), testSeek({}, 'second'));
     const context = {
       rig: testRig(),
       envelope: testEnvelope(),
@@ -261,7 +263,7 @@ describe('sequencer', () => {
     const sequencer = createSequencer(context);
     expect(sequencer.signalNames).toEqual(
       ['first', 'second'].flatMap((id) =>
-        ['estimate', 'washout', 'demodulated', 'gradient'].map((n) => `${id}.${n}`),
+        ['estimate', 'washout', 'demodulated', 'gradient'].map((n) => `${id}.${n}.trim`),
       ),
     );
   });

@@ -1,4 +1,5 @@
 import type { Step, StepKind } from './experiment.schema.js';
+import { surveyResultNames } from './survey/survey-results.js';
 
 interface StepKindFacts {
   title: string;
@@ -33,13 +34,13 @@ export const stepKinds: Record<StepKind, StepKindFacts> = {
   },
   survey: {
     title: 'Survey',
-    purpose: 'Maps the objective over one actuator, up and down.',
+    purpose: 'Maps the objective over one actuator or two, up and down.',
     ports: ['done', 'failed'],
     optionalPorts: ['failed'],
   },
   seek: {
     title: 'Seek',
-    purpose: 'Steers an actuator to the best side of the objective.',
+    purpose: 'Steers actuators to the best side of the objective by a seeking law.',
     ports: ['done', 'failed'],
     optionalPorts: ['failed'],
   },
@@ -56,7 +57,7 @@ export const stepKinds: Record<StepKind, StepKindFacts> = {
  * Names of the values that a step leaves behind, as later expressions use them.
  *
  * @example
- * resultNames(surveyOfAirTrim) // ['survey.best.airTrim', 'survey.best.objective', 'survey.hysteresis', 'survey.peaks']
+ * resultNames(holdForAMinute) // ['hold.objective']
  */
 export function resultNames(step: Step): string[] {
   const name = (suffix: string) => `${step.id}.${suffix}`;
@@ -72,16 +73,10 @@ export function resultNames(step: Step): string[] {
     case 'hold':
       return [name('objective')];
     case 'survey':
-      return [
-        name(`best.${step.parameters.actuator}`),
-        name('best.objective'),
-        /** Greatest difference between the way up and the way down; only one way shows none. */
-        ...(step.parameters.isUpAndDown ? [name('hysteresis')] : []),
-        name('peaks'),
-      ];
+      return surveyResultNames(step.parameters).map(name);
     case 'seek':
       return [
-        name(`best.${step.parameters.actuator}`),
+        ...step.parameters.actuators.map(({ channel }) => name(`best.${channel}`)),
         /** Mean of the objective over the last whole dither periods. */
         name('objective'),
         /** Objective over the first whole dither periods, for comparison. */
@@ -89,7 +84,7 @@ export function resultNames(step: Step): string[] {
         name('durationS'),
         /** 1 where convergence ended it, else 0. */
         name('isConverged'),
-        /** 1 where it ended at an edge of its box, so that the best may lie beyond, else 0. */
+        /** 1 where an estimate ended at an edge of its box, so that the best may lie beyond, else 0. */
         name('isAtEdge'),
       ];
   }

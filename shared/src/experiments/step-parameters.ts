@@ -1,15 +1,9 @@
 import { compileExpression } from '../expressions/compile-expression.js';
-import type { NumericParameter, Step } from './experiment.schema.js';
+import type { NumericField, NumericParameter, Step } from './experiment.schema.js';
+import { seekNumericFields } from './seek/seek-expressions.js';
 
-/** A parameter that may be a number or an expression, with its place in the step. */
-export interface NumericField {
-  /** E.g. `parameters.targets[0].value`. */
-  field: string;
-  parameter: NumericParameter;
-}
-
-/** A parameter that must be a condition. */
-export interface ConditionField {
+/** A parameter that is a text to be compiled. */
+export interface TextField {
   field: string;
   text: string;
 }
@@ -22,16 +16,12 @@ export function numericFields(step: Step): NumericField[] {
         parameter: value,
       }));
     case 'survey':
-      return [
-        { field: 'parameters.from', parameter: step.parameters.from },
-        { field: 'parameters.to', parameter: step.parameters.to },
-      ];
+      return step.parameters.actuators.flatMap(({ from, to }, i) => [
+        { field: `parameters.actuators[${i}].from`, parameter: from },
+        { field: `parameters.actuators[${i}].to`, parameter: to },
+      ]);
     case 'seek':
-      return [
-        { field: 'parameters.ditherAmplitude', parameter: step.parameters.ditherAmplitude },
-        { field: 'parameters.ditherPeriodS', parameter: step.parameters.ditherPeriodS },
-        { field: 'parameters.gain', parameter: step.parameters.gain },
-      ];
+      return seekNumericFields(step.parameters);
     case 'start':
     case 'settle':
     case 'hold':
@@ -41,12 +31,19 @@ export function numericFields(step: Step): NumericField[] {
   }
 }
 
-export function conditionFields(step: Step): ConditionField[] {
+/** Parameters that must be conditions. */
+export function conditionFields(step: Step): TextField[] {
   if (step.kind === 'check') return [{ field: 'parameters.criterion', text: step.parameters.criterion }];
   if (step.kind === 'seek' && step.parameters.end.when !== null) {
     return [{ field: 'parameters.end.when', text: step.parameters.end.when }];
   }
   return [];
+}
+
+/** Parameters that are followed scan by scan and must be a quantity. */
+export function valueFields(step: Step): TextField[] {
+  if (step.kind !== 'seek' || step.parameters.constraint === null) return [];
+  return [{ field: 'parameters.constraint.expression', text: step.parameters.constraint.expression }];
 }
 
 /** Actuators that a step commands, with the field that names each. */
@@ -58,7 +55,10 @@ export function commandedActuators(step: Step): { field: string; channel: string
     }));
   }
   if (step.kind === 'survey' || step.kind === 'seek') {
-    return [{ field: 'parameters.actuator', channel: step.parameters.actuator }];
+    return step.parameters.actuators.map(({ channel }, index) => ({
+      field: `parameters.actuators[${index}].channel`,
+      channel,
+    }));
   }
   return [];
 }

@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest';
-import { testChain, testObjective, testStep as s } from './experiment.fixture.js';
+import { testChain, testObjective, testSurvey } from './experiment.fixture.js';
 import { hill, runScript, type Plant } from './scripted-plant.fixture.js';
 
-const survey = (change: Parameters<typeof s<'survey'>>[1] = {}) => testChain(s('survey', change));
+const survey = (change: Parameters<typeof testSurvey>[0] = {}) => testChain(testSurvey(change));
 const exit = (run: ReturnType<typeof runScript>) =>
   run.of('step.ended').find(({ step }) => step === 'survey');
 
@@ -36,11 +36,15 @@ describe('survey', () => {
       visits.map(({ value }) => 90 - (value - 2) ** 2),
     );
     expect(visits.map(({ branch }) => branch).join('')).toBe('up'.repeat(9) + 'down'.repeat(9));
-    expect(run.results).toEqual({
+    expect(run.results).toMatchObject({
       'survey.best.trim': 2,
       'survey.best.objective': 90,
       'survey.hysteresis': 0,
       'survey.peaks': 1,
+      'survey.prominence': 36,
+      'survey.curvature.trim': expect.closeTo(2, 9),
+      'survey.backlash.trim': expect.closeTo(0, 9),
+      'survey.noise': 0,
     });
     expect(run.scans.at(-1)?.applied['trim']).toBe(-4);
   });

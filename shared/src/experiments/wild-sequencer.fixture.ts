@@ -3,7 +3,15 @@ import { describe, expect, it } from 'vitest';
 import { runEventBodySchema } from '../runs/run-event.schema.js';
 import { Quality } from '../rigs/quality.js';
 import { Readings } from '../scan/readings.js';
-import { testEnvelope, testGraph, testObjective, testRig, testStep as s } from './experiment.fixture.js';
+import {
+  testEnvelope,
+  testGraph,
+  testObjective,
+  testRig,
+  testStep as s,
+  testSeek,
+  testSurvey,
+} from './experiment.fixture.js';
 import type { Step } from './experiment.schema.js';
 import { createSequencer } from './sequencer.js';
 import { stepKinds } from './step-kinds.js';
@@ -27,10 +35,10 @@ const steps = (): Step[] => [
   s('move', { targets: [{ channel: 'trim', value: { expression: 'yield' } }], rampS: 0.1, timeoutS: 0.3 }),
   s('settle', { forS: 0.1, timeoutS: 0.3, band: 5 }),
   s('hold', { durationS: 0.1 }),
-  s('survey', { points: 3, settleS: 0, averageS: 0.05, to: { expression: 'flame * 5' } }),
-  s('seek', {
-    ditherAmplitude: { expression: 'abs(loss)' },
-    ditherPeriodS: 0.2,
+  testSurvey({ points: 3, settleS: 0, averageS: 0.05, to: { expression: 'flame * 5' } }),
+  testSeek({
+    amplitude: { expression: 'abs(loss)' },
+    periodS: 0.2,
     end: { afterS: 0.8, whenConverged: { band: 1, forS: 0.4 }, when: 'yield > 15' },
     invalidForS: 0.3,
   }),
@@ -71,24 +79,23 @@ export function describeWildSequencer(numRuns: number, timeoutMs: number): void 
               const sequencer = createSequencer({ rig, envelope, objective, graph, periodS: 0.05 });
               const readings = new Readings(rig.channels.map(({ id }) => id));
               let tS = 0;
-              let follows = 0;
+              const follows = { base: 0, dither: 0 };
               for (const { readings: read, position, dtS } of scans) {
                 tS += dtS;
                 read.forEach(([value, quality], i) => readings.set(i, value, quality));
                 const value = readings.goodValue(readings.indexOf('yield'));
                 const isGood = Number.isFinite(value);
-                const where = position ?? follows;
                 const output = sequencer.step({
                   tS,
                   dtS,
                   readings,
                   objective: { value, isGood, isValid: isGood && value > 0 },
-                  applied: () => where,
-                  held: () => where,
+                  applied: () => position ?? follows.base + follows.dither,
+                  held: () => position ?? follows.base,
                 });
                 for (const { channel, base, dither } of output.requests) {
                   asked += 1;
-                  follows = base;
+                  Object.assign(follows, { base, dither });
                   expect(channel).toBe('trim');
                   expect(Math.abs(base)).toBeLessThanOrEqual(10);
                   expect(Math.abs(dither)).toBeLessThanOrEqual(1);

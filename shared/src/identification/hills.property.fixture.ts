@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { expect, it } from 'vitest';
-import { countPeaks } from '../experiments/steps/survey-landscape.js';
+import { countPeaks } from './count-peaks.fixture.js';
 import { findHills, gridNeighbours, lineNeighbours } from './hills.js';
 
 const height = fc.oneof(fc.integer({ min: 0, max: 5 }), fc.double({ min: 0, max: 5, noNaN: true }));

@@ -3,7 +3,7 @@ import type { Rig } from '../rigs/rig.schema.js';
 
 /** What a column of a run file's `scan` table holds. */
 export const runColumnSchema = z.object({
-  /** Column name: `o2`, `airTrim`, `airTrim.requested`, `airTrim.applied`, `objective`, `seek.estimate`. */
+  /** Column name: `o2`, `airTrim`, `airTrim.requested`, `airTrim.applied`, `objective`, `seek.estimate.airTrim`. */
   name: z.string(),
   title: z.string(),
   unit: z.string(),
@@ -35,6 +35,15 @@ export function runColumns(rig: Rig, objectiveUnit: string, signalNames: readonl
     columns.push({ name: `${c.id}.applied`, title: `${c.title}, applied`, unit: c.unit, kind: 'applied' });
   }
   columns.push({ name: 'objective', title: 'Objective', unit: objectiveUnit, kind: 'objective' });
-  for (const name of signalNames) columns.push({ name, title: name, unit: '', kind: 'signal' });
+  for (const name of signalNames) columns.push(signalColumn(name, rig));
   return columns;
+}
+
+/** An estimate has the unit of its actuator; what the other inner signals of a law stand for is the law's business. */
+function signalColumn(name: string, rig: Rig): RunColumn {
+  const [step, signal, channelId] = name.split('.');
+  const channel = signal === 'estimate' ? rig.channels.find(({ id }) => id === channelId) : undefined;
+  return channel
+    ? { name, title: `${channel.title}, estimate of ${step}`, unit: channel.unit, kind: 'signal' }
+    : { name, title: name, unit: '', kind: 'signal' };
 }

@@ -45,9 +45,18 @@ export const runEventBodySchema = z.discriminatedUnion('type', [
     /** Standard error of that mean; null below two readings. */
     standardError: z.number().nullable(),
     branch: z.enum(['up', 'down']),
+    /** The second actuator of a survey over two; missing where there is one. */
+    second: z.object({ actuator: z.string(), value: z.number(), branch: z.enum(['up', 'down']) }).optional(),
     isValid: z.boolean(),
   }),
-  event('seek.retreated', { step: z.string(), to: z.number(), reason: z.string() }),
+  event('seek.retreated', {
+    step: z.string(),
+    /** Where the first actuator went back to, its unit. */
+    to: z.number(),
+    /** Where each went back to; missing in records from before there could be several. */
+    point: z.record(z.string(), z.number()).optional(),
+    reason: z.string(),
+  }),
   event('check.decided', { step: z.string(), criterion: z.string(), isMet: z.boolean().nullable() }),
   event('guard.intervened', {
     channel: z.string(),

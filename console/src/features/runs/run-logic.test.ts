@@ -109,7 +109,7 @@ describe('the landscape', () => {
     expect(seekBeganS([point(1, 10, 90), began])).toBe(42);
     expect(seekBeganS([])).toBeNull();
     const samples = {
-      columns: ['seek.estimate', 'objective'],
+      columns: ['seek.estimate.airTrim', 'objective'],
       isExact: true,
       tS: [42, 43],
       mean: [
@@ -119,6 +119,6 @@ describe('the landscape', () => {
       min: [],
       max: [],
     };
-    expect(seekPath(samples, 'seek.estimate')).toEqual([{ value: 60, objective: 90 }]);
+    expect(seekPath(samples, 'seek.estimate.airTrim')).toEqual([{ value: 60, objective: 90 }]);
   });
 });

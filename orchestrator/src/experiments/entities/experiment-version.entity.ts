@@ -1,4 +1,4 @@
-import type { ExperimentContent } from '@cresthold/shared';
+import { migrateExperiment, type ExperimentContent } from '@cresthold/shared';
 import { Column, Entity, JoinColumn, ManyToOne, PrimaryColumn } from 'typeorm';
 
 /** One version of an experiment; never changed: a trigger in the database refuses it. */
@@ -23,7 +23,10 @@ export class ExperimentVersionEntity {
   @Column('text')
   createdBy!: string;
 
-  @Column('simple-json')
+  /** Kept as it was written; what an earlier release wrote is read in the form of today. */
+  @Column('simple-json', {
+    transformer: { from: migrateExperiment, to: (content: ExperimentContent) => content },
+  })
   content!: ExperimentContent;
 
   /** Keeps the database from holding a version of an experiment that it does not know. */

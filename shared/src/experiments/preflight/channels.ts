@@ -2,6 +2,7 @@ import { closestNames } from '../../expressions/closest-names.js';
 import { compileObjective } from '../../objectives/objective-evaluator.js';
 import type { Channel } from '../../rigs/rig.schema.js';
 import type { Step } from '../experiment.schema.js';
+import { ditherOf } from '../seek/seek-fields.js';
 import { commandedActuators } from '../step-parameters.js';
 import type { PreflightCase } from './fault-list.js';
 
@@ -15,6 +16,7 @@ export function checkChannels(c: PreflightCase): void {
   for (const step of c.graph.steps) {
     checkActuators(c, step);
     checkSensor(c, step);
+    checkMeasured(c, step);
     if (!c.objective && (step.kind === 'survey' || step.kind === 'seek')) {
       c.faults.error(
         'no-objective',
@@ -79,4 +81,20 @@ function checkSensor(c: PreflightCase, step: Step): void {
     const message = `"${channel.id}" is a trace: make a derived channel of it, as in mean(${channel.id}), and wait for that.`;
     c.faults.error('no-sensor', step.id, field, message);
   }
+}
+
+/** Channels on which a Seek measures the plant's own ripple. */
+function checkMeasured(c: PreflightCase, step: Step): void {
+  if (step.kind !== 'seek') return;
+  const { law, actuators } = step.parameters;
+  actuators.forEach((actuator, index) => {
+    if (ditherOf(law.id, actuator) !== 'measured') return;
+    const field = `parameters.actuators[${index}].measuredChannel`;
+    if (actuator.measuredChannel !== null) {
+      findChannel(c, step, field, actuator.measuredChannel);
+      return;
+    }
+    const message = `Choose the channel on which the ripple of "${actuator.channel}" is measured.`;
+    c.faults.error('no-measured-channel', step.id, field, message);
+  });
 }

@@ -5,7 +5,7 @@ import { channelSymbols } from '../../expressions/channel-symbols.js';
 import { objectiveSymbol } from '../expression-symbols.js';
 import type { Step } from '../experiment.schema.js';
 import { resultNames } from '../step-kinds.js';
-import { conditionFields, constantOf, numericFields } from '../step-parameters.js';
+import { conditionFields, constantOf, numericFields, valueFields } from '../step-parameters.js';
 import type { PreflightCase } from './fault-list.js';
 
 /** Expressions of parameters and criteria. */
@@ -19,6 +19,13 @@ export function checkExpressions(c: PreflightCase): void {
       const expression = compileAt(c, step, field, parameter.expression, here, everywhere);
       if (expression && Number.isNaN(constantOf(parameter) ?? 0)) {
         c.faults.error('not-finite', step.id, field, 'This expression gives no number: mend it.');
+      }
+    }
+    for (const { field, text } of valueFields(step)) {
+      const expression = compileAt(c, step, field, text, here, everywhere);
+      if (expression?.isCondition) {
+        const message = 'This is a condition: give the quantity itself, and its bound beside it.';
+        c.faults.error('no-quantity', step.id, field, message);
       }
     }
     for (const { field, text } of conditionFields(step)) {

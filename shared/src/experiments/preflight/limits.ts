@@ -9,7 +9,6 @@ export function checkLimits(c: PreflightCase): void {
     if (step.kind === 'move') checkMove(c, step);
     if (step.kind === 'settle') checkSettle(c, step);
     if (step.kind === 'survey') checkSurvey(c, step);
-    if (step.kind === 'seek') checkSeekBox(c, step);
   }
 }
 
@@ -23,7 +22,7 @@ export function withUnit(c: PreflightCase, channel: string, value: number): stri
   return `${Number(value.toPrecision(6))} ${unit}`.trimEnd();
 }
 
-function checkInside(
+export function checkInside(
   c: PreflightCase,
   step: Step,
   field: string,
@@ -63,18 +62,16 @@ function checkSettle(c: PreflightCase, step: StepOf<'settle'>): void {
   }
 }
 
+/** Visits of a survey after which it is a mistake: at a second each they take three hours. */
+const visitsMax = 10_000;
+
 function checkSurvey(c: PreflightCase, step: StepOf<'survey'>): void {
-  const { actuator, from, to, points, averageS } = step.parameters;
-  checkInside(c, step, 'parameters.from', actuator, from);
-  checkInside(c, step, 'parameters.to', actuator, to);
-  const span = Math.abs((constantOf(to) ?? NaN) - (constantOf(from) ?? NaN));
-  const grid = c.grids?.get(actuator)?.step ?? 0;
-  if (span === 0) {
-    const message = 'The survey begins and ends at the same value: give it a span to look at.';
-    c.faults.error('survey-span', step.id, 'parameters.to', message);
-  } else if (span / (points - 1) < grid) {
-    const message = `The points lie closer than the actuator's grid of ${withUnit(c, actuator, grid)}: take fewer points.`;
-    c.faults.warning('points-below-grid', step.id, 'parameters.points', message);
+  const { actuators, averageS } = step.parameters;
+  actuators.forEach((_, index) => checkRange(c, step, index));
+  const visits = actuators.reduce((n, { points, isUpAndDown }) => n * points * (isUpAndDown ? 2 : 1), 1);
+  if (visits > visitsMax) {
+    const message = `The survey has ${visits} visits, ${visitsMax} are the most: take fewer points.`;
+    c.faults.error('survey-too-large', step.id, 'parameters.actuators', message);
   }
   if (averageS * 1000 < 2 * c.rig.periodMs) {
     const message = 'The averaging time is shorter than two scans: the scatter of a point cannot be known.';
@@ -82,26 +79,20 @@ function checkSurvey(c: PreflightCase, step: StepOf<'survey'>): void {
   }
 }
 
-function checkSeekBox(c: PreflightCase, step: StepOf<'seek'>): void {
-  const { actuator, min, max, ditherAmplitude } = step.parameters;
-  if (min !== null) checkInside(c, step, 'parameters.min', actuator, min);
-  if (max !== null) checkInside(c, step, 'parameters.max', actuator, max);
-  if (min !== null && max !== null && min >= max) {
-    c.faults.error(
-      'seek-box',
-      step.id,
-      'parameters.min',
-      'The lower end of the box must be below its upper end.',
-    );
-    return;
-  }
-  const limit = limitOf(c, actuator);
-  const amplitude = constantOf(ditherAmplitude);
-  if (!limit || amplitude === null) return;
-  const low = Math.max(min ?? -Infinity, limit.min + amplitude);
-  const high = Math.min(max ?? Infinity, limit.max - amplitude);
-  if (low >= high) {
-    const message = 'With the dither kept inside the envelope no room is left to seek in: widen the box.';
-    c.faults.error('seek-box', step.id, 'parameters.min', message);
+function checkRange(c: PreflightCase, step: StepOf<'survey'>, index: number): void {
+  const range = step.parameters.actuators[index];
+  if (!range) return;
+  const { channel, from, to, points } = range;
+  const place = `parameters.actuators[${index}]`;
+  checkInside(c, step, `${place}.from`, channel, from);
+  checkInside(c, step, `${place}.to`, channel, to);
+  const span = Math.abs((constantOf(to) ?? NaN) - (constantOf(from) ?? NaN));
+  const grid = c.grids?.get(channel)?.step ?? 0;
+  if (span === 0) {
+    const message = 'The survey begins and ends at the same value: give it a span to look at.';
+    c.faults.error('survey-span', step.id, `${place}.to`, message);
+  } else if (span / (points - 1) < grid) {
+    const message = `The points lie closer than the actuator's grid of ${withUnit(c, channel, grid)}: take fewer points.`;
+    c.faults.warning('points-below-grid', step.id, `${place}.points`, message);
   }
 }

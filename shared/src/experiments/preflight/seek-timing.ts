@@ -1,97 +1,125 @@
 import type { StepOf } from '../experiment.schema.js';
+import type { NumericParameter } from '../numeric-parameter.schema.js';
+import { lawFields } from '../seek/law-form.js';
+import { isPeriodic } from '../seek/seek-fields.js';
+import type { LawParameter } from '../seek/seek-parameters.schema.js';
 import { constantOf } from '../step-parameters.js';
 import type { PreflightCase } from './fault-list.js';
-import { limitOf, withUnit } from './limits.js';
 
 type Seek = StepOf<'seek'>;
 
-/** Dither, filters and times of Seek, as far as they are known before the run. */
-export function checkSeekTiming(c: PreflightCase): void {
-  for (const step of c.graph.steps) {
-    if (step.kind !== 'seek') continue;
-    checkPositive(c, step);
-    checkAmplitude(c, step);
-    checkFilters(c, step);
-    const periodS = constantOf(step.parameters.ditherPeriodS);
-    if (periodS === null || !(periodS > 0)) continue;
-    checkPeriod(c, step, periodS);
-    checkEnds(c, step, periodS);
-  }
+/** Dither, filters, adaptation and times of a Seek against each other and the scan. */
+export function checkSeekTiming(c: PreflightCase, step: Seek): void {
+  checkFilters(c, step);
+  checkDwell(c, step);
+  const periodsS = knownPeriodsS(step);
+  periodsS.forEach((periodS, index) => {
+    if (periodS !== null) checkPeriod(c, step, index, periodS);
+  });
+  checkAdaptation(c, step, periodsS);
+  const slowestS = slowestTrialS(step, periodsS);
+  if (slowestS !== null) checkEnds(c, step, slowestS);
 }
 
-function checkPositive(c: PreflightCase, step: Seek): void {
-  for (const name of ['ditherAmplitude', 'ditherPeriodS', 'gain'] as const) {
-    const value = constantOf(step.parameters[name]);
-    if (value !== null && value <= 0) {
-      c.faults.error('not-positive', step.id, `parameters.${name}`, 'This must be above zero.');
-    }
-  }
+/** Dither period of each actuator, s; null where there is none or it is not known yet. */
+export function knownPeriodsS(step: Seek): (number | null)[] {
+  const { law, actuators } = step.parameters;
+  if (!isPeriodic(law.id)) return actuators.map(() => null);
+  return actuators.map(({ periodS }) => {
+    const value = periodS === null ? null : constantOf(periodS);
+    return value !== null && value > 0 ? value : null;
+  });
 }
 
-function checkAmplitude(c: PreflightCase, step: Seek): void {
-  const { actuator, ditherAmplitude, ditherPeriodS } = step.parameters;
-  const amplitude = constantOf(ditherAmplitude);
-  if (amplitude === null) return;
-  const field = 'parameters.ditherAmplitude';
-  const grid = c.grids?.get(actuator)?.step ?? 0;
-  if (amplitude > 0 && amplitude < grid) {
-    const message = `The dither is smaller than the actuator's grid of ${withUnit(c, actuator, grid)}: make it larger.`;
-    c.faults.error('dither-below-grid', step.id, field, message);
-  }
-  const limit = limitOf(c, actuator);
-  if (!limit) return;
-  if (amplitude > limit.ditherAmplitudeMax) {
-    const most = withUnit(c, actuator, limit.ditherAmplitudeMax);
-    const message = `The envelope allows a dither amplitude of ${most} at most: make it smaller.`;
-    c.faults.error('dither-above-envelope', step.id, field, message);
-  }
-  const periodS = constantOf(ditherPeriodS) ?? Infinity;
-  const ratePerS = (amplitude * 2 * Math.PI) / periodS;
-  if (periodS > 0 && ratePerS > limit.slewPerS) {
-    const rates = `${withUnit(c, actuator, ratePerS)} a second, the slew limit is ${withUnit(c, actuator, limit.slewPerS)}`;
-    const message = `The dither would move at up to ${rates}: make it smaller or slower.`;
-    c.faults.error('dither-slew', step.id, field, message);
-  }
+/** A parameter of the law that is known to be a number before the run; null where the law has none or it is not. */
+export function lawNumber(step: Seek, name: string): number | null {
+  const { id, parameters } = step.parameters.law;
+  if (!lawFields(id).some((field) => field.name === name)) return null;
+  const parameter: LawParameter | undefined = parameters[name];
+  const isNumeric = typeof parameter === 'number' || (typeof parameter === 'object' && parameter !== null);
+  return isNumeric ? constantOf(parameter as NumericParameter) : null;
+}
+
+/** The longest dither period, or the trial of a law that dwells, s. */
+function slowestTrialS(step: Seek, periodsS: readonly (number | null)[]): number | null {
+  const known = periodsS.filter((periodS) => periodS !== null);
+  if (known.length > 0) return Math.max(...known);
+  const dwellS = lawNumber(step, 'dwellS');
+  return dwellS === null ? null : 2 * dwellS;
 }
 
 function checkFilters(c: PreflightCase, step: Seek): void {
-  const { washoutRatio, lowPassRatio } = step.parameters;
+  const washout = lawNumber(step, 'washoutRatio');
+  const lowPass = lawNumber(step, 'lowPassRatio');
   const faster = 'its corner should lie below the dither frequency (ratio below 1)';
-  if (washoutRatio >= 1) {
-    const message = `The washout takes away part of the dither's answer: ${faster}.`;
-    c.faults.warning('washout-ratio', step.id, 'parameters.washoutRatio', message);
+  const warn = (code: string, name: string, message: string) =>
+    c.faults.warning(code, step.id, `parameters.law.parameters.${name}`, message);
+  if (washout !== null && washout >= 1) {
+    warn('washout-ratio', 'washoutRatio', `The washout takes away part of the dither's answer: ${faster}.`);
   }
   // Its time constant is 1/(2π·ratio) dither periods.
-  if (washoutRatio < 1 / (20 * Math.PI)) {
+  if (washout !== null && washout < 1 / (20 * Math.PI)) {
     const message =
       'The washout needs more than ten dither periods to forget a change: make its ratio larger.';
-    c.faults.warning('washout-slow', step.id, 'parameters.washoutRatio', message);
+    warn('washout-slow', 'washoutRatio', message);
   }
-  if (lowPassRatio >= 1) {
-    const message = `The low-pass lets the dither through to the estimate: ${faster}.`;
-    c.faults.warning('low-pass-ratio', step.id, 'parameters.lowPassRatio', message);
+  if (lowPass !== null && lowPass >= 1) {
+    warn(
+      'low-pass-ratio',
+      'lowPassRatio',
+      `The low-pass lets the dither through to the estimate: ${faster}.`,
+    );
   }
 }
 
-function checkPeriod(c: PreflightCase, step: Seek, periodS: number): void {
+function checkDwell(c: PreflightCase, step: Seek): void {
+  const dwellS = lawNumber(step, 'dwellS');
+  if (dwellS === null) return;
+  const scans = ((dwellS - (lawNumber(step, 'settleS') ?? 0)) * 1000) / c.rig.periodMs;
+  if (scans >= 2) return;
+  const message =
+    'Fewer than two scans of each dwell are used: make the dwell longer or the settling shorter.';
+  c.faults.warning('dwell-too-short', step.id, 'parameters.law.parameters.dwellS', message);
+}
+
+function checkPeriod(c: PreflightCase, step: Seek, index: number, periodS: number): void {
   const scans = (periodS * 1000) / c.rig.periodMs;
-  const field = 'parameters.ditherPeriodS';
+  const field = `parameters.actuators[${index}].periodS`;
   const found = `The dither has ${Number(scans.toPrecision(3))} scans a period`;
   if (scans < 4) {
-    c.faults.error(
-      'dither-too-fast',
-      step.id,
-      field,
-      `${found}, at least 4 are needed: make the period longer.`,
-    );
+    const message = `${found}, at least 4 are needed: make the period longer.`;
+    c.faults.error('dither-too-fast', step.id, field, message);
   } else if (scans < 8) {
-    c.faults.warning(
-      'dither-fast',
-      step.id,
-      field,
-      `${found}, above an eighth of the scan rate: 8 or more are better.`,
-    );
+    const message = `${found}, above an eighth of the scan rate: 8 or more are better.`;
+    c.faults.warning('dither-fast', step.id, field, message);
   }
+}
+
+/** Adaptation must be slower than the dither by this, in rad: what the averaging of a law rests on. */
+const adaptationShare = 0.1;
+
+function checkAdaptation(c: PreflightCase, step: Seek, periodsS: readonly (number | null)[]): void {
+  const known = periodsS.filter((periodS) => periodS !== null);
+  if (known.length === 0) return;
+  const mostPerS = (adaptationShare * 2 * Math.PI) / Math.max(...known);
+  const most = `${Number(mostPerS.toPrecision(3))} a second at most`;
+  for (const name of ['rate', 'inverseRate']) {
+    const rate = lawNumber(step, name);
+    if (rate === null || rate <= mostPerS) continue;
+    const message = `The law would adapt faster than a tenth of its slowest dither: ${most}, or faster dithers.`;
+    c.faults.warning('adaptation-fast', step.id, `parameters.law.parameters.${name}`, message);
+  }
+  step.parameters.actuators.forEach(({ speedMax, amplitude }, index) => {
+    const speed = speedMax === null ? null : constantOf(speedMax);
+    const size = constantOf(amplitude);
+    const periodS = periodsS[index];
+    if (speed === null || size === null || typeof periodS !== 'number') return;
+    // In a tenth of the dither's own speed, 2πa/T, there are 0.63 amplitudes a period.
+    if (speed <= (adaptationShare * 2 * Math.PI * size) / periodS) return;
+    const message =
+      'The estimate may move faster than a tenth of the dither does: the law cannot tell the two apart then.';
+    c.faults.warning('adaptation-fast', step.id, `parameters.actuators[${index}].speedMax`, message);
+  });
 }
 
 function checkEnds(c: PreflightCase, step: Seek, periodS: number): void {

@@ -5,8 +5,10 @@ import { parseUnit } from '../../units/parse-unit.js';
 import { isSameUnit, unitText, type Unit } from '../../units/unit.js';
 import { objectiveSymbol } from '../expression-symbols.js';
 import type { Step } from '../experiment.schema.js';
+import { lawFields } from '../seek/law-form.js';
+import { actuatorFieldName, seekActuatorFields } from '../seek/seek-fields.js';
 import { resultNames } from '../step-kinds.js';
-import { conditionFields, numericFields } from '../step-parameters.js';
+import { conditionFields, numericFields, valueFields } from '../step-parameters.js';
 import type { PreflightCase } from './fault-list.js';
 
 /**
@@ -40,7 +42,9 @@ export function checkUnits(c: PreflightCase): void {
       if (typeof parameter === 'number') continue;
       judge(step, field, parameter.expression, wantedUnit(step, field, channels));
     }
-    for (const { field, text } of conditionFields(step)) judge(step, field, text, null);
+    for (const { field, text } of [...conditionFields(step), ...valueFields(step)]) {
+      judge(step, field, text, null);
+    }
   }
 }
 
@@ -75,24 +79,34 @@ function resultUnits(
 ): [string, Unit | null][] {
   return resultNames(step).map((name) => {
     const suffix = name.slice(step.id.length + 1);
+    const [stem = '', channel] = suffix.split('.');
     if (suffix.endsWith('durationS')) return [name, seconds];
     if (suffix === 'mean' && step.kind === 'settle') {
       return [name, channels.get(step.parameters.channel) ?? null];
     }
-    if (/^(best\.)?objective(AtStart)?$|^hysteresis$/.test(suffix)) return [name, objective];
-    if (suffix.startsWith('best.')) return [name, channels.get(suffix.slice('best.'.length)) ?? null];
+    if (/^(best\.)?objective(AtStart)?$|^hysteresis$|^prominence$|^noise$/.test(suffix))
+      return [name, objective];
+    if (/^best$|^backlash(Error)?$/.test(stem) && channel !== undefined)
+      return [name, channels.get(channel) ?? null];
     return [name, suffix.startsWith('is') || suffix === 'peaks' ? pure : null];
   });
 }
 
 /** The unit that a numeric parameter is taken in; null where it is not judged. */
 function wantedUnit(step: Step, field: string, channels: ReadonlyMap<string, Unit>): Unit | null {
-  if (field === 'parameters.ditherPeriodS') return seconds;
-  if (step.kind === 'move') {
-    const index = Number(/\[(\d+)\]/.exec(field)?.[1]);
-    return channels.get(step.parameters.targets[index]?.channel ?? '') ?? null;
-  }
-  const isInActuatorUnit = step.kind === 'survey' || field === 'parameters.ditherAmplitude';
-  const isSteering = step.kind === 'survey' || step.kind === 'seek';
-  return isInActuatorUnit && isSteering ? (channels.get(step.parameters.actuator) ?? null) : null;
+  const [, index, rest = ''] = /\[(\d+)\]\.(.*)$/.exec(field) ?? [];
+  const at = Number(index ?? NaN);
+  if (step.kind === 'move') return channels.get(step.parameters.targets[at]?.channel ?? '') ?? null;
+  if (step.kind === 'survey') return channels.get(step.parameters.actuators[at]?.channel ?? '') ?? null;
+  if (step.kind !== 'seek') return null;
+  const { law, actuators } = step.parameters;
+  const actuator = field.startsWith('parameters.actuators') ? actuators[at] : undefined;
+  const ofActuator = channels.get(actuator?.channel ?? '') ?? null;
+  if (rest === 'min' || rest === 'max') return ofActuator;
+  const [name = ''] = /[^.]+$/.exec(field) ?? [];
+  const form = actuator
+    ? seekActuatorFields(law.id).find((one) => actuatorFieldName(one) === rest)
+    : lawFields(law.id).find((one) => one.name === name);
+  if (form?.unit === 's') return seconds;
+  return form?.unit === 'actuator unit' ? ofActuator : null;
 }

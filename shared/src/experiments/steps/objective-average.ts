@@ -37,4 +37,10 @@ export class ObjectiveAverage {
   get standardError(): number {
     return this.isValid ? this.valid.standardError : this.good.standardError;
   }
+
+  /** Squared deviations of the valid values from their mean, and how many are free to deviate. */
+  get scatter(): { squares: number; freedom: number } {
+    const freedom = Math.max(0, this.valid.count - 1);
+    return { squares: freedom > 0 ? this.valid.variance * freedom : 0, freedom };
+  }
 }

@@ -1,26 +1,27 @@
 import type { StepOf } from '../experiment.schema.js';
 import type { SequencerInput } from '../sequencer.types.js';
+import { readSurvey, type SurveyFindings, type SurveyMeasurement } from '../survey/read-survey.js';
+import { planSurvey, type SurveyedRange, type SurveyVisit } from '../survey/survey-plan.js';
 import { ActuatorRamp } from './actuator-ramp.js';
 import { numericValue, type CompileStepExpression, type NumericValue } from './compile-step-expression.js';
 import { ObjectiveAverage } from './objective-average.js';
 import { done, isOver, noSignals, type StepExit, type StepRunner, type StepServices } from './step-runner.js';
-import { judgeSurvey, type SurveyPoint } from './survey-landscape.js';
-import { planSurvey, type Branch, type SurveyVisit } from './survey-plan.js';
 
 /**
- * Maps the objective over one actuator. At each value it moves at the slew limit, settles, and averages the
- * objective; it ends where its last visit was. A value is valid where nine tenths of its scans were.
+ * Maps the objective over one actuator or two. At each point it moves at the slew limit, settles, and averages the
+ * objective; it ends where its last visit was. A point is valid where nine tenths of its scans were.
  */
 export class SurveyRunner implements StepRunner {
   readonly id: string;
   readonly kind = 'survey';
   readonly signalNames = [];
   readonly signals = noSignals;
-  private readonly from: NumericValue;
-  private readonly to: NumericValue;
+  private readonly ends: readonly { from: NumericValue; to: NumericValue }[];
   private readonly ramp: ActuatorRamp;
   private readonly average = new ObjectiveAverage();
-  private readonly measured: Record<Branch, SurveyPoint[]> = { up: [], down: [] };
+  private readonly measured: SurveyMeasurement[] = [];
+  private readonly scatter = { squares: 0, freedom: 0 };
+  private ranges: SurveyedRange[] = [];
   private visits: SurveyVisit[] = [];
   private at = 0;
   private phase: 'moving' | 'settling' | 'averaging' = 'moving';
@@ -32,20 +33,28 @@ export class SurveyRunner implements StepRunner {
     compile: CompileStepExpression,
   ) {
     this.id = settings.id;
-    this.from = numericValue(compile, this.id, 'parameters.from', settings.parameters.from);
-    this.to = numericValue(compile, this.id, 'parameters.to', settings.parameters.to);
+    this.ends = settings.parameters.actuators.map(({ from, to }, i) => ({
+      from: numericValue(compile, this.id, `parameters.actuators[${i}].from`, from),
+      to: numericValue(compile, this.id, `parameters.actuators[${i}].to`, to),
+    }));
     this.ramp = new ActuatorRamp(services);
   }
 
   begin(input: SequencerInput): StepExit | null {
-    const { points, isUpAndDown } = this.settings.parameters;
-    const from = this.from(this.services.lookup);
-    const to = this.to(this.services.lookup);
+    const { lookup } = this.services;
+    this.ranges = this.settings.parameters.actuators.map(({ points, isUpAndDown }, i) => ({
+      from: this.ends[i]?.from(lookup) ?? NaN,
+      to: this.ends[i]?.to(lookup) ?? NaN,
+      points,
+      isUpAndDown,
+    }));
     // Written so that an end which is no number has no span either.
-    if (!(Math.abs(to - from) > 0)) return failed(`There is nothing to survey from ${from} to ${to}.`);
-    this.measured.up.length = 0;
-    this.measured.down.length = 0;
-    this.visits = planSurvey(from, to, points, isUpAndDown);
+    const empty = this.ranges.find(({ from, to }) => !(Math.abs(to - from) > 0));
+    if (empty) return failed(`There is nothing to survey from ${empty.from} to ${empty.to}.`);
+    this.measured.length = 0;
+    this.scatter.squares = 0;
+    this.scatter.freedom = 0;
+    this.visits = planSurvey(this.ranges);
     this.at = 0;
     return this.beginVisit(input);
   }
@@ -73,6 +82,10 @@ export class SurveyRunner implements StepRunner {
     return this.visits[this.at] as SurveyVisit;
   }
 
+  private get channels(): string[] {
+    return this.settings.parameters.actuators.map(({ channel }) => channel);
+  }
+
   private enter(phase: SurveyRunner['phase']): void {
     this.phase = phase;
     this.phaseS = 0;
@@ -80,47 +93,74 @@ export class SurveyRunner implements StepRunner {
   }
 
   private beginVisit(input: SequencerInput): StepExit | null {
-    const { actuator } = this.settings.parameters;
     this.enter('moving');
-    const reason = this.ramp.begin(input, [{ channel: actuator, value: this.visit.target }], 0);
+    const targets = this.visit.map(({ target }, i) => ({ channel: this.channels[i] ?? '', value: target }));
+    const reason = this.ramp.begin(input, targets, 0);
     return reason === null ? null : failed(reason);
   }
 
   private giveUpWaiting(input: SequencerInput): StepExit | null {
     this.phaseS += input.dtS;
     if (!this.ramp.isOverdue(this.phaseS)) return null;
-    return failed(`"${this.settings.parameters.actuator}" did not come to ${this.visit.target}.`);
+    const wanted = this.visit.map(({ target }, i) => `"${this.channels[i]}" did not come to ${target}`);
+    return failed(`${wanted.join(', or ')}.`);
   }
 
   private note(input: SequencerInput): void {
-    const { actuator } = this.settings.parameters;
-    const { branch, index } = this.visit;
-    const { mean, standardError, isValid } = this.average;
-    const applied = input.applied(actuator);
-    const value = Number.isFinite(applied) ? applied : this.visit.target;
-    this.measured[branch][index] = { value, objective: mean, standardError, isValid };
+    const { mean, standardError, isValid, scatter } = this.average;
+    const applied = this.visit.map(({ target }, i) => {
+      const value = input.applied(this.channels[i] ?? '');
+      return Number.isFinite(value) ? value : target;
+    });
+    this.measured.push({ visit: this.visit, applied, objective: mean, standardError, isValid });
+    this.scatter.squares += scatter.squares;
+    this.scatter.freedom += scatter.freedom;
+    const [first, second] = this.visit.map(({ branch }, i) => ({
+      actuator: this.channels[i] ?? '',
+      value: applied[i] ?? NaN,
+      branch,
+    }));
+    if (!first) return;
     this.services.emit({
       type: 'survey.point-measured',
       step: this.id,
-      actuator,
-      value,
+      ...first,
       objective: Number.isFinite(mean) ? mean : null,
       standardError: Number.isFinite(standardError) ? standardError : null,
-      branch,
       isValid,
+      ...(second ? { second } : {}),
     });
   }
 
   private conclude(): StepExit {
     const direction = this.services.objective?.direction ?? 'maximise';
-    const findings = judgeSurvey(this.measured.up, this.measured.down, direction);
+    const findings = readSurvey(this.ranges, this.measured, direction, this.settings.parameters.choose);
     if (!findings) return failed('The objective was valid nowhere.');
-    const { actuator } = this.settings.parameters;
-    this.services.setResult(this.id, `best.${actuator}`, findings.best.value);
-    this.services.setResult(this.id, 'best.objective', findings.best.objective);
-    this.services.setResult(this.id, 'hysteresis', findings.hysteresis);
-    this.services.setResult(this.id, 'peaks', findings.peaks);
+    this.leaveResults(findings);
     return done;
+  }
+
+  private leaveResults({
+    best,
+    peaks,
+    prominence,
+    curvatures,
+    hysteresis,
+    backlashes,
+  }: SurveyFindings): void {
+    const leave = (suffix: string, value: number) => this.services.setResult(this.id, suffix, value);
+    this.channels.forEach((channel, i) => {
+      leave(`best.${channel}`, best.values[i] ?? NaN);
+      leave(`curvature.${channel}`, Math.abs(curvatures[i]?.value ?? NaN));
+      leave(`curvatureError.${channel}`, curvatures[i]?.standardError ?? NaN);
+      leave(`backlash.${channel}`, backlashes[i]?.value ?? NaN);
+      leave(`backlashError.${channel}`, backlashes[i]?.standardError ?? NaN);
+    });
+    leave('best.objective', best.objective);
+    leave('peaks', peaks);
+    leave('prominence', prominence);
+    leave('hysteresis', hysteresis);
+    leave('noise', Math.sqrt(this.scatter.squares / this.scatter.freedom));
   }
 }
 

@@ -45,6 +45,14 @@ export const seekForS = 300;
 /** Least gain that passes, points of efficiency. */
 const leastGain = 2;
 
+const {
+  ditherAmplitude: amplitude,
+  ditherPeriodS: periodS,
+  washoutRatio,
+  lowPassRatio,
+  ...seeking
+} = burnerSeeking;
+
 export const burnerExperiment: ExperimentInput = {
   title: 'Find and hold the best air trim',
   objectiveId: null,
@@ -57,13 +65,9 @@ export const burnerExperiment: ExperimentInput = {
         title: 'Look at the landscape',
         ...at(220, 120),
         parameters: {
-          actuator: 'airTrim',
-          from: 14,
-          to: 62,
-          points: 13,
+          actuators: [{ channel: 'airTrim', from: 14, to: 62, points: 13, isUpAndDown: true }],
           settleS: 0.8,
           averageS: 0.6,
-          isUpAndDown: true,
         },
       },
       {
@@ -86,9 +90,8 @@ export const burnerExperiment: ExperimentInput = {
         title: 'Seek and hold the best',
         ...at(940, 120),
         parameters: {
-          actuator: 'airTrim',
-          law: 'gradient',
-          ...burnerSeeking,
+          law: { id: 'gradient', parameters: { washoutRatio, lowPassRatio } },
+          actuators: [{ channel: 'airTrim', amplitude, periodS, ...seeking }],
           end: { afterS: seekForS, whenConverged: null, when: null },
           invalidForS: 10,
         },

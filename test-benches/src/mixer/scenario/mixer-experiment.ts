@@ -42,6 +42,14 @@ export const mixerSeeking = {
   max: 94,
 } as const;
 
+const {
+  ditherAmplitude: amplitude,
+  ditherPeriodS: periodS,
+  washoutRatio,
+  lowPassRatio,
+  ...seeking
+} = mixerSeeking;
+
 export const seekForS = 300;
 
 /** The way of both experiments: look at all hills, climb the best, hold it. */
@@ -64,13 +72,9 @@ function findHill(
           title: 'Look at all hills',
           ...at(220, 120),
           parameters: {
-            actuator: 'distributor',
-            from: 6,
-            to: 94,
-            points: 23,
+            actuators: [{ channel: 'distributor', from: 6, to: 94, points: 23, isUpAndDown: false }],
             settleS: 7,
             averageS: 1,
-            isUpAndDown: false,
           },
         },
         {
@@ -97,10 +101,8 @@ function findHill(
           title: 'Seek and hold the best',
           ...at(940, 120),
           parameters: {
-            actuator: 'distributor',
-            law: 'gradient',
-            ...mixerSeeking,
-            gain,
+            law: { id: 'gradient', parameters: { washoutRatio, lowPassRatio } },
+            actuators: [{ channel: 'distributor', amplitude, periodS, gain, ...seeking }],
             end: { afterS: seekForS, whenConverged: null, when: null },
             invalidForS: 30,
           },

@@ -7,13 +7,19 @@ import {
   type ExperimentVersion,
   type RunSummary,
 } from '../../../api/index.js';
+import { contentBody } from './content-body.js';
 import { experimentKeys } from './experiment-queries.js';
+
+interface NewExperiment {
+  rigId: string;
+  content: ExperimentContent;
+}
 
 export function useCreateExperiment() {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: { rigId: string; content: ExperimentContent }): Promise<ExperimentSummary> =>
-      answerOf(client.POST('/api/v1/experiments', { body })),
+    mutationFn: ({ rigId, content }: NewExperiment): Promise<ExperimentSummary> =>
+      answerOf(client.POST('/api/v1/experiments', { body: { rigId, content: contentBody(content) } })),
     onSuccess: () => queryClient.invalidateQueries({ queryKey: experimentKeys.all }),
   });
 }
@@ -28,8 +34,10 @@ interface NewVersion {
 export function useSaveVersion(id: string) {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: NewVersion): Promise<ExperimentVersion> =>
-      answerOf(client.POST('/api/v1/experiments/{id}/versions', { params: { path: { id } }, body })),
+    mutationFn: ({ content, ...version }: NewVersion): Promise<ExperimentVersion> => {
+      const body = { ...version, content: contentBody(content) };
+      return answerOf(client.POST('/api/v1/experiments/{id}/versions', { params: { path: { id } }, body }));
+    },
     onSettled: () => queryClient.invalidateQueries({ queryKey: experimentKeys.all }),
   });
 }

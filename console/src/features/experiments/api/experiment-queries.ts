@@ -1,6 +1,7 @@
 import { keepPreviousData, queryOptions, useQuery } from '@tanstack/react-query';
 import type { ExperimentContent, PreflightFault } from '@cresthold/shared';
 import { answerOf, client, type ExperimentSummary, type ExperimentVersion } from '../../../api/index.js';
+import { contentBody } from './content-body.js';
 
 export const experimentKeys = {
   all: ['experiments'] as const,
@@ -63,7 +64,8 @@ export function usePreflight(rigId: string, content: ExperimentContent) {
     placeholderData: keepPreviousData,
     gcTime: 10_000,
     queryFn: async ({ signal }): Promise<PreflightFault[]> => {
-      const call = client.POST('/api/v1/experiments/preflight', { body: { rigId, content }, signal });
+      const body = { rigId, content: contentBody(content) };
+      const call = client.POST('/api/v1/experiments/preflight', { body, signal });
       return (await answerOf(call)).faults;
     },
   });

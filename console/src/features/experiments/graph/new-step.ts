@@ -1,4 +1,4 @@
-import type { ExperimentGraph, Rig, Step, StepKind } from '@cresthold/shared';
+import type { ExperimentGraph, Rig, SeekActuator, Step, StepKind, SurveyActuator } from '@cresthold/shared';
 
 /** What a fresh step takes its first values from. */
 export interface StepDefaults {
@@ -50,13 +50,10 @@ export function newStep(
         kind,
         ...base,
         parameters: {
-          actuator,
-          from: tidy(range.min + 0.1 * span),
-          to: tidy(range.max - 0.1 * span),
-          points: 9,
+          actuators: [newSurveyActuator(actuator, range)],
           settleS: 3,
           averageS: 2,
-          isUpAndDown: true,
+          choose: 'highest',
         },
       };
     case 'seek':
@@ -64,16 +61,10 @@ export function newStep(
         kind,
         ...base,
         parameters: {
-          actuator,
-          law: 'gradient',
-          ditherAmplitude: tidy(span / 50),
-          ditherPeriodS: 5,
-          washoutRatio: 0.3,
-          lowPassRatio: 0.3,
-          gain: 1,
-          phaseDeg: 0,
-          min: null,
-          max: null,
+          law: { id: 'gradient', parameters: { washoutRatio: 0.3, lowPassRatio: 0.3, taper: null } },
+          actuators: [newSeekActuator(actuator, range)],
+          constraint: null,
+          wideSearch: null,
           end: { afterS: 300, whenConverged: null, when: null },
           invalidForS: 30,
         },
@@ -81,6 +72,34 @@ export function newStep(
     case 'check':
       return { kind, ...base, parameters: { criterion: 'objective > 0' } };
   }
+}
+
+interface Range {
+  min: number;
+  max: number;
+}
+
+/** A survey's actuator over the middle four fifths of its range. */
+export function newSurveyActuator(channel: string, { min, max }: Range): SurveyActuator {
+  const margin = 0.1 * (max - min);
+  return { channel, from: tidy(min + margin), to: tidy(max - margin), points: 9, isUpAndDown: true };
+}
+
+/** A seek's actuator with a dither of a fiftieth of its range. */
+export function newSeekActuator(channel: string, { min, max }: Range): SeekActuator {
+  return {
+    channel,
+    min: null,
+    max: null,
+    amplitude: tidy((max - min) / 50),
+    periodS: 5,
+    phaseDeg: 0,
+    dither: null,
+    measuredChannel: null,
+    gain: 1,
+    speedMax: null,
+    own: {},
+  };
 }
 
 /** @returns the kind itself, or the kind with the first free number from 2 */
@@ -97,7 +116,8 @@ function firstOf(rig: Rig, kind: 'actuator' | 'sensor'): string {
   return rig.channels.find((channel) => channel.kind === kind)?.id ?? '';
 }
 
-function rangeFor(channelId: string, defaults: StepDefaults): { min: number; max: number } {
+/** Where an actuator may go: by the envelope in force, or as it is shown where there is none. */
+export function rangeFor(channelId: string, defaults: StepDefaults): { min: number; max: number } {
   const display = defaults.rig.channels.find((channel) => channel.id === channelId)?.display;
   return defaults.rangeOf(channelId) ?? display ?? { min: 0, max: 1 };
 }

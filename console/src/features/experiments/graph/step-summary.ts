@@ -1,4 +1,4 @@
-import type { NumericParameter, Rig, Step } from '@cresthold/shared';
+import { seekingLaws, type NumericParameter, type Rig, type Step } from '@cresthold/shared';
 
 const shown = (parameter: NumericParameter): string =>
   typeof parameter === 'number' ? String(parameter) : parameter.expression;
@@ -26,16 +26,26 @@ export function stepSummary(step: Step, rig: Rig): string[] {
       ];
     case 'hold':
       return [`${step.parameters.durationS} s`];
-    case 'survey':
+    case 'survey': {
+      const { actuators } = step.parameters;
+      const points = actuators.map((actuator) => actuator.points).join(' × ');
+      const isBack = actuators.some(({ isUpAndDown }) => isUpAndDown);
       return [
-        `${step.parameters.actuator} ${shown(step.parameters.from)} … ${shown(step.parameters.to)} ${unit(step.parameters.actuator)}`.trimEnd(),
-        `${step.parameters.points} points${step.parameters.isUpAndDown ? ', up and down' : ''}`,
+        ...actuators.map(({ channel, from, to }) =>
+          `${channel} ${shown(from)} … ${shown(to)} ${unit(channel)}`.trimEnd(),
+        ),
+        `${points} points${isBack ? ', up and down' : ''}`,
       ];
-    case 'seek':
+    }
+    case 'seek': {
+      const { law, actuators, end } = step.parameters;
       return [
-        `${step.parameters.actuator} ± ${shown(step.parameters.ditherAmplitude)} ${unit(step.parameters.actuator)}`.trimEnd(),
-        `period ${shown(step.parameters.ditherPeriodS)} s, ${step.parameters.end.afterS} s`,
+        `${seekingLaws[law.id].title}, ${end.afterS} s`,
+        ...actuators.map(({ channel, amplitude }) =>
+          `${channel} ± ${shown(amplitude)} ${unit(channel)}`.trimEnd(),
+        ),
       ];
+    }
     case 'check':
       return [step.parameters.criterion];
   }

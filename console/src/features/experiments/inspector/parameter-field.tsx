@@ -33,6 +33,7 @@ export function ParameterField(props: ParameterFieldProps) {
     case 'channel':
       return <ChannelField {...props} />;
     case 'numeric':
+    case 'optional-numeric':
     case 'expression':
     case 'optional-expression':
       return <ExpressionField {...props} />;
@@ -60,8 +61,8 @@ function useParameterText(props: ParameterFieldProps) {
 }
 
 function unitOf({ field, step, channels }: ParameterFieldProps): string {
-  if (field.unit === undefined || !field.unit.startsWith('@')) return field.unit ?? '';
-  const id = valueAt(step.parameters, [field.unit.slice(1)]);
+  if (typeof field.unit !== 'object') return field.unit ?? '';
+  const id = valueAt(step.parameters, field.unit.of);
   return channels.find((channel) => channel.id === id)?.unit ?? '';
 }
 

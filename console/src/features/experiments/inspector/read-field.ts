@@ -6,14 +6,20 @@ export type ReadOutcome = { isOk: true; value: unknown } | { isOk: false; messag
 
 const number = (text: string): number => Number(text.trim().replace('−', '-').replace(',', '.'));
 
+const ofOptional = {
+  'optional-number': 'number',
+  'optional-numeric': 'numeric',
+  'optional-expression': 'expression',
+} as const;
+
 /** What was typed into a field as the document's value. */
 export function readField(kind: StepField['kind'], text: string): ReadOutcome {
   const isEmpty = text.trim() === '';
   switch (kind) {
     case 'optional-number':
+    case 'optional-numeric':
     case 'optional-expression':
-      if (isEmpty) return { isOk: true, value: null };
-      return readField(kind === 'optional-number' ? 'number' : 'expression', text);
+      return isEmpty ? { isOk: true, value: null } : readField(ofOptional[kind], text);
     case 'number':
       if (isEmpty || !Number.isFinite(number(text))) return { isOk: false, message: 'Enter a number.' };
       return { isOk: true, value: number(text) };

@@ -11,6 +11,7 @@ export interface StepField {
     | 'number'
     | 'numeric'
     | 'optional-number'
+    | 'optional-numeric'
     | 'actuator'
     | 'channel'
     | 'switch'
@@ -19,8 +20,8 @@ export interface StepField {
     | 'optional-expression';
   path: ParameterPath;
   label: string;
-  /** `@actuator` stands for the unit of the step's actuator, `@channel` for that of its channel. */
-  unit?: string;
+  /** A unit, or where the channel stands whose unit it is. */
+  unit?: string | { of: ParameterPath };
   help?: string;
   whenOn?: unknown;
 }
@@ -31,6 +32,9 @@ const of = (
   label: string,
   more: Pick<StepField, 'unit' | 'help' | 'whenOn'> = {},
 ): StepField => ({ kind, path, label, ...more });
+
+const first = (name: string): ParameterPath => ['actuators', 0, name];
+const firstUnit = { of: first('channel') };
 
 /** The form of a step kind as data; targets of a Move have a form of their own. */
 export function stepFields(step: Step): StepField[] {
@@ -49,7 +53,7 @@ export function stepFields(step: Step): StepField[] {
     case 'settle':
       return [
         of('channel', ['channel'], 'Channel'),
-        of('number', ['band'], 'Band, peak to peak', { unit: '@channel' }),
+        of('number', ['band'], 'Band, peak to peak', { unit: { of: ['channel'] } }),
         of('number', ['forS'], 'Stays within it for', { unit: 's' }),
         of('number', ['timeoutS'], 'Give up after', { unit: 's' }),
       ];
@@ -57,13 +61,13 @@ export function stepFields(step: Step): StepField[] {
       return [of('number', ['durationS'], 'Time', { unit: 's' })];
     case 'survey':
       return [
-        of('actuator', ['actuator'], 'Actuator'),
-        of('numeric', ['from'], 'From', { unit: '@actuator' }),
-        of('numeric', ['to'], 'To', { unit: '@actuator' }),
-        of('number', ['points'], 'Points'),
+        of('actuator', first('channel'), 'Actuator'),
+        of('numeric', first('from'), 'From', { unit: firstUnit }),
+        of('numeric', first('to'), 'To', { unit: firstUnit }),
+        of('number', first('points'), 'Points'),
         of('number', ['settleS'], 'Settle at each for', { unit: 's' }),
         of('number', ['averageS'], 'Then average for', { unit: 's' }),
-        of('switch', ['isUpAndDown'], 'Up and down again', {
+        of('switch', first('isUpAndDown'), 'Up and down again', {
           help: 'The way back shows hysteresis and drift.',
         }),
       ];
@@ -90,31 +94,41 @@ const seekFields = (step: StepOf<'seek'>): StepField[] => [
 
 const convergenceFields: StepField[] = [
   of('number', ['end', 'whenConverged', 'band'], 'Converged within, peak to peak', {
-    unit: '@actuator',
+    unit: firstUnit,
     help: 'Of the estimate, averaged over whole dither periods.',
   }),
   of('number', ['end', 'whenConverged', 'forS'], 'Converged for', { unit: 's' }),
 ];
 
 const lawFields: StepField[] = [
-  of('actuator', ['actuator'], 'Actuator'),
-  of('numeric', ['ditherAmplitude'], 'Dither amplitude', {
-    unit: '@actuator',
+  of('actuator', first('channel'), 'Actuator'),
+  of('numeric', first('amplitude'), 'Dither amplitude', {
+    unit: firstUnit,
     help: 'Half of peak to peak.',
   }),
-  of('numeric', ['ditherPeriodS'], 'Dither period', {
+  of('numeric', first('periodS'), 'Dither period', {
     unit: 's',
     help: 'Slower than the plant, faster than the drift.',
   }),
-  of('numeric', ['gain'], 'Gain', { help: 'Actuator unit per second for each unit of slope.' }),
-  of('number', ['phaseDeg'], 'Demodulation lag', {
+  of('numeric', first('gain'), 'Gain', { help: 'Actuator unit per second for each unit of slope.' }),
+  of('numeric', first('phaseDeg'), 'Demodulation lag', {
     unit: '°',
     help: 'Lag of the plant less lead of the washout.',
   }),
-  of('number', ['washoutRatio'], 'Washout corner', { help: 'As a fraction of the dither frequency.' }),
-  of('number', ['lowPassRatio'], 'Low-pass corner', { help: 'As a fraction of the dither frequency.' }),
-  of('optional-number', ['min'], 'Not below', { unit: '@actuator', help: 'Empty: as the envelope says.' }),
-  of('optional-number', ['max'], 'Not above', { unit: '@actuator', help: 'Empty: as the envelope says.' }),
+  of('number', ['law', 'parameters', 'washoutRatio'], 'Washout corner', {
+    help: 'As a fraction of the dither frequency.',
+  }),
+  of('number', ['law', 'parameters', 'lowPassRatio'], 'Low-pass corner', {
+    help: 'As a fraction of the dither frequency.',
+  }),
+  of('optional-numeric', first('min'), 'Not below', {
+    unit: firstUnit,
+    help: 'Empty: as the envelope says.',
+  }),
+  of('optional-numeric', first('max'), 'Not above', {
+    unit: firstUnit,
+    help: 'Empty: as the envelope says.',
+  }),
   of('number', ['end', 'afterS'], 'Ends after', { unit: 's' }),
   of('presence', ['end', 'whenConverged'], 'Ends earlier when converged', {
     whenOn: { band: 1, forS: 60 },

@@ -1,5 +1,7 @@
 import {
   commandedActuators,
+  earlierEstimateColumn,
+  estimateColumn,
   type Channel,
   type ExperimentGraph,
   type Rig,
@@ -15,13 +17,26 @@ export interface ChartGroup {
   isMain: boolean;
 }
 
-/** The actuator that each Seek steers, by the step's id. */
-export function seekActuators(graph: ExperimentGraph): ReadonlyMap<string, string> {
+/** Actuators that each Seek steers, by the step's id. */
+export function seekActuators(graph: ExperimentGraph): ReadonlyMap<string, readonly string[]> {
   return new Map(
     graph.steps.flatMap((step) =>
-      step.kind === 'seek' ? [[step.id, step.parameters.actuator] as [string, string]] : [],
+      step.kind === 'seek'
+        ? [[step.id, step.parameters.actuators.map(({ channel }) => channel)] as const]
+        : [],
     ),
   );
+}
+
+/** The column that holds a Seek's estimate of an actuator; undefined where the run has none. */
+export function findEstimate(
+  columns: readonly RunColumn[],
+  step: string,
+  channel: string,
+): string | undefined {
+  // Runs of earlier releases, with one actuator, did not name it.
+  const names = [estimateColumn(step, channel), earlierEstimateColumn(step)];
+  return names.find((name) => columns.some((column) => column.name === name));
 }
 
 /**
@@ -54,12 +69,12 @@ function objectiveGroup(columns: readonly RunColumn[]): ChartGroup[] {
 function actuatorGroup(
   channel: Channel,
   columns: readonly RunColumn[],
-  actuatorOfStep: ReadonlyMap<string, string>,
+  actuatorsOfStep: ReadonlyMap<string, readonly string[]>,
 ): ChartGroup {
   const traces = [traceOf(channel, `${channel.id}.applied`, `${channel.title}, applied`, 0)];
-  for (const [step, actuator] of actuatorOfStep) {
-    const column = `${step}.estimate`;
-    if (actuator !== channel.id || !columns.some(({ name }) => name === column)) continue;
+  for (const [step, steered] of actuatorsOfStep) {
+    const column = steered.includes(channel.id) ? findEstimate(columns, step, channel.id) : undefined;
+    if (column === undefined) continue;
     traces.push(traceOf(channel, column, `${step}, estimate`, traces.length));
   }
   return { title: channel.title, traces, isMain: true };

@@ -3,9 +3,9 @@ import Box from '@mui/material/Box';
 import type { ExperimentGraph, Rig, RunColumn, RunEvent } from '@cresthold/shared';
 import { Panel, plainNumber } from '../../../components/index.js';
 import { useRunSamples } from '../api/run-queries.js';
-import { seekActuators } from '../charts/chart-groups.js';
+import { findEstimate, seekActuators } from '../charts/chart-groups.js';
 import { LandscapeChart } from './landscape-chart.js';
-import { landscapeActuator, seekBeganS, seekPath, surveyPoints } from './landscape-points.js';
+import { landscapeActuators, seekBeganS, seekPath, surveyPoints } from './landscape-points.js';
 
 interface LandscapePanelProps {
   runId: string;
@@ -18,8 +18,8 @@ interface LandscapePanelProps {
 
 /** The objective over the actuator as surveyed, and the way of the seek over it. */
 export function LandscapePanel(props: LandscapePanelProps) {
-  const actuator = landscapeActuator(props.graph);
-  if (actuator === null) return null;
+  const [actuator] = landscapeActuators(props.graph);
+  if (actuator === undefined) return null;
   return <Landscape {...props} actuator={actuator} />;
 }
 
@@ -34,8 +34,8 @@ function Landscape({
 }: LandscapePanelProps & { actuator: string }) {
   const points = useMemo(() => surveyPoints(events, actuator), [events, actuator]);
   const fromS = seekBeganS(events);
-  const step = [...seekActuators(graph)].find(([, steered]) => steered === actuator)?.[0];
-  const estimate = columns.find((column) => column.name === `${step}.estimate`)?.name;
+  const step = [...seekActuators(graph)].find(([, steered]) => steered.includes(actuator))?.[0];
+  const estimate = step === undefined ? undefined : findEstimate(columns, step, actuator);
   const asked = fromS === null || estimate === undefined ? [] : [estimate, 'objective'];
   const samples = useRunSamples(runId, { columns: asked, fromS, points: 300 }, isLive);
   const path =

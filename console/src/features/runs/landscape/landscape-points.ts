@@ -37,13 +37,13 @@ export function seekPath(samples: RunSamples, estimateColumn: string): PathPoint
   });
 }
 
-/** The actuator of the landscape: of the first Seek, or else of the first Survey. */
-export function landscapeActuator(graph: ExperimentGraph): string | null {
+/** The actuators of the landscape: of the first Seek, or else of the first Survey. */
+export function landscapeActuators(graph: ExperimentGraph): string[] {
   for (const kind of ['seek', 'survey'] as const) {
     for (const step of graph.steps) {
       if ((step.kind === 'seek' || step.kind === 'survey') && step.kind === kind)
-        return step.parameters.actuator;
+        return step.parameters.actuators.map(({ channel }) => channel);
     }
   }
-  return null;
+  return [];
 }
