@@ -3,6 +3,7 @@ import { couplingBench } from '../coupling/coupling-bench.js';
 import type { BenchDefinition } from '../kit/bench-definition.js';
 import { matcherBench } from '../matcher/matcher-bench.js';
 import { mixerBench } from '../mixer/mixer-bench.js';
+import { pulserBench } from '../pulser/pulser-bench.js';
 import { stringBench } from '../string/string-bench.js';
 
 /** All benches; each has its program at `dist/NAME/main.js`. */
@@ -11,5 +12,6 @@ export const benches: readonly BenchDefinition[] = [
   stringBench,
   couplingBench,
   matcherBench,
+  pulserBench,
   mixerBench,
 ];
