@@ -72,6 +72,11 @@ export default defineConfig(
     files: ['test-benches/src/**/*.ts'],
     rules: forbid('@cresthold/orchestrator*', '@cresthold/adapters*', '@cresthold/console*'),
   },
+  {
+    // As in .dependency-cruiser.cjs: tests and benchmarks read the benches by the product's own adapters.
+    files: ['test-benches/src/**/*.{test,fixture}.ts', 'test-benches/src/benchmarks/**/*.ts'],
+    rules: forbid('@cresthold/orchestrator*', '@cresthold/console*'),
+  },
   { files: ['orchestrator/src/rig-host/**/*.ts'], rules: forbid('@nestjs/*') },
   {
     files: ['console/src/**/*.{ts,tsx}'],

@@ -16,9 +16,10 @@ export async function openShippedRig(input: RigInput): Promise<OpenedRig> {
   const rig = rigSchema.parse(input);
   const [connection] = rig.connections;
   if (!connection) throw new Error('The rig has no connection.');
-  const { manifest, open } = new AdapterRegistry(shippedAdapters).find(connection.adapter);
+  const adapter = new AdapterRegistry(shippedAdapters).find(connection.adapter);
+  const { manifest } = adapter;
   const configuration = manifest.configurationSchema.parse(connection.configuration);
-  const session = await open(configuration, new AbortController().signal);
+  const session = await adapter.open(configuration, new AbortController().signal);
   const wired = rig.channels.filter((channel): channel is WiredChannel => channel.kind !== 'derived');
   const addresses = wired.map(({ address }) => manifest.addressSchema.parse(address));
   const plan = session.planRead(addresses);
