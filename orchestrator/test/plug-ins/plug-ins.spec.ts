@@ -6,6 +6,7 @@ import { ServerProcess } from '../harness/server-process.js';
 import { password } from '../harness/station.js';
 import { until } from '../harness/until.js';
 import { writeGuideFiles } from './guide-files.js';
+import { describeInjectedFaults } from './injected-faults.js';
 import { startTextDevice, type TextDevice } from './text-device.js';
 
 /** Broken in a different way each: what they are, and the reason that is told. */
@@ -93,9 +94,10 @@ const channel = (kind: string, id: string, name: string, isWritable: boolean) =>
   connection: 'bath',
   address: { name, isWritable },
 });
-const rig = (configuration: object) => ({
-  id: 'bath-1',
-  title: 'Bath 1',
+const rig = (configuration: object, id = 'bath-1') => ({
+  id,
+  title: id,
+  isBench: id === 'bench',
   periodMs: 50,
   connections: [{ id: 'bath', title: 'Bath', adapter: 'bath', configuration }],
   channels: [channel('sensor', 'temp', 'temp', false), channel('actuator', 'setpoint', 'setpoint', true)],
@@ -124,3 +126,16 @@ it('reads a rig through the plug-in, in the host of the rig', async () => {
   const { connections } = await client.get('rigs/bath-1/status');
   expect(connections).toEqual([{ id: 'bath', isConnected: true, error: null, injectedFault: null }]);
 }, 30_000);
+
+describe('a fault on a connection', () => {
+  beforeAll(async () => {
+    const configuration = { host: '127.0.0.1', port: device.port };
+    for (const id of ['bench', 'machine']) await client.expect(201, 'POST', 'rigs', rig(configuration, id));
+  });
+
+  describeInjectedFaults(() => ({
+    url: server.url,
+    dataFolder: join(folder, 'data'),
+    administrator: client,
+  }));
+});
