@@ -122,13 +122,23 @@ export class RigSession {
 
   async startRun(order: RunOrder): Promise<void> {
     await this.run.start(order, this.engine, this.envelope);
+    for (const { id, injectedFault } of this.wire.connectionStatus()) {
+      if (injectedFault !== null) this.noteFault(id, injectedFault.fault, injectedFault.by);
+    }
     this.publisher.requestStatus();
   }
 
   /** @throws rig.not-a-bench, connection.not-found, channel.not-found */
   setFault(connection: string, fault: WireFault | null, by: string): void {
     this.wire.setFault(connection, fault, by);
+    this.noteFault(connection, fault, by);
     this.publisher.requestStatus();
+  }
+
+  /** The record of a run says that its wire was made to fail. */
+  private noteFault(connection: string, fault: WireFault | null, by: string): void {
+    if (fault === null) this.run.note({ type: 'connection.fault-cleared', connection, by });
+    else this.run.note({ type: 'connection.fault-injected', connection, fault, by });
   }
 
   /** After a command: the next scan comes at once and tells the server. */

@@ -47,6 +47,7 @@ export class RunRecording implements ScanSink {
   private k = 0;
   private sequence = 0;
   private step = '';
+  private notes: RunEventBody[] = [];
   /** Indices of the rig's trace channels, and the readings that hold them while a run is open. */
   private readonly traceIndices: readonly number[];
   private readings: Readings | null = null;
@@ -89,10 +90,16 @@ export class RunRecording implements ScanSink {
     }
   }
 
+  /** Keeps something that happened beside the engine; it gets the time of the next scan of a run. */
+  note(body: RunEventBody): void {
+    if (this.isOpen) this.notes.push(body);
+  }
+
   /** @realtime but for the end of the run */
   onScan(_input: ScanInput, output: ScanOutput): void {
     if (this.runId === null) return;
     for (const event of output.events) this.addEvent(event);
+    if (output.runTS !== null && this.notes.length > 0) this.addNotes(output.runTS, _input.atMs);
     if (output.row !== null && output.runTS !== null) {
       this.k += 1;
       this.appendTraces();
@@ -123,6 +130,7 @@ export class RunRecording implements ScanSink {
       throw error;
     }
     this.runId = order.runId;
+    this.notes = [];
     this.readings = engine.readings;
     this.k = 0;
     this.sequence = 0;
@@ -148,6 +156,11 @@ export class RunRecording implements ScanSink {
     const status = statusAfter[body.type];
     if (status !== undefined) this.owner.send({ type: 'run-status', runId, status });
     if (body.type === 'step.started' || body.type === 'step.ended') this.followStep(body);
+  }
+
+  private addNotes(runTS: number, atMs: number): void {
+    for (const body of this.notes) this.addEvent({ runTS, atMs, body });
+    this.notes = [];
   }
 
   private followStep(body: { type: string; step: string }): void {

@@ -62,3 +62,32 @@ describe('the record of a run that the engine can no longer end', () => {
     expect(sent).toContainEqual({ type: 'run-status', runId: 'run-1', status: 'stopping' });
   });
 });
+
+describe('what happened beside the engine', () => {
+  const body = { type: 'connection.fault-cleared', connection: 'plc', by: 'engineer' } as const;
+  const scan = (recording: RunRecording, runTS: number | null) =>
+    recording.onScan(
+      { tS: 0, atMs: 0 } as ScanInput,
+      { events: [], row: null, runTS, runEnded: null } as unknown as ScanOutput,
+    );
+
+  it('is an event of the next scan that belongs to the run', async () => {
+    const { recording, sent } = await begun();
+    recording.note(body);
+    scan(recording, null);
+    expect(sent).toEqual([]);
+    scan(recording, 0.5);
+    scan(recording, 1);
+    expect(sent).toMatchObject([{ type: 'run-event', event: { sequence: 1, tS: 0.5, body } }]);
+  });
+
+  it('is kept in no run where none is open', async () => {
+    const { recording, sent } = await begun();
+    recording.interrupt('Over.', null);
+    await recording.closed();
+    recording.note(body);
+    await recording.start(order, { startRun: () => [] } as unknown as ScanEngine, testEnvelope());
+    scan(recording, 0);
+    expect(sent.filter(({ type }) => type === 'run-event')).toEqual([]);
+  });
+});

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { wireFaultSchema } from '../rigs/wire-fault.schema.js';
 
 export const verdictSchema = z.enum(['pass', 'fail', 'inconclusive']);
 export type Verdict = z.infer<typeof verdictSchema>;
@@ -70,6 +71,9 @@ export const runEventBodySchema = z.discriminatedUnion('type', [
   event('interlock.cleared', { interlock: z.string() }),
   event('connection.lost', { connection: z.string(), code: z.string(), message: z.string() }),
   event('connection.restored', { connection: z.string() }),
+  /** A fault was put on a connection of the bench, or was there when the run began. */
+  event('connection.fault-injected', { connection: z.string(), fault: wireFaultSchema, by: z.string() }),
+  event('connection.fault-cleared', { connection: z.string(), by: z.string() }),
   /** Scans that began more than one period late, joined into one event a second. */
   event('scan.overran', {
     /** The worst of them. */

@@ -40,6 +40,10 @@ export function eventText(body: RunEventBody): string {
       return `Connection ${body.connection} lost: ${body.message}`;
     case 'connection.restored':
       return `Connection ${body.connection} is back`;
+    case 'connection.fault-injected':
+      return `Fault put on connection ${body.connection} by ${body.by}: ${body.fault.kind}`;
+    case 'connection.fault-cleared':
+      return `Fault taken off connection ${body.connection} by ${body.by}`;
     case 'scan.overran':
       return overrunText(body);
     case 'rig.tripped':
@@ -61,6 +65,7 @@ export function eventWeight(body: RunEventBody): 'trip' | 'warn' | 'plain' | 'de
     case 'interlock.acted':
       return body.action === 'trip' ? 'trip' : 'warn';
     case 'connection.lost':
+    case 'connection.fault-injected':
     case 'scan.overran':
     case 'seek.retreated':
     case 'guard.intervened':
