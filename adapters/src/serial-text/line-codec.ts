@@ -38,8 +38,16 @@ export class LineCodec {
   /** What a line says once it is checked, or why it says nothing. */
   decode(line: string): string | { fault: string } {
     const text = this.trim(line);
-    // Control characters are in no reply either: a wrong baud rate shows as such.
-    if (this.isAscii && /[^\t\x20-\x7e]/.test(text)) return { fault: 'it has characters that are not ASCII' };
+    // Control characters are ASCII too, and begin and end the lines of some devices; NUL is in none.
+    if (this.isAscii && !isAsciiText(text)) return { fault: 'it has characters that are not ASCII' };
     return withoutChecksum(text, this.replyRule);
   }
+}
+
+function isAsciiText(text: string): boolean {
+  for (let index = 0; index < text.length; index += 1) {
+    const code = text.charCodeAt(index);
+    if (code === 0 || code > 0x7f) return false;
+  }
+  return true;
 }

@@ -56,7 +56,7 @@ class TextbookInstrument {
 
 const voltage = textAddress({ query: 'SOUR:VOLT?', write: 'SOUR:VOLT {value}', decimals: 2 });
 const wrong = textAddress({ write: 'SOUR:VOLTS {value}' });
-const fast = { replyTimeoutMs: 100, resyncMs: 50, timeoutMs: 2000 };
+const fast = { replyTimeoutMs: 250, resyncMs: 60, timeoutMs: 3000 };
 
 let instrument: TextbookInstrument;
 beforeEach(() => {

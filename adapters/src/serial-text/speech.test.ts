@@ -5,7 +5,7 @@ import { ScriptedInstrument } from './testing/scripted-instrument.js';
 let instrument: ScriptedInstrument;
 afterEach(() => instrument.stop());
 
-const fast = { replyTimeoutMs: 80, resyncMs: 40, timeoutMs: 1500 };
+const fast = { replyTimeoutMs: 250, resyncMs: 60, timeoutMs: 3000 };
 
 // Seen in public protocol tests (GGA) and from memory (RMC).
 const gga = '$GPGGA,123519,4807.038,N,01131.000,E,1,08,0.9,545.4,M,46.9,M,,*47\r\n';
