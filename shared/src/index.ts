@@ -6,6 +6,7 @@ export { thermocoupleTypes, type ThermocoupleType } from './calibrations/thermoc
 export * from './dither/dither-amplitude.js';
 export * from './dither/dither-lines.js';
 export * from './dither/plan-dithers.js';
+export * from './envelopes/emergency-stop-inputs.js';
 export * from './envelopes/envelope.schema.js';
 export * from './envelopes/guard.js';
 export * from './envelopes/interlock-judge.js';

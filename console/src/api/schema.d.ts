@@ -912,7 +912,7 @@ export interface components {
             status: number;
             detail: string;
             /** @enum {string} */
-            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
+            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "interlock.not-found" | "interlock.no-bypass" | "interlock.not-bypassed" | "interlock.not-latched" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
             errors: {
                 field: string;
                 message: string;
@@ -1170,13 +1170,37 @@ export interface components {
                 title: string;
                 condition: string;
                 delayS: number;
+                /** @default null */
+                clearCondition: string | null;
+                /** @default 0 */
+                clearDelayS: number;
+                /** @default false */
+                isLatching: boolean;
                 /** @enum {string} */
                 action: "warn" | "pause" | "stop" | "trip";
+                /**
+                 * @default people
+                 * @enum {string}
+                 */
+                protects: "people" | "equipment" | "process";
+                /** @default null */
+                bypassAtMostS: number | null;
+                /** @default null */
+                proofTestEveryDays: number | null;
+                /** @default 7 */
+                proofTestGraceDays: number;
                 message: string;
             }[];
             staleness: {
                 channel: string;
                 afterS: number;
+            }[];
+            /** @default [] */
+            emergencyStopInputs: {
+                channel: string;
+                title: string;
+                /** @enum {string} */
+                pressedWhen: "zero" | "not-zero";
             }[];
             heartbeat: {
                 channel: string;
@@ -1213,13 +1237,37 @@ export interface components {
                 title: string;
                 condition: string;
                 delayS: number;
+                /** @default null */
+                clearCondition: string | null;
+                /** @default 0 */
+                clearDelayS: number;
+                /** @default false */
+                isLatching: boolean;
                 /** @enum {string} */
                 action: "warn" | "pause" | "stop" | "trip";
+                /**
+                 * @default people
+                 * @enum {string}
+                 */
+                protects: "people" | "equipment" | "process";
+                /** @default null */
+                bypassAtMostS: number | null;
+                /** @default null */
+                proofTestEveryDays: number | null;
+                /** @default 7 */
+                proofTestGraceDays: number;
                 message: string;
             }[];
             staleness: {
                 channel: string;
                 afterS: number;
+            }[];
+            /** @default [] */
+            emergencyStopInputs: {
+                channel: string;
+                title: string;
+                /** @enum {string} */
+                pressedWhen: "zero" | "not-zero";
             }[];
             heartbeat: {
                 channel: string;
@@ -3180,7 +3228,9 @@ export interface components {
             interlocks: {
                 id: string;
                 /** @enum {string} */
-                state: "clear" | "pending" | "acted";
+                state: "clear" | "pending" | "acted" | "latched";
+                isBypassed: boolean;
+                isForced: boolean;
             }[];
             armingObstacles: string[];
             bestPoint: {
@@ -3631,6 +3681,28 @@ export interface components {
                 interlock: string;
             } | {
                 /** @enum {string} */
+                type: "interlock.acknowledged";
+                interlock: string;
+                by: string;
+            } | {
+                /** @enum {string} */
+                type: "interlock.bypassed";
+                interlock: string;
+                by: string;
+                reason: string;
+                forS: number;
+            } | {
+                /** @enum {string} */
+                type: "interlock.bypass-ended";
+                interlock: string;
+                by: string | null;
+            } | {
+                /** @enum {string} */
+                type: "interlock.forced";
+                interlock: string;
+                by: string;
+            } | {
+                /** @enum {string} */
                 type: "connection.lost";
                 connection: string;
                 code: string;
@@ -3639,6 +3711,176 @@ export interface components {
                 /** @enum {string} */
                 type: "connection.restored";
                 connection: string;
+            } | {
+                /** @enum {string} */
+                type: "connection.fault-injected";
+                connection: string;
+                fault: {
+                    /** @enum {string} */
+                    kind: "delay";
+                    delayMs: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "jitter";
+                    mostMs: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "slow-device";
+                    perValueMs: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "drop";
+                    timeoutMs: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "truncate";
+                    /** @default 0.5 */
+                    keptShare: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "corrupt";
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "freeze";
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "wrong-unit";
+                    /** @default 17 */
+                    answeringUnit: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "wrong-scale";
+                    /** @default 1.8 */
+                    factor: number;
+                    /** @default 32 */
+                    offset: number;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "exception";
+                    /** @default illegal data address */
+                    text: string;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                } | {
+                    /** @enum {string} */
+                    kind: "disconnect";
+                    /** @default true */
+                    canReconnect: boolean;
+                    /** @default 1 */
+                    probability: number;
+                    /** @default 1 */
+                    seed: number;
+                    /** @default 0 */
+                    fromS: number;
+                    /** @default null */
+                    untilS: number | null;
+                    /** @default null */
+                    channels: string[] | null;
+                };
+                by: string;
+            } | {
+                /** @enum {string} */
+                type: "connection.fault-cleared";
+                connection: string;
+                by: string;
             } | {
                 /** @enum {string} */
                 type: "scan.overran";

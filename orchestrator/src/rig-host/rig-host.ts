@@ -166,5 +166,13 @@ async function obey(session: RigSession, command: SessionCommand): Promise<void>
       return engine.emergencyStop(command.by, command.reason, Date.now());
     case 'reset':
       return engine.reset(command.by, command.reason);
+    case 'bypass-interlock':
+      return engine.bypassInterlock(command);
+    case 'end-bypass':
+      return engine.endBypass(command.interlock, command.by);
+    case 'acknowledge-interlock':
+      return engine.acknowledgeInterlock(command.interlock, command.by);
+    case 'force-interlock':
+      return engine.forceInterlock(command);
   }
 }

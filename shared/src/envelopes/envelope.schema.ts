@@ -40,17 +40,51 @@ export const actuatorLimitSchema = z
 
 export const interlockActionSchema = z.enum(['warn', 'pause', 'stop', 'trip']);
 
+/** Whom or what an interlock protects; a trip that protects people is never bypassed. */
+export const interlockPurposeSchema = z.enum(['people', 'equipment', 'process']);
+
 /** A condition with an action. A bad or stale input counts as violated. */
-export const interlockSchema = z.object({
-  id: slugSchema,
+export const interlockSchema = z
+  .object({
+    id: slugSchema,
+    title: titleSchema,
+    /** Expression over channels; true is the unsafe side. */
+    condition: z.string().min(1).max(500),
+    /** How long the condition must hold before the action, s. */
+    delayS: z.number().min(0).max(3600),
+    /**
+     * Hysteresis: once it has acted it clears only where this expression is true as well; null clears it as soon as
+     * the condition is false.
+     */
+    clearCondition: z.string().min(1).max(500).nullable().default(null),
+    /** How long it must be safe again before it clears, s. */
+    clearDelayS: z.number().min(0).max(3600).default(0),
+    /** Stays until somebody acknowledges it, though it could be clear. A trip latches in any case. */
+    isLatching: z.boolean().default(false),
+    action: interlockActionSchema,
+    protects: interlockPurposeSchema.default('people'),
+    /** Longest bypass, s; null forbids bypassing. */
+    bypassAtMostS: z.number().positive().max(604_800).nullable().default(null),
+    /** Days between two proof tests; null asks for none. */
+    proofTestEveryDays: z.number().positive().max(3660).nullable().default(null),
+    /** Days after a proof test fell due until it forbids arming. */
+    proofTestGraceDays: z.number().min(0).max(366).default(7),
+    /** What the technician reads when it acts. */
+    message: z.string().trim().min(1).max(300),
+  })
+  .superRefine((interlock, context) => {
+    const isForPeople = interlock.action === 'trip' && interlock.protects === 'people';
+    if (!isForPeople || interlock.bypassAtMostS === null) return;
+    const message = 'A trip that protects people cannot be bypassed: leave this empty.';
+    context.addIssue({ code: 'custom', path: ['bypassAtMostS'], message });
+  });
+
+/** A sensor that follows a hard-wired emergency stop, so that this software stops with it and says why. */
+export const emergencyStopInputSchema = z.object({
+  channel: channelIdSchema,
   title: titleSchema,
-  /** Expression over channels; true is the unsafe side. */
-  condition: z.string().min(1).max(500),
-  /** How long the condition must hold before the action, s. */
-  delayS: z.number().min(0).max(3600),
-  action: interlockActionSchema,
-  /** What the technician reads when it acts. */
-  message: z.string().trim().min(1).max(300),
+  /** Which reading means pressed. A circuit that reads 0 when pressed also shows a broken wire. */
+  pressedWhen: z.enum(['zero', 'not-zero']),
 });
 
 /** The approved limits, interlocks, watchdogs and stop actions of a rig. */
@@ -65,6 +99,7 @@ export const envelopeContentSchema = z
     staleness: z
       .array(z.object({ channel: channelIdSchema, afterS: z.number().positive().max(60) }))
       .max(200),
+    emergencyStopInputs: z.array(emergencyStopInputSchema).max(16).default([]),
     /** The host counts up this channel each period; the rig's own watchdog acts when it stands still. */
     heartbeat: z.object({ channel: channelIdSchema, periodS: z.number().positive().max(10) }).nullable(),
     /** Consecutive scans later than one period that are a trip. */
@@ -109,6 +144,8 @@ export const envelopeStatusSchema = z.enum(['draft', 'submitted', 'returned', 'i
 
 export type ActuatorLimit = z.infer<typeof actuatorLimitSchema>;
 export type Interlock = z.infer<typeof interlockSchema>;
+export type InterlockPurpose = z.infer<typeof interlockPurposeSchema>;
+export type EmergencyStopInput = z.infer<typeof emergencyStopInputSchema>;
 export type InterlockAction = z.infer<typeof interlockActionSchema>;
 export type EnvelopeContent = z.infer<typeof envelopeContentSchema>;
 export type EnvelopeStatus = z.infer<typeof envelopeStatusSchema>;

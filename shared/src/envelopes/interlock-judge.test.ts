@@ -29,7 +29,10 @@ function judgeOf(...interlocks: Partial<Interlock>[]): InterlockJudge {
   );
   return new InterlockJudge(
     whole,
-    whole.map(({ condition }) => compiled(condition)),
+    whole.map(({ condition, clearCondition }) => ({
+      condition: compiled(condition),
+      clearCondition: clearCondition === null ? null : compiled(clearCondition),
+    })),
     readings,
   );
 }
@@ -115,6 +118,112 @@ describe('an interlock', () => {
     expect([judge.hasJudged, judge.hasChanged]).toEqual([true, false]);
     judgeScan(judge, 1, 95);
     expect(judge.hasChanged).toBe(true);
+  });
+});
+
+describe('an interlock with hysteresis', () => {
+  const walk = (judge: InterlockJudge, temps: number[]) =>
+    temps.map((temp, i) => {
+      judgeScan(judge, i * 0.1, temp);
+      return judge.stateOf('lock-0');
+    });
+
+  it('clears only on the far side of its clear condition', () => {
+    const judge = judgeOf({ clearCondition: 'temp < 80' });
+    expect(walk(judge, [95, 85, 91, 79])).toEqual(['acted', 'acted', 'acted', 'clear']);
+  });
+
+  it('does not clear on an input that is not known, even where its condition is false', () => {
+    const judge = judgeOf({ clearCondition: 'co < 1' });
+    judgeScan(judge, 0, 95);
+    judgeScan(judge, 0.1, 70, NaN);
+    expect(judge.stateOf('lock-0')).toBe('acted');
+    judgeScan(judge, 0.2, 70, 0);
+    expect(judge.stateOf('lock-0')).toBe('clear');
+  });
+
+  it('clears after it has been safe for its clear delay without a break', () => {
+    const judge = judgeOf({ clearDelayS: 0.2 });
+    const states = walk(judge, [95, 70, 70, 95, 70, 70, 70]);
+    expect(states.map((state) => state === 'clear')).toEqual([
+      false,
+      false,
+      false,
+      false,
+      false,
+      false,
+      true,
+    ]);
+  });
+
+  it('that never acted needs no clear condition', () => {
+    const judge = judgeOf({ delayS: 10, clearCondition: 'temp < 80' });
+    expect(walk(judge, [95, 85])).toEqual(['pending', 'clear']);
+  });
+});
+
+describe('a latching interlock', () => {
+  it('waits to be acknowledged, and can be only once its condition is false', () => {
+    const judge = judgeOf({ isLatching: true });
+    judgeScan(judge, 0, 95);
+    expect(judge.find('lock-0')?.acknowledge()).toBe(false);
+    judgeScan(judge, 0.1, 70);
+    expect([judge.stateOf('lock-0'), judge.firstActed('trip')?.id]).toEqual(['latched', 'lock-0']);
+    expect(judge.find('lock-0')?.acknowledge()).toBe(true);
+    judgeScan(judge, 0.2, 70);
+    expect(judge.stateOf('lock-0')).toBe('clear');
+  });
+
+  it('acts anew where its condition comes back while it is latched', () => {
+    const judge = judgeOf({ isLatching: true, delayS: 0 });
+    for (const [i, temp] of [95, 70].entries()) judgeScan(judge, i * 0.1, temp);
+    judgeScan(judge, 0.2, 95);
+    expect([judge.stateOf('lock-0'), actedIds(judge)]).toEqual(['acted', ['lock-0']]);
+  });
+});
+
+describe('a bypassed interlock', () => {
+  const violated = (judge: InterlockJudge) => {
+    const ids: string[] = [];
+    judge.forEachViolated(({ id }) => ids.push(id));
+    return ids;
+  };
+
+  it('is judged and shown, does not act and holds nothing up', () => {
+    const judge = judgeOf({ action: 'pause' });
+    judgeScan(judge, 0, 95);
+    judge.find('lock-0')?.bypassUntil(0.25);
+    judgeScan(judge, 0.1, 95);
+    expect(judge.status()).toEqual([{ id: 'lock-0', state: 'pending', isBypassed: true, isForced: false }]);
+    expect([actedIds(judge), violated(judge), judge.firstActed('pause')]).toEqual([[], [], null]);
+  });
+
+  it('acts at once when its bypass runs out and its condition still holds', () => {
+    const judge = judgeOf({ delayS: 0.1 });
+    judge.find('lock-0')?.bypassUntil(0.25);
+    const acted = [0, 0.1, 0.2, 0.3].map((tS) => {
+      judgeScan(judge, tS, 95);
+      return [actedIds(judge).length, judge.bypassEnded.length];
+    });
+    expect(acted).toEqual([
+      [0, 0],
+      [0, 0],
+      [0, 0],
+      [1, 1],
+    ]);
+  });
+});
+
+describe('a forced interlock', () => {
+  it('takes its condition as true, its delay included, for as long as it is forced', () => {
+    const judge = judgeOf({ delayS: 0.1 });
+    judgeScan(judge, 0, 70);
+    judge.find('lock-0')?.forceUntil(0.35);
+    const states = [0.1, 0.2, 0.3, 0.4].map((tS) => {
+      judgeScan(judge, tS, 70);
+      return judge.stateOf('lock-0');
+    });
+    expect(states).toEqual(['pending', 'acted', 'acted', 'clear']);
   });
 });
 

@@ -1,36 +1,44 @@
 import type { CompiledExpression, ValueSource } from '../expressions/expression.types.js';
 import type { Interlock, InterlockAction } from './envelope.schema.js';
+import { JudgedInterlock, type InterlockState } from './judged-interlock.js';
 
-export type InterlockState = 'clear' | 'pending' | 'acted';
+export type { InterlockState } from './judged-interlock.js';
 
-/** Two times closer than this are the same, s: sums of periods are not exact. */
-const sameTimeS = 1e-9;
+/** The expressions of one interlock, made ready. */
+export interface InterlockConditions {
+  condition: CompiledExpression;
+  /** Null where it may clear as soon as its condition is false. */
+  clearCondition: CompiledExpression | null;
+}
 
-interface Judged {
-  readonly interlock: Interlock;
-  /** Puts whether the condition holds into the judge's `truth`. */
-  readonly evaluate: () => void;
+/** What people see of an interlock. */
+export interface InterlockView {
+  id: string;
   state: InterlockState;
-  /** When the condition became true, s; NaN while it is false. */
-  sinceS: number;
+  isBypassed: boolean;
+  /** A proof test takes its condition as true. */
+  isForced: boolean;
 }
 
 /**
  * Judges the interlocks of an envelope once a scan. A condition whose input is bad, stale or not a
  * number evaluates to NaN and counts as violated. An interlock acts in the scan in which its
- * condition has held for `delayS`, once per episode, and is clear as soon as the condition is false.
+ * condition has held for `delayS`, once per episode; it is clear again when its condition is false and, where it
+ * has acted, its `clearCondition` has held for `clearDelayS` and nobody has to acknowledge it.
  */
 export class InterlockJudge {
   /** Interlocks that came due in the last scan, the first one first. Reused: copy to keep. */
   readonly acted: Interlock[] = [];
   /** Interlocks that had acted and became clear in the last scan. Reused: copy to keep. */
   readonly cleared: Interlock[] = [];
+  /** Interlocks whose bypass ran out in the last scan. Reused: copy to keep. */
+  readonly bypassEnded: Interlock[] = [];
   /** Whether any state is another than before the last scan. */
   hasChanged = false;
   /** Before the first judgement nothing is known to be clear. */
   hasJudged = false;
-  private readonly judged: Judged[];
-  private readonly truth = new Float64Array(1);
+  private readonly judged: JudgedInterlock[];
+  private nowS = NaN;
 
   /**
    * @param conditions one per interlock, in the same order
@@ -38,14 +46,17 @@ export class InterlockJudge {
    */
   constructor(
     interlocks: readonly Interlock[],
-    conditions: readonly CompiledExpression[],
+    conditions: readonly InterlockConditions[],
     source: ValueSource,
   ) {
+    if (conditions.length !== interlocks.length) throw new Error('An interlock has no condition.');
+    const truth = new Float64Array(1);
     this.judged = interlocks.flatMap((interlock, index) => {
-      const evaluate = conditions[index]?.bind(source, this.truth);
-      return evaluate ? [{ interlock, evaluate, state: 'clear' as const, sinceS: NaN }] : [];
+      const compiled = conditions[index];
+      if (!compiled) return [];
+      const mayClear = compiled.clearCondition?.bind(source, truth) ?? null;
+      return [new JudgedInterlock(interlock, compiled.condition.bind(source, truth), mayClear, truth)];
     });
-    if (this.judged.length !== interlocks.length) throw new Error('An interlock has no condition.');
   }
 
   /**
@@ -57,13 +68,20 @@ export class InterlockJudge {
   judge(tS: number): void {
     this.acted.length = 0;
     this.cleared.length = 0;
+    this.bypassEnded.length = 0;
     this.hasChanged = false;
     this.hasJudged = true;
     for (const judged of this.judged) {
       const before = judged.state;
-      this.judgeOne(judged, tS);
-      if (judged.state !== before) this.hasChanged = true;
+      const wasBypassed = judged.isBypassedAt(this.nowS);
+      const turn = judged.judge(tS);
+      if (turn === 'acted') this.acted.push(judged.interlock);
+      if (turn === 'cleared') this.cleared.push(judged.interlock);
+      const hasBypassEnded = wasBypassed && !judged.isBypassedAt(tS);
+      if (hasBypassEnded) this.bypassEnded.push(judged.interlock);
+      if (judged.state !== before || hasBypassEnded) this.hasChanged = true;
     }
+    this.nowS = tS;
     if (this.acted.length > 1) this.acted.sort((a, b) => this.dueS(a) - this.dueS(b));
   }
 
@@ -74,42 +92,35 @@ export class InterlockJudge {
   /** The first interlock of an action, in the envelope's order, that has acted and is not clear yet. */
   firstActed(action: InterlockAction): Interlock | null {
     for (const { interlock, state } of this.judged) {
-      if (state === 'acted' && interlock.action === action) return interlock;
+      if ((state === 'acted' || state === 'latched') && interlock.action === action) return interlock;
     }
     return null;
   }
 
-  /** Calls back for each interlock that is not clear, in the envelope's order. */
+  /** Calls back for each interlock that is not clear and not bypassed, in the envelope's order. */
   forEachViolated(visit: (interlock: Interlock, state: InterlockState) => void): void {
-    for (const { interlock, state } of this.judged) if (state !== 'clear') visit(interlock, state);
-  }
-
-  status(): { id: string; state: InterlockState }[] {
-    return this.judged.map(({ interlock, state }) => ({ id: interlock.id, state }));
-  }
-
-  private judgeOne(judged: Judged, tS: number): void {
-    judged.evaluate();
-    /** Only a plain 0 is safe: NaN is not. */
-    if (this.truth[0] === 0) {
-      if (judged.state === 'acted') this.cleared.push(judged.interlock);
-      judged.state = 'clear';
-      judged.sinceS = NaN;
-      return;
+    for (const judged of this.judged) {
+      const { interlock, state } = judged;
+      if (state !== 'clear' && !judged.isBypassedAt(this.nowS)) visit(interlock, state);
     }
-    if (judged.state === 'acted') return;
-    if (judged.state === 'clear') judged.sinceS = tS;
-    const isDue = tS - judged.sinceS >= judged.interlock.delayS - sameTimeS;
-    judged.state = isDue ? 'acted' : 'pending';
-    if (isDue) this.acted.push(judged.interlock);
+  }
+
+  status(): InterlockView[] {
+    return this.judged.map((judged) => ({
+      id: judged.interlock.id,
+      state: judged.state,
+      isBypassed: judged.isBypassedAt(this.nowS),
+      isForced: judged.isForcedAt(this.nowS),
+    }));
+  }
+
+  /** @returns the interlock, or null where the envelope has none of this id */
+  find(interlockId: string): JudgedInterlock | null {
+    return this.judged.find(({ interlock }) => interlock.id === interlockId) ?? null;
   }
 
   /** When the interlock came due; in one scan this decides which was first out. */
   private dueS(interlock: Interlock): number {
-    return (this.find(interlock.id)?.sinceS ?? NaN) + interlock.delayS;
-  }
-
-  private find(interlockId: string): Judged | undefined {
-    return this.judged.find(({ interlock }) => interlock.id === interlockId);
+    return this.find(interlock.id)?.dueS ?? NaN;
   }
 }

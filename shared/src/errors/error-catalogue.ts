@@ -100,6 +100,13 @@ export const errorCatalogue = {
     'conflict',
     'The calibration has its certificate already: it is part of the record and stays.',
   ),
+  'interlock.not-found': entry('not-found', 'The envelope in force has no such interlock.'),
+  'interlock.no-bypass': entry('not-allowed-now', 'The envelope does not allow to bypass this interlock.'),
+  'interlock.not-bypassed': entry('not-allowed-now', 'The interlock is not bypassed.'),
+  'interlock.not-latched': entry(
+    'not-allowed-now',
+    'The interlock does not wait to be acknowledged: its condition still holds, or it has not acted.',
+  ),
   'channel.not-found': entry('invalid', 'The rig has no such channel.'),
   'channel.no-limit': entry(
     'not-allowed-now',

@@ -52,6 +52,16 @@ export const hostCommandSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('stop'), by: z.string(), reason: z.string() }),
   z.object({ type: z.literal('emergency-stop'), by: z.string(), reason: z.string() }),
   z.object({ type: z.literal('reset'), by: z.string(), reason: z.string() }),
+  z.object({
+    type: z.literal('bypass-interlock'),
+    interlock: z.string(),
+    forS: z.number(),
+    by: z.string(),
+    reason: z.string(),
+  }),
+  z.object({ type: z.literal('end-bypass'), interlock: z.string(), by: z.string() }),
+  z.object({ type: z.literal('acknowledge-interlock'), interlock: z.string(), by: z.string() }),
+  z.object({ type: z.literal('force-interlock'), interlock: z.string(), forS: z.number(), by: z.string() }),
   /** Puts a fault on a connection of a bench, or takes it off; refused for a rig that is no bench. */
   z.object({
     type: z.literal('set-fault'),

@@ -7,7 +7,7 @@ export type RigPhase = z.infer<typeof rigPhaseSchema>;
 
 /** A latched stop with its first cause. */
 export const tripSchema = z.object({
-  /** What came first: `emergency-stop`, `interlock:<id>`, `stale:<channel>`, `read-back:<channel>`, `overrun`,
+  /** What came first: `emergency-stop`, `emergency-stop-input:<channel>`, `interlock:<id>`, `stale:<channel>`, `read-back:<channel>`, `overrun`,
    * `connection:<id>`, `non-finite:<channel>`, `server-silent`, `host-lost`, `host-fault`, `recorder`. */
   cause: z.string(),
   message: z.string(),
@@ -21,7 +21,10 @@ export type Trip = z.infer<typeof tripSchema>;
 
 export const interlockStatusSchema = z.object({
   id: z.string(),
-  state: z.enum(['clear', 'pending', 'acted']),
+  state: z.enum(['clear', 'pending', 'acted', 'latched']),
+  isBypassed: z.boolean(),
+  /** A proof test takes its condition as true. */
+  isForced: z.boolean(),
 });
 
 export const rigStatusSchema = z.object({

@@ -69,6 +69,21 @@ export const runEventBodySchema = z.discriminatedUnion('type', [
   }),
   event('interlock.acted', { interlock: z.string(), action: z.string(), message: z.string() }),
   event('interlock.cleared', { interlock: z.string() }),
+  event('interlock.acknowledged', { interlock: z.string(), by: z.string() }),
+  event('interlock.bypassed', {
+    interlock: z.string(),
+    by: z.string(),
+    reason: z.string(),
+    /** Longest duration, s. */
+    forS: z.number(),
+  }),
+  event('interlock.bypass-ended', {
+    interlock: z.string(),
+    /** Who ended it; null where it ran out. */
+    by: z.string().nullable(),
+  }),
+  /** A proof test takes its condition as true. */
+  event('interlock.forced', { interlock: z.string(), by: z.string() }),
   event('connection.lost', { connection: z.string(), code: z.string(), message: z.string() }),
   event('connection.restored', { connection: z.string() }),
   /** A fault was put on a connection of the bench, or was there when the run began. */

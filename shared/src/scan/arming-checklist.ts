@@ -15,7 +15,7 @@ export function checkArming(engine: EngineState): ArmingChecklist {
   const { fitted } = engine;
   const beside = besideObstacles(engine);
   const sensors = fitted ? sensorObstacles(fitted) : [];
-  const interlocks = fitted ? interlockObstacles(fitted) : [];
+  const interlocks = fitted ? [...emergencyStopObstacles(fitted), ...interlockObstacles(fitted)] : [];
   const other = [...serverObstacles(engine), ...(fitted ? actuatorObstacles(engine, fitted) : [])];
   return {
     conditions: {
@@ -52,6 +52,17 @@ function sensorObstacles(fitted: FittedEnvelope): FieldFault[] {
   const faults: FieldFault[] = [];
   fitted.staleness.forEachStale(({ channel, afterS }) => {
     const message = `Sensor "${channel}" has given no good value for over ${afterS} s: check it and its wire.`;
+    faults.push({ field: `channels.${channel}`, message });
+  });
+  return faults;
+}
+
+function emergencyStopObstacles(fitted: FittedEnvelope): FieldFault[] {
+  const faults: FieldFault[] = [];
+  fitted.emergencyStops.forEachNotReleased(({ channel, title }, isKnown) => {
+    const message = isKnown
+      ? `${title} is pressed: release it where it was pressed.`
+      : `${title} cannot be read: check "${channel}" and its wire.`;
     faults.push({ field: `channels.${channel}`, message });
   });
   return faults;

@@ -42,6 +42,8 @@ export interface EngineState {
   isJustArmed: boolean;
   consecutiveOverruns: number;
   serverSilentS: number;
+  /** Time of the last scan, s; 0 before the first. */
+  lastScanS: number;
   isStatusChanged: boolean;
 }
 
@@ -77,6 +79,7 @@ export function createEngineState(configuration: ScanEngineConfiguration): Engin
     isJustArmed: false,
     consecutiveOverruns: 0,
     serverSilentS: 0,
+    lastScanS: 0,
     isStatusChanged: true,
   };
 }

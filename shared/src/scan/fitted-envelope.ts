@@ -1,6 +1,7 @@
-import type { EnvelopeInForce } from '../envelopes/envelope.schema.js';
-import { InterlockJudge } from '../envelopes/interlock-judge.js';
+import type { EnvelopeContent, EnvelopeInForce } from '../envelopes/envelope.schema.js';
+import { type InterlockConditions, InterlockJudge } from '../envelopes/interlock-judge.js';
 import { StalenessJudge } from '../envelopes/staleness-judge.js';
+import { EmergencyStopInputs } from '../envelopes/emergency-stop-inputs.js';
 import { DomainError, type FieldFault } from '../errors/domain-error.js';
 import { channelSymbols } from '../expressions/channel-symbols.js';
 import type { Rig } from '../rigs/rig.schema.js';
@@ -16,6 +17,7 @@ export interface FittedEnvelope {
   readonly actuators: readonly HeldActuator[];
   readonly interlocks: InterlockJudge;
   readonly staleness: StalenessJudge;
+  readonly emergencyStops: EmergencyStopInputs;
   readonly heartbeat: Heartbeat | null;
 }
 
@@ -34,21 +36,33 @@ export function fitEnvelope(
   const { content } = inForce;
   const faults = channelFaults(inForce, rig);
   if (faults.length > 0) throw new DomainError('channel.not-found', undefined, faults);
-  const conditions = compileAll(
-    content.interlocks.map(({ condition }, index) => ({
-      field: `interlocks[${index}].condition`,
-      text: condition,
-      isCondition: true,
-    })),
-    channelSymbols(rig),
-  );
   return {
     inForce,
     actuators: createActuatorBank(rig, content.limits, grids, readings),
-    interlocks: new InterlockJudge(content.interlocks, conditions, readings),
+    interlocks: new InterlockJudge(content.interlocks, interlockConditions(content, rig), readings),
     staleness: new StalenessJudge(content.staleness, readings),
+    emergencyStops: new EmergencyStopInputs(content.emergencyStopInputs, readings),
     heartbeat: heartbeatOf(inForce, rig),
   };
+}
+
+/** Conditions and, in the same order behind them, those clear conditions that there are. */
+function interlockConditions({ interlocks }: EnvelopeContent, rig: Rig): InterlockConditions[] {
+  const asked = (field: 'condition' | 'clearCondition') =>
+    interlocks.flatMap((interlock, index) => {
+      const text = interlock[field];
+      return text === null ? [] : [{ field: `interlocks[${index}].${field}`, text, isCondition: true }];
+    });
+  const compiled = compileAll(
+    [...asked('condition'), ...asked('clearCondition')],
+    channelSymbols(rig),
+  );
+  const clearing = compiled.splice(interlocks.length);
+  return compiled.map((condition, index) => {
+    const hasClearing = typeof interlocks[index]?.clearCondition === 'string';
+    const clearCondition = hasClearing ? (clearing.shift() ?? null) : null;
+    return { condition, clearCondition };
+  });
 }
 
 function heartbeatOf({ content }: EnvelopeInForce, rig: Rig): Heartbeat | null {
@@ -66,6 +80,11 @@ function channelFaults({ content }: EnvelopeInForce, rig: Rig): FieldFault[] {
   };
   content.limits.forEach(({ channel }, index) => needActuator(channel, `limits[${index}].channel`));
   if (content.heartbeat) needActuator(content.heartbeat.channel, 'heartbeat.channel');
+  content.emergencyStopInputs.forEach(({ channel }, index) => {
+    if (kinds.get(channel) === 'sensor') return;
+    const field = `emergencyStopInputs[${index}].channel`;
+    faults.push({ field, message: `The rig has no sensor "${channel}": name one of its sensors.` });
+  });
   content.staleness.forEach(({ channel }, index) => {
     if (kinds.has(channel)) return;
     const field = `staleness[${index}].channel`;

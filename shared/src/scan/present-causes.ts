@@ -34,6 +34,10 @@ function whyPresent(engine: EngineState, cause: string): string | null {
   switch (kind) {
     case 'connection':
       return wires.isLost(name) ? `Connection "${name}" is still down.` : null;
+    case 'emergency-stop-input':
+      return fitted?.emergencyStops.isPressed(name)
+        ? `The emergency stop at "${name}" is still pressed.`
+        : null;
     case 'interlock':
       return fitted && fitted.interlocks.stateOf(name) !== 'clear'
         ? `Interlock "${name}" is still not clear.`

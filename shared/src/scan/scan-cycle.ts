@@ -1,5 +1,6 @@
 import type { Interlock } from '../envelopes/envelope.schema.js';
 import { Quality } from '../rigs/quality.js';
+import { motionOf } from '../envelopes/rig-moves.js';
 import { noteReachability } from './actuator-bank.js';
 import { bestPoint } from './best-point.js';
 import { decide } from './decide.js';
@@ -12,6 +13,7 @@ import {
   tripIfInMotion,
 } from './engine-state.js';
 import { pauseRun } from './pause.js';
+import type { FittedEnvelope } from './fitted-envelope.js';
 import type { RunKeeper } from './run-keeper.js';
 import type { ScanInput, ScanOutput } from './scan-engine.types.js';
 import { isStopCompleteWhereReachable, stopTimeAtMostS } from './stop-action.js';
@@ -24,6 +26,7 @@ import { watch } from './watchdogs.js';
  */
 export function runScan(engine: EngineState, input: ScanInput): ScanOutput {
   const { output, run, log } = engine;
+  engine.lastScanS = input.tS;
   output.writes.length = 0;
   output.row = null;
   output.runEnded = null;
@@ -78,10 +81,13 @@ function judge(engine: EngineState, input: ScanInput): void {
   const { fitted, log } = engine;
   if (!fitted) return;
   const { interlocks, staleness } = fitted;
+  watchEmergencyStops(engine, fitted, input.atMs);
   interlocks.judge(input.tS);
   staleness.judge(engine.readings, input.tS);
   if (interlocks.hasChanged) engine.isStatusChanged = true;
   for (const { id } of interlocks.cleared) log.add({ type: 'interlock.cleared', interlock: id });
+  for (const { id } of interlocks.bypassEnded)
+    log.add({ type: 'interlock.bypass-ended', interlock: id, by: null });
   for (const interlock of interlocks.acted) {
     const { id, action, message } = interlock;
     log.add({ type: 'interlock.acted', interlock: id, action, message });
@@ -91,6 +97,21 @@ function judge(engine: EngineState, input: ScanInput): void {
   staleness.forEachStale(({ channel, afterS }) => {
     const message = `Sensor "${channel}" gave no good value for over ${afterS} s.`;
     tripIfInMotion(engine, `stale:${channel}`, message, input.atMs);
+  });
+}
+
+/**
+ * A hard-wired emergency stop stops the software too, in every phase. One whose reading is not known counts as
+ * pressed wherever there may be motion; at rest it only forbids arming.
+ */
+function watchEmergencyStops(engine: EngineState, fitted: FittedEnvelope, atMs: number): void {
+  fitted.emergencyStops.forEachNotReleased(({ channel, title }, isKnown) => {
+    const cause = `emergency-stop-input:${channel}`;
+    const { phase, trip } = engine.rigState;
+    if (!isKnown && motionOf[phase] === 'none') return;
+    if (trip && (trip.cause === cause || trip.later.some((later) => later.cause === cause))) return;
+    const message = isKnown ? `${title} is pressed.` : `${title} cannot be read and counts as pressed.`;
+    latchTrip(engine, 'emergency-stop', { cause, message, at: isoTime(atMs), by: null });
   });
 }
 

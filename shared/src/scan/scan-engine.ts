@@ -6,6 +6,7 @@ import {
   requireRigEvent,
 } from './engine-state.js';
 import { DomainError } from '../errors/domain-error.js';
+import { acknowledgeInterlock, bypassInterlock, endBypass, forceInterlock } from './interlock-commands.js';
 import { pauseRun, resumeRun } from './pause.js';
 import * as commands from './scan-commands.js';
 import { runScan } from './scan-cycle.js';
@@ -59,6 +60,10 @@ export function createScanEngine(
     trip: (cause, message, atMs) =>
       latchTrip(engine, 'trip', { cause, message, at: isoTime(atMs), by: null }),
     reset: (_by, reason) => commands.reset(engine, reason),
+    bypassInterlock: (order) => bypassInterlock(engine, order),
+    endBypass: (interlock, by) => endBypass(engine, interlock, by),
+    acknowledgeInterlock: (interlock, by) => acknowledgeInterlock(engine, interlock, by),
+    forceInterlock: (order) => forceInterlock(engine, order),
     isAtRest: () => isAtRest(engine),
     status: () => statusOf(engine),
   };

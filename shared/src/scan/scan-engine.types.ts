@@ -93,6 +93,13 @@ export interface ScanEngine {
   /** Latches a trip from outside the scan, e.g. `server-silent` when the link to the server closed. */
   trip(cause: string, message: string, atMs: number): void;
   reset(by: string, reason: string): void;
+  /** Lets an interlock not act for `forS`, where its envelope allows that. */
+  bypassInterlock(order: { interlock: string; forS: number; by: string; reason: string }): void;
+  endBypass(interlock: string, by: string): void;
+  /** Clears a latched interlock whose condition is false again. */
+  acknowledgeInterlock(interlock: string, by: string): void;
+  /** Takes an interlock's condition as true for `forS`, for its proof test. */
+  forceInterlock(order: { interlock: string; forS: number; by: string }): void;
   /** True once every actuator is at rest and no run is open: the wire may be let go. */
   isAtRest(): boolean;
   /** All of the rig's status but what only the caller knows. */

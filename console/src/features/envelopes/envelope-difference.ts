@@ -9,7 +9,11 @@ export interface Difference {
   after: string | null;
 }
 
-const say = (value: string | number) => (typeof value === 'number' ? plainNumber(value) : value);
+function say(value: string | number | boolean | null): string {
+  if (value === null) return 'none';
+  if (typeof value === 'boolean') return value ? 'yes' : 'no';
+  return typeof value === 'number' ? plainNumber(value) : value;
+}
 
 /** Every leaf of an envelope by its name in words. */
 function leaves(content: EnvelopeContent, titleOf: (channel: string) => string): Map<string, string> {
@@ -25,6 +29,8 @@ function leaves(content: EnvelopeContent, titleOf: (channel: string) => string):
   }
   for (const { channel, afterS } of content.staleness)
     all.set(`${titleOf(channel)} · oldest allowed, s`, say(afterS));
+  for (const { channel, title, pressedWhen } of content.emergencyStopInputs)
+    all.set(`Emergency stop input ${titleOf(channel)}`, `${title}, pressed when ${pressedWhen}`);
   if (content.heartbeat) {
     all.set('Heartbeat channel', titleOf(content.heartbeat.channel));
     all.set('Heartbeat period, s', say(content.heartbeat.periodS));

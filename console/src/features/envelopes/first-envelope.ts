@@ -25,6 +25,7 @@ export function firstEnvelope(rig: Rig): EnvelopeContent {
     limits: actuators.map(firstLimit),
     interlocks: [],
     staleness: sensors.map(({ id }) => ({ channel: id, afterS: 1 })),
+    emergencyStopInputs: [],
     heartbeat: null,
     overrunLimit: 20,
     serverSilenceS: 3,

@@ -36,6 +36,14 @@ export function eventText(body: RunEventBody): string {
       return `Interlock ${body.interlock}, ${body.action}: ${body.message}`;
     case 'interlock.cleared':
       return `Interlock ${body.interlock} is clear again`;
+    case 'interlock.acknowledged':
+      return `Interlock ${body.interlock} acknowledged by ${body.by}`;
+    case 'interlock.bypassed':
+      return `Interlock ${body.interlock} bypassed by ${body.by} for at most ${body.forS} s: ${body.reason}`;
+    case 'interlock.bypass-ended':
+      return `Bypass of interlock ${body.interlock} ${body.by === null ? 'ran out' : `ended by ${body.by}`}`;
+    case 'interlock.forced':
+      return `Proof test by ${body.by}: interlock ${body.interlock} takes its condition as true`;
     case 'connection.lost':
       return `Connection ${body.connection} lost: ${body.message}`;
     case 'connection.restored':
@@ -64,6 +72,8 @@ export function eventWeight(body: RunEventBody): 'trip' | 'warn' | 'plain' | 'de
       return 'trip';
     case 'interlock.acted':
       return body.action === 'trip' ? 'trip' : 'warn';
+    case 'interlock.bypassed':
+    case 'interlock.forced':
     case 'connection.lost':
     case 'connection.fault-injected':
     case 'scan.overran':
