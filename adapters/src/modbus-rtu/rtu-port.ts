@@ -39,7 +39,8 @@ const drainMs = 20;
  */
 export class RtuPort extends EventEmitter implements ModbusPort {
   private readonly answer = new AnswerBuffer();
-  private readonly brokenOff: NodeJS.Timeout;
+  /** Runs where bytes came in that are no whole answer yet. */
+  private brokenOff: NodeJS.Timeout | null = null;
   /** When the last byte came in, or the last one went out. */
   private lastByteMs: number;
   /** Whether the last request may still be answered: late, or by the rest of a broken answer. */
@@ -52,10 +53,6 @@ export class RtuPort extends EventEmitter implements ModbusPort {
   ) {
     super();
     this.lastByteMs = options.nowMs();
-    this.brokenOff = setTimeout(() => {
-      this.tell(this.answer.silence());
-    }, options.t15Ms + gatheringMs);
-    clearTimeout(this.brokenOff);
     serial.on('data', (chunk) => {
       this.take(chunk);
     });
@@ -77,7 +74,7 @@ export class RtuPort extends EventEmitter implements ModbusPort {
   destroy(): void {
     this.isDestroyed = true;
     this.answer.end();
-    clearTimeout(this.brokenOff);
+    this.stopTimer();
   }
 
   write(frame: Buffer): void {
@@ -98,7 +95,7 @@ export class RtuPort extends EventEmitter implements ModbusPort {
    * Waits for the silence that must come before a request. What comes in meanwhile belongs to an earlier one and
    * is dropped.
    *
-   * @returns null where the line is silent; a promise of whether it fell silent within `mostMs`
+   * @returns null where the line is silent; a promise of whether it fell silent, `mostMs` later than it must at the latest
    */
   quiet(mostMs: number): Promise<boolean> | null {
     const { t35Ms, turnaroundMs, nowMs } = this.options;
@@ -106,7 +103,9 @@ export class RtuPort extends EventEmitter implements ModbusPort {
     if (this.answer.isWaiting) this.lastByteMs = Math.max(this.lastByteMs, startMs);
     this.answer.end();
     const silentMs = turnaroundMs + (this.isSuspect ? Math.max(drainMs, t35Ms) : t35Ms);
-    return startMs >= this.lastByteMs + silentMs ? null : this.waitForSilence(silentMs, startMs + mostMs);
+    return startMs >= this.lastByteMs + silentMs
+      ? null
+      : this.waitForSilence(silentMs, startMs + silentMs + mostMs);
   }
 
   private async waitForSilence(silentMs: number, deadlineMs: number): Promise<boolean> {
@@ -123,12 +122,33 @@ export class RtuPort extends EventEmitter implements ModbusPort {
     this.lastByteMs = Math.max(this.lastByteMs, this.options.nowMs());
     if (!this.answer.isWaiting) return;
     this.tell(this.answer.push(chunk));
-    if (this.answer.isWaiting) this.brokenOff.refresh();
+    if (this.answer.isWaiting) this.startTimer();
+  }
+
+  /** Takes the line as silent now, without waiting for it. */
+  listenNoMore(): void {
+    this.stopTimer();
+    this.tell(this.answer.silence());
+  }
+
+  private startTimer(): void {
+    if (this.brokenOff) {
+      this.brokenOff.refresh();
+      return;
+    }
+    this.brokenOff = setTimeout(() => {
+      this.listenNoMore();
+    }, this.options.t15Ms + gatheringMs);
+  }
+
+  private stopTimer(): void {
+    if (this.brokenOff) clearTimeout(this.brokenOff);
+    this.brokenOff = null;
   }
 
   private tell(heard: Heard): void {
     if (!heard) return;
-    clearTimeout(this.brokenOff);
+    this.stopTimer();
     this.isSuspect = heard.kind !== 'answer';
     if (heard.kind === 'answer') this.emit('data', heard.frame);
     else this.emit('corrupt', heard.text);

@@ -26,7 +26,7 @@ export async function startPtyPair(): Promise<PtyPair> {
     near,
     far,
     async stop() {
-      socat.kill();
+      if (socat.exitCode === null && socat.signalCode === null) socat.kill();
       await ended;
       await rm(folder, { recursive: true, force: true });
     },
