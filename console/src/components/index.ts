@@ -1,3 +1,4 @@
+export { roundScale, roundTicks, type Scale } from './chart-scale.js';
 export { Empty } from './empty.js';
 export { alignNumber, formatNumber, missing, plainNumber } from './format-quantity.js';
 export { formatClock, formatInstant, formatMoment } from './format-time.js';

@@ -11,6 +11,7 @@ import type { RigStatus } from '@cresthold/shared';
 import type { LinkState } from './live-client.js';
 import type { LiveHub, RunListener } from './live-hub.js';
 import type { RigSamples } from './sample-store.js';
+import type { LiveTraces } from './trace-store.js';
 
 const LiveContext = createContext<LiveHub | null>(null);
 
@@ -48,6 +49,12 @@ export function useRigSamples(rigId: string): RigSamples {
   return hub.samples.of(rigId);
 }
 
+/** The last live traces of a channel, of a rig whose samples are asked for. */
+export function useLiveTraces(rigId: string, channel: string): LiveTraces {
+  const { traces } = useLiveHub();
+  return useSyncExternalStore(traces.subscribe, () => traces.of(rigId, channel));
+}
+
 /** The newest value of a column at most `timesPerS` times a second; NaN where there is none. */
 export function useLatestValue(samples: RigSamples, column: string, timesPerS = 5): number {
   const [shown, setShown] = useState(() => samples.ring.latest(column));
@@ -70,7 +77,7 @@ export function useLatestValue(samples: RigSamples, column: string, timesPerS = 
 }
 
 /** True once no sample of the rig has come for `afterMs`: what is shown is then the past. */
-export function useIsStale(samples: RigSamples, afterMs = 2500): boolean {
+export function useIsStale(samples: { readonly receivedAtMs: number }, afterMs = 2500): boolean {
   const isStaleNow = () => !(Date.now() - samples.receivedAtMs < afterMs);
   const [isStale, setIsStale] = useState(isStaleNow);
   useEffect(() => {

@@ -3,6 +3,7 @@ import { FrameBatch, type RequestFrame } from './frame-batch.js';
 import { LiveClient, type LinkState, type LiveClientOptions } from './live-client.js';
 import { SampleStore } from './sample-store.js';
 import { StatusStore } from './status-store.js';
+import { TraceStore } from './trace-store.js';
 
 export type RunChange = Extract<FromLive, { type: 'run-changed' }>;
 
@@ -23,6 +24,7 @@ const lingerMs = 300_000;
 export class LiveHub {
   readonly statuses: StatusStore;
   readonly samples: SampleStore;
+  readonly traces: TraceStore;
   private readonly client: LiveClient;
   private readonly linkBatch: FrameBatch;
   private readonly runListeners = new Set<RunListener>();
@@ -31,6 +33,7 @@ export class LiveHub {
   constructor(private readonly options: LiveHubOptions) {
     this.statuses = new StatusStore(options.requestFrame);
     this.samples = new SampleStore(options.requestFrame);
+    this.traces = new TraceStore(options.requestFrame);
     this.linkBatch = new FrameBatch(options.requestFrame);
     this.client = new LiveClient({
       ...options,
@@ -72,6 +75,8 @@ export class LiveHub {
         return this.statuses.take(message.status);
       case 'telemetry':
         return this.samples.of(message.telemetry.rigId).take(message.telemetry, this.options.nowMs());
+      case 'trace':
+        return this.traces.take(message.trace, this.options.nowMs());
       case 'run-event':
         return this.runListeners.forEach((listener) => listener.onEvent?.(message.runId, message.event));
       case 'run-changed':

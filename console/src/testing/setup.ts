@@ -33,6 +33,8 @@ export const unhandled: string[] = [];
 beforeEach(() => {
   unhandled.length = 0;
   vi.stubGlobal('ResizeObserver', NoResize);
+  // jsdom has no canvas and says so at each try.
+  vi.spyOn(HTMLCanvasElement.prototype, 'getContext').mockReturnValue(null);
   vi.stubGlobal('matchMedia', (query: string) => ({
     matches: false,
     media: query,

@@ -10,7 +10,9 @@ const shownChannels = 10;
 export function LiveReadings({ rig, hiddenChannel }: { rig: Rig; hiddenChannel: string | undefined }) {
   const samples = useRigSamples(rig.id);
   const isStale = useIsStale(samples);
-  const channels = rig.channels.filter(({ id }) => id !== hiddenChannel).slice(0, shownChannels);
+  const channels = rig.channels
+    .filter(({ id, kind }) => kind !== 'trace' && id !== hiddenChannel)
+    .slice(0, shownChannels);
   const places = {
     fractionPlaces: Math.max(...channels.map(({ display }) => display.decimals)),
     unitPlaces: Math.max(...channels.map(({ unit }) => unit.length)),

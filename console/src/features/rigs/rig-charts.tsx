@@ -22,7 +22,10 @@ export function RigCharts({ rig, envelope, samples }: RigChartsProps) {
   const [spanS, setSpanS] = useState(60);
   const [isPaused, setPaused] = useState(false);
   const [isFitted, setFitted] = useState(false);
-  const channels = rig.channels.filter(({ id }) => id !== envelope?.heartbeat?.channel);
+  // Traces are drawn over their own axis, not over time.
+  const channels = rig.channels.filter(
+    ({ id, kind }) => kind !== 'trace' && id !== envelope?.heartbeat?.channel,
+  );
   return (
     <Box component="section" aria-labelledby="live-heading" sx={{ display: 'grid', gap: 1, minWidth: 0 }}>
       <Box sx={{ display: 'flex', flexWrap: 'wrap', alignItems: 'center', gap: 1 }}>

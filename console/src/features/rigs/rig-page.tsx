@@ -14,6 +14,7 @@ import { RecentRuns } from './recent-runs.js';
 import { RigActions } from './rig-actions.js';
 import { RigCharts } from './rig-charts.js';
 import { useShowsRig } from './rig-in-view.js';
+import { LiveTraces } from './traces/live-traces.js';
 import { TripBanner } from './trip-banner.js';
 
 /** One rig: live charts, actuators, interlocks, arming, trips. */
@@ -63,7 +64,8 @@ function RigView({ rig }: { rig: RigDocument }) {
           alignItems: 'start',
         }}
       >
-        <Box sx={{ order: { xs: 2, md: 0 }, minWidth: 0 }}>
+        <Box sx={leftColumn}>
+          <LiveTraces rig={rig.content} />
           <RigCharts {...shared} />
         </Box>
         <Box sx={{ display: 'grid', gap: 2, minWidth: 0, gridTemplateColumns: 'minmax(0, 1fr)' }}>
@@ -76,6 +78,14 @@ function RigView({ rig }: { rig: RigDocument }) {
     </Page>
   );
 }
+
+const leftColumn = {
+  order: { xs: 2, md: 0 },
+  minWidth: 0,
+  display: 'grid',
+  gap: 2,
+  gridTemplateColumns: 'minmax(0, 1fr)',
+};
 
 interface RigLinksProps {
   rigId: string;

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import type { RunEvent } from '@cresthold/shared';
 import { appendEvent } from './api/follow-run.js';
 import { chartRows } from './charts/chart-rows.js';
-import { roundScale } from './landscape/chart-scale.js';
+import { roundScale } from '../../components/index.js';
 import { seekBeganS, seekPath, surveyPoints } from './landscape/landscape-points.js';
 
 const event = (sequence: number, body: RunEvent['body'], tS = sequence): RunEvent => ({

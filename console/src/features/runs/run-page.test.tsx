@@ -56,6 +56,7 @@ function openRun(role: Role, status: RunStatus, more: Record<string, Handler> = 
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
     'GET /runs/run-1': () => json({ ...run, status, reason: 'By the test.' }),
     'GET /runs/run-1/columns': () => json([]),
+    'GET /runs/run-1/trace-channels': () => json([]),
     'GET /runs/run-1/samples': () => json({ columns: [], isExact: true, tS: [], mean: [], min: [], max: [] }),
     'GET /runs/run-1/events': () => json([ended]),
     'GET /experiments/exp-1/versions/2': () => json(version),

@@ -6,7 +6,7 @@ import type { RunSummary } from '../../api/index.js';
 import { formatMoment, Loading, Notice, Page, Panel, ProblemNotice } from '../../components/index.js';
 import { useRigSamples, useRigStatus } from '../../live/index.js';
 import { GraphDrawing, useExperimentVersion } from '../experiments/index.js';
-import { useRig, useShowsRig } from '../rigs/index.js';
+import { LiveTraces, useRig, useShowsRig } from '../rigs/index.js';
 import { useFollowRun } from './api/follow-run.js';
 import { isEnded, useRun, useRunColumns, useRunEventList } from './api/run-queries.js';
 import { RunCharts } from './charts/run-charts.js';
@@ -15,6 +15,7 @@ import { LandscapePanel } from './landscape/landscape-panel.js';
 import { ResultPanel } from './result-panel.js';
 import { RunActions } from './run-actions.js';
 import { RunStatusMark } from './run-status-mark.js';
+import { RunTraces } from './traces/run-traces.js';
 
 /** One run: its graph with the active step, what was recorded, the landscape, events and results. */
 export function RunPage() {
@@ -94,6 +95,7 @@ function RunView({ run, graph, rig }: RunViewProps) {
               endS={(run.scans * rig.periodMs) / 1000}
             />
           )}
+          {isLive ? <LiveTraces rig={rig} /> : <RunTraces runId={run.id} scans={run.scans} />}
         </Box>
         <Box sx={{ display: 'grid', gap: 2, minWidth: 0, gridTemplateColumns: 'minmax(0, 1fr)' }}>
           {columns.data && (

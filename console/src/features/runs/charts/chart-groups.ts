@@ -41,13 +41,13 @@ export function findEstimate(
 
 /**
  * The charts of a run: the objective; each actuator that the experiment commands, with what was applied and
- * where the law believes the best point to be; then each sensor and derived channel. Channels that only the
+ * where the law believes the best point to be; then each sensor and derived channel; traces have panels of their own. Channels that only the
  * rig host writes (a heartbeat) tell nothing and are left out.
  */
 export function chartGroups(columns: readonly RunColumn[], rig: Rig, graph: ExperimentGraph): ChartGroup[] {
   const commanded = new Set(graph.steps.flatMap(commandedActuators).map(({ channel }) => channel));
   const actuators = rig.channels.filter(({ kind, id }) => kind === 'actuator' && commanded.has(id));
-  const watched = rig.channels.filter(({ kind }) => kind !== 'actuator');
+  const watched = rig.channels.filter(({ kind }) => kind === 'sensor' || kind === 'derived');
   return [
     ...objectiveGroup(columns),
     ...actuators.map((channel) => actuatorGroup(channel, columns, seekActuators(graph))),

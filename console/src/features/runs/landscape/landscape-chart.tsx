@@ -1,7 +1,6 @@
 import Box from '@mui/material/Box';
-import { plainNumber } from '../../../components/index.js';
+import { plainNumber, roundScale, type Scale } from '../../../components/index.js';
 import { traceColour, usePaper, type Paper } from '../../../theme/index.js';
-import { roundScale, type Scale } from './chart-scale.js';
 import type { LandscapePoint, PathPoint } from './landscape-points.js';
 
 interface LandscapeChartProps {

@@ -20,13 +20,17 @@ export function roundScale(values: readonly number[], wantedTicks: number): Scal
   const air = greatest > least ? (greatest - least) * 0.05 : Math.abs(greatest) * 0.05 || 1;
   const min = least - air;
   const max = greatest + air;
-  const step = roundStep((max - min) / wantedTicks);
+  return { min, max, ticks: roundTicks(min, max, wantedTicks), at: (value) => (value - min) / (max - min) };
+}
+
+/** Round numbers from `min` to `max`, about as many as wanted. @param max above `min` */
+export function roundTicks(min: number, max: number, wanted: number): number[] {
+  const step = roundStep((max - min) / wanted);
   const first = Math.ceil(min / step);
   const last = Math.floor(max / step);
-  const ticks = Array.from({ length: last - first + 1 }, (_, index) =>
+  return Array.from({ length: last - first + 1 }, (_, index) =>
     Number(((first + index) * step).toPrecision(12)),
   );
-  return { min, max, ticks, at: (value) => (value - min) / (max - min) };
 }
 
 function roundStep(raw: number): number {
