@@ -14,6 +14,8 @@ type CheckSettings = Pick<
 
 /** Asks a device for the errors that it keeps. */
 export class ErrorCheck {
+  /** Whether a command before may have left an error that belongs to no write. */
+  mayHoldOthers = false;
   private scans = 0;
 
   constructor(
@@ -37,6 +39,11 @@ export class ErrorCheck {
     return this.scans === 0;
   }
 
+  /** Drops what earlier queries have left, so that it is not put down to the write that follows. */
+  async clearOthers(deadlineMs: number): Promise<void> {
+    if (this.mayHoldOthers) await this.run('earlier commands', deadlineMs);
+  }
+
   /**
    * Reads errors until none is left.
    *
@@ -48,13 +55,17 @@ export class ErrorCheck {
     for (let entry = 0; entry < mostEntries; entry += 1) {
       const command = plainText(this.settings.errorQuery);
       const reply = await this.link.exchange({ command, expectation: { kind: 'line' } }, deadlineMs);
-      if (reply instanceof DomainError) return first === null ? reply : this.refused(doing, first);
+      if (reply instanceof DomainError) {
+        this.mayHoldOthers = true;
+        return first === null ? reply : this.refused(doing, first);
+      }
       const error = typeof reply === 'string' ? deviceErrorOf(reply, this.settings) : null;
       if (error === null) break;
       first ??= error;
       // Reading the event status register clears it: there is nothing to drain.
       if (this.settings.errorForm === 'event-status') break;
     }
+    this.mayHoldOthers = false;
     return first === null ? null : this.refused(doing, first);
   }
 

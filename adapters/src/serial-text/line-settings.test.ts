@@ -1,5 +1,5 @@
 import { SerialPortMock } from 'serialport';
-import { afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import type { AdapterSession } from '../contract.js';
 import type { SerialPortOptions } from '../serial/open-serial-port.js';
 import type { SerialTextAddress } from './serial-text-address.schema.js';
@@ -119,16 +119,32 @@ describe('the direction of a two-wire line', () => {
   });
 });
 
-it('a device that lets nothing be sent is adapter.timeout, not a hang', async () => {
-  const session = await open({ flowControl: 'rts-cts', timeoutMs: 250, replyTimeoutMs: 50, resyncMs: 5 });
-  const port = ports[0];
-  if (!port) throw new Error('no port was made');
-  port.write = () => true;
-  const { faults } = await session.read(session.planRead([query]));
-  expect(faults[0]).toMatchObject({
-    code: 'adapter.timeout',
-    message: expect.stringContaining('does not let anything be sent'),
+describe('a device that lets nothing be sent', () => {
+  it.each(['write', 'drain'] as const)('is lost within its time where %s does not end', async (method) => {
+    const session = await open({ flowControl: 'rts-cts', timeoutMs: 250 });
+    const port = ports[0];
+    if (!port) throw new Error('no port was made');
+    port[method] = () => true;
+    const flushed = vi.spyOn(port, 'flush');
+    const { lost } = await session.read(session.planRead([query]));
+    expect(lost).toMatchObject({
+      code: 'adapter.disconnected',
+      message: expect.stringContaining('lets nothing be sent'),
+    });
+    // What is stuck must not go out, old, when the device lets go.
+    expect(flushed).toHaveBeenCalledTimes(1);
+    await session.close();
+    expect(port.isOpen).toBe(false);
   });
+});
+
+it('a pause between commands that does not fit into the call is adapter.timeout', async () => {
+  reply = '1\n';
+  const session = await open({ commandGapMs: 9000, timeoutMs: 250 });
+  const plan = session.planRead([query, textAddress({ query: 'R?' })]);
+  const { values, faults } = await session.read(plan);
+  expect([values[0], faults[1]?.code]).toEqual([1, 'adapter.timeout']);
+  expect(faults[1]?.message).toContain('no time was left after the pause between commands');
   await session.close();
 });
 

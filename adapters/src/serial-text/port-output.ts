@@ -11,6 +11,7 @@ export type OutputSettings = Pick<
   | 'dataBits'
   | 'parity'
   | 'stopBits'
+  | 'flowControl'
   | 'rs485'
   | 'rs485BeforeMs'
   | 'rs485AfterMs'
@@ -45,22 +46,30 @@ export class PortOutput {
     return new DomainError('adapter.misconfigured', message, [{ field: 'rs485', message }]);
   }
 
+  /** Set for good once the device has held a command back for all of its time: what is stuck must not go out later. */
+  isStuck = false;
+
   /** @returns why the command was not sent whole */
   async send(text: string, deadlineMs: number): Promise<DomainError | null> {
-    const { commandGapMs, rs485BeforeMs, rs485AfterMs } = this.settings;
-    await this.sleepUntil(this.lastSentMs + commandGapMs);
+    const { commandGapMs, rs485BeforeMs } = this.settings;
+    const readyMs = Math.max(this.around.nowMs(), this.lastSentMs + commandGapMs);
+    if (readyMs + rs485BeforeMs > deadlineMs) return this.noTime();
+    await this.sleepUntil(readyMs);
     if (this.turnsByRts) await this.setRts(true);
-    await this.sleepUntil(this.around.nowMs() + rs485BeforeMs);
-    const lost = this.around.lost();
-    if (lost) return lost;
-    const fault = await this.bounded(this.write(text), deadlineMs);
-    if (this.turnsByRts) {
-      await this.bounded(this.drain(), deadlineMs);
-      await this.sleepUntil(this.around.nowMs() + rs485AfterMs);
-      await this.setRts(false);
-    }
+    await this.sleepUntil(readyMs + rs485BeforeMs);
+    const fault = this.around.lost() ?? (await this.sendNow(text, deadlineMs));
+    if (this.turnsByRts) await this.setRts(false);
     this.lastSentMs = this.around.nowMs();
     return this.around.lost() ?? fault;
+  }
+
+  private async sendNow(text: string, deadlineMs: number): Promise<DomainError | null> {
+    const fault = await this.bounded(this.write(text), deadlineMs);
+    const mustDrain = this.turnsByRts || this.settings.flowControl !== 'none';
+    const rest = fault || !mustDrain ? fault : await this.bounded(this.drain(), deadlineMs);
+    if (!rest && this.turnsByRts) await this.sleepUntil(this.around.nowMs() + this.settings.rs485AfterMs);
+    if (this.isStuck) await this.flush();
+    return rest;
   }
 
   /** Time that a text takes on the wire, ms. */
@@ -69,7 +78,7 @@ export class PortOutput {
   }
 
   /** Throws away what the device has not let us send. */
-  flush(): Promise<void> {
+  private flush(): Promise<void> {
     return new Promise((resolve) => {
       this.port.flush(() => {
         resolve();
@@ -106,14 +115,20 @@ export class PortOutput {
     });
   }
 
+  private noTime(): DomainError {
+    const message = `${this.settings.path}: not sent: no time was left after the pause between commands.`;
+    return new DomainError('adapter.timeout', message);
+  }
+
   /** A device that holds us back for good must not hold the caller back. */
   private async bounded(task: Promise<DomainError | null>, deadlineMs: number): Promise<DomainError | null> {
     let timer: NodeJS.Timeout | undefined;
     const tooLate = new Promise<DomainError>((resolve) => {
       timer = setTimeout(
         () => {
-          const message = `${this.settings.path}: the device does not let anything be sent: check flow control and cable.`;
-          resolve(new DomainError('adapter.timeout', message));
+          this.isStuck = true;
+          const message = `${this.settings.path}: the device lets nothing be sent: check flow control and cable.`;
+          resolve(new DomainError('adapter.disconnected', message));
         },
         Math.max(1, deadlineMs - this.around.nowMs()),
       );

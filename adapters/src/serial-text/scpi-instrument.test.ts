@@ -95,6 +95,33 @@ describe('an instrument with an error queue', () => {
     await session.close();
   });
 
+  it('is not blamed at a write for what a query or a refused write before it did', async () => {
+    const session = await openText(instrument.wire.path, {
+      profile: 'scpi-meter',
+      refusals: ['NO*'],
+      ...fast,
+    });
+    const script = instrument.wire.script;
+    instrument.wire.script = (command) => {
+      if (!command.startsWith('ODD')) return script(command);
+      instrument.errors.push('-200,"Execution error"');
+      return command === 'ODD?' ? 'no number\n' : 'NO\n';
+    };
+    const odd = textAddress({ query: 'ODD?', write: 'ODD {value}', acknowledgement: 'OK' });
+    const { faults } = await session.write([odd, voltage], [1, 2]);
+    expect(faults.map((fault) => fault?.message.replace(/^.*: /, '') ?? null)).toEqual([
+      'the device reports -200,"Execution error".',
+      null,
+    ]);
+    instrument.wire.script = (command) => {
+      if (command === 'ODD?') instrument.errors.push('-200,"Execution error"');
+      return command === 'ODD?' ? 'NO\n' : script(command);
+    };
+    expect((await readText(session, odd))[0]).toMatch(/^adapter\.refused/);
+    expect((await session.write([voltage], [3])).faults).toEqual([null]);
+    await session.close();
+  });
+
   it('is asked for errors every so many scans where each write would be too often', async () => {
     const rarely = { profile: 'scpi-meter', hasErrorCheckAfterWrite: false, errorCheckScans: 3, ...fast };
     const session = await openText(instrument.wire.path, rarely);

@@ -92,6 +92,7 @@ export class SerialTextSession implements AdapterSession<SerialTextAddress> {
     if (deadlineMs - this.nowMs() < 1) return this.notAsked();
     const reply = await this.link.exchange({ command, expectation }, deadlineMs);
     const isMissed = reply instanceof DomainError && reply.code === 'adapter.timeout';
+    if (reply instanceof DomainError) this.errors.mayHoldOthers = true;
     if (!isMissed || !this.errors.isPossible || this.link.lost || deadlineMs - this.nowMs() < 1) return reply;
     // Devices with an error queue send no reply to a query that they do not know: the queue says why.
     const cause = await this.errors.run(`"${command}"`, deadlineMs);

@@ -41,6 +41,7 @@ export function makeSerialTextAdapter(
         void link.end(new DomainError('adapter.cancelled', 'Opening was cancelled.'));
       };
       signal.addEventListener('abort', onAbort);
+      if (signal.aborted) onAbort();
       const fault = await greetDevice(link, settings, deadlineMs);
       signal.removeEventListener('abort', onAbort);
       if (!fault) return new SerialTextSession(link, settings, nowMs);

@@ -114,8 +114,8 @@ export class TextLink {
     // Noise without an end would stand before the reply. What may be the start of an unsolicited line is kept.
     if (!this.board.expectsLines) this.reader.discard();
     this.onTraffic?.('sent', wire);
-    const fault = await this.output.send(wire, deadlineMs);
-    if (fault) return this.outOfStep(this.lost ?? fault);
+    const fault = await this.send(wire, deadlineMs);
+    if (fault) return fault;
     if (this.settings.hasEcho) {
       const echoFault = await this.awaitEcho(text, deadlineMs);
       if (echoFault) return echoFault;
@@ -123,6 +123,13 @@ export class TextLink {
     if (!expectation) return '';
     const waitMs = this.output.wireMs(wire) + this.settings.replyTimeoutMs;
     return this.awaitReply(text, expectation, this.nowMs() + waitMs, deadlineMs);
+  }
+
+  /** A link whose commands do not get out is lost: they must not go out, old, when the device lets them. */
+  private async send(wire: string, deadlineMs: number): Promise<DomainError | null> {
+    const fault = await this.output.send(wire, deadlineMs);
+    if (fault && this.output.isStuck) void this.end(fault);
+    return fault && (this.lost ?? fault);
   }
 
   private async awaitEcho(text: string, deadlineMs: number): Promise<DomainError | null> {
@@ -195,7 +202,6 @@ export class TextLink {
   private async comeIntoStep(deadlineMs: number): Promise<DomainError | null> {
     this.dropIdleLines();
     if (this.lost || this.isInStep) return this.lost;
-    if (this.settings.flowControl !== 'none') await this.output.flush();
     const fault = (await this.awaitSilence(deadlineMs)) ?? (await this.identify(deadlineMs));
     if (!fault) this.isInStep = true;
     return fault;
@@ -222,8 +228,8 @@ export class TextLink {
     const { identification, identificationQuery, replyTimeoutMs } = this.settings;
     if (identification === '') return null;
     const { text, wire } = this.codec.encode(plainText(identificationQuery));
-    const sent = await this.output.send(wire, deadlineMs);
-    if (sent) return sent;
+    const fault = await this.send(wire, deadlineMs);
+    if (fault) return fault;
     const limitMs = this.nowMs() + this.output.wireMs(wire) + replyTimeoutMs;
     for (;;) {
       if (this.lost) return this.lost;

@@ -27,10 +27,16 @@ export class TextWriter {
       const message = `${this.port}, ${placeOf(address)}: ${command.fault}.`;
       return new DomainError('adapter.misconfigured', message);
     }
+    if (this.errors.followsWrites) await this.errors.clearOthers(deadlineMs);
+    const sent = await this.send(address, command, deadlineMs);
+    const reported = await this.reportedAfter(command, deadlineMs);
+    const taken = sent ?? reported;
     const fault =
-      (await this.send(address, command, deadlineMs)) ??
-      (this.errors.followsWrites ? await this.errors.run(`"${command}"`, deadlineMs) : null) ??
-      (address.given.hasReadback ? await this.readBack(address, value, command, deadlineMs) : null);
+      taken === null && address.given.hasReadback
+        ? await this.readBack(address, value, command, deadlineMs)
+        : reported?.code === 'adapter.refused'
+          ? reported
+          : taken;
     const earlier = this.blamed.get(address);
     this.blamed.delete(address);
     if (this.errors.isPossible && !this.errors.followsWrites) this.suspects.add(address);
@@ -46,6 +52,12 @@ export class TextWriter {
     }
     this.suspects.clear();
     return hasSuspects;
+  }
+
+  /** Asked after a failed write too: an entry that stayed in the queue would be put down to the next write. */
+  private async reportedAfter(command: string, deadlineMs: number): Promise<DomainError | null> {
+    if (!this.errors.followsWrites || this.link.lost) return null;
+    return this.errors.run(`"${command}"`, deadlineMs);
   }
 
   private async send(address: TextAddress, command: string, deadlineMs: number): Promise<DomainError | null> {
