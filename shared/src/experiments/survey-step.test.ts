@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { testChain, testObjective, testSurvey } from './experiment.fixture.js';
+import { testChain, testObjective, testStep as s, testSurvey } from './experiment.fixture.js';
 import { hill, runScript, type Plant } from './scripted-plant.fixture.js';
 
 const survey = (change: Parameters<typeof testSurvey>[0] = {}) => testChain(testSurvey(change));
@@ -143,5 +143,52 @@ describe('survey', () => {
     const run = runScript({ graph: survey(change), plant: hill });
     expect(exit(run)?.port).toBe('failed');
     expect(exit(run)?.reason).toContain(reason);
+  });
+});
+
+describe('a survey over two actuators', () => {
+  const bowl: Plant = ({ trim = NaN, load = NaN }) => ({
+    yield: 90 - (trim - 1) ** 2 - 0.01 * (load - 40) ** 2,
+    flame: 1,
+  });
+  const axis = (channel: string, from: number, to: number, isUpAndDown: boolean) => ({
+    ...{ channel, from, to, points: 5, isUpAndDown },
+  });
+
+  it('visits the grid in short moves, and leaves place, hills, curvatures and noise behind', () => {
+    const actuators = [axis('trim', -3, 5, true), axis('load', 20, 60, false)];
+    const run = runScript({ graph: survey({ actuators }), plant: bowl });
+    const visits = run.of('survey.point-measured');
+    expect(visits.length).toBe(50);
+    expect(visits.slice(0, 11).map(({ value, second }) => `${value}/${second?.value}`)).toEqual([
+      '-3/20',
+      '-1/20',
+      '1/20',
+      '3/20',
+      '5/20',
+      '5/20',
+      '3/20',
+      '1/20',
+      '-1/20',
+      '-3/20',
+      '-3/30',
+    ]);
+    expect(run.results).toMatchObject({
+      'survey.best.trim': 1,
+      'survey.best.load': 40,
+      'survey.best.objective': 90,
+      'survey.peaks': 1,
+      'survey.noise': 0,
+      'survey.curvature.trim': expect.closeTo(2, 6),
+      'survey.curvature.load': expect.closeTo(0.02, 6),
+    });
+    expect(run.results['survey.backlash.load']).toBeUndefined();
+  });
+
+  it('is named in the results that later steps may use', () => {
+    const actuators = [axis('trim', -3, 5, false), axis('load', 20, 60, true)];
+    const graph = testChain(testSurvey({ actuators }), s('check', { criterion: 'survey.best.load > 30' }));
+    const run = runScript({ graph, plant: bowl });
+    expect(run.end?.verdict).toBe('pass');
   });
 });

@@ -40,12 +40,15 @@ const samplesBeside = 3;
  *
  * @param up samples on the way up, by rising value
  * @param down the same values on the way down, in the order of `up`; empty without a way down
+ * @param smoothedMax the curve, which costs the square of it, is laid through so many samples at most: neighbours are
+ * averaged first
  * @throws analysis.invalid-input where the two ways do not match; analysis.too-little-data where no value is valid
  */
 export function readSurveyCurve(
   up: readonly SurveyCurveSample[],
   down: readonly SurveyCurveSample[],
   direction: Direction,
+  smoothedMax: number = Infinity,
 ): SurveyCurveFindings {
   checkSettings(
     [down.length === 0 || down.length === up.length, 'down', 'must be empty or as long as up.'],
@@ -58,13 +61,7 @@ export function readSurveyCurve(
   if (pairs.length === 0) throw new DomainError('analysis.too-little-data');
   const hasDown = down.length > 0;
   const samples = pairs.map((pair) => (hasDown ? join(pair.up, pair.down) : pair.up));
-  const curve =
-    samples.length >= 6
-      ? smoothCurve(
-          samples.map((s) => s.value),
-          samples.map((s) => s.objective),
-        )
-      : null;
+  const curve = samples.length >= 6 ? curveThrough(samples, smoothedMax) : null;
   const sampleError = errorOf(samples, curve);
   return {
     samples,
@@ -74,6 +71,19 @@ export function readSurveyCurve(
     greatestGap: hasDown ? gapOf(pairs) : noEstimate(),
     backlash: hasDown && samples.length >= 6 ? backlashOf(pairs) : noEstimate(),
   };
+}
+
+function curveThrough(samples: readonly SurveyCurveSample[], most: number): SmoothCurve {
+  const size = Math.ceil(samples.length / most) || 1;
+  const groups = Array.from({ length: Math.ceil(samples.length / size) }, (_, k) =>
+    samples.slice(k * size, (k + 1) * size),
+  );
+  const means = (of: (sample: SurveyCurveSample) => number) =>
+    groups.map((group) => group.reduce((sum, sample) => sum + of(sample), 0) / group.length);
+  return smoothCurve(
+    means((sample) => sample.value),
+    means((sample) => sample.objective),
+  );
 }
 
 interface Pair {

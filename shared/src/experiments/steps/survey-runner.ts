@@ -1,6 +1,8 @@
 import type { StepOf } from '../experiment.schema.js';
 import type { SequencerInput } from '../sequencer.types.js';
-import { readSurvey, type SurveyFindings, type SurveyMeasurement } from '../survey/read-survey.js';
+import { readSurvey } from '../survey/read-survey.js';
+import { surveyBacklash } from '../survey/survey-backlash.js';
+import { SurveyPlaces, type SurveyMeasurement } from '../survey/survey-places.js';
 import { planSurvey, type SurveyedRange, type SurveyVisit } from '../survey/survey-plan.js';
 import { ActuatorRamp } from './actuator-ramp.js';
 import { numericValue, type CompileStepExpression, type NumericValue } from './compile-step-expression.js';
@@ -24,7 +26,10 @@ export class SurveyRunner implements StepRunner {
   private ranges: SurveyedRange[] = [];
   private visits: SurveyVisit[] = [];
   private at = 0;
-  private phase: 'moving' | 'settling' | 'averaging' = 'moving';
+  private phase: 'moving' | 'settling' | 'averaging' | 'reading' = 'moving';
+  /** Once all is measured. */
+  private places: SurveyPlaces | null = null;
+  private backlashesRead = 0;
   private phaseS = 0;
 
   constructor(
@@ -52,6 +57,7 @@ export class SurveyRunner implements StepRunner {
     const empty = this.ranges.find(({ from, to }) => !(Math.abs(to - from) > 0));
     if (empty) return failed(`There is nothing to survey from ${empty.from} to ${empty.to}.`);
     this.measured.length = 0;
+    this.places = null;
     this.scatter.squares = 0;
     this.scatter.freedom = 0;
     this.visits = planSurvey(this.ranges);
@@ -67,6 +73,7 @@ export class SurveyRunner implements StepRunner {
       // Past its line the ramp holds the target, without asking for more than this scan can move.
       this.ramp.step(input);
     }
+    if (this.phase === 'reading') return this.readOn();
     const { settleS, averageS } = this.settings.parameters;
     const { periodS } = this.services;
     if (this.phase === 'settling' && isOver(this.phaseS, settleS, periodS)) this.enter('averaging');
@@ -75,7 +82,7 @@ export class SurveyRunner implements StepRunner {
     if (this.phase !== 'averaging' || !isOver(this.phaseS, averageS, periodS)) return null;
     this.note(input);
     this.at += 1;
-    return this.at < this.visits.length ? this.beginVisit(input) : this.conclude();
+    return this.at < this.visits.length ? this.beginVisit(input) : this.beginReading();
   }
 
   private get visit(): SurveyVisit {
@@ -132,35 +139,40 @@ export class SurveyRunner implements StepRunner {
     });
   }
 
-  private conclude(): StepExit {
+  private beginReading(): StepExit | null {
+    this.enter('reading');
+    this.places = new SurveyPlaces(this.ranges, this.measured);
+    this.backlashesRead = 0;
     const direction = this.services.objective?.direction ?? 'maximise';
-    const findings = readSurvey(this.ranges, this.measured, direction, this.settings.parameters.choose);
+    const findings = readSurvey(this.places, direction, this.settings.parameters.choose);
     if (!findings) return failed('The objective was valid nowhere.');
-    this.leaveResults(findings);
-    return done;
+    const { best, curvatures, peaks, prominence, hysteresis } = findings;
+    this.channels.forEach((channel, i) => {
+      this.leave(`best.${channel}`, best.values[i] ?? NaN);
+      this.leave(`curvature.${channel}`, Math.abs(curvatures[i]?.value ?? NaN));
+      this.leave(`curvatureError.${channel}`, curvatures[i]?.standardError ?? NaN);
+    });
+    this.leave('best.objective', best.objective);
+    this.leave('peaks', peaks);
+    this.leave('prominence', prominence);
+    this.leave('hysteresis', hysteresis);
+    this.leave('noise', Math.sqrt(this.scatter.squares / this.scatter.freedom));
+    return null;
   }
 
-  private leaveResults({
-    best,
-    peaks,
-    prominence,
-    curvatures,
-    hysteresis,
-    backlashes,
-  }: SurveyFindings): void {
-    const leave = (suffix: string, value: number) => this.services.setResult(this.id, suffix, value);
-    this.channels.forEach((channel, i) => {
-      leave(`best.${channel}`, best.values[i] ?? NaN);
-      leave(`curvature.${channel}`, Math.abs(curvatures[i]?.value ?? NaN));
-      leave(`curvatureError.${channel}`, curvatures[i]?.standardError ?? NaN);
-      leave(`backlash.${channel}`, backlashes[i]?.value ?? NaN);
-      leave(`backlashError.${channel}`, backlashes[i]?.standardError ?? NaN);
-    });
-    leave('best.objective', best.objective);
-    leave('peaks', peaks);
-    leave('prominence', prominence);
-    leave('hysteresis', hysteresis);
-    leave('noise', Math.sqrt(this.scatter.squares / this.scatter.freedom));
+  /** The backlash of one actuator a scan, so that no scan takes long. */
+  private readOn(): StepExit | null {
+    const channel = this.channels[this.backlashesRead];
+    if (channel === undefined || !this.places) return done;
+    const { value, standardError } = surveyBacklash(this.places, this.backlashesRead);
+    this.leave(`backlash.${channel}`, value);
+    this.leave(`backlashError.${channel}`, standardError);
+    this.backlashesRead += 1;
+    return this.backlashesRead < this.channels.length ? null : done;
+  }
+
+  private leave(suffix: string, value: number): void {
+    this.services.setResult(this.id, suffix, value);
   }
 }
 

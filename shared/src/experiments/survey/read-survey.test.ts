@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { readSurvey, type SurveyMeasurement } from './read-survey.js';
+import { readSurvey } from './read-survey.js';
+import { surveyBacklash } from './survey-backlash.js';
+import { SurveyPlaces, type SurveyMeasurement } from './survey-places.js';
 import { planSurvey, type SurveyedRange } from './survey-plan.js';
 
 const range = (from: number, to: number, points: number, isUpAndDown = false): SurveyedRange => ({
@@ -30,7 +32,9 @@ const read = (
   map: Parameters<typeof measure>[1],
   choose: 'highest' | 'most-prominent' = 'highest',
   direction: 'maximise' | 'minimise' = 'maximise',
-) => readSurvey(ranges, measure(ranges, map), direction, choose);
+) => readSurvey(new SurveyPlaces(ranges, measure(ranges, map)), direction, choose);
+const backlash = (ranges: readonly SurveyedRange[], map: Parameters<typeof measure>[1]) =>
+  ranges.map((_, i) => surveyBacklash(new SurveyPlaces(ranges, measure(ranges, map)), i).value);
 
 const listed = (values: number[]) => (place: readonly number[]) => values[place[0] ?? 0] ?? NaN;
 
@@ -100,9 +104,13 @@ describe('a survey over one actuator', () => {
       ...one,
       isValid: i !== 1 && i !== 3,
     }));
-    expect(readSurvey(ranges, measured, 'maximise', 'highest')?.best.values).toEqual([0]);
+    expect(readSurvey(new SurveyPlaces(ranges, measured), 'maximise', 'highest')?.best.values).toEqual([0]);
     expect(
-      readSurvey(ranges, measure(ranges, listed([1, 2, 3]), { isValid: false }), 'maximise', 'highest'),
+      readSurvey(
+        new SurveyPlaces(ranges, measure(ranges, listed([1, 2, 3]), { isValid: false })),
+        'maximise',
+        'highest',
+      ),
     ).toBeNull();
   });
 
@@ -110,7 +118,8 @@ describe('a survey over one actuator', () => {
     const ranges = [range(0, 4, 5)];
     const map = listed([0, 3, 2.5, 2.9, 0]);
     const peaks = (standardError: number) =>
-      readSurvey(ranges, measure(ranges, map, { standardError }), 'maximise', 'highest')?.peaks;
+      readSurvey(new SurveyPlaces(ranges, measure(ranges, map, { standardError })), 'maximise', 'highest')
+        ?.peaks;
     expect(peaks(0)).toBe(2);
     expect(peaks(0.2)).toBe(1);
   });
@@ -138,17 +147,17 @@ describe('a survey over one actuator', () => {
       ...one,
       applied: one.applied.map(Math.round),
     }));
-    const found = readSurvey(ranges, measured, 'maximise', 'highest');
+    const found = readSurvey(new SurveyPlaces(ranges, measured), 'maximise', 'highest');
     expect(found).toMatchObject({ best: { values: [2], objective: 10 }, peaks: 1 });
   });
 
   it('tells the backlash by the distance of the two ways', () => {
     // Play of width b: the way up shows f(u − b/2), the way down f(u + b/2).
-    const found = read(
+    const [width] = backlash(
       [range(-5, 5, 21, true)],
       ([x = NaN], [branch]) => 90 - (x - 1 + (branch === 'up' ? -0.2 : 0.2)) ** 2,
     );
-    expect(found?.backlashes[0]?.value).toBeCloseTo(0.4, 3);
+    expect(width).toBeCloseTo(0.4, 3);
   });
 });
 
@@ -182,10 +191,10 @@ describe('a survey over two actuators', () => {
 
   it('tells the backlash of each actuator', () => {
     const shift = (branch: string | undefined, width: number) => (branch === 'up' ? -width / 2 : width / 2);
-    const found = read([range(-5, 5, 13, true), range(-5, 5, 13, true)], ([x = NaN, y = NaN], [a, b]) =>
+    const widths = backlash([range(-5, 5, 13, true), range(-5, 5, 13, true)], ([x = NaN, y = NaN], [a, b]) =>
       hill([x + shift(a, 0.3), y + shift(b, 0.5)]),
     );
-    expect(found?.backlashes[0]?.value).toBeCloseTo(0.3, 2);
-    expect(found?.backlashes[1]?.value).toBeCloseTo(0.5, 2);
+    expect(widths[0]).toBeCloseTo(0.3, 2);
+    expect(widths[1]).toBeCloseTo(0.5, 2);
   });
 });
