@@ -77,6 +77,7 @@ export * from './rigs/channel-id.js';
 export * from './rigs/quality.js';
 export * from './rigs/rig-model.js';
 export * from './rigs/rig.schema.js';
+export * from './rigs/wire-fault-forms.js';
 export * from './rigs/wire-fault.schema.js';
 export * from './runs/run-columns.js';
 export * from './runs/run-event.schema.js';

@@ -5,57 +5,110 @@ const dayS = 86_400;
 
 /** When a fault strikes, and whom. */
 const strikes = {
-  /** Share of reads and writes that are hit, 0 to 1; drawn anew for each. */
-  probability: z.number().min(0).max(1).default(1),
-  /** Same seed, same calls hit. */
-  seed: z.int().default(1),
-  /** Begins this long after it was set, s. */
-  fromS: z.number().min(0).max(dayS).default(0),
-  /** Ends this long after it was set, s; null: it stays until it is cleared. */
-  untilS: z.number().positive().max(dayS).nullable().default(null),
-  /** Channels that are hit; null for all of the connection. What concerns the wire as a whole hits all. */
-  channels: z.array(channelIdSchema).min(1).max(200).nullable().default(null),
+  probability: z
+    .number()
+    .min(0)
+    .max(1)
+    .default(1)
+    .meta({
+      title: 'Probability',
+      description: 'Share of reads and writes that are hit, drawn anew for each.',
+    }),
+  seed: z.int().default(1).meta({ title: 'Seed', description: 'Same seed, same calls hit.' }),
+  fromS: z
+    .number()
+    .min(0)
+    .max(dayS)
+    .default(0)
+    .meta({ title: 'Begins after, s', description: 'Counted from when the fault is put.' }),
+  untilS: z
+    .number()
+    .positive()
+    .max(dayS)
+    .nullable()
+    .default(null)
+    .meta({ title: 'Ends after, s', description: 'Empty: it stays until it is taken off.' }),
+  channels: z.array(channelIdSchema).min(1).max(200).nullable().default(null).meta({
+    title: 'Channels',
+    description: 'Those that are hit; none named: all. What concerns the wire as a whole hits all.',
+  }),
 };
 
-const fault = <K extends string, S extends z.ZodRawShape>(kind: K, shape: S) =>
-  z.object({ kind: z.literal(kind), ...shape, ...strikes });
+const fault = <K extends string, S extends z.ZodRawShape>(
+  kind: K,
+  title: string,
+  description: string,
+  shape: S,
+) => z.object({ kind: z.literal(kind), ...shape, ...strikes }).meta({ title, description });
 
-const timeMs = (most: number) => z.number().positive().max(most);
+const timeMs = (most: number, title: string) => z.number().positive().max(most).meta({ title });
 
-/** What a wire can be made to suffer, on benches only. */
+/** What a wire can be made to suffer, on benches only; what each kind does stands beside it. */
 export const wireFaultSchema = z
   .discriminatedUnion('kind', [
-    /** Every call takes this much longer. */
-    fault('delay', { delayMs: timeMs(60_000) }),
-    /** Every call takes longer by something between nothing and this, evenly. */
-    fault('jitter', { mostMs: timeMs(60_000) }),
-    /** The device needs this long for each value that it is asked for or told. */
-    fault('slow-device', { perValueMs: timeMs(10_000) }),
-    /** No answer: adapter.timeout after this time. Writes do not reach the device. */
-    fault('drop', { timeoutMs: timeMs(60_000) }),
-    /** The answer breaks off: what comes after the kept share is adapter.corrupt. Writes reach the device. */
-    fault('truncate', { keptShare: z.number().min(0).max(0.999).default(0.5) }),
-    /** No valid answer: adapter.corrupt. Writes reach the device. */
-    fault('corrupt', {}),
-    /** The device answers with the values of its last good read; writes are accepted and do nothing. */
-    fault('freeze', {}),
-    /** Another unit on the line answers: adapter.corrupt. Writes do not reach the device. */
-    fault('wrong-unit', { answeringUnit: z.int().min(0).max(255).default(17) }),
-    /**
-     * The instrument is set to another engineering unit: it shows `factor · value + offset` without any sign of a
-     * fault, and takes what is written the same way. The defaults turn °C into °F.
-     */
-    fault('wrong-scale', {
-      factor: z
-        .number()
-        .refine((factor) => factor !== 0, 'Any factor but 0.')
-        .default(1.8),
-      offset: z.number().default(32),
+    fault('delay', 'Delay', 'Every read and write takes longer.', { delayMs: timeMs(60_000, 'Delay, ms') }),
+    fault('jitter', 'Jitter', 'Every read and write takes longer by something between nothing and this.', {
+      mostMs: timeMs(60_000, 'Longest, ms'),
     }),
-    /** The device answers with an exception: adapter.refused. Writes do nothing. */
-    fault('exception', { text: z.string().trim().min(1).max(200).default('illegal data address') }),
-    /** The connection is lost: adapter.disconnected. Where it cannot be made again, opening fails as well. */
-    fault('disconnect', { canReconnect: z.boolean().default(true) }),
+    fault(
+      'slow-device',
+      'Slow device',
+      'The device needs time for each value that it is asked for or told.',
+      {
+        perValueMs: timeMs(10_000, 'Time for each value, ms'),
+      },
+    ),
+    fault('drop', 'No answer', 'The device does not answer: a timeout. Writes do not reach it.', {
+      timeoutMs: timeMs(60_000, 'Time until the timeout, ms'),
+    }),
+    fault(
+      'truncate',
+      'Answer breaks off',
+      'What comes after the kept share is corrupt. Writes reach the device.',
+      {
+        keptShare: z.number().min(0).max(0.999).default(0.5).meta({ title: 'Kept share' }),
+      },
+    ),
+    fault('corrupt', 'Corrupt answer', 'What comes is no valid answer. Writes reach the device.', {}),
+    fault(
+      'freeze',
+      'Frozen values',
+      'The device answers with the values of its last good read. Writes are accepted and do nothing.',
+      {},
+    ),
+    fault(
+      'wrong-unit',
+      'Wrong unit answers',
+      'Another unit on the line answers. Writes do not reach the device.',
+      {
+        answeringUnit: z.int().min(0).max(255).default(17).meta({ title: 'Unit that answers' }),
+      },
+    ),
+    fault(
+      'wrong-scale',
+      'Wrong engineering unit',
+      'Shows factor · value + offset without any sign of a fault, and takes writes the same way. As it stands: °F for °C.',
+      {
+        factor: z
+          .number()
+          .refine((factor) => factor !== 0, 'Any factor but 0.')
+          .default(1.8)
+          .meta({ title: 'Factor' }),
+        offset: z.number().default(32).meta({ title: 'Offset' }),
+      },
+    ),
+    fault('exception', 'Device refuses', 'The device answers with an exception. Writes do nothing.', {
+      text: z.string().trim().min(1).max(200).default('illegal data address').meta({ title: 'Its words' }),
+    }),
+    fault('disconnect', 'Disconnect', 'The connection is lost.', {
+      canReconnect: z
+        .boolean()
+        .default(true)
+        .meta({
+          title: 'Can be made again',
+          description: 'Off: it stays down until the fault is taken off.',
+        }),
+    }),
   ])
   .refine(({ fromS, untilS }) => untilS === null || untilS > fromS, {
     path: ['untilS'],
