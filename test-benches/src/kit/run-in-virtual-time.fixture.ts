@@ -20,6 +20,8 @@ export interface VirtualMoment {
   readonly steps: readonly string[];
   /** True shortfall behind the true best, in the unit of the objective; null where it means nothing. */
   readonly loss: number | null;
+  /** What was to be had at the true best, in the unit of the objective. */
+  readonly bestObjective: number;
   readonly at: Readonly<Record<string, number>>;
   readonly best: Readonly<Record<string, number>>;
 }
@@ -56,8 +58,9 @@ export function runInVirtualTime<M extends BenchModel>(run: VirtualRun<M>): Virt
       if (body.type === 'step.ended') ended.push(`${body.step}.${body.port}`);
     }
     ({ runEnded } = output);
-    const { loss, at, best } = bench.model.truth;
-    moments.push({ tS: bench.tS - beginS, steps: bench.engine.status().activeSteps, loss, at, best });
+    const { loss, bestObjective, at, best } = bench.model.truth;
+    const steps = bench.engine.status().activeSteps;
+    moments.push({ tS: bench.tS - beginS, steps, loss, bestObjective, at, best });
   }
   const writesOutside = bench.writesOutside(run.envelope);
   const trip = bench.engine.status().trip?.cause ?? null;

@@ -30,6 +30,16 @@ const heat = { airTempC: 18, riseK: 33.75, timeConstantS: 240 };
 /** Lag of the irradiance sensor (a thermopile), s. */
 const sensorLagS = 2;
 
+/** The best power changes by 0.4 % a K: this is a ten-thousandth of it. */
+const sameWarmthK = 0.02;
+
+/** What the best point hangs on. */
+interface Light {
+  readonly irradiance: number;
+  readonly cellTempC: number;
+  readonly shades: Weather['shades'];
+}
+
 export interface StringSettings extends ModelSettings {
   profile: Profile;
 }
@@ -49,6 +59,7 @@ export class StringModel extends FixedStepModel {
   private sensedIrradiance: number;
   private sections: Section[] = [];
   private shades: Weather['shades'];
+  private best: (Light & { readonly point: PowerPoint }) | null = null;
 
   constructor(settings: StringSettings) {
     super(
@@ -90,9 +101,18 @@ export class StringModel extends FixedStepModel {
     };
   }
 
-  /** Point of greatest power of this moment. */
+  /** Point of greatest power of this moment; in steady light it is not searched again for a breath of warmth. */
   get bestPoint(): PowerPoint {
-    return bestPower(this.sections);
+    const { irradiance, cellTempC, shades, best } = this;
+    const isAsBefore =
+      best !== null &&
+      best.irradiance === irradiance &&
+      best.shades === shades &&
+      Math.abs(best.cellTempC - cellTempC) < sameWarmthK;
+    if (isAsBefore) return best.point;
+    const point = bestPower(this.sections);
+    this.best = { irradiance, cellTempC, shades, point };
+    return point;
   }
 
   /** Where the string is now, ripple and all, without noise. */

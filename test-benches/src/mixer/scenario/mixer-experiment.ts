@@ -32,23 +32,14 @@ export const wasteObjective: ObjectiveInput = {
  *   hill is 0.4 g/L below at the least.
  * - The drift moves the best place by 0.7 % · 2π / 260 s = 0.02 %/s at most, which the estimate trails by 0.4 %.
  */
-export const mixerSeeking = {
-  ditherAmplitude: 1.5,
-  ditherPeriodS: 12,
-  washoutRatio: 0.3,
-  lowPassRatio: 0.5,
+const seeking = {
+  amplitude: 1.5,
+  periodS: 12,
   phaseDeg: 38,
   min: 6,
   max: 94,
-} as const;
-
-const {
-  ditherAmplitude: amplitude,
-  ditherPeriodS: periodS,
-  washoutRatio,
-  lowPassRatio,
-  ...seeking
-} = mixerSeeking;
+};
+const filters = { washoutRatio: 0.3, lowPassRatio: 0.5 };
 
 export const seekForS = 300;
 
@@ -101,8 +92,8 @@ function findHill(
           title: 'Seek and hold the best',
           ...at(940, 120),
           parameters: {
-            law: { id: 'gradient', parameters: { washoutRatio, lowPassRatio } },
-            actuators: [{ channel: 'distributor', amplitude, periodS, gain, ...seeking }],
+            law: { id: 'gradient', parameters: filters },
+            actuators: [{ channel: 'distributor', ...seeking, gain }],
             end: { afterS: seekForS, whenConverged: null, when: null },
             invalidForS: 30,
           },

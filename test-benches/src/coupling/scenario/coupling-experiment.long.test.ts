@@ -1,0 +1,3 @@
+import { describeCouplingExperiment } from './coupling-experiment.fixture.js';
+
+describeCouplingExperiment(20);

@@ -1,0 +1,3 @@
+import { describeStringExperiments } from './string-experiment.fixture.js';
+
+describeStringExperiments(20);
