@@ -25,9 +25,10 @@ export interface RtuPortOptions extends SilentIntervals {
 
 /**
  * The bytes of one frame reach a program in pieces, since adapters and drivers gather them for up to 16 ms: only a
- * silence that is longer by this much than the protocol allows within a frame means that no more will come.
+ * silence that is longer by twice this much than the protocol allows within a frame means that no more will come.
+ * Twice: where this process was held up, a timer is served before the bytes that came in meanwhile.
  */
-const gatheringMs = 20;
+const gatheringMs = 15;
 
 /** Least silence, after an answer that stayed away, before the next request: what comes in meanwhile is dropped. */
 const drainMs = 20;
@@ -132,12 +133,11 @@ export class RtuPort extends EventEmitter implements ModbusPort {
   }
 
   private startTimer(): void {
-    if (this.brokenOff) {
-      this.brokenOff.refresh();
-      return;
-    }
+    this.stopTimer();
     this.brokenOff = setTimeout(() => {
-      this.listenNoMore();
+      this.brokenOff = setTimeout(() => {
+        this.listenNoMore();
+      }, gatheringMs);
     }, this.options.t15Ms + gatheringMs);
   }
 
