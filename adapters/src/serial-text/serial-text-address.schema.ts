@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { placeholdersOf } from './command-template.js';
 import { sampleTypes } from './definite-block.js';
 import { numberNotations, writeNotations } from './number-text.js';
-import { commandSchema, escapedTextSchema, patternSchema } from './text-fields.js';
+import { commandSchema, escapedTextSchema, optionalPatternSchema } from './text-fields.js';
 
 const finite = z.number();
 
@@ -12,14 +12,11 @@ const askFields = {
     description:
       'Command that asks for the value, e.g. MEAS:VOLT? {channel}. Channels with the same query share one.',
   }),
-  stream: z
-    .union([patternSchema, z.literal('')])
-    .default('')
-    .meta({
-      title: 'Stream',
-      description:
-        'In place of a query: pattern of the lines that the device sends by itself and that carry the value, e.g. $??GGA,*.',
-    }),
+  stream: optionalPatternSchema.default('').meta({
+    title: 'Stream',
+    description:
+      'In place of a query: pattern of the lines that the device sends by itself and that carry the value, e.g. $??GGA,*.',
+  }),
   channel: z
     .string()
     .max(60)
@@ -110,13 +107,10 @@ const writeFields = {
   }),
   min: finite.default(-1e12).meta({ title: 'Least', description: 'Least value that may be sent.' }),
   max: finite.default(1e12).meta({ title: 'Greatest', description: 'Greatest value that may be sent.' }),
-  acknowledgement: z
-    .union([patternSchema, z.literal('')])
-    .default('')
-    .meta({
-      title: 'Acknowledgement',
-      description: 'Pattern of the reply to a write; empty where the device sends none.',
-    }),
+  acknowledgement: optionalPatternSchema.default('').meta({
+    title: 'Acknowledgement',
+    description: 'Pattern of the reply to a write; empty where the device sends none.',
+  }),
   hasReadback: z.boolean().default(false).meta({
     title: 'Read back',
     description: 'Whether the query follows each write and its value must agree.',

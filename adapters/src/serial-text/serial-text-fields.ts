@@ -2,7 +2,13 @@ import { z } from 'zod';
 import { serialPortFields } from '../serial/serial-port.schema.js';
 import { checksumKinds } from './checksum.js';
 import { instrumentProfileIds, serialTextDefaults } from './serial-text-configuration.js';
-import { commandSchema, escapedTextSchema, patternListSchema, terminatorSchema } from './text-fields.js';
+import {
+  commandSchema,
+  escapedTextSchema,
+  optionalPatternSchema,
+  patternListSchema,
+  terminatorSchema,
+} from './text-fields.js';
 
 const milliseconds = (most: number): z.ZodNumber => z.number().min(0).max(most);
 
@@ -177,7 +183,7 @@ export const deviceFields = {
     'Command that asks the device what it is; used where an identification is given.',
   ),
   identification: orDefault(
-    z.string().max(120),
+    optionalPatternSchema,
     'identification',
     'Identification',
     'Pattern that the reply must fit, e.g. *,MODEL 12,*. It also brings the line back into step after a missed reply.',

@@ -27,3 +27,6 @@ export const patternSchema = z
   .max(120, 'At most 120 characters.');
 
 export const patternListSchema = z.array(patternSchema).max(20, 'At most 20 patterns.');
+
+/** Empty for none. */
+export const optionalPatternSchema = z.string().max(120, 'At most 120 characters.');

@@ -1,12 +1,13 @@
 import { DomainError } from '@cresthold/shared';
 import { closeSerialPort, type OpenSerialPort, portFault } from '../serial/open-serial-port.js';
 import { plainText, showText } from './escaped-text.js';
-import { type Expectation, type Frame, FrameReader } from './frame-reader.js';
+import type { Expectation, Frame } from './frame-reader.js';
 import { LineCodec } from './line-codec.js';
 import { fitsAny, fitsPattern } from './pattern.js';
 import { PortOutput } from './port-output.js';
 import type { SerialTextConfiguration } from './serial-text-configuration.js';
 import { StreamBoard } from './stream-board.js';
+import { TextInbox } from './text-inbox.js';
 import { Waiter } from './waiter.js';
 
 export interface TextRequest {
@@ -36,14 +37,10 @@ export class TextLink {
   onTraffic: ((direction: 'sent' | 'received', text: string) => void) | null = null;
   readonly board: StreamBoard;
   private readonly codec: LineCodec;
-  private readonly reader: FrameReader;
+  private readonly inbox: TextInbox;
   private readonly output: PortOutput;
   private readonly waiter = new Waiter();
   private isBusy = false;
-  private isInStep = true;
-  /** When the last thing that does not belong here came, or a reply was missed. */
-  private disturbedMs = 0;
-  private lastByteMs = 0;
   private silences = 0;
   private released: Promise<void> | null = null;
 
@@ -54,7 +51,7 @@ export class TextLink {
   ) {
     this.codec = new LineCodec(settings);
     this.board = new StreamBoard(this.codec, settings.unsolicited);
-    this.reader = new FrameReader(plainText(settings.replyTerminator), settings.mostReplyChars);
+    this.inbox = new TextInbox(settings, { board: this.board, waiter: this.waiter, nowMs });
     const around = { nowMs, waiter: this.waiter, lost: () => this.lost };
     this.output = new PortOutput(port, settings, around);
     port.on('data', this.receive);
@@ -76,7 +73,7 @@ export class TextLink {
       return (await this.comeIntoStep(deadlineMs)) ?? (await this.ask(request, deadlineMs));
     } finally {
       this.isBusy = false;
-      this.dropIdleLines();
+      this.inbox.dropStrays();
     }
   }
 
@@ -103,16 +100,14 @@ export class TextLink {
   }
 
   private readonly receive = (chunk: Buffer): void => {
-    this.lastByteMs = this.nowMs();
-    this.reader.push(chunk);
+    this.inbox.push(chunk);
     if (this.isBusy) this.waiter.wake();
-    else this.dropIdleLines();
+    else this.inbox.dropStrays();
   };
 
   private async ask({ command, expectation }: TextRequest, deadlineMs: number): Promise<TextReply> {
     const { text, wire } = this.codec.encode(command);
-    // Noise without an end would stand before the reply. What may be the start of an unsolicited line is kept.
-    if (!this.board.expectsLines) this.reader.discard();
+    this.inbox.dropNoise();
     this.onTraffic?.('sent', wire);
     const fault = await this.send(wire, deadlineMs);
     if (fault) return fault;
@@ -136,19 +131,16 @@ export class TextLink {
     const limitMs = this.nowMs() + 2 * this.output.wireMs(text) + this.settings.replyTimeoutMs;
     for (;;) {
       if (this.lost) return this.lost;
-      const echo = this.reader.takeEcho(text);
+      const echo = this.inbox.takeEcho(text);
       if (echo === 'taken') {
         this.onTraffic?.('received', text);
         return null;
       }
       if (echo === 'other') {
-        const frame = this.reader.next(line);
-        if (frame) {
-          if (frame.kind === 'line' && this.board.take(frame.text, this.nowMs())) continue;
-          return this.corrupt(text, frame, 'the echo is not what was sent');
-        }
+        const frame = this.inbox.next(line);
+        if (frame) return this.corrupt(text, frame, 'the echo is not what was sent');
       }
-      if (!(await this.waitUntil(limitMs, deadlineMs))) return this.silence(text);
+      if (!(await this.inbox.waitUntil(limitMs, deadlineMs))) return this.silence(text);
     }
   }
 
@@ -160,33 +152,19 @@ export class TextLink {
   ): Promise<TextReply> {
     for (;;) {
       if (this.lost) return this.lost;
-      const frame = this.reader.next(expectation);
-      const reply = frame ? this.judge(text, frame, expectation) : null;
-      if (reply !== null) return reply;
-      if (!frame && !(await this.waitUntil(limitMs, deadlineMs))) return this.silence(text);
+      const frame = this.inbox.next(expectation);
+      if (frame) return this.judge(text, frame, expectation);
+      if (!(await this.inbox.waitUntil(limitMs, deadlineMs))) return this.silence(text);
     }
   }
 
-  /** Waits for more. A reply that has begun gets time for each further character. @returns false when time is up */
-  private async waitUntil(limitMs: number, deadlineMs: number): Promise<boolean> {
-    const { replyTimeoutMs } = this.settings;
-    const hasBegun = this.reader.pendingChars > 0;
-    const extendedMs = hasBegun ? Math.max(limitMs, this.lastByteMs + replyTimeoutMs) : limitMs;
-    const leftMs = Math.min(extendedMs, deadlineMs) - this.nowMs();
-    if (leftMs <= 0) return false;
-    await this.waiter.wait(leftMs);
-    return true;
-  }
-
-  /** Null where the frame is no reply. */
-  private judge(text: string, frame: Frame, expectation: Expectation): TextReply | null {
+  private judge(text: string, frame: Frame, expectation: Expectation): TextReply {
     if (frame.kind === 'noise') return this.corrupt(text, frame, frame.fault);
     this.tellFrame(frame);
     if (frame.kind === 'block') {
       this.silences = 0;
       return frame.bytes;
     }
-    if (this.board.take(frame.text, this.nowMs())) return null;
     const reply = this.codec.decode(frame.text);
     if (typeof reply !== 'string') return this.corrupt(text, frame, reply.fault);
     if (fitsAny(reply, this.settings.refusals)) {
@@ -200,26 +178,23 @@ export class TextLink {
   }
 
   private async comeIntoStep(deadlineMs: number): Promise<DomainError | null> {
-    this.dropIdleLines();
-    if (this.lost || this.isInStep) return this.lost;
+    this.inbox.dropStrays();
+    if (this.lost || this.inbox.isInStep) return this.lost;
     const fault = (await this.awaitSilence(deadlineMs)) ?? (await this.identify(deadlineMs));
-    if (!fault) this.isInStep = true;
+    if (!fault) this.inbox.isInStep = true;
     return fault;
   }
 
   private async awaitSilence(deadlineMs: number): Promise<DomainError | null> {
-    const { resyncMs } = this.settings;
     for (;;) {
-      this.dropIdleLines();
+      this.inbox.dropStrays();
       if (this.lost) return this.lost;
-      // What came last may be the start of a line that somebody reads: that is judged when it is whole.
-      const unknownMs = this.reader.pendingChars > 0 ? this.lastByteMs : 0;
-      const leftMs = Math.max(this.disturbedMs, unknownMs) + resyncMs - this.nowMs();
+      const leftMs = this.inbox.silenceLeftMs();
       if (leftMs <= 0) break;
       if (this.nowMs() + leftMs > deadlineMs) return this.noTime();
       await this.waiter.wait(leftMs);
     }
-    this.reader.discard();
+    this.inbox.discard();
     return null;
   }
 
@@ -233,28 +208,19 @@ export class TextLink {
     const limitMs = this.nowMs() + this.output.wireMs(wire) + replyTimeoutMs;
     for (;;) {
       if (this.lost) return this.lost;
-      const frame = this.reader.next(line);
+      const frame = this.inbox.next(line);
       if (!frame) {
-        if (!(await this.waitUntil(limitMs, deadlineMs))) return this.silence(text);
-      } else if (frame.kind === 'line' && !this.board.take(frame.text, this.nowMs())) {
+        if (!(await this.inbox.waitUntil(limitMs, deadlineMs))) return this.silence(text);
+      } else if (frame.kind === 'line') {
         const reply = this.codec.decode(frame.text);
         if (typeof reply === 'string' && fitsPattern(reply, identification)) return null;
       }
     }
   }
 
-  /** Takes unsolicited lines off what has come; any other line belongs to no command. */
-  private dropIdleLines(): void {
-    for (let frame = this.reader.next(line); frame; frame = this.reader.next(line)) {
-      if (frame.kind === 'line' && this.board.take(frame.text, this.nowMs())) continue;
-      this.isInStep = false;
-      this.disturbedMs = this.nowMs();
-    }
-  }
-
   private silence(text: string): DomainError {
     this.silences += 1;
-    const begun = this.reader.begun;
+    const begun = this.inbox.begun;
     // The commonest slip of a new connection shows here: a terminator that the device does not send.
     const what = begun === '' ? 'no reply in time' : `the reply "${showText(begun, 60)}" did not end in time`;
     const message = `${this.place(text)}: ${what}.`;
@@ -282,8 +248,7 @@ export class TextLink {
   }
 
   private outOfStep(fault: DomainError): DomainError {
-    this.isInStep = false;
-    this.disturbedMs = this.nowMs();
+    this.inbox.disturb();
     return fault;
   }
 
