@@ -3,6 +3,7 @@ import { judgeErrors } from '../signals/honest-errors.fixture.js';
 import { createFirstOrderLag, stepFirstOrderLag } from '../signals/lags.js';
 import { SeededNoise } from '../signals/seeded-noise.fixture.js';
 import { firstOrderAnswer, firstOrderRiseS, firstOrderSettlingS } from './first-order-figures.js';
+import { stepBetweenSamples } from './step-at-once.js';
 import type { StepRecord } from './step-record.js';
 import { fitStepResponse } from './step-response.js';
 import { twoPointStepResponse } from './two-point-step-response.js';
@@ -92,6 +93,28 @@ describe('step response', () => {
     expect(() => fitStepResponse(flat)).toThrow(/do not determine/);
     expect(() => fitStepResponse({ ...record(1), stepSize: 0 })).toThrow(/stepSize/);
     expect(() => fitStepResponse({ ...record(1), values: [1, 2] })).toThrow(/at least 8/);
+  });
+});
+
+describe('a plant that answers between two samples', () => {
+  it.each([0, 0.02])('has no time constant, and the dead time that it waited (noise %d)', (noise) => {
+    const random = new SeededNoise(4);
+    const timesS = Array.from({ length: 60 }, (_, i) => i * 0.5);
+    for (const waited of [0, 3]) {
+      const values = timesS.map((t) => (t > 10 + waited * 0.5 ? 7 : 5) + noise * random.normal());
+      const fit = fitStepResponse({ timesS, values, stepAtS: 10, stepSize: 4 });
+      expect(fit.gain.value).toBeCloseTo(0.5, 2);
+      expect(fit.timeConstantS.value).toBeLessThan(0.25);
+      expect(Math.abs(fit.deadTimeS.value - 0.5 * waited)).toBeLessThan(0.51);
+    }
+  });
+
+  it('is not made out of noise', () => {
+    const random = new SeededNoise(4);
+    const timesS = Array.from({ length: 60 }, (_, i) => i * 0.5);
+    expect(() =>
+      stepBetweenSamples({ timesS, values: random.normals(60), stepAtS: 10, stepSize: 4 }),
+    ).toThrow(/do not determine/);
   });
 });
 

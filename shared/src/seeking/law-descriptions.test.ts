@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { z } from 'zod';
 import { lawCases } from './law.fixture.js';
+import { newtonLaw } from './newton-law.js';
 import { seekingLaws } from './seeking-laws.js';
 
 interface JsonSchema {
@@ -65,5 +66,19 @@ describe('parameters', () => {
   it('are refused where a law cannot use the dither', () => {
     const newton = lawCases.find(({ id }) => id === 'newton');
     expect(() => newton?.parameters([{ dither: 'square' }])).toThrow('This law can use: sine.');
+    const axis = { min: -1, max: 1, amplitude: 0.1, periodS: 1, curvature: 2 };
+    const settings = (crossCurvatures: number[][]) =>
+      newtonLaw.parametersSchema.safeParse({
+        axes: [axis, axis],
+        rate: 0.1,
+        inverseRate: 0.1,
+        crossCurvatures,
+      });
+    expect([[], [[1]], [[1, 2]], [[1], [1]]].map((rows) => settings(rows).success)).toEqual([
+      true,
+      true,
+      false,
+      false,
+    ]);
   });
 });

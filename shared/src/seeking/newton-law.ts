@@ -44,46 +44,64 @@ const axis = periodicAxis(['sine'], {
   ),
 });
 
-const parametersSchema = z.object({
-  axes: axesOf(axis, 8),
-  rate: parameter(
-    positive,
-    'Convergence rate',
-    '1 / s',
-    'Rate with which the estimate approaches the peak, the same in every direction; a tenth of the dither frequency at most.',
-  ),
-  inverseRate: parameter(
-    positive,
-    'Rate of the inverse Hessian',
-    '1 / s',
-    'How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.',
-  ),
-  washoutRatio: washoutRatioParameter,
-  lowPassRatio: lowPassRatioParameter,
-  hessianRatio: parameter(
-    z.number().positive().max(10).default(0.05),
-    'Low-pass of the Hessian',
-    'of the lowest dither frequency',
-    'Corner of the filter that takes the ripple off the second derivatives.',
-  ),
-  lag: parameter(
-    z
-      .object({
-        timeConstantS: parameter(
-          z.number().min(0).max(1e9).default(0),
-          'Time constant',
-          's',
-          'From Identify.',
-        ),
-        deadTimeS: parameter(z.number().min(0).max(1e9).default(0), 'Dead time', 's', 'From Identify.'),
-      })
-      .prefault({}),
-    'Lag of the plant',
-    '',
-    'The second derivatives show at other frequencies than the dither; this makes up for the lag there.',
-  ),
-  taper: taperParameter,
-});
+function isTriangle(rows: readonly (readonly number[])[], actuators: number): boolean {
+  return rows.length === actuators - 1 && rows.every((row, i) => row.length === i + 1);
+}
+
+const parametersSchema = z
+  .object({
+    axes: axesOf(axis, 8),
+    rate: parameter(
+      positive,
+      'Convergence rate',
+      '1 / s',
+      'Rate with which the estimate approaches the peak, the same in every direction; a tenth of the dither frequency at most.',
+    ),
+    crossCurvatures: parameter(
+      z
+        .array(z.array(z.number().min(-1e12).max(1e12)).min(1).max(7))
+        .max(7)
+        .default([]),
+      'Cross curvatures',
+      'objective unit / actuator unit²',
+      'First guess of the second derivatives between two actuators, sign turned, from a survey: one row for each actuator but the first, with those before it. Empty where nothing is known.',
+    ),
+    inverseRate: parameter(
+      positive,
+      'Rate of the inverse Hessian',
+      '1 / s',
+      'How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.',
+    ),
+    washoutRatio: washoutRatioParameter,
+    lowPassRatio: lowPassRatioParameter,
+    hessianRatio: parameter(
+      z.number().positive().max(10).default(0.05),
+      'Low-pass of the Hessian',
+      'of the lowest dither frequency',
+      'Corner of the filter that takes the ripple off the second derivatives.',
+    ),
+    lag: parameter(
+      z
+        .object({
+          timeConstantS: parameter(
+            z.number().min(0).max(1e9).default(0),
+            'Time constant',
+            's',
+            'From Identify.',
+          ),
+          deadTimeS: parameter(z.number().min(0).max(1e9).default(0), 'Dead time', 's', 'From Identify.'),
+        })
+        .prefault({}),
+      'Lag of the plant',
+      '',
+      'The second derivatives show at other frequencies than the dither; this makes up for the lag there.',
+    ),
+    taper: taperParameter,
+  })
+  .refine(({ axes, crossCurvatures: rows }) => rows.length === 0 || isTriangle(rows, axes.length), {
+    message: 'Give one row for each actuator but the first, each one entry longer than that before; or none.',
+    path: ['crossCurvatures'],
+  });
 export type NewtonLawParameters = z.infer<typeof parametersSchema>;
 
 interface NewtonOwn {
@@ -136,6 +154,7 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
       inverse: createRiccatiFilter(
         axes.map(({ curvature }) => curvature),
         inverseRate,
+        parameters.crossCurvatures,
       ),
       curvature: new Float64Array(n * n),
     }));

@@ -54,4 +54,13 @@ describe('the Riccati filter', () => {
     expect((first[0] ?? NaN) * (second[1] ?? NaN)).toBeGreaterThan((first[1] ?? NaN) ** 2);
     expect(stepRiccatiFilter(filter, Float64Array.of(NaN, 0, 0, 1), 0.1)).toBe(false);
   });
+
+  it('begins at a whole matrix, or at its diagonal where the whole is not positive definite', () => {
+    // H = [[100, 30], [30, 20]]: H⁻¹ = [[2/110, −3/110], [−3/110, 10/110]].
+    const inverse = inverseOf(createRiccatiFilter([100, 20], 1, [[30]])).flat();
+    [2 / 110, -3 / 110, -3 / 110, 10 / 110].forEach((entry, i) => expect(inverse[i]).toBeCloseTo(entry, 12));
+    expect(inverseOf(createRiccatiFilter([100, 20], 1, [[50]]))).toEqual(
+      inverseOf(createRiccatiFilter([100, 20], 1)),
+    );
+  });
 });

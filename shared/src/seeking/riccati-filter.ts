@@ -29,8 +29,14 @@ const floorShare = 0.01;
 /**
  * @param inverseDiagonal first guess of Γ⁻¹, its diagonal; each above zero
  * @param rate ωr, 1/s
+ * @param beside first guess of what stands beside the diagonal, its rows below it (the first has one entry); is
+ * left out where the whole would not be positive definite
  */
-export function createRiccatiFilter(inverseDiagonal: ArrayLike<number>, rate: number): RiccatiFilter {
+export function createRiccatiFilter(
+  inverseDiagonal: ArrayLike<number>,
+  rate: number,
+  beside: readonly (readonly number[])[] = [],
+): RiccatiFilter {
   const size = inverseDiagonal.length;
   const matrix = () => new Float64Array(size * size);
   const filter: RiccatiFilter = {
@@ -47,7 +53,22 @@ export function createRiccatiFilter(inverseDiagonal: ArrayLike<number>, rate: nu
     filter.inverse[i * size + i] = value;
     filter.factor[i * size + i] = Math.sqrt(value);
   }
+  if (beside.length > 0) beginBeside(filter, beside);
   return filter;
+}
+
+function beginBeside(filter: RiccatiFilter, beside: readonly (readonly number[])[]): void {
+  const { size, inverse, factor, trial, trialFactor } = filter;
+  trial.set(inverse);
+  beside.forEach((row, r) =>
+    row.forEach((value, j) => {
+      trial[(r + 1) * size + j] = value;
+      trial[j * size + r + 1] = value;
+    }),
+  );
+  if (!factorise(filter)) return;
+  inverse.set(trial);
+  factor.set(trialFactor);
 }
 
 /**

@@ -17,11 +17,14 @@ export const periodOf = ({ loop }: AxisLoop): number => (2 * Math.PI) / loop.ome
 /** Smallest share of the slope that any actuator recovers. */
 export const leastShare = ({ axes }: SizedLoops): number => Math.min(...axes.map(({ share }) => share));
 
+/** Rate with which the surveyed curvature is corrected, of that of convergence: it is worth more than its estimate. */
+const trust = 0.25;
+
 /** What is lost of the slope is made up for by the rate; the inverse follows no faster than noise permits. */
 export function newtonRates(sized: SizedLoops, rate: number) {
   return {
     rate: rate / leastShare(sized),
-    inverseRate: Math.min(rate, inverseRateByNoise(sized)),
+    inverseRate: Math.min(trust * rate, inverseRateByNoise(sized)),
     hessianRatio,
   };
 }
@@ -78,6 +81,7 @@ export const periodicParameters: Record<PeriodicLawId, (known: PeriodicCase) => 
       dither: 'sine',
     })),
     ...newtonRates(known.sized, known.rate),
+    crossCurvatures: known.plant.curvature.slice(1).map((row, i) => row.slice(0, i + 1)),
     washoutRatio,
     lowPassRatio,
     lag: lagOf(known.plant),

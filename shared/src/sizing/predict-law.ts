@@ -47,12 +47,11 @@ export function predictGradientLaw(
 
 /**
  * As `predictGradientLaw`, for θ̂' = rate·Γ·ξ with Γ the inverse of the curvature: κ = rate·ρ everywhere once Γ is
- * known. It begins at the diagonal, and until it is known the slowest direction converges more slowly
- * (`newtonConvergence`).
+ * known, which is from the beginning where the survey was right.
  */
 export function predictNewtonLaw(
   plant: CheckedPlant,
-  { axes, slowest: spread, coupling }: SizedLoops,
+  { axes, slowest: spread }: SizedLoops,
   { rate, inverseRate, hessianRatio }: { rate: number; inverseRate: number; hessianRatio: number },
 ): LawPrediction {
   const inverse = inverseDiagonal(plant.curvature);
@@ -61,7 +60,8 @@ export function predictNewtonLaw(
   const noise = axes.map((axis, i) => (rate * slopeDensity(axis) * inverse[i]!) / (4 * axis.share));
   return {
     convergenceS: newtonConvergence({
-      curvature: spread * coupling,
+      // The survey has told the whole curvature.
+      curvature: spread > 0 ? 1 : NaN,
       rate: rate * slowest.share,
       inverseRate,
       hessianRadPerS: hessianRatio * slowest.loop.omegaRadPerS,

@@ -119,6 +119,13 @@ describe('sizing of any law', () => {
     expect(noisy.dwellS).toBeGreaterThan(dwellS);
   });
 
+  it('lets Newton begin at the whole curvature that the survey found', () => {
+    const { parameters } = sizeLaw('newton', plantWith(3), demands);
+    expect(parameters.axes.map(({ curvature }) => curvature)).toEqual([2, 2, 2]);
+    expect(parameters.crossCurvatures).toEqual([[0.5], [0, 0.5]]);
+    expect(parameters.inverseRate).toBeLessThan(parameters.rate / 3);
+  });
+
   it('says why it cannot predict what has no closed form', () => {
     for (const lawId of lawIds) {
       const { predicted, unpredicted } = sizeLaw(lawId, plantWith(2), demands);

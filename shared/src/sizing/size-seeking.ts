@@ -1,9 +1,12 @@
 import { z } from 'zod';
 import { sizeAmplitude, type AmplitudeBound } from '../dither/dither-amplitude.js';
-import { DomainError } from '../errors/domain-error.js';
 import { lagAtDither, recoveredSlope, washoutAtDither, type AveragedLoop } from './averaged-loop.js';
-import { lagOf, complex, sampledAnswer, type PlantDynamics } from './plant-answer.js';
+import { fastestDither, plantLagAt, plantLagRad } from './choose-dithers.js';
+import { complex, lagOf, sampledAnswer } from './plant-answer.js';
+import { lowPassRatio, washoutRatio } from './loop-kinds.js';
 import { predictSeeking, type SeekingPrediction } from './predict-seeking.js';
+import { ditherOverAdaptationMin, lowPassOverAdaptationMin, noiseShare, speedShare } from './size-loops.js';
+import { checkedForSizing } from './sizing-plant.schema.js';
 
 const positive = z.number().positive().max(1e12);
 const orNone = z.number().min(0).max(1e12).default(0);
@@ -60,21 +63,9 @@ export interface TimeScaleMargins {
   scansPerPeriod: number;
 }
 
-/** Lag of the plant at the dither, rad: ω·τ = 1/2 for one time constant, where 89 % of the answer is left. */
-const plantLagRad = Math.atan(0.5);
-const scansPerPeriodMin = 12;
-const washoutRatio = 0.3;
-const lowPassRatio = 0.5;
-/** Adaptation is at least so many times slower than the dither, and than the low-pass (which swings at 4). */
-const ditherOverAdaptationMin = 12;
-const lowPassOverAdaptationMin = 8;
-/** Of the greatest speed of the dither: a faster estimate shakes the objective more than the dither does. */
-const speedShare = 0.25;
-/** Share of the allowed loss that noise may add. */
-const noiseShare = 0.25;
-
 /**
- * Sizes the gradient law for a plant behind a map with a rounded best point.
+ * Sizes the gradient law for one actuator behind a map with a rounded best point; `sizeLaw` does so for every law and
+ * for many actuators.
  *
  * - Frequency: where the plant lags by 26.6° (ωτ = ½), or 12 scans a period where the scan is too slow for that.
  * - Amplitude: the largest whose loss f''a²/4 is allowed, within envelope and slew.
@@ -89,9 +80,9 @@ const noiseShare = 0.25;
  * Optimization by Extremum-Seeking Control", ch. 1 (from memory); the numbers 12, 8 and ¼ are chosen here
  */
 export function sizeSeeking(input: SizingRequest): SeekingSize {
-  const request = checked(input);
+  const request = checkedForSizing(sizingRequestSchema, input);
   const plant = { timeConstantsS: request.timeConstantsS, deadTimeS: request.deadTimeS };
-  const omega = ditherOmega(plant, request.scanS);
+  const omega = fastestDither(plant, request.scanS);
   const periodS = (2 * Math.PI) / omega;
   const { amplitude, limitedBy } = amplitudeOf(request, periodS);
   const open = {
@@ -129,28 +120,6 @@ export function sizeSeeking(input: SizingRequest): SeekingSize {
 }
 
 type Request = z.output<typeof sizingRequestSchema>;
-
-function checked(input: SizingRequest): Request {
-  const outcome = sizingRequestSchema.safeParse(input);
-  if (outcome.success) return outcome.data;
-  const details = outcome.error.issues.map(({ path, message }) => ({ field: path.join('.'), message }));
-  throw new DomainError('analysis.invalid-input', 'What the sizing is to go by has faults.', details);
-}
-
-/** By bisection: the lag grows with the frequency. */
-function ditherOmega(plant: PlantDynamics, scanS: number): number {
-  const fastest = (2 * Math.PI) / (scanS * scansPerPeriodMin);
-  const lagAt = (omega: number) =>
-    plant.timeConstantsS.reduce((sum, tau) => sum + Math.atan(omega * tau), omega * plant.deadTimeS);
-  if (lagAt(fastest) <= plantLagRad) return fastest;
-  let [low, high] = [0, fastest];
-  for (let i = 0; i < 80; i += 1) {
-    const middle = (low + high) / 2;
-    if (lagAt(middle) < plantLagRad) low = middle;
-    else high = middle;
-  }
-  return (low + high) / 2;
-}
 
 function amplitudeOf(request: Request, periodS: number) {
   return sizeAmplitude({
@@ -191,10 +160,7 @@ function marginsOf(loop: AveragedLoop, rate: number): TimeScaleMargins {
 
 function warningsOf(request: Request, loop: AveragedLoop, predicted: SeekingPrediction): string[] {
   const warnings: string[] = [];
-  const lagRad = loop.plant.timeConstantsS.reduce(
-    (sum, tau) => sum + Math.atan(loop.omegaRadPerS * tau),
-    loop.omegaRadPerS * loop.plant.deadTimeS,
-  );
+  const lagRad = plantLagAt(loop.plant, loop.omegaRadPerS);
   if (lagRad < 0.5 * plantLagRad && lagRad > 0) {
     warnings.push('The scan, not the plant, keeps the dither slow: scan faster to converge sooner.');
   }
