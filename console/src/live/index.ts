@@ -15,4 +15,4 @@ export {
 export { LiveHub, type RunChange, type RunListener } from './live-hub.js';
 export { RingBuffer } from './ring-buffer.js';
 export { RigSamples } from './sample-store.js';
-export { TraceStore, type LiveTraces } from './trace-store.js';
+export { type ChannelTraces, TraceStore } from './trace-store.js';

@@ -7,11 +7,11 @@ import {
   useSyncExternalStore,
   type ReactNode,
 } from 'react';
-import type { RigStatus } from '@cresthold/shared';
+import type { LiveTrace, RigStatus } from '@cresthold/shared';
 import type { LinkState } from './live-client.js';
 import type { LiveHub, RunListener } from './live-hub.js';
 import type { RigSamples } from './sample-store.js';
-import type { LiveTraces } from './trace-store.js';
+import type { ChannelTraces } from './trace-store.js';
 
 const LiveContext = createContext<LiveHub | null>(null);
 
@@ -50,9 +50,12 @@ export function useRigSamples(rigId: string): RigSamples {
 }
 
 /** The last live traces of a channel, of a rig whose samples are asked for. */
-export function useLiveTraces(rigId: string, channel: string): LiveTraces {
-  const { traces } = useLiveHub();
-  return useSyncExternalStore(traces.subscribe, () => traces.of(rigId, channel));
+export function useLiveTraces(
+  rigId: string,
+  channel: string,
+): { live: ChannelTraces; traces: readonly LiveTrace[] } {
+  const live = useLiveHub().traces.of(rigId, channel);
+  return { live, traces: useSyncExternalStore(live.subscribe, () => live.traces) };
 }
 
 /** The newest value of a column at most `timesPerS` times a second; NaN where there is none. */
@@ -76,14 +79,24 @@ export function useLatestValue(samples: RigSamples, column: string, timesPerS = 
   return shown;
 }
 
-/** True once no sample of the rig has come for `afterMs`: what is shown is then the past. */
-export function useIsStale(samples: { readonly receivedAtMs: number }, afterMs = 2500): boolean {
-  const isStaleNow = () => !(Date.now() - samples.receivedAtMs < afterMs);
+interface Arrivals {
+  readonly receivedAtMs: number;
+  readonly subscribe: (listener: () => void) => () => void;
+}
+
+/** True once nothing has come for `afterMs`: what is shown is then the past. */
+export function useIsStale(source: Arrivals, afterMs = 2500): boolean {
+  const isStaleNow = () => !(Date.now() - source.receivedAtMs < afterMs);
   const [isStale, setIsStale] = useState(isStaleNow);
   useEffect(() => {
-    const timer = setInterval(() => setIsStale(!(Date.now() - samples.receivedAtMs < afterMs)), 500);
-    return () => clearInterval(timer);
-  }, [samples, afterMs]);
+    const look = () => setIsStale(!(Date.now() - source.receivedAtMs < afterMs));
+    const unsubscribe = source.subscribe(look);
+    const timer = setInterval(look, 500);
+    return () => {
+      unsubscribe();
+      clearInterval(timer);
+    };
+  }, [source, afterMs]);
   return isStale;
 }
 

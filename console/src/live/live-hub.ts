@@ -76,7 +76,9 @@ export class LiveHub {
       case 'telemetry':
         return this.samples.of(message.telemetry.rigId).take(message.telemetry, this.options.nowMs());
       case 'trace':
-        return this.traces.take(message.trace, this.options.nowMs());
+        return this.traces
+          .of(message.trace.rigId, message.trace.channel)
+          .take(message.trace, this.options.nowMs());
       case 'run-event':
         return this.runListeners.forEach((listener) => listener.onEvent?.(message.runId, message.event));
       case 'run-changed':

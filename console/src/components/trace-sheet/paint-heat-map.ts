@@ -5,6 +5,7 @@ import { traceFrame } from './paint-traces.js';
 import { placeAt, type PlacedTrace } from './placed-trace.js';
 
 export interface TimedTrace {
+  /** Number of the scan in the run, from 1. */
   scan: number;
   /** Time since the run began, s. */
   tS: number;
@@ -12,39 +13,21 @@ export interface TimedTrace {
 }
 
 export interface HeatMap {
-  /** In the order of time. */
+  /** In the order of time, one for every so many scans; none where a trace was not good. */
   rows: readonly TimedTrace[];
-  /** Values that are drawn as paper and as ink. */
+  every: number;
+  /** Scans of the run. */
+  scans: number;
+  /** Values that are drawn as bare paper and as full ink. */
   min: number;
   max: number;
-  /** Which moment is picked, s; null for none. */
-  pickedS: number | null;
+  pickedScan: number;
 }
 
-/** Where a moment stands in the height of the map: the beginning at the top. */
-export function shareOfTime(rows: readonly TimedTrace[], tS: number): number {
-  const [first, last] = [rows[0]?.tS ?? 0, rows.at(-1)?.tS ?? 0];
-  return last > first ? (tS - first) / (last - first) : 0;
-}
-
-/** Draws traces one below the other as strips of ink: the greater the value, the darker. */
-export function paintHeatMap(
-  context: CanvasRenderingContext2D,
-  map: HeatMap,
-  { width, height }: { width: number; height: number },
-  paper: Paper,
-): void {
-  const { left, right, top } = traceFrame;
-  const area = { left, top, width: width - left - right, height: height - top - 6 };
-  context.clearRect(0, 0, width, height);
-  const rowHeight = area.height / Math.max(1, map.rows.length);
-  context.fillStyle = paper.ink;
-  map.rows.forEach((row, index) => {
-    paintRow(context, row.trace, map, { ...area, top: area.top + index * rowHeight, height: rowHeight });
-  });
-  context.globalAlpha = 1;
-  paintTimes(context, map, area, paper);
-}
+/** Room below the strips, px. */
+export const heatMapBottom = 6;
+/** Cells across: more cannot be told apart. */
+const cellsMax = 1024;
 
 interface Area {
   left: number;
@@ -53,39 +36,67 @@ interface Area {
   height: number;
 }
 
-/** One cell per pixel column at most, the greatest value of it. */
-function paintRow(context: CanvasRenderingContext2D, trace: PlacedTrace, map: HeatMap, area: Area): void {
-  const cells = Math.max(1, Math.min(Math.floor(area.width), trace.count));
-  const greatest = new Float64Array(cells).fill(-Infinity);
-  for (let i = 0; i < trace.points.length; i += 1) {
-    const cell = Math.min(cells - 1, Math.floor((placeAt(trace, i) / trace.count) * cells));
-    greatest[cell] = Math.max(greatest[cell]!, trace.points[i]!);
-  }
-  const cellWidth = area.width / cells;
-  for (let cell = 0; cell < cells; cell += 1) {
-    const share = (greatest[cell]! - map.min) / (map.max - map.min || 1);
-    if (!(share > 0)) continue;
-    context.globalAlpha = Math.min(1, share);
-    // A little over its edges, so that no hairlines of paper show between cells.
-    context.fillRect(area.left + cell * cellWidth, area.top, cellWidth + 0.5, area.height + 0.5);
-  }
+/** Draws traces one below the other as strips of ink: the greater the value, the more ink. */
+export function paintHeatMap(
+  context: CanvasRenderingContext2D,
+  map: HeatMap,
+  { width, height }: { width: number; height: number },
+  paper: Paper,
+): void {
+  const { left, right, top } = traceFrame;
+  const area = { left, top, width: width - left - right, height: height - top - heatMapBottom };
+  context.clearRect(0, 0, width, height);
+  const strips = inkStrips(map, paper);
+  context.imageSmoothingEnabled = false;
+  if (strips) context.drawImage(strips, area.left, area.top, area.width, area.height);
+  paintTimes(context, map, area, paper);
+  paintPicked(context, map, area, paper);
 }
 
+/** One pixel per cell, to be stretched over the area; null where the browser gives no canvas. */
+function inkStrips({ rows, every, scans, min, max }: HeatMap, paper: Paper): HTMLCanvasElement | null {
+  const canvas = document.createElement('canvas');
+  canvas.width = Math.min(cellsMax, Math.max(1, ...rows.map(({ trace }) => trace.count)));
+  canvas.height = Math.ceil(scans / every);
+  const context = canvas.getContext('2d');
+  if (!context) return null;
+  const image = context.createImageData(canvas.width, canvas.height);
+  for (const { scan, trace } of rows) {
+    const row = Math.floor((scan - 1) / every) * canvas.width;
+    for (let i = 0; i < trace.points.length; i += 1) {
+      const cell = row + Math.floor((placeAt(trace, i) / trace.count) * canvas.width);
+      const opacity = Math.round((255 * (trace.points[i]! - min)) / (max - min || 1));
+      image.data[4 * cell + 3] = Math.max(image.data[4 * cell + 3] ?? 0, opacity);
+    }
+  }
+  context.putImageData(image, 0, 0);
+  context.globalCompositeOperation = 'source-in';
+  context.fillStyle = paper.ink;
+  context.fillRect(0, 0, canvas.width, canvas.height);
+  return canvas;
+}
+
+/** Times by the first and the last trace: scans are evenly apart but for late ones. */
 function paintTimes(context: CanvasRenderingContext2D, map: HeatMap, area: Area, paper: Paper): void {
-  const { rows, pickedS } = map;
-  const [first, last] = [rows[0]?.tS ?? 0, rows.at(-1)?.tS ?? 0];
+  const [first, last] = [map.rows[0], map.rows.at(-1)];
+  if (!first || !last || last.scan === first.scan) return;
+  const sPerScan = (last.tS - first.tS) / (last.scan - first.scan);
+  const beginS = first.tS - (first.scan - 1) * sPerScan;
   context.font = `11px ${fontFamily}`;
   context.fillStyle = paper.inkSoft;
   context.textAlign = 'right';
-  const at = (tS: number) => area.top + shareOfTime(rows, tS) * area.height;
-  for (const tick of last > first ? roundTicks(first, last, 5) : [first]) {
-    context.fillText(`${plainNumber(tick)} s`, area.left - 6, Math.min(at(tick) + 4, area.top + area.height));
+  for (const tick of roundTicks(beginS, beginS + map.scans * sPerScan, 5)) {
+    const share = (tick - beginS) / (map.scans * sPerScan);
+    const y = Math.min(Math.max(area.top + share * area.height + 4, area.top + 8), area.top + area.height);
+    context.fillText(`${plainNumber(tick)} s`, area.left - 6, y);
   }
-  if (pickedS === null) return;
-  context.strokeStyle = paper.act;
-  context.lineWidth = 2;
-  context.beginPath();
-  context.moveTo(area.left, at(pickedS));
-  context.lineTo(area.left + area.width, at(pickedS));
-  context.stroke();
+}
+
+/** A line of ink on bare paper, seen on light and dark strips alike. */
+function paintPicked(context: CanvasRenderingContext2D, map: HeatMap, area: Area, paper: Paper): void {
+  const y = area.top + ((map.pickedScan - 0.5) / map.scans) * area.height;
+  context.fillStyle = paper.sheet;
+  context.fillRect(area.left, y - 3, area.width, 6);
+  context.fillStyle = paper.ink;
+  context.fillRect(area.left, y - 1, area.width, 2);
 }

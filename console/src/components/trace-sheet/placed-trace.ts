@@ -49,7 +49,7 @@ export function traceSummary(trace: PlacedTrace, axis: TraceAxis, unit: string, 
   return `${trace.count} points from ${span}; least ${value(least)}; greatest ${value(greatest)} at ${withUnit(place(greatestPlace), axis.unit)}.`;
 }
 
-const withUnit = (text: string, unit: string) => (unit === '' ? text : `${text} ${unit}`);
+export const withUnit = (text: string, unit: string) => (unit === '' ? text : `${text} ${unit}`);
 
 /** A title with its unit, for an axis. */
 export const titleWithUnit = (title: string, unit: string) => (unit === '' ? title : `${title}, ${unit}`);

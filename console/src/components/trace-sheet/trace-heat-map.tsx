@@ -1,22 +1,29 @@
 import { useCallback, useMemo, type MouseEvent } from 'react';
 import Box from '@mui/material/Box';
 import { usePaper } from '../../theme/index.js';
-import { paintHeatMap, type TimedTrace } from './paint-heat-map.js';
+import { formatNumber } from '../format-quantity.js';
+import { heatMapBottom, paintHeatMap, type TimedTrace } from './paint-heat-map.js';
 import { traceFrame } from './paint-traces.js';
-import { extremesOf } from './placed-trace.js';
+import { extremesOf, withUnit } from './placed-trace.js';
+import type { TraceChannelLook } from './trace-sheet.js';
 import { useCanvas, type Paint } from './use-canvas.js';
 
 interface TraceHeatMapProps {
+  channel: TraceChannelLook;
   /** In the order of time; keep the list's identity while it is the same. */
   rows: readonly TimedTrace[];
-  pickedS: number;
+  /** One row for every so many scans. */
+  every: number;
+  scans: number;
+  pickedScan: number;
   /** With the mouse; the keyboard has the slider for it. */
-  onPick: (row: TimedTrace) => void;
+  onPick: (scan: number) => void;
   heightPx?: number;
 }
 
-/** Traces over time, the greater the value the darker, with the picked moment as a line. */
-export function TraceHeatMap({ rows, pickedS, onPick, heightPx = 180 }: TraceHeatMapProps) {
+/** Traces over time, the greater the value the more ink, with the picked scan as a line. */
+export function TraceHeatMap(props: TraceHeatMapProps) {
+  const { channel, rows, every, scans, pickedScan, onPick, heightPx = 180 } = props;
   const paper = usePaper();
   const range = useMemo(() => {
     const extremes = rows.flatMap(({ trace }) => extremesOf(trace) ?? []);
@@ -26,24 +33,28 @@ export function TraceHeatMap({ rows, pickedS, onPick, heightPx = 180 }: TraceHea
     };
   }, [rows]);
   const paint = useCallback<Paint>(
-    (context, size) => paintHeatMap(context, { rows, ...range, pickedS }, size, paper),
-    [rows, range, pickedS, paper],
+    (context, size) => paintHeatMap(context, { rows, every, scans, ...range, pickedScan }, size, paper),
+    [rows, every, scans, range, pickedScan, paper],
   );
   const canvasRef = useCanvas(paint, heightPx);
   const pick = (event: MouseEvent<HTMLElement>) => {
     const { top } = event.currentTarget.getBoundingClientRect();
-    const share = (event.clientY - top - traceFrame.top) / (heightPx - traceFrame.top - 6);
-    const row = rows[Math.min(rows.length - 1, Math.max(0, Math.floor(share * rows.length)))];
-    if (row) onPick(row);
+    const share = (event.clientY - top - traceFrame.top) / (heightPx - traceFrame.top - heatMapBottom);
+    onPick(Math.min(scans, Math.max(1, Math.ceil(share * scans))));
   };
+  const value = (number: number) => withUnit(formatNumber(number, channel.display.decimals), channel.unit);
+  const key = `Each line a trace, the run from top to bottom; bare paper is ${value(range.min)}, full ink ${value(range.max)}.`;
   return (
-    <Box
-      role="img"
-      aria-label={`${rows.length} traces of the run one below the other, from ${rows[0]?.tS.toFixed(1) ?? 0} s to ${rows.at(-1)?.tS.toFixed(1) ?? 0} s; greater values are darker.`}
-      onClick={pick}
-      sx={{ minWidth: 0, height: heightPx, cursor: 'pointer' }}
-    >
-      <canvas ref={canvasRef} style={{ display: 'block' }} />
+    <Box sx={{ minWidth: 0 }}>
+      <Box
+        role="img"
+        aria-label={`${channel.title}: ${rows.length} traces over the run. ${key}`}
+        onClick={pick}
+        sx={{ minWidth: 0, height: heightPx, cursor: 'pointer' }}
+      >
+        <canvas ref={canvasRef} style={{ display: 'block' }} />
+      </Box>
+      <Box sx={{ px: 1.5, pb: 1, fontSize: '0.75rem', color: 'text.secondary' }}>{key}</Box>
     </Box>
   );
 }

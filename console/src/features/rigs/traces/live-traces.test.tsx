@@ -44,6 +44,7 @@ describe('the live traces of a rig', () => {
     const words = '4 points from 0 to 6 mm; least 0.0 mV; greatest 6.0 mV at 4 mm.';
     expect(await screen.findByText(words)).toBeDefined();
     expect(screen.getByRole('img', { name: `Flame image over Height. ${words}` })).toBeDefined();
+    expect(screen.queryByText('Not fresh')).toBeNull();
   });
 
   it('stand still while they are paused', async () => {

@@ -1,10 +1,10 @@
 import { useMemo, useState } from 'react';
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
-import type { Channel, Rig } from '@cresthold/shared';
+import type { Channel, LiveTrace, Rig } from '@cresthold/shared';
 import { Notice, Panel } from '../../../components/index.js';
 import { TraceSheet } from '../../../components/trace-sheet/index.js';
-import { useIsStale, useLiveTraces, type LiveTraces as TracesOfChannel } from '../../../live/index.js';
+import { useIsStale, useLiveTraces } from '../../../live/index.js';
 
 type TraceChannel = Extract<Channel, { kind: 'trace' }>;
 
@@ -23,13 +23,13 @@ export function LiveTraces({ rig }: { rig: Rig }) {
 
 /** The newest trace of a channel over its axis, with those of the last seconds behind it. */
 function LiveTracePanel({ rigId, channel }: { rigId: string; channel: TraceChannel }) {
-  const live = useLiveTraces(rigId, channel.id);
+  const { live, traces } = useLiveTraces(rigId, channel.id);
   const isStale = useIsStale(live);
-  const [paused, setPaused] = useState<TracesOfChannel | null>(null);
+  const [paused, setPaused] = useState<readonly LiveTrace[] | null>(null);
   const [isFitted, setFitted] = useState(false);
-  const shown = paused ?? live;
-  const newest = shown.traces.at(-1) ?? null;
-  const earlier = useMemo(() => shown.traces.slice(0, -1), [shown]);
+  const shown = paused ?? traces;
+  const newest = shown.at(-1) ?? null;
+  const earlier = useMemo(() => shown.slice(0, -1), [shown]);
   return (
     <Panel
       title={channel.title}
@@ -47,7 +47,7 @@ function LiveTracePanel({ rigId, channel }: { rigId: string; channel: TraceChann
             aria-pressed={paused !== null}
             variant={paused === null ? 'outlined' : 'contained'}
             disabled={newest === null}
-            onClick={() => setPaused(paused === null ? live : null)}
+            onClick={() => setPaused(paused === null ? traces : null)}
           >
             {paused === null ? 'Pause' : 'Paused'}
           </Button>

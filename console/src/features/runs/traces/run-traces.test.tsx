@@ -80,7 +80,7 @@ describe('the traces of a finished run', () => {
     const words = '3 points from 0 to 4 mm; least 0.5 mV; greatest 2.0 mV at 2 mm.';
     expect(await screen.findByText(words)).toBeDefined();
     expect(screen.getByRole('img', { name: `Flame image over Height. ${words}` })).toBeDefined();
-    expect(await screen.findByRole('img', { name: /2 traces of the run one below the other/ })).toBeDefined();
+    expect(await screen.findByRole('img', { name: /2 traces over the run/ })).toBeDefined();
   });
 
   it('go through the run by keyboard, and say which scan is shown', async () => {

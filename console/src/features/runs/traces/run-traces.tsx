@@ -4,7 +4,7 @@ import Button from '@mui/material/Button';
 import Slider from '@mui/material/Slider';
 import { Loading, Panel, ProblemNotice } from '../../../components/index.js';
 import { TraceHeatMap, TraceSheet, type TraceChannelLook } from '../../../components/trace-sheet/index.js';
-import { useScanTrace, useTraceChannels, useTraceStrip } from './trace-queries.js';
+import { scansPerRow, useScanTrace, useTraceChannels, useTraceStrip } from './trace-queries.js';
 
 /** Scans that are drawn behind the picked one. */
 const historyRows = 40;
@@ -43,7 +43,8 @@ function RunTracePanel({ runId, scans, channel }: RunTracePanelProps) {
   const [scan, setScan] = useState(scans);
   const [isFitted, setFitted] = useState(false);
   const picked = useScanTrace(runId, channel.id, scan);
-  const strip = useTraceStrip(runId, channel.id, scans);
+  const every = scansPerRow(scans);
+  const strip = useTraceStrip(runId, channel.id, every);
   const earlier = useMemo(() => {
     const before = (strip.data ?? []).filter((row) => row.scan < scan);
     return before.slice(-historyRows).map(({ trace }) => trace);
@@ -76,7 +77,7 @@ function RunTracePanel({ runId, scans, channel }: RunTracePanelProps) {
       <ScanSlider scans={scans} scan={scan} tS={tS} onChange={setScan} />
       {strip.error !== null && <ProblemNotice title="The overview could not be loaded" error={strip.error} />}
       {strip.data && strip.data.length > 1 && (
-        <TraceHeatMap rows={strip.data} pickedS={tS} onPick={(row) => setScan(row.scan)} />
+        <TraceHeatMap {...{ channel, every, scans }} rows={strip.data} pickedScan={scan} onPick={setScan} />
       )}
     </Panel>
   );

@@ -43,9 +43,11 @@ export function useScanTrace(runId: string, channel: string, scan: number) {
   });
 }
 
+/** How many scans of a run each trace of its overview stands for. */
+export const scansPerRow = (scans: number): number => Math.max(1, Math.ceil(scans / stripRows));
+
 /** Traces of a channel spread evenly over a finished run. */
-export function useTraceStrip(runId: string, channel: string, scans: number) {
-  const every = Math.max(1, Math.ceil(scans / stripRows));
+export function useTraceStrip(runId: string, channel: string, every: number) {
   return useQuery({
     queryKey: [...runKeys.one(runId), 'traces', 'strip', channel, every],
     staleTime: Infinity,
