@@ -51,6 +51,7 @@ export { fitLinear, type LeastSquaresFit } from './identification/least-squares.
 export * from './identification/lock-in.js';
 export * from './identification/noise-colour.js';
 export * from './identification/smooth-curve.js';
+export * from './identification/smooth-surface.js';
 export * from './identification/step-record.js';
 export * from './identification/step-response.js';
 export * from './identification/survey-curve.js';
