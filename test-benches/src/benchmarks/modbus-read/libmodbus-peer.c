@@ -7,12 +7,11 @@
  */
 #include <errno.h>
 #include <modbus/modbus.h>
+#include <poll.h>
 #include <sched.h>
-#include <signal.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
-#include <sys/prctl.h>
 #include <time.h>
 #include <unistd.h>
 
@@ -33,39 +32,52 @@ static double now_s(void)
     return (double) now.tv_sec + (double) now.tv_nsec / 1e9;
 }
 
-static void serve(modbus_t *context)
+static modbus_mapping_t *new_map(void)
 {
-    uint8_t query[MODBUS_MAX_ADU_LENGTH];
     modbus_mapping_t *map = modbus_mapping_new(16, 16, 1000, 1000);
     for (int at = 0; at < 1000; at += 1) map->tab_registers[at] = (uint16_t) at;
-    for (;;) {
-        int length = modbus_receive(context, query);
-        if (length > 0) modbus_reply(context, query, length, map);
-        else if (length < 0 && (errno == ECONNRESET || errno == EIO || errno == EBADF)) return;
-    }
+    return map;
 }
 
+/* Answers one request. Returns 0 where the peer is gone. */
+static int answer(modbus_t *context, modbus_mapping_t *map)
+{
+    uint8_t query[MODBUS_MAX_ADU_LENGTH];
+    int length = modbus_receive(context, query);
+    if (length > 0) modbus_reply(context, query, length, map);
+    return length >= 0 || (errno != ECONNRESET && errno != EIO && errno != EBADF);
+}
+
+/* One process for all clients: which core it is given must not differ between those that are compared. */
 static void serve_tcp(void)
 {
     struct sockaddr_in address = {.sin_family = AF_INET, .sin_addr.s_addr = htonl(INADDR_LOOPBACK)};
     socklen_t length = sizeof address;
+    struct pollfd waits[16];
+    nfds_t count = 1;
+    modbus_t *context = modbus_new_tcp("127.0.0.1", 0);
+    modbus_mapping_t *map = new_map();
     int listener = socket(AF_INET, SOCK_STREAM, 0);
     if (listener < 0 || bind(listener, (struct sockaddr *) &address, length) < 0) fail("bind");
     if (listen(listener, 8) < 0 || getsockname(listener, (struct sockaddr *) &address, &length) < 0) fail("listen");
     printf("ready %d\n", ntohs(address.sin_port));
-    signal(SIGCHLD, SIG_IGN);
+    waits[0] = (struct pollfd) {.fd = listener, .events = POLLIN};
     for (;;) {
-        modbus_t *context = modbus_new_tcp("127.0.0.1", 0);
-        if (modbus_tcp_accept(context, &listener) < 0) fail("accept");
-        /* A process for each client, so that all of them may stay connected. */
-        if (fork() == 0) {
-            prctl(PR_SET_PDEATHSIG, SIGKILL);
-            serve(context);
-            exit(0);
+        if (poll(waits, count, -1) < 0) fail("poll");
+        if (waits[0].revents && count < 16) {
+            int client = modbus_tcp_accept(context, &listener);
+            waits[count] = (struct pollfd) {.fd = client, .events = POLLIN};
+            count += 1;
+            continue;
         }
-        /* Not modbus_close, which shuts the connection down for the child as well. */
-        close(modbus_get_socket(context));
-        modbus_free(context);
+        for (nfds_t at = 1; at < count; at += 1) {
+            if (!waits[at].revents) continue;
+            modbus_set_socket(context, waits[at].fd);
+            if (answer(context, map)) continue;
+            close(waits[at].fd);
+            count -= 1;
+            waits[at] = waits[count];
+        }
     }
 }
 
@@ -78,7 +90,8 @@ static void serve_rtu(const char *path, int baud)
     modbus_set_slave(context, 1);
     if (modbus_connect(context) < 0) fail(path);
     printf("ready\n");
-    serve(context);
+    modbus_mapping_t *map = new_map();
+    while (answer(context, map)) continue;
 }
 
 static void read_tcp(int port, int count)
