@@ -16,5 +16,6 @@ export type ObjectiveDocument = Schemas['Objective'];
 export type ExperimentSummary = Schemas['Experiment'];
 export type ExperimentVersion = Schemas['ExperimentVersion'];
 export type RunSummary = Schemas['Run'];
+export type AdapterDocument = Schemas['Adapter'];
 /** An experiment as requests carry it. */
 export type ExperimentBody = Schemas['ExperimentContentInput'];

@@ -1,5 +1,6 @@
 export { answerOf, client, ifMatch } from './client.js';
 export type {
+  AdapterDocument,
   EnvelopeDocument,
   ExperimentBody,
   ExperimentSummary,

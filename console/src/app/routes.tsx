@@ -28,6 +28,10 @@ const pages: RouteObject[] = [
     lazy: async () => ({ Component: (await import('../features/people/people-page.js')).PeoplePage }),
   },
   {
+    path: 'adapters',
+    lazy: async () => ({ Component: (await import('../features/adapters/adapters-page.js')).AdaptersPage }),
+  },
+  {
     path: 'experiments',
     lazy: async () => ({
       Component: (await import('../features/experiments/experiments-page.js')).ExperimentsPage,

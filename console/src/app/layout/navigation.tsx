@@ -9,10 +9,15 @@ const places = [
   { to: '/objectives', label: 'Objectives' },
 ];
 
+const administratorPlaces = [
+  { to: '/people', label: 'People' },
+  { to: '/adapters', label: 'Adapters' },
+];
+
 /** The places of the console; what a role has no business with is not there. */
 export function Navigation() {
   const { roles } = useSession();
-  const shown = roles.includes('administrator') ? [...places, { to: '/people', label: 'People' }] : places;
+  const shown = roles.includes('administrator') ? [...places, ...administratorPlaces] : places;
   return (
     <Box
       component="nav"

@@ -6,6 +6,7 @@ export const permissions = {
   'rig.move': ['test-engineer', 'technician'],
   'rig.reset': ['safety-officer'],
   'rig.lock-out': ['safety-officer'],
+  'rig.inject-fault': ['test-engineer'],
   'envelope.draft': ['test-engineer', 'safety-officer'],
   'envelope.decide': ['safety-officer'],
   'objective.edit': ['test-engineer'],

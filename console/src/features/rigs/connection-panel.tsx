@@ -1,6 +1,7 @@
 import Box from '@mui/material/Box';
 import type { Rig, RigStatus } from '@cresthold/shared';
 import { formatNumber, Panel } from '../../components/index.js';
+import { InjectedFaultNotice } from './injected-fault-notice.js';
 
 /** The wires of the rig and how the scan fares on them. */
 export function ConnectionPanel({ rig, status }: { rig: Rig; status: RigStatus | null }) {
@@ -20,6 +21,7 @@ export function ConnectionPanel({ rig, status }: { rig: Rig; status: RigStatus |
                 </span>
                 <ConnectionState isConnected={state?.isConnected} />
               </Box>
+              {state?.injectedFault && <InjectedFaultNotice injected={state.injectedFault} />}
               {state?.error && <Box sx={{ fontSize: '0.8125rem', color: 'paper.warn' }}>{state.error}</Box>}
             </Box>
           );

@@ -9,6 +9,7 @@ import { ActuatorPanel } from './actuator-panel.js';
 import { useRig } from './api/rig-queries.js';
 import { ArmingObstacles } from './arming-obstacles.js';
 import { ConnectionPanel } from './connection-panel.js';
+import { FaultPanel } from './fault-panel.js';
 import { InterlockPanel } from './interlock-panel.js';
 import { RecentRuns } from './recent-runs.js';
 import { RigActions } from './rig-actions.js';
@@ -72,6 +73,7 @@ function RigView({ rig }: { rig: RigDocument }) {
           <ActuatorPanel {...shared} />
           <InterlockPanel {...shared} />
           <ConnectionPanel rig={rig.content} status={status} />
+          {rig.content.isBench && <FaultPanel rig={rig.content} status={status} />}
           <RecentRuns rigId={rig.id} />
         </Box>
       </Box>

@@ -1,7 +1,7 @@
 import { useMutation } from '@tanstack/react-query';
 import { answerOf, client } from '../../../api/index.js';
 import { useLiveHub } from '../../../live/index.js';
-import type { RigStatus } from '@cresthold/shared';
+import type { RigStatus, WireFault, WireFaultKind } from '@cresthold/shared';
 
 /** A command whose answer is the rig's new status; screens show it at once, ahead of the live link. */
 function useRigCommand<Input>(command: (input: Input) => Promise<RigStatus>) {
@@ -36,4 +36,14 @@ export function useLockout(rigId: string) {
   return useRigCommand((body: { isLockedOut: boolean; reason: string }) =>
     answerOf(client.PUT('/api/v1/rigs/{rigId}/lockout', { ...at(rigId), body })),
   );
+}
+
+/** Puts a fault on a connection of a bench; null takes it off. */
+export function useInjectFault(rigId: string, connection: string) {
+  return useRigCommand((fault: ({ kind: WireFaultKind } & Record<string, unknown>) | null) => {
+    const params = { path: { rigId, connection } };
+    // What a form gives is judged by the server, field by field, and what it leaves out has a default there.
+    const body = { fault: fault as WireFault | null };
+    return answerOf(client.PUT('/api/v1/rigs/{rigId}/connections/{connection}/fault', { params, body }));
+  });
 }

@@ -1,0 +1,1 @@
+export { adaptersQuery, useAdapters } from './api/adapters.js';
