@@ -43,99 +43,105 @@ const filters = { washoutRatio: 0.3, lowPassRatio: 0.5 };
 
 export const seekForS = 300;
 
-/** The way of both experiments: look at all hills, climb the best, hold it. */
-function findHill(
-  title: string,
-  channel: string,
-  gain: number,
-  settleBand: number,
-  criterion: string,
-): ExperimentInput {
-  return {
-    title,
-    objectiveId: null,
-    graph: {
-      steps: [
-        { kind: 'start', id: 'start', title: '', ...at(0, 120), parameters: {} },
-        {
-          kind: 'survey',
-          id: 'survey',
-          title: 'Look at all hills',
-          ...at(220, 120),
-          parameters: {
-            actuators: [{ channel: 'distributor', from: 6, to: 94, points: 23, isUpAndDown: false }],
-            settleS: 7,
-            averageS: 1,
-          },
-        },
-        {
-          kind: 'move',
-          id: 'move',
-          title: 'Go to the best of them',
-          ...at(460, 120),
-          parameters: {
-            targets: [{ channel: 'distributor', value: { expression: 'survey.best.distributor' } }],
-            rampS: 3,
-            timeoutS: 30,
-          },
-        },
-        {
-          kind: 'settle',
-          id: 'settle',
-          title: 'Let it settle',
-          ...at(700, 120),
-          parameters: { channel, band: settleBand, forS: 4, timeoutS: 40 },
-        },
-        {
-          kind: 'seek',
-          id: 'seek',
-          title: 'Seek and hold the best',
-          ...at(940, 120),
-          parameters: {
-            law: { id: 'gradient', parameters: filters },
-            actuators: [{ channel: 'distributor', ...seeking, gain }],
-            end: { afterS: seekForS, whenConverged: null, when: null },
-            invalidForS: 30,
-          },
-        },
-        {
-          kind: 'check',
-          id: 'check',
-          title: 'As good as surveyed',
-          ...at(1180, 120),
-          parameters: { criterion },
-        },
-        { kind: 'finish', id: 'finish', title: '', ...at(1420, 120), parameters: {} },
-      ],
-      edges: [
-        edge('start', 'done', 'survey'),
-        edge('survey', 'done', 'move'),
-        edge('survey', 'failed', 'finish'),
-        edge('move', 'done', 'settle'),
-        edge('move', 'timeout', 'finish'),
-        edge('settle', 'done', 'seek'),
-        edge('settle', 'timeout', 'seek'),
-        edge('seek', 'done', 'check'),
-        edge('seek', 'failed', 'finish'),
-        edge('check', 'yes', 'finish'),
-        edge('check', 'no', 'finish'),
-      ],
-    },
-  };
+type StepInput = ExperimentInput['graph']['steps'][number];
+
+/** What differs between seeking the yield and seeking the waste. */
+interface Sign {
+  readonly title: string;
+  readonly channel: 'biomass' | 'substrate';
+  readonly gain: number;
+  /** g/L, peak to peak: settled. */
+  readonly band: number;
+  readonly criterion: string;
 }
 
-export const yieldExperiment = findHill(
-  'Find and hold the best yield',
-  'biomass',
-  2,
-  0.15,
-  'seek.objective >= survey.best.objective - 0.2',
-);
+const survey: StepInput = {
+  kind: 'survey',
+  id: 'survey',
+  title: 'Look at all hills',
+  ...at(220, 120),
+  parameters: {
+    actuators: [{ channel: 'distributor', from: 6, to: 94, points: 23, isUpAndDown: false }],
+    settleS: 7,
+    averageS: 1,
+  },
+};
 
-export const wasteExperiment = findHill(
-  'Find and hold the least waste',
-  'substrate',
-  1,
-  0.3,
-  'seek.objective <= survey.best.objective + 0.4',
-);
+const move: StepInput = {
+  kind: 'move',
+  id: 'move',
+  title: 'Go to the best of them',
+  ...at(460, 120),
+  parameters: {
+    targets: [{ channel: 'distributor', value: { expression: 'survey.best.distributor' } }],
+    rampS: 3,
+    timeoutS: 30,
+  },
+};
+
+const settle = ({ channel, band }: Sign): StepInput => ({
+  kind: 'settle',
+  id: 'settle',
+  title: 'Let it settle',
+  ...at(700, 120),
+  parameters: { channel, band, forS: 4, timeoutS: 40 },
+});
+
+const seek = ({ gain }: Sign): StepInput => ({
+  kind: 'seek',
+  id: 'seek',
+  title: 'Seek and hold the best',
+  ...at(940, 120),
+  parameters: {
+    law: { id: 'gradient', parameters: filters },
+    actuators: [{ channel: 'distributor', ...seeking, gain }],
+    end: { afterS: seekForS, whenConverged: null, when: null },
+    invalidForS: 30,
+  },
+});
+
+const check = ({ criterion }: Sign): StepInput => ({
+  kind: 'check',
+  id: 'check',
+  title: 'As good as surveyed',
+  ...at(1180, 120),
+  parameters: { criterion },
+});
+
+const edges = [
+  edge('start', 'done', 'survey'),
+  edge('survey', 'done', 'move'),
+  edge('survey', 'failed', 'finish'),
+  edge('move', 'done', 'settle'),
+  edge('move', 'timeout', 'finish'),
+  edge('settle', 'done', 'seek'),
+  edge('settle', 'timeout', 'seek'),
+  edge('seek', 'done', 'check'),
+  edge('seek', 'failed', 'finish'),
+  edge('check', 'yes', 'finish'),
+  edge('check', 'no', 'finish'),
+];
+
+/** The way of both experiments: look at all hills, climb the best, hold it. */
+function findHill(sign: Sign): ExperimentInput {
+  const start: StepInput = { kind: 'start', id: 'start', title: '', ...at(0, 120), parameters: {} };
+  const finish: StepInput = { kind: 'finish', id: 'finish', title: '', ...at(1420, 120), parameters: {} };
+  const steps = [start, survey, move, settle(sign), seek(sign), check(sign), finish];
+  return { title: sign.title, objectiveId: null, graph: { steps, edges } };
+}
+
+export const yieldExperiment = findHill({
+  title: 'Find and hold the best yield',
+  channel: 'biomass',
+  gain: 2,
+  band: 0.15,
+  criterion: 'seek.objective >= survey.best.objective - 0.2',
+});
+
+export const wasteExperiment = findHill({
+  title: 'Find and hold the least waste',
+  channel: 'substrate',
+  gain: 1,
+  band: 0.3,
+  criterion: 'seek.objective <= survey.best.objective + 0.4',
+});

@@ -9,7 +9,8 @@ import { stringEntry } from './string-entry.js';
 const efficiencyWanted = 0.98;
 const entry = stringEntry({ path: '/dev/null' });
 
-function run(key: string, profile: string, seed: number, graphOf = (graph: Graph) => graph) {
+/** Runs an experiment that ships, with its graph changed or as it is. */
+export function run(key: string, profile: string, seed: number, graphOf = (graph: Graph) => graph) {
   const { rig, envelope, objective, experiment } = shippedDocuments(entry, key);
   return runInVirtualTime({
     definition: stringBench,
@@ -19,7 +20,7 @@ function run(key: string, profile: string, seed: number, graphOf = (graph: Graph
     experiment: { ...experiment, graph: graphOf(experiment.graph) },
     seed,
     own: { profile },
-    atMostS: 600,
+    atMostS: 8000,
   });
 }
 
@@ -27,7 +28,7 @@ type Graph = ExperimentContent['graph'];
 type Course = ReturnType<typeof run>;
 
 /** Dynamic efficiency over a step after EN 50530, by what the bench tells nobody but its log. */
-function efficiencyOf(course: Course, step: string): number {
+export function efficiencyOf(course: Course, step: string): number {
   const during = course.moments.filter(({ steps }) => steps.includes(step));
   return dynamicEfficiency({
     // Volts of one: only the product counts.
@@ -47,7 +48,7 @@ function shareHeld(course: Course, step: string): number {
 type SeekParameters = Extract<Graph['steps'][number], { kind: 'seek' }>['parameters'];
 
 /** The same experiment with another seek, over all of the envelope instead of a box round the knee. */
-function withSeek(graph: Graph, change: (seek: SeekParameters) => Partial<SeekParameters>): Graph {
+export function withSeek(graph: Graph, change: (seek: SeekParameters) => Partial<SeekParameters>): Graph {
   const steps = graph.steps.map((step): Graph['steps'][number] =>
     step.kind === 'seek' ? { ...step, parameters: { ...step.parameters, ...change(step.parameters) } } : step,
   );
