@@ -93,7 +93,8 @@ export class RegisterDevice implements ModbusDevice {
     if (points === 1) return encodeValue(this.model.read(name), type, scale);
     const kept = this.latched.get(name);
     if (kept && !isFromFirst) return kept;
-    const words = Array.from(this.model.readTrace(name)).flatMap((value) => encodeValue(value, type, scale));
+    const words: number[] = [];
+    for (const value of this.model.readTrace(name)) words.push(...encodeValue(value, type, scale));
     this.latched.set(name, words);
     return words;
   }

@@ -21,36 +21,38 @@ export function wordsOfType(type: RegisterType): 1 | 2 {
   return type === 'f32' ? 2 : layouts[type].words;
 }
 
+/** For two words at a time; used up within each call. */
+const scratch = new DataView(new ArrayBuffer(4));
+
 /** One engineering value as registers, high word first; out of range it saturates. */
 export function encodeValue(value: number, type: RegisterType, scale: number): number[] {
-  const bytes = Buffer.alloc(4);
   if (type === 'bit') return [value > 0.5 ? 1 : 0];
-  if (type === 'f32') bytes.writeFloatBE(value);
+  if (type === 'f32') scratch.setFloat32(0, value);
   else {
     const { words, min, max, nan } = layouts[type];
     const count = Number.isNaN(value) ? nan : Math.min(Math.max(Math.round(value / scale), min), max);
     if (words === 1) return [count & 0xffff];
-    bytes.writeUInt32BE(count >>> 0);
+    scratch.setUint32(0, count >>> 0);
   }
-  return [bytes.readUInt16BE(0), bytes.readUInt16BE(2)];
+  return [scratch.getUint16(0), scratch.getUint16(2)];
 }
 
-/** The engineering value of registers, high word first. */
-export function decodeValue(words: readonly number[], type: RegisterType, scale: number): number {
-  const bytes = Buffer.alloc(4);
-  words.forEach((word, index) => bytes.writeUInt16BE(word, 2 * index));
+/** The engineering value of one or two registers from a place on, high word first. */
+export function decodeValue(words: readonly number[], type: RegisterType, scale: number, from = 0): number {
+  scratch.setUint16(0, words[from] ?? 0);
+  scratch.setUint16(2, words[from + 1] ?? 0);
   switch (type) {
     case 'bit':
-      return words[0] ?? 0;
+      return words[from] ?? 0;
     case 'f32':
-      return bytes.readFloatBE(0);
+      return scratch.getFloat32(0);
     case 'u16':
-      return bytes.readUInt16BE(0) * scale;
+      return scratch.getUint16(0) * scale;
     case 'i16':
-      return bytes.readInt16BE(0) * scale;
+      return scratch.getInt16(0) * scale;
     case 'u32':
-      return bytes.readUInt32BE(0) * scale;
+      return scratch.getUint32(0) * scale;
     case 'i32':
-      return bytes.readInt32BE(0) * scale;
+      return scratch.getInt32(0) * scale;
   }
 }

@@ -70,7 +70,7 @@ function overRegisters(device: RegisterDevice): VirtualWire {
       const words = wordsAt(address);
       const each = wordsOfType(address.type);
       return Array.from({ length: address.points ?? 1 }, (_, i) =>
-        decodeValue(words.slice(i * each, (i + 1) * each), address.type, address.scale ?? 1),
+        decodeValue(words, address.type, address.scale ?? 1, i * each),
       );
     },
     write(channel, value) {

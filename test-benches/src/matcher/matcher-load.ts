@@ -2,7 +2,7 @@ import { seededRandom } from '../kit/seeded-random.js';
 import { nominalLoad, type Complex } from './matcher-physics.js';
 
 /** How far and how slowly the load wanders: relative for its resistance, Ω for its reactance; s of bench time. */
-const wander = { resistance: 0.2, resistancePeriodS: 1500, reactanceOhm: 1.5, reactancePeriodS: 1100 };
+const wander = { resistance: 0.2, resistancePeriodS: 3600, reactanceOhm: 1.5, reactancePeriodS: 2600 };
 
 /**
  * The load at a bench time: resistance and reactance swing with periods of their own, from phases that the seed

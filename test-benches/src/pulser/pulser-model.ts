@@ -7,6 +7,7 @@ import {
   waitingWatchdog,
   type WatchdogState,
 } from '../kit/heartbeat-watchdog.js';
+import { seededRandom } from '../kit/seeded-random.js';
 import { benchOpening, fillPulse } from './pulser-physics.js';
 import {
   bestPulse,
@@ -37,6 +38,13 @@ const meterTimeConstantS = 0.5;
 /** Time step, s of bench time; a pulse every tenth of a second. */
 const plan = { stepS: 0.01, stepsPerReading: 10 };
 
+/** All that a pulse follows from. */
+interface Shot {
+  readonly number: number;
+  readonly inversion: number;
+  readonly outputMJ: number;
+}
+
 /** Lamp, switch, rod, instruments, protection and watchdog, in bench time. */
 export class PulserModel extends FixedStepModel {
   private dog: WatchdogState = initialWatchdog;
@@ -45,6 +53,8 @@ export class PulserModel extends FixedStepModel {
   private meterMJ = 0;
   private overS = 0;
   private isProtected = false;
+  private shot: Shot = { number: 0, inversion: 0, outputMJ: 0 };
+  private shownShot = -1;
   private readonly hiddenAt: (tS: number) => PulserHidden;
 
   constructor(settings: ModelSettings) {
@@ -121,14 +131,28 @@ export class PulserModel extends FixedStepModel {
     this.show('driveActual', this.drivePct);
     const meter = this.meterMJ * (1 + this.noise(noiseSigma.energyRelative));
     this.show('energy', Math.max(0, meter + this.noise(noiseSigma.energyMJ)));
-    const trace = this.readTrace('pulse');
-    if (this.isOn) {
-      fillPulse(inversionOf(this.setting, this.hiddenAt(this.tS)), benchOpening, pointEvery, trace);
-    } else trace.fill(0);
+    this.shot = {
+      number: this.shot.number + 1,
+      inversion: this.isOn ? inversionOf(this.setting, this.hiddenAt(this.tS)) : 0,
+      outputMJ: outputMJ(this.drivePct),
+    };
+  }
+
+  /** The pulse of the last shot; worked out where somebody looks, always the same for the same shot. */
+  override readTrace(name: string): Float64Array {
+    const trace = super.readTrace(name);
+    if (this.shownShot === this.shot.number) return trace;
+    this.shownShot = this.shot.number;
+    const { number, inversion, outputMJ: output } = this.shot;
+    const { seed, isNoisy } = this.settings;
+    const random = seededRandom(Math.imul(number, 0x9e37) ^ seed);
+    const noise = (sigma: number) => (isNoisy ? sigma * random.normal() : 0);
+    if (inversion > 0) fillPulse(inversion, benchOpening, pointEvery, trace);
+    else trace.fill(0);
     // 1 mJ in 1 ns is 1000 kW.
-    const kilowatts = (1000 * outputMJ(this.drivePct)) / plant.lifetimeNs;
-    const scale = kilowatts * (1 + this.noise(noiseSigma.pulseRelative));
-    trace.forEach((power, i) => (trace[i] = power * scale + this.noise(noiseSigma.traceKW)));
+    const scale = ((1000 * output) / plant.lifetimeNs) * (1 + noise(noiseSigma.pulseRelative));
+    trace.forEach((power, i) => (trace[i] = power * scale + noise(noiseSigma.traceKW)));
+    return trace;
   }
 
   private get setting(): PulserSetting {

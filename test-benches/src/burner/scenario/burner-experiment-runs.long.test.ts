@@ -1,0 +1,3 @@
+import { describeBurnerExperiment } from './burner-experiment-runs.fixture.js';
+
+describeBurnerExperiment(20, 20);

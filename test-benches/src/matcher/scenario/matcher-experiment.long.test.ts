@@ -1,0 +1,3 @@
+import { describeMatcherExperiment } from './matcher-experiment.fixture.js';
+
+describeMatcherExperiment(20, 20);

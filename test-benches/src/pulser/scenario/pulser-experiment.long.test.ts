@@ -1,0 +1,3 @@
+import { describePulserExperiments } from './pulser-experiment.fixture.js';
+
+describePulserExperiments(20, 20);
