@@ -25,9 +25,9 @@ export function eventText(body: RunEventBody): string {
     case 'step.ended':
       return `${body.step} left by ${body.port}${body.reason === undefined ? '' : `: ${body.reason}`}`;
     case 'survey.point-measured':
-      return `${body.step}, ${body.branch}: objective ${shown(body.objective)} at ${body.actuator} ${plainNumber(body.value)}${body.isValid ? '' : ', not valid'}`;
+      return `${body.step}, ${body.branch}: objective ${shown(body.objective)} at ${body.actuator} ${plainNumber(body.value)}${body.second ? `, ${body.second.actuator} ${plainNumber(body.second.value)}` : ''}${body.isValid ? '' : ', not valid'}`;
     case 'seek.retreated':
-      return `${body.step} went back to ${plainNumber(body.to)}: ${body.reason}`;
+      return `${body.step} went back to ${retreatText(body)}: ${body.reason}`;
     case 'check.decided':
       return `${body.step} ${met(body.isMet)}: ${body.criterion}`;
     case 'guard.intervened':
@@ -57,6 +57,12 @@ export function eventText(body: RunEventBody): string {
     case 'rig.tripped':
       return `Tripped by ${body.cause}: ${body.message}`;
   }
+}
+
+function retreatText({ to, point }: Extract<RunEventBody, { type: 'seek.retreated' }>): string {
+  const places = Object.entries(point ?? {});
+  if (places.length < 2) return plainNumber(to);
+  return places.map(([channel, value]) => `${channel} ${plainNumber(value)}`).join(', ');
 }
 
 function overrunText(body: Extract<RunEventBody, { type: 'scan.overran' }>): string {

@@ -15,6 +15,7 @@ import { useSaveVersion } from '../api/experiment-changes.js';
 import { usePreflight } from '../api/experiment-queries.js';
 import { GraphDrawing, type GraphEdits } from '../drawing/graph-drawing.js';
 import { connect, moveStep, remove } from '../graph/edit-graph.js';
+import type { StepDefaults } from '../graph/new-step.js';
 import { StepInspector } from '../inspector/step-inspector.js';
 import { addAfter } from './add-step.js';
 import { EditorToolbar } from './editor-toolbar.js';
@@ -51,11 +52,12 @@ export function ExperimentEditor({ experiment, version, rig, envelope, objective
   const isChanged = content !== version.content;
   const changeGraph = (graph: ExperimentGraph, chosen?: string | null) =>
     dispatch({ type: 'change-graph', graph, ...(chosen === undefined ? {} : { chosenStep: chosen }) });
+  const defaults: StepDefaults = {
+    rig,
+    rangeOf: (channel) => envelope?.limits.find((limit) => limit.channel === channel) ?? null,
+  };
   const add = (kind: StepKind) => {
-    const { graph, added } = addAfter(content.graph, kind, chosenStep?.id ?? null, {
-      rig,
-      rangeOf: (channel) => envelope?.limits.find((limit) => limit.channel === channel) ?? null,
-    });
+    const { graph, added } = addAfter(content.graph, kind, chosenStep?.id ?? null, defaults);
     changeGraph(graph, added);
   };
   const faults = preflight.data ?? noFaults;
@@ -106,7 +108,7 @@ export function ExperimentEditor({ experiment, version, rig, envelope, objective
           <VersionList experimentId={experiment.id} current={version.version} />
         </Box>
         <StepInspector
-          {...{ rig, faults, isReadOnly }}
+          {...{ rig, defaults, faults, isReadOnly }}
           graph={content.graph}
           step={chosenStep}
           onChange={(graph) => changeGraph(graph)}

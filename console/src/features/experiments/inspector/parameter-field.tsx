@@ -32,6 +32,8 @@ export function ParameterField(props: ParameterFieldProps) {
     case 'actuator':
     case 'channel':
       return <ChannelField {...props} />;
+    case 'choice':
+      return <ChoiceField {...props} />;
     case 'numeric':
     case 'optional-numeric':
     case 'expression':
@@ -164,6 +166,29 @@ function ChannelField(props: ParameterFieldProps) {
       {options.map((channel) => (
         <MenuItem key={channel.id} value={channel.id}>
           {channel.title} ({channel.id})
+        </MenuItem>
+      ))}
+    </TextField>
+  );
+}
+
+function ChoiceField(props: ParameterFieldProps) {
+  const { value, take } = useParameter(props);
+  const { label, help, options = [], whenEmpty = '', chosen, valueOf } = props.field;
+  return (
+    <TextField
+      select
+      label={label}
+      value={chosen ?? (fieldText(value) || whenEmpty)}
+      onChange={({ target }) => take(valueOf ? valueOf(target.value) : target.value)}
+      disabled={props.isReadOnly}
+      error={props.finding !== null}
+      helperText={props.finding ?? help}
+      fullWidth
+    >
+      {options.map((option) => (
+        <MenuItem key={option.value} value={option.value}>
+          {option.label}
         </MenuItem>
       ))}
     </TextField>

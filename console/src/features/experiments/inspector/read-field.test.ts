@@ -3,7 +3,7 @@ import type { Step } from '@cresthold/shared';
 import { newSeekActuator } from '../graph/new-step.js';
 import { fieldName, valueAt } from '../graph/parameter-path.js';
 import { changeParameter, fieldText, readField } from './read-field.js';
-import { stepFields } from './step-fields.js';
+import { endSection } from './seek-sections.js';
 
 const move: Step = {
   kind: 'move',
@@ -65,11 +65,12 @@ describe('the form of a seek', () => {
       invalidForS: 30,
     },
   };
-  const names = (step: Step) => stepFields(step).map(({ path }) => fieldName(path));
+  const names = (step: Step) =>
+    step.kind === 'seek' ? endSection(step).map(({ path }) => fieldName(path)) : [];
 
   it('asks for band and time of convergence only where that may end it', () => {
     expect(names(seek)).not.toContain('parameters.end.whenConverged.band');
-    const field = stepFields(seek).find(({ kind }) => kind === 'presence');
+    const field = seek.kind === 'seek' ? endSection(seek).find(({ kind }) => kind === 'presence') : undefined;
     const outcome = changeParameter(seek, ['end', 'whenConverged'], field?.whenOn);
     expect(outcome.isOk && names(outcome.step)).toContain('parameters.end.whenConverged.band');
   });

@@ -32,6 +32,7 @@ export function readField(kind: StepField['kind'], text: string): ReadOutcome {
       return { isOk: true, value: text.trim() };
     case 'actuator':
     case 'channel':
+    case 'choice':
     case 'switch':
     case 'presence':
       return { isOk: true, value: text };

@@ -1,4 +1,4 @@
-import type { Step, StepOf } from '@cresthold/shared';
+import type { Step } from '@cresthold/shared';
 import type { ParameterPath } from '../graph/parameter-path.js';
 
 /** One field of a step's form. */
@@ -14,6 +14,7 @@ export interface StepField {
     | 'optional-numeric'
     | 'actuator'
     | 'channel'
+    | 'choice'
     | 'switch'
     | 'presence'
     | 'expression'
@@ -24,23 +25,30 @@ export interface StepField {
   unit?: string | { of: ParameterPath };
   help?: string;
   whenOn?: unknown;
+  /** Of a choice. */
+  options?: readonly { value: string; label: string }[];
+  /** What a choice shows where the document has none. */
+  whenEmpty?: string;
+  /** Where a choice stands for more than its text: what is chosen now, and the document's value of each. */
+  chosen?: string;
+  valueOf?: (chosen: string) => unknown;
 }
 
-const of = (
+/** A field as data. */
+export const of = (
   kind: StepField['kind'],
   path: ParameterPath,
   label: string,
-  more: Pick<StepField, 'unit' | 'help' | 'whenOn'> = {},
+  more: Omit<StepField, 'kind' | 'path' | 'label'> = {},
 ): StepField => ({ kind, path, label, ...more });
 
-const first = (name: string): ParameterPath => ['actuators', 0, name];
-const firstUnit = { of: first('channel') };
-
-/** The form of a step kind as data; targets of a Move have a form of their own. */
+/** The form of a step kind as data; targets of a Move, Survey and Seek have forms of their own. */
 export function stepFields(step: Step): StepField[] {
   switch (step.kind) {
     case 'start':
     case 'finish':
+    case 'survey':
+    case 'seek':
       return [];
     case 'move':
       return [
@@ -59,20 +67,6 @@ export function stepFields(step: Step): StepField[] {
       ];
     case 'hold':
       return [of('number', ['durationS'], 'Time', { unit: 's' })];
-    case 'survey':
-      return [
-        of('actuator', first('channel'), 'Actuator'),
-        of('numeric', first('from'), 'From', { unit: firstUnit }),
-        of('numeric', first('to'), 'To', { unit: firstUnit }),
-        of('number', first('points'), 'Points'),
-        of('number', ['settleS'], 'Settle at each for', { unit: 's' }),
-        of('number', ['averageS'], 'Then average for', { unit: 's' }),
-        of('switch', first('isUpAndDown'), 'Up and down again', {
-          help: 'The way back shows hysteresis and drift.',
-        }),
-      ];
-    case 'seek':
-      return seekFields(step);
     case 'check':
       return [
         of('expression', ['criterion'], 'Criterion', {
@@ -81,56 +75,3 @@ export function stepFields(step: Step): StepField[] {
       ];
   }
 }
-
-const seekFields = (step: StepOf<'seek'>): StepField[] => [
-  ...lawFields,
-  ...(step.parameters.end.whenConverged === null ? [] : convergenceFields),
-  of('optional-expression', ['end', 'when'], 'Ends earlier when', { help: 'Empty: never by a condition.' }),
-  of('number', ['invalidForS'], 'Gives up when invalid for', {
-    unit: 's',
-    help: 'Until then it waits at the last good point.',
-  }),
-];
-
-const convergenceFields: StepField[] = [
-  of('number', ['end', 'whenConverged', 'band'], 'Converged within, peak to peak', {
-    unit: firstUnit,
-    help: 'Of the estimate, averaged over whole dither periods.',
-  }),
-  of('number', ['end', 'whenConverged', 'forS'], 'Converged for', { unit: 's' }),
-];
-
-const lawFields: StepField[] = [
-  of('actuator', first('channel'), 'Actuator'),
-  of('numeric', first('amplitude'), 'Dither amplitude', {
-    unit: firstUnit,
-    help: 'Half of peak to peak.',
-  }),
-  of('numeric', first('periodS'), 'Dither period', {
-    unit: 's',
-    help: 'Slower than the plant, faster than the drift.',
-  }),
-  of('numeric', first('gain'), 'Gain', { help: 'Actuator unit per second for each unit of slope.' }),
-  of('numeric', first('phaseDeg'), 'Demodulation lag', {
-    unit: '°',
-    help: 'Lag of the plant less lead of the washout.',
-  }),
-  of('number', ['law', 'parameters', 'washoutRatio'], 'Washout corner', {
-    help: 'As a fraction of the dither frequency.',
-  }),
-  of('number', ['law', 'parameters', 'lowPassRatio'], 'Low-pass corner', {
-    help: 'As a fraction of the dither frequency.',
-  }),
-  of('optional-numeric', first('min'), 'Not below', {
-    unit: firstUnit,
-    help: 'Empty: as the envelope says.',
-  }),
-  of('optional-numeric', first('max'), 'Not above', {
-    unit: firstUnit,
-    help: 'Empty: as the envelope says.',
-  }),
-  of('number', ['end', 'afterS'], 'Ends after', { unit: 's' }),
-  of('presence', ['end', 'whenConverged'], 'Ends earlier when converged', {
-    whenOn: { band: 1, forS: 60 },
-  }),
-];

@@ -13,14 +13,19 @@ import {
 import { Empty, Panel } from '../../../components/index.js';
 import { renameStep, replaceStep } from '../graph/edit-graph.js';
 import { fieldName } from '../graph/parameter-path.js';
+import type { StepDefaults } from '../graph/new-step.js';
 import { MoveTargets } from './move-targets.js';
 import { ParameterField } from './parameter-field.js';
+import { SeekForm } from './seek-form.js';
 import { stepFields } from './step-fields.js';
 import { StepOutcomes } from './step-outcomes.js';
+import { SurveyForm } from './survey-form.js';
 import { useTextDraft } from './use-text-draft.js';
 
 export interface StepInspectorProps {
   rig: Rig;
+  /** What a fresh actuator of a step takes its first values from. */
+  defaults: StepDefaults;
   graph: ExperimentGraph;
   step: Step | null;
   faults: readonly PreflightFault[];
@@ -43,7 +48,7 @@ export function StepInspector({ step, ...props }: StepInspectorProps) {
 }
 
 function ChosenStep({ step, ...props }: StepInspectorProps & { step: Step }) {
-  const { rig, graph, faults, isReadOnly, onChange } = props;
+  const { rig, graph, faults, isReadOnly, onChange, defaults } = props;
   const findingOf = (field: string) =>
     faults.find((fault) => fault.step === step.id && fault.field === field)?.message ?? null;
   const general = faults.filter((fault) => fault.step === step.id && fault.field === null);
@@ -71,6 +76,12 @@ function ChosenStep({ step, ...props }: StepInspectorProps & { step: Step }) {
         ))}
         <NameFields step={step} {...props} />
         {step.kind === 'move' && <MoveTargets step={step} findingOf={findingOf} {...shared} />}
+        {step.kind === 'survey' && (
+          <SurveyForm step={step} findingOf={findingOf} {...shared} defaults={defaults} />
+        )}
+        {step.kind === 'seek' && (
+          <SeekForm step={step} findingOf={findingOf} {...shared} defaults={defaults} />
+        )}
         {stepFields(step).map((field) => (
           <ParameterField
             key={fieldName(field.path)}

@@ -1,6 +1,7 @@
 import Box from '@mui/material/Box';
-import { plainNumber, roundScale, type Scale } from '../../../components/index.js';
+import { roundScale } from '../../../components/index.js';
 import { traceColour, usePaper, type Paper } from '../../../theme/index.js';
+import { ChartAxes, type ChartFrame } from './chart-axes.js';
 import type { LandscapePoint, PathPoint } from './landscape-points.js';
 
 interface LandscapeChartProps {
@@ -11,9 +12,8 @@ interface LandscapeChartProps {
   summary: string;
 }
 
-const width = 520;
-const height = 300;
-const frame = { left: 62, right: 12, top: 12, bottom: 40 };
+const frame: ChartFrame = { width: 520, height: 300, left: 62, right: 12, top: 12, bottom: 40 };
+const { width, height } = frame;
 
 /** The surveyed curve, up and down, with the way of the estimate over it and where it is now. */
 export function LandscapeChart({ points, path, xLabel, yLabel, summary }: LandscapeChartProps) {
@@ -39,7 +39,7 @@ export function LandscapeChart({ points, path, xLabel, yLabel, summary }: Landsc
       aria-label={summary}
       sx={{ width: '100%', display: 'block', fontSize: 11, fontFamily: 'inherit' }}
     >
-      <Axes {...{ x, y, px, py, xLabel, yLabel, paper }} />
+      <ChartAxes {...{ x, y, px, py, xLabel, yLabel, paper, frame }} />
       {(['up', 'down'] as const).map((branch) => (
         <polyline
           key={branch}
@@ -84,50 +84,5 @@ function PointMark({
     <rect x={cx - 3} y={cy - 3} width="6" height="6" fill={stroke} />
   ) : (
     <path d={`M${cx - 3.5} ${cy - 3.5}l7 7m0 -7l-7 7`} stroke={stroke} strokeWidth="1.5" />
-  );
-}
-
-interface AxesProps {
-  x: Scale;
-  y: Scale;
-  px: (value: number) => number;
-  py: (value: number) => number;
-  xLabel: string;
-  yLabel: string;
-  paper: Paper;
-}
-
-function Axes({ x, y, px, py, xLabel, yLabel, paper }: AxesProps) {
-  const bottom = height - frame.bottom;
-  return (
-    <g fill={paper.inkSoft}>
-      {x.ticks.map((tick) => (
-        <g key={tick}>
-          <path d={`M${px(tick)} ${frame.top}V${bottom}`} stroke={paper.grid} />
-          <text x={px(tick)} y={bottom + 14} textAnchor="middle">
-            {plainNumber(tick)}
-          </text>
-        </g>
-      ))}
-      {y.ticks.map((tick) => (
-        <g key={tick}>
-          <path d={`M${frame.left} ${py(tick)}H${width - frame.right}`} stroke={paper.grid} />
-          <text x={frame.left - 6} y={py(tick) + 4} textAnchor="end">
-            {plainNumber(tick)}
-          </text>
-        </g>
-      ))}
-      <path
-        d={`M${frame.left} ${frame.top}V${bottom}H${width - frame.right}`}
-        stroke={paper.outline}
-        fill="none"
-      />
-      <text x={(frame.left + width - frame.right) / 2} y={height - 6} textAnchor="middle">
-        {xLabel}
-      </text>
-      <text transform={`translate(12 ${(frame.top + bottom) / 2}) rotate(-90)`} textAnchor="middle">
-        {yLabel}
-      </text>
-    </g>
   );
 }

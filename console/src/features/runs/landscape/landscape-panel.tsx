@@ -2,10 +2,12 @@ import { useMemo } from 'react';
 import Box from '@mui/material/Box';
 import type { ExperimentGraph, Rig, RunColumn, RunEvent } from '@cresthold/shared';
 import { Panel, plainNumber } from '../../../components/index.js';
-import { useRunSamples } from '../api/run-queries.js';
+import { useRunSamples, type RunSamples } from '../api/run-queries.js';
 import { findEstimate, seekActuators } from '../charts/chart-groups.js';
 import { LandscapeChart } from './landscape-chart.js';
-import { landscapeActuators, seekBeganS, seekPath, surveyPoints } from './landscape-points.js';
+import { landscapeGrid } from './landscape-grid.js';
+import { LandscapeMap } from './landscape-map.js';
+import { landscapeActuators, seekBeganS, seekPath, seekPlane, surveyPoints } from './landscape-points.js';
 
 interface LandscapePanelProps {
   runId: string;
@@ -16,44 +18,31 @@ interface LandscapePanelProps {
   isLive: boolean;
 }
 
-/** The objective over the actuator as surveyed, and the way of the seek over it. */
+/** The objective over one actuator or two as surveyed, and the way of the seek over it. */
 export function LandscapePanel(props: LandscapePanelProps) {
-  const [actuator] = landscapeActuators(props.graph);
-  if (actuator === undefined) return null;
-  return <Landscape {...props} actuator={actuator} />;
+  const [first, second] = landscapeActuators(props.graph);
+  if (first === undefined) return null;
+  if (second === undefined) return <Curve {...props} actuator={first} />;
+  return <Plane {...props} first={first} second={second} />;
 }
 
-function Landscape({
-  runId,
-  rig,
-  graph,
-  columns,
-  events,
-  isLive,
-  actuator,
-}: LandscapePanelProps & { actuator: string }) {
+function Curve({ events, actuator, ...props }: LandscapePanelProps & { actuator: string }) {
+  const { rig, columns } = props;
   const points = useMemo(() => surveyPoints(events, actuator), [events, actuator]);
-  const fromS = seekBeganS(events);
-  const step = [...seekActuators(graph)].find(([, steered]) => steered.includes(actuator))?.[0];
-  const estimate = step === undefined ? undefined : findEstimate(columns, step, actuator);
-  const asked = fromS === null || estimate === undefined ? [] : [estimate, 'objective'];
-  const samples = useRunSamples(runId, { columns: asked, fromS, points: 300 }, isLive);
-  const path =
-    samples.data && estimate !== undefined && fromS !== null ? seekPath(samples.data, estimate) : [];
-  const channel = rig.channels.find((other) => other.id === actuator);
-  const objectiveUnit = columns.find((column) => column.kind === 'objective')?.unit ?? '';
-  const label = (title: string, unit: string) => (unit === '' ? title : `${title}, ${unit}`);
+  const way = useWay({ ...props, events }, [actuator]);
+  const [estimate] = way.estimates;
+  const path = way.samples && estimate !== undefined ? seekPath(way.samples, estimate) : [];
   return (
     <Panel title="Landscape">
       {points.length + path.length === 0 ? (
-        <Box sx={{ color: 'text.secondary' }}>Nothing has been surveyed yet.</Box>
+        <NothingYet />
       ) : (
         <>
           <LandscapeChart
             points={points}
             path={path}
-            xLabel={label(channel?.title ?? actuator, channel?.unit ?? '')}
-            yLabel={label('Objective', objectiveUnit)}
+            xLabel={channelLabel(rig, actuator)}
+            yLabel={objectiveLabel(columns)}
             summary={landscapeSummary(points.length, path)}
           />
           <Key />
@@ -61,6 +50,65 @@ function Landscape({
       )}
     </Panel>
   );
+}
+
+function Plane({ events, first, second, ...props }: LandscapePanelProps & { first: string; second: string }) {
+  const { rig, columns } = props;
+  const grid = useMemo(() => landscapeGrid(events, first, second), [events, first, second]);
+  const way = useWay({ ...props, events }, [first, second]);
+  const [x, y] = way.estimates;
+  const path = way.samples && x !== undefined && y !== undefined ? seekPlane(way.samples, x, y) : [];
+  const last = path.at(-1);
+  const surveyed = `${grid?.objectives.filter((z) => z !== null).length ?? 0} places surveyed.`;
+  const at = last ? ` The estimates are at ${plainNumber(last.x)} and ${plainNumber(last.y)}.` : '';
+  return (
+    <Panel title="Landscape">
+      {grid === null && path.length === 0 ? (
+        <NothingYet />
+      ) : (
+        <LandscapeMap
+          grid={grid}
+          path={path}
+          xLabel={channelLabel(rig, first)}
+          yLabel={channelLabel(rig, second)}
+          objectiveLabel={objectiveLabel(columns)}
+          summary={surveyed + at}
+        />
+      )}
+    </Panel>
+  );
+}
+
+/** What was recorded of the estimates of some actuators since the first Seek began, with the objective. */
+function useWay(
+  { runId, graph, columns, events, isLive }: LandscapePanelProps,
+  actuators: readonly string[],
+): { estimates: string[]; samples: RunSamples | undefined } {
+  const fromS = seekBeganS(events);
+  const step = [...seekActuators(graph)].find(([, steered]) =>
+    actuators.every((one) => steered.includes(one)),
+  )?.[0];
+  const found = actuators.map((one) => (step === undefined ? undefined : findEstimate(columns, step, one)));
+  const estimates = found.filter((name) => name !== undefined);
+  const isAsked = fromS !== null && estimates.length === actuators.length;
+  const asked = isAsked ? [...estimates, 'objective'] : [];
+  const samples = useRunSamples(runId, { columns: asked, fromS, points: 300 }, isLive);
+  return { estimates, samples: isAsked ? samples.data : undefined };
+}
+
+const withUnit = (title: string, unit: string) => (unit === '' ? title : `${title}, ${unit}`);
+
+function channelLabel(rig: Rig, id: string): string {
+  const channel = rig.channels.find((other) => other.id === id);
+  return withUnit(channel?.title ?? id, channel?.unit ?? '');
+}
+
+function objectiveLabel(columns: readonly RunColumn[]): string {
+  return withUnit('Objective', columns.find((column) => column.kind === 'objective')?.unit ?? '');
+}
+
+function NothingYet() {
+  return <Box sx={{ color: 'text.secondary' }}>Nothing has been surveyed yet.</Box>;
 }
 
 function landscapeSummary(surveyed: number, path: readonly { value: number; objective: number }[]): string {

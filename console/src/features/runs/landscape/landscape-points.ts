@@ -37,6 +37,15 @@ export function seekPath(samples: RunSamples, estimateColumn: string): PathPoint
   });
 }
 
+/** Where the estimates of two actuators went together. */
+export function seekPlane(samples: RunSamples, xColumn: string, yColumn: string): { x: number; y: number }[] {
+  const [xs, ys] = [xColumn, yColumn].map((name) => samples.mean[samples.columns.indexOf(name)] ?? []);
+  return (xs ?? []).flatMap((x, i) => {
+    const y = ys?.[i];
+    return x === null || y === null || y === undefined ? [] : [{ x, y }];
+  });
+}
+
 /** The actuators of the landscape: of the first Seek, or else of the first Survey. */
 export function landscapeActuators(graph: ExperimentGraph): string[] {
   for (const kind of ['seek', 'survey'] as const) {
