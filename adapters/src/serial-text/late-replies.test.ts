@@ -11,28 +11,25 @@ const fast = { replyTimeoutMs: 150, resyncMs: 150, timeoutMs: 3000, silencesUnti
 const wait = (delayMs: number): Promise<void> => new Promise((resolve) => setTimeout(resolve, delayMs));
 
 describe('a late reply', () => {
-  it.each([20, 60])(
-    'that comes %d ms after its time is never taken for the next one',
-    async (latenessMs) => {
-      instrument = new ScriptedInstrument(numbered);
-      const pass = instrument.transmit;
-      const session = await openText(instrument.path, fast);
-      // The device answers in order: a command that comes too early is answered right after the late reply.
-      const owed: Buffer[] = [];
-      instrument.transmit = (bytes) => {
-        if (owed.push(bytes) > 1) return;
-        setTimeout(() => {
-          instrument.transmit = pass;
-          for (const late of owed) pass(late);
-        }, fast.replyTimeoutMs + latenessMs);
-      };
-      const [first, second] = await readText(session, { query: 'Q1?' }, { query: 'Q2?' });
-      expect(first).toMatch(/^adapter\.timeout: .*"Q1\?": no reply in time/);
-      expect(second).toBe(2);
-      expect(await readText(session, { query: 'Q3?' }, { query: 'Q4?' })).toEqual([3, 4]);
-      await session.close();
-    },
-  );
+  it.each([20, 60])('that comes %d ms after its time is never taken for the next one', async (latenessMs) => {
+    instrument = new ScriptedInstrument(numbered);
+    const pass = instrument.transmit;
+    const session = await openText(instrument.path, fast);
+    // The device answers in order: a command that comes too early is answered right after the late reply.
+    const owed: Buffer[] = [];
+    instrument.transmit = (bytes) => {
+      if (owed.push(bytes) > 1) return;
+      setTimeout(() => {
+        instrument.transmit = pass;
+        for (const late of owed) pass(late);
+      }, fast.replyTimeoutMs + latenessMs);
+    };
+    const [first, second] = await readText(session, { query: 'Q1?' }, { query: 'Q2?' });
+    expect(first).toMatch(/^adapter\.timeout: .*"Q1\?": no reply in time/);
+    expect(second).toBe(2);
+    expect(await readText(session, { query: 'Q3?' }, { query: 'Q4?' })).toEqual([3, 4]);
+    await session.close();
+  });
 
   it('is passed by with the help of the identification, however late it is', async () => {
     const script: Script = (command) => (command === '*IDN?' ? 'Brackwater,X\n' : numbered(command));
