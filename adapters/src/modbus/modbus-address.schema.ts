@@ -21,7 +21,7 @@ export const registersOfType: Readonly<Record<ModbusType, number>> = {
 };
 
 /** Most values of one trace. */
-export const mostTracePoints = 16_384;
+export const mostTracePoints = 4096;
 
 const finite = z.number();
 
