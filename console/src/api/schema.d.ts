@@ -3058,161 +3058,404 @@ export interface components {
                     fault: {
                         /** @enum {string} */
                         kind: "delay";
+                        /** Delay, ms */
                         delayMs: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "jitter";
+                        /** Longest, ms */
                         mostMs: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "slow-device";
+                        /** Time for each value, ms */
                         perValueMs: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "drop";
+                        /** Time until the timeout, ms */
                         timeoutMs: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "truncate";
-                        /** @default 0.5 */
+                        /**
+                         * Kept share
+                         * @default 0.5
+                         */
                         keptShare: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "corrupt";
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "freeze";
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "wrong-unit";
-                        /** @default 17 */
+                        /**
+                         * Unit that answers
+                         * @default 17
+                         */
                         answeringUnit: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "wrong-scale";
-                        /** @default 1.8 */
+                        /**
+                         * Factor
+                         * @default 1.8
+                         */
                         factor: number;
-                        /** @default 32 */
+                        /**
+                         * Offset
+                         * @default 32
+                         */
                         offset: number;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "exception";
-                        /** @default illegal data address */
+                        /**
+                         * Its words
+                         * @default illegal data address
+                         */
                         text: string;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     } | {
                         /** @enum {string} */
                         kind: "disconnect";
-                        /** @default true */
+                        /**
+                         * Can be made again
+                         * @description Off: it stays down until the fault is taken off.
+                         * @default true
+                         */
                         canReconnect: boolean;
-                        /** @default 1 */
+                        /**
+                         * Probability
+                         * @description Share of reads and writes that are hit, drawn anew for each.
+                         * @default 1
+                         */
                         probability: number;
-                        /** @default 1 */
+                        /**
+                         * Seed
+                         * @description Same seed, same calls hit.
+                         * @default 1
+                         */
                         seed: number;
-                        /** @default 0 */
+                        /**
+                         * Begins after, s
+                         * @description Counted from when the fault is put.
+                         * @default 0
+                         */
                         fromS: number;
-                        /** @default null */
+                        /**
+                         * Ends after, s
+                         * @description Empty: it stays until it is taken off.
+                         * @default null
+                         */
                         untilS: number | null;
-                        /** @default null */
+                        /**
+                         * Channels
+                         * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                         * @default null
+                         */
                         channels: string[] | null;
                     };
                     by: string;
@@ -3376,161 +3619,404 @@ export interface components {
             fault: ({
                 /** @enum {string} */
                 kind: "delay";
+                /** Delay, ms */
                 delayMs: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "jitter";
+                /** Longest, ms */
                 mostMs: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "slow-device";
+                /** Time for each value, ms */
                 perValueMs: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "drop";
+                /** Time until the timeout, ms */
                 timeoutMs: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "truncate";
-                /** @default 0.5 */
+                /**
+                 * Kept share
+                 * @default 0.5
+                 */
                 keptShare: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "corrupt";
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "freeze";
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "wrong-unit";
-                /** @default 17 */
+                /**
+                 * Unit that answers
+                 * @default 17
+                 */
                 answeringUnit: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "wrong-scale";
-                /** @default 1.8 */
+                /**
+                 * Factor
+                 * @default 1.8
+                 */
                 factor: number;
-                /** @default 32 */
+                /**
+                 * Offset
+                 * @default 32
+                 */
                 offset: number;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "exception";
-                /** @default illegal data address */
+                /**
+                 * Its words
+                 * @default illegal data address
+                 */
                 text: string;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             } | {
                 /** @enum {string} */
                 kind: "disconnect";
-                /** @default true */
+                /**
+                 * Can be made again
+                 * @description Off: it stays down until the fault is taken off.
+                 * @default true
+                 */
                 canReconnect: boolean;
-                /** @default 1 */
+                /**
+                 * Probability
+                 * @description Share of reads and writes that are hit, drawn anew for each.
+                 * @default 1
+                 */
                 probability: number;
-                /** @default 1 */
+                /**
+                 * Seed
+                 * @description Same seed, same calls hit.
+                 * @default 1
+                 */
                 seed: number;
-                /** @default 0 */
+                /**
+                 * Begins after, s
+                 * @description Counted from when the fault is put.
+                 * @default 0
+                 */
                 fromS: number;
-                /** @default null */
+                /**
+                 * Ends after, s
+                 * @description Empty: it stays until it is taken off.
+                 * @default null
+                 */
                 untilS: number | null;
-                /** @default null */
+                /**
+                 * Channels
+                 * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                 * @default null
+                 */
                 channels: string[] | null;
             }) | null;
         };
@@ -3718,161 +4204,404 @@ export interface components {
                 fault: {
                     /** @enum {string} */
                     kind: "delay";
+                    /** Delay, ms */
                     delayMs: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "jitter";
+                    /** Longest, ms */
                     mostMs: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "slow-device";
+                    /** Time for each value, ms */
                     perValueMs: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "drop";
+                    /** Time until the timeout, ms */
                     timeoutMs: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "truncate";
-                    /** @default 0.5 */
+                    /**
+                     * Kept share
+                     * @default 0.5
+                     */
                     keptShare: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "corrupt";
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "freeze";
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "wrong-unit";
-                    /** @default 17 */
+                    /**
+                     * Unit that answers
+                     * @default 17
+                     */
                     answeringUnit: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "wrong-scale";
-                    /** @default 1.8 */
+                    /**
+                     * Factor
+                     * @default 1.8
+                     */
                     factor: number;
-                    /** @default 32 */
+                    /**
+                     * Offset
+                     * @default 32
+                     */
                     offset: number;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "exception";
-                    /** @default illegal data address */
+                    /**
+                     * Its words
+                     * @default illegal data address
+                     */
                     text: string;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 } | {
                     /** @enum {string} */
                     kind: "disconnect";
-                    /** @default true */
+                    /**
+                     * Can be made again
+                     * @description Off: it stays down until the fault is taken off.
+                     * @default true
+                     */
                     canReconnect: boolean;
-                    /** @default 1 */
+                    /**
+                     * Probability
+                     * @description Share of reads and writes that are hit, drawn anew for each.
+                     * @default 1
+                     */
                     probability: number;
-                    /** @default 1 */
+                    /**
+                     * Seed
+                     * @description Same seed, same calls hit.
+                     * @default 1
+                     */
                     seed: number;
-                    /** @default 0 */
+                    /**
+                     * Begins after, s
+                     * @description Counted from when the fault is put.
+                     * @default 0
+                     */
                     fromS: number;
-                    /** @default null */
+                    /**
+                     * Ends after, s
+                     * @description Empty: it stays until it is taken off.
+                     * @default null
+                     */
                     untilS: number | null;
-                    /** @default null */
+                    /**
+                     * Channels
+                     * @description Those that are hit; none named: all. What concerns the wire as a whole hits all.
+                     * @default null
+                     */
                     channels: string[] | null;
                 };
                 by: string;
