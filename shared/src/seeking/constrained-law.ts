@@ -2,24 +2,22 @@ import { z } from 'zod';
 import { createFilterBank, resetFilterBank, stepFilterBank, type FilterBank } from './filter-bank.js';
 import { filterDirection, relaxedBarrier } from './constraint-filter.js';
 import {
+  act,
+  createDemodulatingCore,
+  filterParameters,
+  withSpeedLimits,
+  type Demodulating,
+} from './demodulating-core.js';
+import {
   createGradientEstimator,
   gradientSignals,
   resetGradientEstimator,
   stepGradientEstimator,
   writeEstimates,
-  writeGradientSignals,
   type GradientEstimator,
 } from './gradient-estimator.js';
-import {
-  axesOf,
-  gainParameter,
-  lowPassRatioParameter,
-  parameter,
-  periodicAxis,
-  taperParameter,
-  washoutRatioParameter,
-} from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, demodulate, perturb, retreatPeriodic } from './periodic-core.js';
+import { axesOf, gainParameter, parameter, periodicAxis } from './law-parameters.js';
+import { admitPeriodic, demodulate, retreatPeriodic } from './periodic-core.js';
 import { held } from './seek-box.js';
 import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingInput, type SeekingLaw } from './seeking-law.js';
@@ -68,15 +66,11 @@ const parametersSchema = z.object({
     'unit of the quantity',
     'Barrier: below this distance it rises as a parabola, so that it stays finite beyond the bound.',
   ),
-  washoutRatio: washoutRatioParameter,
-  lowPassRatio: lowPassRatioParameter,
-  taper: taperParameter,
+  ...filterParameters,
 });
 export type ConstrainedLawParameters = z.infer<typeof parametersSchema>;
 
-interface ConstrainedOwn {
-  readonly parameters: ConstrainedLawParameters;
-  readonly estimator: GradientEstimator;
+interface ConstrainedOwn extends Demodulating<ConstrainedLawParameters> {
   readonly marginEstimator: GradientEstimator;
   readonly marginFilter: FilterBank;
   /** Wanted speed and slope of the margin, in dither amplitudes. */
@@ -116,21 +110,20 @@ export const constrainedLaw: SeekingLaw<ConstrainedLawParameters, ConstrainedLaw
   signalNames: (actuators) => [...perActuator(actuators, signalsPerActuator), 'margin'],
 
   init(parameters, start) {
-    const { taper, washoutRatio, lowPassRatio } = parameters;
-    const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
+    const { axes, washoutRatio, lowPassRatio } = parameters;
     const n = axes.length;
     const slowestS = Math.max(...axes.map(({ periodS }) => periodS));
-    const signals = n * stride + 1;
-    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
-      parameters,
-      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
-      marginEstimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
-      marginFilter: createFilterBank(Float64Array.of((lowPassRatio * 2 * Math.PI) / slowestS)),
-      direction: new Float64Array(n),
-      marginSlope: new Float64Array(n),
-    }));
-    writeEstimates(state.estimate, state.signals, stride);
-    return state;
+    return createDemodulatingCore(
+      withSpeedLimits(parameters),
+      start,
+      (dithers) => ({
+        marginEstimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
+        marginFilter: createFilterBank(Float64Array.of((lowPassRatio * 2 * Math.PI) / slowestS)),
+        direction: new Float64Array(n),
+        marginSlope: new Float64Array(n),
+      }),
+      { stride, others: 1 },
+    );
   },
 
   step(state, input, dtS) {
@@ -144,8 +137,7 @@ export const constrainedLaw: SeekingLaw<ConstrainedLawParameters, ConstrainedLaw
     } else {
       estimator.told[0] = input.objective;
       climb(state, dtS);
-      perturb(state, dtS);
-      writeGradientSignals(estimator, signals, stride);
+      act(state, dtS, stride);
       for (let i = 0; i < state.estimate.length; i += 1) {
         signals[i * stride + 4] = at(marginEstimator.gradient, i);
       }

@@ -1,39 +1,26 @@
 import { z } from 'zod';
 import {
-  createGradientEstimator,
-  gradientSignals,
-  resetGradientEstimator,
-  stepGradientEstimator,
-  writeEstimates,
-  writeGradientSignals,
-  type GradientEstimator,
-} from './gradient-estimator.js';
-import {
-  axesOf,
-  gainParameter,
-  lowPassRatioParameter,
-  periodicAxis,
-  taperParameter,
-  washoutRatioParameter,
-} from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, demodulate, perturb } from './periodic-core.js';
-import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
+  act,
+  climbAbove,
+  createDemodulatingCore,
+  filterParameters,
+  observe,
+  type Demodulating,
+} from './demodulating-core.js';
+import { gradientSignals, writeEstimates } from './gradient-estimator.js';
+import { axesOf, gainParameter, periodicAxis } from './law-parameters.js';
+import { isSettled, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 
 const axis = periodicAxis(ditherKinds, { gain: gainParameter });
 
-const parametersSchema = z.object({
-  axes: axesOf(axis, 16),
-  washoutRatio: washoutRatioParameter,
-  lowPassRatio: lowPassRatioParameter,
-  taper: taperParameter,
-});
+const parametersSchema = z.object({ axes: axesOf(axis, 16), ...filterParameters });
 export type GradientLawParameters = z.infer<typeof parametersSchema>;
 
-interface GradientOwn {
-  readonly parameters: GradientLawParameters;
-  readonly estimator: GradientEstimator;
+interface GradientOwn extends Demodulating<GradientLawParameters> {
+  /** Slopes at which the estimates rest: none. */
+  readonly references: Float64Array;
 }
 
 export type GradientLawState = SeekCore<GradientOwn>;
@@ -64,36 +51,16 @@ export const gradientLaw: SeekingLaw<GradientLawParameters, GradientLawState> = 
 
   signalNames: (actuators) => perActuator(actuators, gradientSignals),
 
-  init(parameters, start) {
-    const { axes, taper, washoutRatio, lowPassRatio } = parameters;
-    const signals = axes.length * gradientSignals.length;
-    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
-      parameters,
-      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
-    }));
-    writeEstimates(state.estimate, state.signals);
-    return state;
-  },
+  init: (parameters, start) =>
+    createDemodulatingCore(parameters, start, (dithers) => ({
+      references: new Float64Array(dithers.length),
+    })),
 
   step(state, input, dtS) {
-    const { demodulators, change, signals } = state;
-    const { parameters, estimator } = state.own;
-    const { axes } = parameters;
-    if (admitPeriodic(state, input, dtS)) {
-      demodulate(state);
-      estimator.told[0] = input.objective;
-      stepGradientEstimator(estimator, demodulators, dtS);
-      if (isSettled(state, dtS)) {
-        for (let i = 0; i < axes.length; i += 1) {
-          change[i] = (axes[i] as { gain: number }).gain * at(estimator.gradient, i) * dtS;
-        }
-        moveAll(state, dtS);
-      }
-      perturb(state, dtS);
-      writeGradientSignals(estimator, signals);
-    } else {
-      resetGradientEstimator(estimator);
+    if (observe(state, input, dtS)) {
+      if (isSettled(state, dtS)) climbAbove(state, state.own.references, dtS);
+      act(state, dtS);
     }
-    writeEstimates(state.estimate, signals);
+    writeEstimates(state.estimate, state.signals);
   },
 };

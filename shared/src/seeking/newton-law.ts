@@ -1,28 +1,20 @@
 import { z } from 'zod';
 import {
-  createGradientEstimator,
-  gradientSignals,
-  resetGradientEstimator,
-  stepGradientEstimator,
-  writeEstimates,
-  writeGradientSignals,
-  type GradientEstimator,
-} from './gradient-estimator.js';
+  act,
+  createDemodulatingCore,
+  filterParameters,
+  observe,
+  withSpeedLimits,
+  type Demodulating,
+} from './demodulating-core.js';
+import { gradientSignals, writeEstimates } from './gradient-estimator.js';
 import {
   createHessianEstimator,
   resetHessianEstimator,
   stepHessianEstimator,
   type HessianEstimator,
 } from './hessian-estimator.js';
-import {
-  axesOf,
-  lowPassRatioParameter,
-  parameter,
-  periodicAxis,
-  taperParameter,
-  washoutRatioParameter,
-} from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, demodulate, perturb } from './periodic-core.js';
+import { axesOf, parameter, periodicAxis } from './law-parameters.js';
 import {
   applyRiccatiFilter,
   createRiccatiFilter,
@@ -72,8 +64,7 @@ const parametersSchema = z
       '1 / s',
       'How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.',
     ),
-    washoutRatio: washoutRatioParameter,
-    lowPassRatio: lowPassRatioParameter,
+    ...filterParameters,
     hessianRatio: parameter(
       z.number().positive().max(10).default(0.05),
       'Low-pass of the Hessian',
@@ -96,7 +87,6 @@ const parametersSchema = z
       '',
       'The second derivatives show at other frequencies than the dither; this makes up for the lag there.',
     ),
-    taper: taperParameter,
   })
   .refine(({ axes, crossCurvatures: rows }) => rows.length === 0 || isTriangle(rows, axes.length), {
     message: 'Give one row for each actuator but the first, each one entry longer than that before; or none.',
@@ -104,9 +94,7 @@ const parametersSchema = z
   });
 export type NewtonLawParameters = z.infer<typeof parametersSchema>;
 
-interface NewtonOwn {
-  readonly parameters: NewtonLawParameters;
-  readonly estimator: GradientEstimator;
+interface NewtonOwn extends Demodulating<NewtonLawParameters> {
   readonly curvatures: HessianEstimator;
   /** Γ, the inverse of the curvature −Ĥ. */
   readonly inverse: RiccatiFilter;
@@ -143,46 +131,41 @@ export const newtonLaw: SeekingLaw<NewtonLawParameters, NewtonLawState> = {
   signalNames: (actuators) => [...perActuator(actuators, gradientSignals), ...hessianNames(actuators)],
 
   init(parameters, start) {
-    const { taper, lag, washoutRatio, lowPassRatio, hessianRatio, inverseRate } = parameters;
-    const axes = parameters.axes.map((a) => ({ ...a, speedMax: a.speedMax ?? a.amplitude / a.periodS }));
+    const { axes, lag, washoutRatio, hessianRatio, inverseRate, crossCurvatures } = parameters;
     const n = axes.length;
-    const signals = n * gradientSignals.length + (n * (n + 1)) / 2;
-    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
-      parameters,
-      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
-      curvatures: createHessianEstimator(dithers, lag, washoutRatio, hessianRatio),
-      inverse: createRiccatiFilter(
-        axes.map(({ curvature }) => curvature),
-        inverseRate,
-        parameters.crossCurvatures,
-      ),
-      curvature: new Float64Array(n * n),
-    }));
-    resetFilters(state);
-    writeEstimates(state.estimate, state.signals);
+    const state = createDemodulatingCore(
+      withSpeedLimits(parameters),
+      start,
+      (dithers) => ({
+        curvatures: createHessianEstimator(dithers, lag, washoutRatio, hessianRatio),
+        inverse: createRiccatiFilter(
+          axes.map(({ curvature }) => curvature),
+          inverseRate,
+          crossCurvatures,
+        ),
+        curvature: new Float64Array(n * n),
+      }),
+      { stride: gradientSignals.length, others: (n * (n + 1)) / 2 },
+    );
+    restHessian(state);
     return state;
   },
 
   step(state, input, dtS) {
-    const { signals } = state;
-    if (admitPeriodic(state, input, dtS)) {
-      state.own.estimator.told[0] = input.objective;
+    if (observe(state, input, dtS)) {
       climb(state, dtS);
-      perturb(state, dtS);
-      writeGradientSignals(state.own.estimator, signals);
+      act(state, dtS);
       writeHessian(state);
     } else {
-      resetFilters(state);
+      restHessian(state);
     }
-    writeEstimates(state.estimate, signals);
+    writeEstimates(state.estimate, state.signals);
   },
 };
 
 function climb(state: NewtonLawState, dtS: number): void {
-  const { dithers, demodulators, change } = state;
+  const { dithers, change } = state;
   const { parameters, estimator, curvatures, inverse, curvature } = state.own;
-  demodulate(state);
-  stepGradientEstimator(estimator, demodulators, dtS);
   stepHessianEstimator(curvatures, dithers, estimator.told, dtS);
   if (!isSettled(state, dtS)) return;
   for (let i = 0; i < curvature.length; i += 1) curvature[i] = -at(curvatures.hessian, i);
@@ -193,8 +176,7 @@ function climb(state: NewtonLawState, dtS: number): void {
 }
 
 /** The Hessian begins again from what the inverse holds. */
-function resetFilters({ own: { estimator, curvatures, inverse } }: NewtonLawState): void {
-  resetGradientEstimator(estimator);
+function restHessian({ own: { curvatures, inverse } }: NewtonLawState): void {
   resetHessianEstimator(curvatures, inverse.inverse);
 }
 

@@ -1,24 +1,15 @@
 import { z } from 'zod';
 import {
-  createGradientEstimator,
-  gradientSignals,
-  resetGradientEstimator,
-  stepGradientEstimator,
-  writeEstimates,
-  writeGradientSignals,
-  type GradientEstimator,
-} from './gradient-estimator.js';
-import {
-  axesOf,
-  gainParameter,
-  lowPassRatioParameter,
-  parameter,
-  periodicAxis,
-  taperParameter,
-  washoutRatioParameter,
-} from './law-parameters.js';
-import { admitPeriodic, createPeriodicCore, demodulate, perturb } from './periodic-core.js';
-import { at, isSettled, moveAll, type SeekCore } from './seek-core.js';
+  act,
+  climbAbove,
+  createDemodulatingCore,
+  filterParameters,
+  observe,
+  type Demodulating,
+} from './demodulating-core.js';
+import { gradientSignals, writeEstimates } from './gradient-estimator.js';
+import { axesOf, gainParameter, parameter, periodicAxis } from './law-parameters.js';
+import { isSettled, type SeekCore } from './seek-core.js';
 import { ditherKinds, type SeekingLaw } from './seeking-law.js';
 import { perActuator } from './signal-names.js';
 import { recoveredShare } from './washout-share.js';
@@ -39,17 +30,10 @@ const axis = periodicAxis(ditherKinds, {
   ),
 });
 
-const parametersSchema = z.object({
-  axes: axesOf(axis, 16),
-  washoutRatio: washoutRatioParameter,
-  lowPassRatio: lowPassRatioParameter,
-  taper: taperParameter,
-});
+const parametersSchema = z.object({ axes: axesOf(axis, 16), ...filterParameters });
 export type SlopeLawParameters = z.infer<typeof parametersSchema>;
 
-interface SlopeOwn {
-  readonly parameters: SlopeLawParameters;
-  readonly estimator: GradientEstimator;
+interface SlopeOwn extends Demodulating<SlopeLawParameters> {
   /** What the estimator shows at the wanted slope, objective unit / actuator unit. */
   readonly references: Float64Array;
 }
@@ -79,40 +63,20 @@ export const slopeLaw: SeekingLaw<SlopeLawParameters, SlopeLawState> = {
   signalNames: (actuators) => perActuator(actuators, gradientSignals),
 
   init(parameters, start) {
-    const { axes, taper, washoutRatio, lowPassRatio } = parameters;
-    const signals = axes.length * gradientSignals.length;
-    const state = createPeriodicCore({ axes, start, taper, washoutRatio, signals }, (dithers) => ({
-      parameters,
+    const { axes, washoutRatio } = parameters;
+    return createDemodulatingCore(parameters, start, () => ({
       references: Float64Array.from(
         axes,
         (a) => a.slope * (a.slopeShare ?? recoveredShare(a.dither, washoutRatio, a.phaseRad)),
       ),
-      estimator: createGradientEstimator(dithers, washoutRatio, lowPassRatio),
     }));
-    writeEstimates(state.estimate, state.signals);
-    return state;
   },
 
   step(state, input, dtS) {
-    const { demodulators, change, signals } = state;
-    const { parameters, estimator, references } = state.own;
-    const { axes } = parameters;
-    if (admitPeriodic(state, input, dtS)) {
-      demodulate(state);
-      estimator.told[0] = input.objective;
-      stepGradientEstimator(estimator, demodulators, dtS);
-      if (isSettled(state, dtS)) {
-        for (let i = 0; i < axes.length; i += 1) {
-          change[i] =
-            (axes[i] as { gain: number }).gain * (at(estimator.gradient, i) - at(references, i)) * dtS;
-        }
-        moveAll(state, dtS);
-      }
-      perturb(state, dtS);
-      writeGradientSignals(estimator, signals);
-    } else {
-      resetGradientEstimator(estimator);
+    if (observe(state, input, dtS)) {
+      if (isSettled(state, dtS)) climbAbove(state, state.own.references, dtS);
+      act(state, dtS);
     }
-    writeEstimates(state.estimate, signals);
+    writeEstimates(state.estimate, state.signals);
   },
 };
