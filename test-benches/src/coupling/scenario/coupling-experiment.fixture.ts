@@ -35,12 +35,13 @@ function onlySteps(...ids: string[]): ExperimentContent['graph'] {
   return { steps, edges };
 }
 
-/** @param seeds how many */
-export function describeCouplingExperiment(seeds: number): void {
+/** @param seeds how many @param plainSeeds of them for what fails on purpose */
+export function describeCouplingExperiment(seeds: number, plainSeeds: number): void {
   const all = Array.from({ length: seeds }, (_, i) => i + 1);
+  const some = all.slice(0, plainSeeds);
   const report = (what: string, losses: number[]) =>
     console.info(
-      `${what}: mean loss ${Math.min(...losses).toFixed(3)} to ${Math.max(...losses).toFixed(3)} dB over ${seeds} seeds`,
+      `${what}: mean loss ${Math.min(...losses).toFixed(3)} to ${Math.max(...losses).toFixed(3)} dB over ${losses.length} seeds`,
     );
 
   describe(`the experiment of the coupling, over ${seeds} seeds`, { timeout: 20_000 * seeds }, () => {
@@ -62,7 +63,7 @@ export function describeCouplingExperiment(seeds: number): void {
     });
 
     it('stays on a ring without looking first', () => {
-      const losses = all.map((seed) =>
+      const losses = some.map((seed) =>
         meanLossAtEnd(run(seed, false, onlySteps('holdAgain')), 'holdAgain', 30),
       );
       report('plain climb', losses);
@@ -71,12 +72,12 @@ export function describeCouplingExperiment(seeds: number): void {
 
     it('stays on a ring after most bumps without looking again', () => {
       const graph = onlySteps('find', 'holdAgain');
-      const losses = all.map((seed) => meanLossAtEnd(run(seed, true, graph), 'holdAgain', 30));
+      const losses = some.map((seed) => meanLossAtEnd(run(seed, true, graph), 'holdAgain', 30));
       report('bumped, without looking again', losses);
       // Where the bump itself, as the filters see it, kicks the estimate back over the dark it has been lucky.
       const stranded = losses.filter((loss) => loss > lossOnRingDb).length;
-      console.info(`stranded on a ring after ${stranded} of ${seeds} bumps`);
-      expect(stranded).toBeGreaterThan(0.7 * seeds);
+      console.info(`stranded on a ring after ${stranded} of ${plainSeeds} bumps`);
+      expect(stranded).toBeGreaterThan(0.7 * plainSeeds);
     });
   });
 }

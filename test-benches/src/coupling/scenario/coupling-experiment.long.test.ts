@@ -1,3 +1,3 @@
 import { describeCouplingExperiment } from './coupling-experiment.fixture.js';
 
-describeCouplingExperiment(20);
+describeCouplingExperiment(20, 20);

@@ -1,3 +1,3 @@
 import { describeMixerExperiments } from './mixer-experiment.fixture.js';
 
-describeMixerExperiments(20);
+describeMixerExperiments(20, 20);

@@ -85,8 +85,8 @@ function expectOrderly(course: Course): void {
   expect(course.interventions).toBe(0);
 }
 
-/** @param seeds how many */
-export function describeStringExperiments(seeds: number): void {
+/** @param seeds how many @param plainSeeds of them for what fails on purpose in the clouds */
+export function describeStringExperiments(seeds: number, plainSeeds: number): void {
   const all = Array.from({ length: seeds }, (_, i) => i + 1);
 
   describe(`the string in broken cloud, over ${seeds} seeds`, { timeout: 30_000 * seeds }, () => {
@@ -104,9 +104,10 @@ export function describeStringExperiments(seeds: number): void {
       ['perturb and observe, which takes the clouds for its own doing', perturbing],
       ['an injected dither that is slow beside the clouds', injecting],
     ])('gives less by %s', (what, change) => {
-      const shares = all.map((seed) => efficiencyOf(run('hold-by-ripple', 'cloud', seed, change), 'seek'));
+      const some = all.slice(0, plainSeeds);
+      const shares = some.map((seed) => efficiencyOf(run('hold-by-ripple', 'cloud', seed, change), 'seek'));
       report(what, shares);
-      const mean = shares.reduce((sum, share) => sum + share, 0) / seeds;
+      const mean = shares.reduce((sum, share) => sum + share, 0) / shares.length;
       expect(mean).toBeLessThan(efficiencyWanted);
     });
   });

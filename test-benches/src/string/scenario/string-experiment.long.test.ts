@@ -2,7 +2,7 @@ import { expect, it } from 'vitest';
 import { rampTests, rampTestS } from '../irradiance.js';
 import { describeStringExperiments, efficiencyOf, run, withSeek } from './string-experiment.fixture.js';
 
-describeStringExperiments(20);
+describeStringExperiments(20, 20);
 
 it('gives 99 % over all ramps of EN 50530 from 300 to 1000 W/m²', { timeout: 600_000 }, () => {
   const afterS = rampTestS(rampTests['medium-to-high']);
