@@ -9,7 +9,7 @@ export const telemetrySchema = z.object({
   runId: z.string().nullable(),
   sequence: z.int(),
   /**
-   * Names of the values in each row: the channels, and `<actuator>.applied` for each actuator (null where it is
+   * Names of the values in each row: the channels but the traces, and `<actuator>.applied` for each actuator (null where it is
    * not written); all run columns while a run is going on.
    */
   columns: z.array(z.string()),

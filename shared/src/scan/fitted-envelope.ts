@@ -53,10 +53,7 @@ function interlockConditions({ interlocks }: EnvelopeContent, rig: Rig): Interlo
       const text = interlock[field];
       return text === null ? [] : [{ field: `interlocks[${index}].${field}`, text, isCondition: true }];
     });
-  const compiled = compileAll(
-    [...asked('condition'), ...asked('clearCondition')],
-    channelSymbols(rig),
-  );
+  const compiled = compileAll([...asked('condition'), ...asked('clearCondition')], channelSymbols(rig));
   const clearing = compiled.splice(interlocks.length);
   return compiled.map((condition, index) => {
     const hasClearing = typeof interlocks[index]?.clearCondition === 'string';
