@@ -1,13 +1,16 @@
 import { SerialPort } from 'serialport';
 import { type PtyPair, startPtyPair } from '../../modbus/testing/pty-pair.js';
 
+/** Frames that are kept: a test of leaks must not find those of the test itself. */
+const mostKept = 50;
+
 /** What the devices on the line send, in reply to one frame. */
 export type Respond = (frame: Buffer, send: (bytes: Uint8Array) => void) => void;
 
 export interface ScriptedLine {
   /** Path of the end that the adapter opens. */
   readonly path: string;
-  /** Every frame that went out, with its checksum. */
+  /** The last frames that went out, with their checksum. */
   readonly requests: Buffer[];
   respond: Respond;
   /** Pulls the plug. */
@@ -64,7 +67,8 @@ export async function startScriptedLine(respond: Respond = () => undefined): Pro
     ) {
       const frame = rest.subarray(0, length);
       rest = rest.subarray(length);
-      requests.push(frame);
+      requests.push(Buffer.from(frame));
+      if (requests.length > mostKept) requests.shift();
       line.respond(frame, send);
     }
   });
