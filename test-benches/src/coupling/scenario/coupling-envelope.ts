@@ -15,7 +15,9 @@ const drive = (channel: string): EnvelopeInput['limits'][number] => ({
   whenFoundOutside: 'slew-in',
 });
 
-/** What holds for Coupling 1. */
+/**
+ * What holds for Coupling 1. A reading that does not come counts as violated: no interlock acts on one missed answer.
+ */
 export const couplingEnvelope: EnvelopeInput = {
   limits: [drive('driveX'), drive('driveY')],
   interlocks: [
@@ -23,7 +25,7 @@ export const couplingEnvelope: EnvelopeInput = {
       id: 'shutter-closed',
       title: 'Shutter closed',
       condition: 'shutterOpen < 0.5',
-      delayS: 0.3,
+      delayS: 1.5,
       action: 'trip',
       message: 'The shutter has closed: there is no light to couple. Find out why before the reset.',
     },
@@ -31,7 +33,7 @@ export const couplingEnvelope: EnvelopeInput = {
       id: 'mount-watchdog',
       title: 'Watchdog of the mount',
       condition: 'watchdogFlag > 0.5',
-      delayS: 0.3,
+      delayS: 1.5,
       action: 'trip',
       message: 'The mount missed the heartbeat, closed its shutter and went to rest by itself.',
     },
@@ -39,7 +41,7 @@ export const couplingEnvelope: EnvelopeInput = {
       id: 'too-bright',
       title: 'Too much light',
       condition: 'powerDbm > 4',
-      delayS: 0.2,
+      delayS: 1.5,
       action: 'trip',
       message: 'More light comes through than the laser is set to: check the attenuator.',
     },
@@ -52,7 +54,7 @@ export const couplingEnvelope: EnvelopeInput = {
       message: 'The mount is warmer than 35 °C: the alignment would not hold.',
     },
   ],
-  staleness: [{ channel: 'powerDbm', afterS: 1 }],
+  staleness: [{ channel: 'powerDbm', afterS: 2.5 }],
   heartbeat: { channel: 'heartbeat', periodS: 0.25 },
   overrunLimit: 20,
   serverSilenceS: 2,

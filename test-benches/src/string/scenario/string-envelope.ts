@@ -1,6 +1,9 @@
 import type { EnvelopeInput } from '../../kit/scenario-input.js';
 
-/** What holds for String 1. */
+/**
+ * What holds for String 1. A reading that does not come counts as violated, and one missed reply costs the serial
+ * line up to a second: no interlock acts within that.
+ */
 export const stringEnvelope: EnvelopeInput = {
   limits: [
     {
@@ -24,7 +27,7 @@ export const stringEnvelope: EnvelopeInput = {
       id: 'converter-off',
       title: 'Converter off',
       condition: 'running < 0.5',
-      delayS: 0.3,
+      delayS: 1.5,
       action: 'trip',
       message: 'The converter has let go of the string. Find out why before the reset.',
     },
@@ -32,7 +35,7 @@ export const stringEnvelope: EnvelopeInput = {
       id: 'converter-watchdog',
       title: 'Watchdog of the converter',
       condition: 'watchdogFlag > 0.5',
-      delayS: 0.3,
+      delayS: 1.5,
       action: 'trip',
       message: 'The converter missed the heartbeat and let go of the string by itself.',
     },
@@ -40,7 +43,7 @@ export const stringEnvelope: EnvelopeInput = {
       id: 'over-current',
       title: 'Over-current',
       condition: 'current > 9.5',
-      delayS: 0.2,
+      delayS: 1.5,
       action: 'trip',
       message: 'More current than the modules can give: a short circuit, or another string feeds in.',
     },
@@ -48,7 +51,7 @@ export const stringEnvelope: EnvelopeInput = {
       id: 'over-voltage',
       title: 'Over-voltage',
       condition: 'voltage > 215',
-      delayS: 0.2,
+      delayS: 1.5,
       action: 'trip',
       message: 'More voltage than the modules have: the string is not wired as it should be.',
     },
@@ -62,9 +65,9 @@ export const stringEnvelope: EnvelopeInput = {
     },
   ],
   staleness: [
-    { channel: 'voltage', afterS: 1 },
-    { channel: 'current', afterS: 1 },
-    { channel: 'power', afterS: 1 },
+    { channel: 'voltage', afterS: 2.5 },
+    { channel: 'current', afterS: 2.5 },
+    { channel: 'power', afterS: 2.5 },
   ],
   heartbeat: { channel: 'heartbeat', periodS: 0.25 },
   overrunLimit: 20,

@@ -26,7 +26,7 @@ export function stringRig({ path }: LinePlace): RigInput {
         id: 'converter',
         title: 'Converter of the string',
         adapter: 'serial-text',
-        configuration: { path, profile: 'scpi-meter', baudRate: 115_200 },
+        configuration: { path, profile: 'scpi-meter', baudRate: 115_200, replyTimeoutMs: 400, resyncMs: 200 },
       },
     ],
     channels,
