@@ -306,7 +306,7 @@ async function fillSurvey(page: Page, node: Node): Promise<void> {
   await fill(page, 'From', '16');
   await fill(page, 'To', '60');
   await fill(page, 'Points', '6');
-  await fill(page, 'Settle at each for', '1');
+  await fill(page, 'Settle for', '1');
   await fill(page, 'Then average for', '0.5');
 }
 
@@ -329,7 +329,7 @@ async function fillSeek(page: Page, node: Node): Promise<void> {
     'Dither period': '2.5',
     Gain: '6',
     'Demodulation lag': '10',
-    'Low-pass corner': '0.5',
+    'Low-pass': '0.5',
     'Ends after': '600',
   };
   for (const [label, value] of Object.entries(values)) await fill(page, label, value);

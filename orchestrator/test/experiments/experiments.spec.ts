@@ -51,6 +51,35 @@ describe('experiments', () => {
     );
   });
 
+  it('of an earlier release open in the form of today, and can be built upon', async () => {
+    const { id } = (await create()).body;
+    const { graph, ...rest } = experimentInput();
+    const seek = {
+      ...{ kind: 'seek', id: 'seek', title: '', position: { x: 0, y: 0 } },
+      parameters: {
+        ...{ actuator: 'airTrim', law: 'gradient', ditherAmplitude: 1, ditherPeriodS: 5, washoutRatio: 0.3 },
+        ...{ lowPassRatio: 0.3, gain: 2, phaseDeg: 0, min: null, max: null, invalidForS: 30 },
+        end: { afterS: 300, whenConverged: null, when: null },
+      },
+    };
+    const stored = JSON.stringify({ ...rest, graph: { ...graph, steps: [...graph.steps, seek] } });
+    const database = server.app.get(DataSource);
+    await database.query(
+      `INSERT INTO experiment_version (experimentId, version, basedOn, note, createdAt, createdBy, content)
+       VALUES (?, 2, 1, '', ?, 'engineer', ?)`,
+      [id, new Date().toISOString(), stored],
+    );
+    await database.query('UPDATE experiment SET latestVersion = 2 WHERE id = ?', [id]);
+    const opened = await engineer.get(`${experiments}/${id}/versions/2`).expect(200);
+    const [step] = opened.body.content.graph.steps.slice(-1);
+    expect(step.parameters).toMatchObject({
+      law: { id: 'gradient', parameters: { washoutRatio: 0.3, lowPassRatio: 0.3, taper: null } },
+      actuators: [{ channel: 'airTrim', amplitude: 1, periodS: 5, gain: 2, dither: 'sine' }],
+    });
+    const next = { basedOn: 2, note: '', content: opened.body.content };
+    await engineer.post(`${experiments}/${id}/versions`).send(next).expect(201);
+  });
+
   it('let one of many versions on the same base through', async () => {
     const { id } = (await create()).body;
     const answers = await Promise.all(['a', 'b', 'c', 'd'].map((title) => addVersion(id, 1, title)));

@@ -154,7 +154,9 @@ describe('a form drawn from a schema', () => {
   it('cannot be changed where it is only to be read', () => {
     renderForm({ host: 'rig', units: [{ unit: 1 }] }, [], true);
     // A field of several lines measures itself in a hidden one.
-    const open = screen.getAllByRole<HTMLInputElement>('textbox').filter((input) => !input.disabled && input.getAttribute('aria-hidden') === null);
+    const open = screen
+      .getAllByRole<HTMLInputElement>('textbox')
+      .filter((input) => !input.disabled && input.getAttribute('aria-hidden') === null);
     expect(open.map((input) => input.outerHTML)).toEqual([]);
     expect(screen.queryAllByRole('button')).toEqual([]);
   });

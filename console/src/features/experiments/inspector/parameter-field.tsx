@@ -65,7 +65,8 @@ function useParameterText(props: ParameterFieldProps) {
 function unitOf({ field, step, channels }: ParameterFieldProps): string {
   if (typeof field.unit !== 'object') return field.unit ?? '';
   const id = valueAt(step.parameters, field.unit.of);
-  return channels.find((channel) => channel.id === id)?.unit ?? '';
+  const unit = channels.find((channel) => channel.id === id)?.unit ?? '';
+  return field.unit.per === undefined ? unit : `${unit} / ${field.unit.per}`.trim();
 }
 
 const onEnter = (commit: () => void) => (event: { key: string }) => {

@@ -1,11 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import {
-  experimentGraphSchema,
-  preflight,
-  seekingLawIds,
-  stepSchema,
-  type StepOf,
-} from '@cresthold/shared';
+import { experimentGraphSchema, preflight, seekingLawIds, stepSchema, type StepOf } from '@cresthold/shared';
 import { newSeekActuator } from '../graph/new-step.js';
 import { fieldName, valueAt } from '../graph/parameter-path.js';
 import { canPlanDithers, fitted, withLaw, withPlannedDithers } from '../graph/seek-edits.js';

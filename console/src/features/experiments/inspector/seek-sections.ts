@@ -43,6 +43,7 @@ function fieldsOfLaw(
 
 function unitAndHelp({ unit, help }: LawField, actuator: ParameterPath): Pick<StepField, 'unit' | 'help'> {
   if (unit === 'actuator unit') return { unit: { of: actuator }, help };
+  if (unit === 'actuator unit / s') return { unit: { of: actuator, per: 's' }, help };
   if (unit.length <= unitLengthMax) return { unit, help };
   return { help: `${help} In ${unit.startsWith('of ') ? `shares ${unit}` : unit}.` };
 }

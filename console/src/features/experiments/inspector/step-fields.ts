@@ -21,8 +21,8 @@ export interface StepField {
     | 'optional-expression';
   path: ParameterPath;
   label: string;
-  /** A unit, or where the channel stands whose unit it is. */
-  unit?: string | { of: ParameterPath };
+  /** A unit, or where the channel stands whose unit it is, with what it is divided by. */
+  unit?: string | { of: ParameterPath; per?: string };
   help?: string;
   whenOn?: unknown;
   /** Of a choice. */
