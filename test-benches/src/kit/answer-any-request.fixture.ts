@@ -22,7 +22,7 @@ export function answerAnyRequest<M extends BenchModel>(
   if (wire.kind === 'serial-text') throw new Error('A bench with commands has no registers.');
   const word = fc.integer({ min: 0, max: 0xffff });
   const requests = fc.record({
-    unit: fc.constantFrom(1, 2, 247),
+    unit: fc.constantFrom(wire.registers.unit ?? 1, 2, 247),
     code: fc.constantFrom(1, 2, 3, 4, 5, 6, 15, 16, 22, 23, 43, 0),
     address: fc.oneof(fc.integer({ min: 0, max: 120 }), word),
     words: fc.array(word, { minLength: 0, maxLength: 8 }),
