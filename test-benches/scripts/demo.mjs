@@ -1,8 +1,9 @@
-// `npm run demo`: prepares the checkout, then runs burner bench and server with the demo scenario, and has a
-// seeking run going. Ctrl-C ends all of it, in order.
+// `npm run demo`: prepares the checkout, then runs all benches and the server with the demo scenario, and has a
+// seeking run on the burner going. Ctrl-C ends all of it, in order.
 import { createWriteStream } from 'node:fs';
 import { join } from 'node:path';
 import { untilHealthy } from './demo/api.mjs';
+import { startable } from './demo/benches.mjs';
 import { endProgram, messageOf, startProgram } from './demo/children.mjs';
 import { foundInstallation, makeInstallation, putAside } from './demo/installation.mjs';
 import { demoOptions } from './demo/options.mjs';
@@ -15,14 +16,14 @@ const serverEndMs = 35_000;
 const benchEndMs = 5_000;
 
 const options = demoOptions(root);
-const programs = { server: null, bench: null };
+const programs = { server: null, benches: [] };
 let isEnding = false;
 
 async function end(code) {
   if (isEnding) return;
   isEnding = true;
   if (programs.server) await endProgram(programs.server, serverEndMs);
-  if (programs.bench) await endProgram(programs.bench, benchEndMs);
+  await Promise.all(programs.benches.map((bench) => endProgram(bench, benchEndMs)));
   process.exit(code);
 }
 
@@ -42,13 +43,31 @@ function watch(program, logFile) {
   });
 }
 
-async function startBench(port) {
+async function startBurner(port) {
   await requireFreePort(port, 'burner bench', '--bench-port');
   const args = ['--port', String(port), ...(options.benchLog ? ['--log', options.benchLog] : [])];
-  const log = logTo('bench.log');
-  programs.bench = startProgram('burner bench', join(root, 'test-benches/dist/burner/main.js'), args, log);
-  await messageOf(programs.bench, 10_000);
-  watch(programs.bench, log.file);
+  const { bench, log } = await startBench('burner', args, 'bench.log');
+  watch(bench, log.file);
+}
+
+async function startBench(name, args, logName = `${name}.log`) {
+  const log = logTo(logName);
+  const bench = startProgram(`${name} bench`, join(root, `test-benches/dist/${name}/main.js`), args, log);
+  programs.benches.push(bench);
+  await messageOf(bench, 10_000);
+  return { bench, log };
+}
+
+/** Starts the benches beside the burner; one that does not start is said and left out. @returns lines */
+async function startOtherBenches(places) {
+  const { started, lines } = await startable(root, places);
+  const starting = started.map(({ name, args }) =>
+    startBench(name, args).then(
+      () => [],
+      (error) => [`The ${name} bench is left out. ${error.message}`],
+    ),
+  );
+  return [...lines, ...(await Promise.all(starting)).flat()];
 }
 
 async function startServer(base) {
@@ -100,7 +119,10 @@ async function main() {
   if (!options.isAsBuilt) await prepare();
   await requireFreePort(options.port, 'server', '--port');
   const { installation, lines } = await openInstallation();
-  await startBench(installation.benchPort);
+  const [benchLines] = await Promise.all([
+    startOtherBenches(installation.benches ?? {}),
+    startBurner(installation.benchPort),
+  ]);
   const base = `http://127.0.0.1:${options.port}`;
   await startServer(base);
   // What keeps the run from starting is no reason to end the server: people can clear it on the screens.
@@ -114,7 +136,8 @@ async function main() {
       `Cresthold is at ${base}`,
       started,
       ...lines,
-      'The burner is simulated. The stop on the screens is a software stop and no safety function: a real rig',
+      ...benchLines,
+      'All rigs are simulated. The stop on the screens is a software stop and no safety function: a real rig',
       'needs its own hard-wired emergency stop.',
       'Ctrl-C ends all of it.',
     ].join('\n'),

@@ -4,6 +4,7 @@ import { existsSync, mkdirSync, mkdtempSync, readFileSync, renameSync, rmSync, w
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { promisify } from 'node:util';
+import { choosePlaces } from './benches.mjs';
 
 const run = promisify(execFile);
 
@@ -36,10 +37,12 @@ export function putAside(data) {
 export async function makeInstallation(root, data, benchPort) {
   mkdirSync(data, { recursive: true });
   const printer = join(root, 'test-benches/dist/demo/print-scenario.js');
-  const { stdout } = await run(process.execPath, [printer, '--bench-port', String(benchPort)]);
+  const benches = await choosePlaces(root, data, benchPort);
+  const further = Object.entries(benches).flatMap(([name, place]) => ['--bench', `${name}=${place}`]);
+  const { stdout } = await run(process.execPath, [printer, '--bench-port', String(benchPort), ...further]);
   const { users, start } = await loadScenario(root, data, stdout);
   const { password } = users.find(({ account }) => account === start.by);
-  const installation = { benchPort, ...start, password };
+  const installation = { benchPort, benches, ...start, password };
   writeFileSync(join(data, noteName), `${JSON.stringify(installation, null, 2)}\n`, { mode: 0o600 });
   return { users, installation };
 }

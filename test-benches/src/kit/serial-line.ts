@@ -1,5 +1,5 @@
 import { spawn } from 'node:child_process';
-import { closeSync, constants, existsSync, openSync } from 'node:fs';
+import { closeSync, constants, existsSync, lstatSync, openSync, unlinkSync } from 'node:fs';
 import { once } from 'node:events';
 import { setTimeout as wait } from 'node:timers/promises';
 import { SerialPort } from 'serialport';
@@ -45,8 +45,14 @@ async function openPort({ serial, baud, parity, stopBits }: LineSettings): Promi
 /** How long socat may take to make the link, ms. */
 const linkWithinMs = 5000;
 
+/** A bench that was killed leaves its link behind, which may by now lead to somebody else's terminal. */
+function removeStaleLink(path: string): void {
+  if (lstatSync(path, { throwIfNoEntry: false })?.isSymbolicLink()) unlinkSync(path);
+}
+
 /** socat holds one side of a pair of pseudo-terminals and hands its bytes on; the other side is at `path`. */
 async function openPseudoTerminal(path: string): Promise<SerialLine> {
+  removeStaleLink(path);
   const child = spawn('socat', [`pty,rawer,link=${path}`, 'stdio'], { stdio: ['pipe', 'pipe', 'ignore'] });
   const ended = new Promise<string>((told) => {
     child.once('error', () => told('socat could not be started: install the package "socat"'));
@@ -55,6 +61,7 @@ async function openPseudoTerminal(path: string): Promise<SerialLine> {
   const until = Date.now() + linkWithinMs;
   let failure: string | null = null;
   void ended.then((why) => (failure = why));
+  // What stands at `path` and is no link is left alone: socat says so.
   while (!existsSync(path) && failure === null && Date.now() < until) await wait(5);
   if (failure !== null || !existsSync(path)) {
     child.kill();

@@ -63,10 +63,13 @@ export function describeBurnerExperiment(seeds: number, temptedSeeds: number): v
       expect(Math.max(...losses)).toBeLessThan(lossAllowed);
     });
 
-    it('goes over the CO cliff by oxygen alone, where only the interlock stops it', () => {
+    it('goes over the CO cliff by oxygen alone, as far as interlock and box let it', () => {
       for (const seed of all.slice(0, temptedSeeds)) {
         const course = run(seed, byOxygenAlone());
-        expect(course.trip).toBe('interlock:co-high');
+        const worst = Math.max(...course.moments.map(({ loss }) => loss ?? 0));
+        expect(worst).toBeGreaterThan(10 * lossAllowed);
+        expect([null, 'interlock:co-high']).toContain(course.trip);
+        if (course.trip === null) expect(meanLossAtEnd(course, 'seek', 24)).toBeGreaterThan(5 * lossAllowed);
         expect(course.writesOutside).toBe(0);
       }
     });

@@ -30,7 +30,8 @@ export const matcherObjective: ObjectiveInput = {
  * - Periods 1 s and 0.62 s, ω = 6.3 and 10.1 rad/s, sixteen and more times the rate. Phase: what sensors and one
  *   scan lag, less what the washout leads.
  * - Rate 0.35 1/s. The match drifts by 0.06 % of shunt travel per s at most: the estimate trails by 0.2 % along the
- *   valley. The inverse of the Hessian follows as quickly, since the coupling is learnt on the way.
+ *   valley. The Hessian and its inverse follow as
+ *   quickly, since the coupling is learnt on the way: where they were slow, some runs stuck beside the valley.
  */
 export const matcherSeeking = {
   law: {
@@ -40,7 +41,7 @@ export const matcherSeeking = {
       inverseRate: 0.4,
       washoutRatio: 0.3,
       lowPassRatio: 0.2,
-      hessianRatio: 0.1,
+      hessianRatio: 0.3,
       lag: { timeConstantS: 0.02, deadTimeS: 0 },
     },
   },

@@ -72,7 +72,8 @@ const derived: ChannelInput[] = [
   energyChannel(
     'mainEnergy',
     'Energy of the main pulse',
-    'area(pulse, peakAt(pulse) - weight(200), peakAt(pulse) + weight(200)) * weight(0.001)',
+    // Where there is no pulse the peak is one of noise, which may stand at an end of the axis.
+    'area(pulse, max(peakAt(pulse) - weight(200), weight(10)), min(peakAt(pulse) + weight(200), weight(5120))) * weight(0.001)',
   ),
   energyChannel('besideEnergy', 'Energy beside it', 'area(pulse) * weight(0.001) - mainEnergy'),
   energyChannel('cleanEnergy', 'Clean energy', 'mainEnergy - besideEnergy'),
