@@ -238,3 +238,14 @@ describe('keepConnected', () => {
     expect(bench.states).toEqual(['opening', 'closed']);
   });
 });
+
+it('passes probes and traces of the session on', async () => {
+  const bench = startBench();
+  bench.store.setTrace('t', Float64Array.of(1, 2));
+  await expect.poll(() => bench.sessions.length, patient).toBe(1);
+  const session = newest(bench);
+  expect(await session.probe?.(address)).toMatchObject({ value: 1, fault: null });
+  const trace = inMemoryAdapter.manifest.addressSchema.parse({ name: 't', points: 2 });
+  expect((await session.read(session.planRead([trace]))).traces?.[0]).toEqual(Float64Array.of(1, 2));
+  await bench.link.close();
+});

@@ -77,6 +77,10 @@ export function describeInjectedFaults(setting: () => FaultSetting): void {
     ]);
     expect(connectionOf((await put(null)).body).injectedFault).toBeNull();
     await until('the channel is back', async () => (await status()).channelFaults.length === 0);
+    const audit = await setting().administrator.get('audit?rigId=bench');
+    const acts = (audit.items as Body[]).map(({ action, account, subject }) => [action, account, subject]);
+    expect(acts).toContainEqual(['rig.fault-injected', 'engineer', 'bath']);
+    expect(acts).toContainEqual(['rig.fault-cleared', 'engineer', 'bath']);
   }, 30_000);
 
   it('ends with the rig host', async () => {
