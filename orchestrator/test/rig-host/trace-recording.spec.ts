@@ -15,7 +15,19 @@ import { traceEnvelope, traceRig } from './trace-rig.js';
 const workerFile = pathToFileURL(resolve(__dirname, '../../dist/rig-host/recorder-worker.js'));
 const end = { status: 'finished', verdict: 'pass', reason: 'Done.', results: {} } as const;
 const folder = temporaryFolder();
-afterAll(folder.remove);
+const recorders: Recorder[] = [];
+afterAll(async () => {
+  await Promise.all(recorders.map((recorder) => recorder.close()));
+  folder.remove();
+});
+
+/** A recorder whose thread has loaded, however busy the machine is; closed after the tests. */
+async function opened(onFailure: (message: string) => void): Promise<Recorder> {
+  const recorder = new Recorder(onFailure, workerFile);
+  recorders.push(recorder);
+  await recorder.ready;
+  return recorder;
+}
 
 const rig = traceRig('trace-recording');
 const manifest = { ...testManifest(), rig, columns: runColumns(rig, '', []) };
@@ -53,7 +65,7 @@ describe('the recorder', () => {
   it('keeps every trace bit for bit, of any length, through buffers that grow and are used again', async () => {
     const file = join(folder.path, 'bits.sqlite');
     const failures: string[] = [];
-    const recorder = new Recorder((message) => failures.push(message), workerFile);
+    const recorder = await opened((message) => failures.push(message));
     await recorder.prepare(file);
     recorder.begin(manifest, 0.001);
     const next = noise(7);
@@ -68,7 +80,6 @@ describe('the recorder', () => {
       recorder.append(k, k / 1000, k, '', row);
     }
     await recorder.end(end);
-    await recorder.close();
     expect(failures).toEqual([]);
     const rows = rowsOf(file);
     expect(rows.map(({ k, channel }) => [k, channel])).toEqual(expected.map(([k]) => [k, 'beam']));
@@ -101,7 +112,7 @@ describe('a run of a rig with a trace', () => {
       () => undefined,
       fail,
     );
-    const recorder = new Recorder(fail, workerFile);
+    const recorder = await opened(fail);
     const recording = new RunRecording(recorder, rig, [], {
       send: (message) => sent.push(message),
       onRunBegun: () => undefined,
@@ -145,7 +156,6 @@ describe('a run of a rig with a trace', () => {
     recording.interrupt('Enough.', null);
     await recording.closed();
     await wire.close();
-    await recorder.close();
 
     const rows = rowsOf(file);
     expect(rows.map(({ k }) => k)).toEqual([...expected.keys()]);
