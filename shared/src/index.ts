@@ -58,6 +58,7 @@ export * from './identification/survey-curve.js';
 export * from './identification/survey-map.types.js';
 export * from './identification/survey-surface.js';
 export * from './identification/two-point-step-response.js';
+export * from './live/channel-probe.schema.js';
 export * from './live/host-message.schema.js';
 export * from './live/live-message.schema.js';
 export * from './live/live-trace.schema.js';

@@ -408,6 +408,23 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/v1/rigs/scan-budget": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Judges a draft of a rig, finished or not: what its scan would cost, and its faults; saves nothing. */
+        post: operations["rigs_scanBudget"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/v1/setup": {
         parameters: {
             query?: never;
@@ -608,6 +625,26 @@ export interface paths {
         /** Puts a fault on a connection of a bench, or takes it off; refused for any other rig. */
         put: operations["rigCommands_setFault"];
         post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/channels/{channel}/probe": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /**
+         * Tests one channel on its wire; writes nothing.
+         * @description By the wiring that is saved. The device is asked while the rig is at rest; else the answer is what the scan read last.
+         */
+        post: operations["channelProbes_probe"];
         delete?: never;
         options?: never;
         head?: never;
@@ -1509,6 +1546,14 @@ export interface components {
                                     expression: string;
                                 };
                                 /**
+                                 * Cross curvatures
+                                 * @description First guess of the second derivatives between two actuators, sign turned, from a survey: one row for each actuator but the first, with those before it. Empty where nothing is known.
+                                 * @default []
+                                 */
+                                crossCurvatures?: number[][] | {
+                                    expression: string;
+                                };
+                                /**
                                  * Rate of the inverse Hessian
                                  * @description How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.
                                  */
@@ -1530,37 +1575,6 @@ export interface components {
                                  */
                                 lowPassRatio?: number | {
                                     expression: string;
-                                };
-                                /**
-                                 * Low-pass of the Hessian
-                                 * @description Corner of the filter that takes the ripple off the second derivatives.
-                                 * @default 0.05
-                                 */
-                                hessianRatio?: number | {
-                                    expression: string;
-                                };
-                                /**
-                                 * Lag of the plant
-                                 * @description The second derivatives show at other frequencies than the dither; this makes up for the lag there.
-                                 * @default {}
-                                 */
-                                lag?: {
-                                    /**
-                                     * Time constant
-                                     * @description From Identify.
-                                     * @default 0
-                                     */
-                                    timeConstantS?: number | {
-                                        expression: string;
-                                    };
-                                    /**
-                                     * Dead time
-                                     * @description From Identify.
-                                     * @default 0
-                                     */
-                                    deadTimeS?: number | {
-                                        expression: string;
-                                    };
                                 };
                                 /**
                                  * Taper
@@ -1593,6 +1607,37 @@ export interface components {
                                         expression: string;
                                     };
                                 } | null;
+                                /**
+                                 * Low-pass of the Hessian
+                                 * @description Corner of the filter that takes the ripple off the second derivatives.
+                                 * @default 0.05
+                                 */
+                                hessianRatio?: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Lag of the plant
+                                 * @description The second derivatives show at other frequencies than the dither; this makes up for the lag there.
+                                 * @default {}
+                                 */
+                                lag?: {
+                                    /**
+                                     * Time constant
+                                     * @description From Identify.
+                                     * @default 0
+                                     */
+                                    timeConstantS?: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Dead time
+                                     * @description From Identify.
+                                     * @default 0
+                                     */
+                                    deadTimeS?: number | {
+                                        expression: string;
+                                    };
+                                };
                             };
                         } | {
                             /** @enum {string} */
@@ -2339,6 +2384,13 @@ export interface components {
                                     expression: string;
                                 };
                                 /**
+                                 * Cross curvatures
+                                 * @description First guess of the second derivatives between two actuators, sign turned, from a survey: one row for each actuator but the first, with those before it. Empty where nothing is known.
+                                 */
+                                crossCurvatures: number[][] | {
+                                    expression: string;
+                                };
+                                /**
                                  * Rate of the inverse Hessian
                                  * @description How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.
                                  */
@@ -2358,33 +2410,6 @@ export interface components {
                                  */
                                 lowPassRatio: number | {
                                     expression: string;
-                                };
-                                /**
-                                 * Low-pass of the Hessian
-                                 * @description Corner of the filter that takes the ripple off the second derivatives.
-                                 */
-                                hessianRatio: number | {
-                                    expression: string;
-                                };
-                                /**
-                                 * Lag of the plant
-                                 * @description The second derivatives show at other frequencies than the dither; this makes up for the lag there.
-                                 */
-                                lag: {
-                                    /**
-                                     * Time constant
-                                     * @description From Identify.
-                                     */
-                                    timeConstantS: number | {
-                                        expression: string;
-                                    };
-                                    /**
-                                     * Dead time
-                                     * @description From Identify.
-                                     */
-                                    deadTimeS: number | {
-                                        expression: string;
-                                    };
                                 };
                                 /**
                                  * Taper
@@ -2413,6 +2438,33 @@ export interface components {
                                         expression: string;
                                     };
                                 } | null;
+                                /**
+                                 * Low-pass of the Hessian
+                                 * @description Corner of the filter that takes the ripple off the second derivatives.
+                                 */
+                                hessianRatio: number | {
+                                    expression: string;
+                                };
+                                /**
+                                 * Lag of the plant
+                                 * @description The second derivatives show at other frequencies than the dither; this makes up for the lag there.
+                                 */
+                                lag: {
+                                    /**
+                                     * Time constant
+                                     * @description From Identify.
+                                     */
+                                    timeConstantS: number | {
+                                        expression: string;
+                                    };
+                                    /**
+                                     * Dead time
+                                     * @description From Identify.
+                                     */
+                                    deadTimeS: number | {
+                                        expression: string;
+                                    };
+                                };
                             };
                         } | {
                             /** @enum {string} */
@@ -3572,6 +3624,27 @@ export interface components {
                 expression: string;
             })[];
         };
+        RigDraft: {
+            [key: string]: unknown;
+        };
+        ScanBudget: {
+            faults: {
+                field: string;
+                message: string;
+            }[];
+            connections: {
+                id: string;
+                channels: number;
+                leftOut: number;
+                requests: number | null;
+                wireS: number | null;
+                note: string | null;
+            }[];
+            requests: number;
+            wireS: number | null;
+            periodMs: number | null;
+            shareOfPeriod: number | null;
+        };
         SetupState: {
             isNeeded: boolean;
         };
@@ -4019,6 +4092,31 @@ export interface components {
                  */
                 channels: string[] | null;
             }) | null;
+        };
+        ChannelProbe: {
+            channel: string;
+            at: string;
+            /** @enum {string} */
+            source: "wire" | "scan";
+            note: string | null;
+            raw: string | null;
+            value: number | null;
+            calibrated: number | null;
+            calibration: {
+                id: string;
+                version: number;
+            } | null;
+            trace: {
+                count: number;
+                points: number[];
+            } | null;
+            ageS: number | null;
+            /** @enum {string} */
+            quality: "good" | "stale" | "bad" | "missing";
+            fault: {
+                code: string;
+                message: string;
+            } | null;
         };
         RunPage: {
             items: components["schemas"]["Run"][];
@@ -6344,6 +6442,56 @@ export interface operations {
             };
         };
     };
+    rigs_scanBudget: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["RigDraft"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ScanBudget"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
     setup_state: {
         parameters: {
             query?: never;
@@ -6983,6 +7131,55 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    channelProbes_probe: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                channel: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ChannelProbe"];
                 };
             };
             /** @description Not signed in. */

@@ -4,6 +4,7 @@ import {
   type AdapterSession,
   type KeptConnection,
   type LinkStatus,
+  type ProbeOutcome,
   type ReadOutcome,
   type ReadPlan,
   type WriteOutcome,
@@ -18,6 +19,7 @@ import {
   type WiredChannel,
 } from '@cresthold/shared';
 import type { Gathering } from './gathering.js';
+import { monotonicS } from './monotonic-clock.js';
 import { PendingWrites } from './pending-writes.js';
 
 export interface LineChannel {
@@ -83,6 +85,9 @@ export class Line {
   private hasBeenRead = false;
   private startedInRound = 0;
   private readonly writes: PendingWrites;
+  /** Last good values as the adapter gave them, and when they came, s; NaN before the first. */
+  private readonly givenValues: Float64Array;
+  private readonly givenAtS: Float64Array;
   /** What the last read said of each channel. */
   private readonly faults: (DomainError | null)[];
 
@@ -96,6 +101,8 @@ export class Line {
     private readonly owner: LineOwner,
   ) {
     this.faults = channels.map(() => null);
+    this.givenValues = new Float64Array(channels.length).fill(NaN);
+    this.givenAtS = new Float64Array(channels.length).fill(NaN);
     this.writes = new PendingWrites(new Map(channels.map((c) => [c.index, c.address])));
     this.firstAttempt = new Promise((resolve) => (this.settleFirst = resolve));
   }
@@ -121,6 +128,28 @@ export class Line {
 
   get isConnected(): boolean {
     return this.session !== null;
+  }
+
+  /** Whether one address can be tried by itself now. */
+  get canProbe(): boolean {
+    return this.session?.probe !== undefined;
+  }
+
+  /** Tries the address of a channel by itself, between two scans; null where that cannot be done now. */
+  async probe(channelIndex: number): Promise<ProbeOutcome | null> {
+    const wired = this.channels.find(({ index }) => index === channelIndex);
+    if (wired === undefined) return null;
+    return (await this.session?.probe?.(wired.address)) ?? null;
+  }
+
+  /** What the scan last got of a channel: value as the adapter gave it, its age in s, and the last fault. */
+  lastReading(channelIndex: number): { value: number; ageS: number; fault: DomainError | null } {
+    const at = this.channels.findIndex(({ index }) => index === channelIndex);
+    return {
+      value: this.givenValues[at] ?? NaN,
+      ageS: monotonicS() - (this.givenAtS[at] ?? NaN),
+      fault: this.session === null ? this.error : (this.faults[at] ?? null),
+    };
   }
 
   /** Channels that the last read did not bring although the line is up. */
@@ -243,6 +272,8 @@ export class Line {
   private put({ channel, index }: LineChannel, at: number, { values, traces }: ReadOutcome): void {
     if (channel.kind === 'trace') this.readings.setTrace(index, traces?.[at] ?? noPoints);
     else this.readings.set(index, values[at] ?? NaN, Quality.good);
+    this.givenValues[at] = values[at] ?? NaN;
+    this.givenAtS[at] = monotonicS();
   }
 
   private qualityOf(fault: DomainError): Quality {

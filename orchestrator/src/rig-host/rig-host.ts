@@ -73,15 +73,19 @@ export class RigHost {
     this.ending ??= this.endInOrder('A fault of the rig host.', exitCodes.bug, restAfterFaultMs);
   }
 
-  private async take(command: HostCommand): Promise<void> {
+  /** @returns what the command was to find out; undefined where it found nothing */
+  private async take(command: HostCommand): Promise<unknown> {
     if (command.type === 'shut-down') return void this.shutDown('The server ends.');
     if (command.type === 'configure') return this.configure(command);
     const { session } = this;
     if (session === null) {
       throw new DomainError('host.unavailable', 'The rig host has not been configured yet.');
     }
+    // Nothing changes by a test: no scan is hurried for it.
+    if (command.type === 'probe') return session.prober.probe(command.channel);
     await obey(session, command);
     session.touch();
+    return undefined;
   }
 
   private async configure(command: Extract<HostCommand, { type: 'configure' }>): Promise<void> {
@@ -137,7 +141,7 @@ export class RigHost {
   }
 }
 
-type SessionCommand = Exclude<HostCommand, { type: 'configure' | 'shut-down' }>;
+type SessionCommand = Exclude<HostCommand, { type: 'configure' | 'probe' | 'shut-down' }>;
 
 async function obey(session: RigSession, command: SessionCommand): Promise<void> {
   const { engine } = session;

@@ -12,6 +12,7 @@ import {
   type ValueGrid,
   type WireFault,
 } from '@cresthold/shared';
+import { ChannelProber } from './channel-prober.js';
 import { PeriodPacer } from './pacer.js';
 import { Publisher } from './publisher.js';
 import type { Recorder } from './recorder.js';
@@ -29,6 +30,8 @@ const openBoundMs = 2000;
 /** One configured rig: its engine, wire, loop and run, from `configure` to the end. */
 export class RigSession {
   readonly engine: ScanEngine;
+  /** Live tests of its channels. */
+  readonly prober: ChannelProber;
   private readonly wire: Wire;
   private readonly pacer: PeriodPacer;
   private readonly loop: ScanLoop;
@@ -58,6 +61,14 @@ export class RigSession {
     const { readings } = this.engine;
     const onOpened = () => this.learnGrids();
     this.wire = new Wire(rig, adapters, readings, onOpened, () => this.publisher.requestStatus(), onBug);
+    const isAtRest = () => this.isAtRest();
+    this.prober = new ChannelProber({
+      rig,
+      readings,
+      wire: this.wire,
+      calibrations: calibrations ?? [],
+      isAtRest,
+    });
     this.publisher = new Publisher(rig, readings, link, () => this.status());
     const traces = new TracePublisher(rig, readings, link);
     const useRun = (run: Parameters<Publisher['useRun']>[0]) => {

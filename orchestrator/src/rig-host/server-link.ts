@@ -13,8 +13,8 @@ import type { Link } from './publisher.js';
 const backlogMax = 4;
 
 export interface ServerLinkOwner {
-  /** Rejects with a DomainError where the command is refused. */
-  onCommand(command: HostCommand): Promise<void>;
+  /** Gives what the command was to find out; rejects with a DomainError where it is refused. */
+  onCommand(command: HostCommand): Promise<unknown>;
   /** The server closed the channel or died. */
   onServerGone(): void;
 }
@@ -68,9 +68,18 @@ export class ServerLink implements Link {
     this.lastHeardS = monotonicS();
     if (parsed.data.type === 'server-alive') return;
     const { requestId, command } = parsed.data;
-    const error = await this.owner.onCommand(command).then(() => null, toRecord);
-    if (error?.kind === 'bug') this.log('error', `Command "${command.type}" met a fault of the host.`);
-    this.send({ type: 'reply', requestId, error });
+    this.send({ type: 'reply', requestId, ...(await this.obeyed(command)) });
+  }
+
+  private async obeyed(command: HostCommand): Promise<{ error: ErrorRecord | null; data?: unknown }> {
+    try {
+      const data = await this.owner.onCommand(command);
+      return data === undefined ? { error: null } : { error: null, data };
+    } catch (thrown) {
+      const error = toRecord(thrown);
+      if (error.kind === 'bug') this.log('error', `Command "${command.type}" met a fault of the host.`);
+      return { error };
+    }
   }
 
   private refuse(value: unknown, issues: readonly { path: PropertyKey[]; message: string }[]): void {

@@ -117,6 +117,11 @@ export class Wire {
     this.faults.set(connection, fault, by);
   }
 
+  /** The connection of a channel; undefined for one that has none. */
+  lineOf(channelIndex: number): Line | undefined {
+    return this.lineByChannel[channelIndex];
+  }
+
   channelFaults(): RigStatus['channelFaults'] {
     return this.lines.flatMap((line) => line.channelFaults());
   }

@@ -89,7 +89,7 @@ export class RigHostProcess {
   }
 
   /** @throws host.unavailable, host.timeout, or whatever the host answers */
-  async request(command: HostCommand): Promise<void> {
+  async request(command: HostCommand): Promise<unknown> {
     if (this.current.name !== 'up' || !this.life) throw this.unavailable();
     return this.life.request(command);
   }

@@ -83,7 +83,7 @@ export class RigHost implements RigHostOwner {
   }
 
   /** A person's command to a host that has failed is also the word to begin it again. */
-  async request(command: HostCommand): Promise<void> {
+  async request(command: HostCommand): Promise<unknown> {
     if (this.process.state.name !== 'failed') return this.process.request(command);
     const text = `${this.process.fault} It is begun again now: try again in a moment.`;
     this.process.start().catch(() => undefined);

@@ -6,6 +6,7 @@ import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsPort } from '../rigs/rig-hosts.port.js';
 import { RigStoreModule } from '../rigs/rig-store.module.js';
 import { HostFeed } from './host-feed.js';
+import { ChannelProbesController } from './channel-probes.controller.js';
 import { LatchedTrips } from './latched-trips.service.js';
 import { RigCommandsController } from './rig-commands.controller.js';
 import { RigCommandsService } from './rig-commands.service.js';
@@ -16,7 +17,7 @@ import { RigHostsService } from './rig-hosts.service.js';
 @Global()
 @Module({
   imports: [AuditModule, CalibrationStoreModule, EnvelopeStoreModule, RecordingsModule, RigStoreModule],
-  controllers: [RigCommandsController],
+  controllers: [RigCommandsController, ChannelProbesController],
   providers: [
     HostFeed,
     LatchedTrips,

@@ -5,7 +5,14 @@ import {
   type BeforeApplicationShutdown,
   type OnApplicationBootstrap,
 } from '@nestjs/common';
-import { DomainError, type HostCommand, type RigStatus, type Trip } from '@cresthold/shared';
+import {
+  channelProbeSchema,
+  DomainError,
+  type ChannelProbe,
+  type HostCommand,
+  type RigStatus,
+  type Trip,
+} from '@cresthold/shared';
 import { CONFIG } from '../config/config.module.js';
 import type { Config } from '../config/config.schema.js';
 import { CalibrationStore } from '../calibrations/calibration-store.js';
@@ -77,6 +84,19 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
 
   async command(rigId: string, command: HostCommand): Promise<void> {
     await (await this.host(rigId)).request(command);
+  }
+
+  /**
+   * Live test of one channel.
+   *
+   * @throws rig.not-found, channel.not-found, host.unavailable, host.timeout
+   */
+  async probe(rigId: string, channel: string): Promise<ChannelProbe> {
+    const data = await (await this.host(rigId)).request({ type: 'probe', channel });
+    const probe = channelProbeSchema.safeParse(data);
+    if (!probe.success)
+      throw new DomainError('host.unavailable', 'The rig host answered with no test result.');
+    return probe.data;
   }
 
   async reconfigure(rigId: string): Promise<void> {

@@ -1,4 +1,4 @@
-import { Body, Controller, Get, Param, Post, Put, Query, Res } from '@nestjs/common';
+import { Body, Controller, Get, HttpCode, Param, Post, Put, Query, Res } from '@nestjs/common';
 import { ApiCreatedResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Rig } from '@cresthold/shared';
 import type { Response } from 'express';
@@ -8,6 +8,7 @@ import { ApiIfMatch, IfMatch, setEtag } from '../documents/etag.js';
 import { setLocation } from '../http/set-location.js';
 import { pageQuerySchema, type Page, type PageQuery } from '../paging/page.js';
 import { rigDocumentSchema, rigInputSchema, rigPageSchema, type RigDocument } from './dto/rig.dto.js';
+import { rigDraftSchema, scanBudgetSchema, type RigDraft, type ScanBudget } from './dto/scan-budget.dto.js';
 import { RigsService } from './rigs.service.js';
 
 @ApiTags('rigs')
@@ -49,6 +50,18 @@ export class RigsController {
     setLocation(response, `rigs/${rig.id}`);
     setEtag(response, rig.revision);
     return rig;
+  }
+
+  @Post('scan-budget')
+  @HttpCode(200)
+  @Roles('signed-in')
+  @ApiOperation({
+    summary:
+      'Judges a draft of a rig, finished or not: what its scan would cost, and its faults; saves nothing.',
+  })
+  @ApiOkResponse({ standardSchema: scanBudgetSchema })
+  scanBudget(@Body({ schema: rigDraftSchema }) draft: RigDraft): ScanBudget {
+    return this.rigs.budget(draft);
   }
 
   @Put(':rigId')

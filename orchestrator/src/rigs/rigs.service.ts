@@ -13,6 +13,8 @@ import type { RigDocument } from './dto/rig.dto.js';
 import { RigEntity } from './entities/rig.entity.js';
 import { rigFaults } from './rig-faults.js';
 import { RigHostsPort } from './rig-hosts.port.js';
+import type { RigDraft, ScanBudget } from './dto/scan-budget.dto.js';
+import { scanBudgetOf } from './scan-budget.js';
 import { requireResting } from './rig-phase.js';
 import { RigStore } from './rig-store.js';
 import { changesMeaning } from './wiring-change.js';
@@ -98,6 +100,11 @@ export class RigsService {
     });
     await this.hosts.reconfigure(rigId);
     return this.toDocument(row);
+  }
+
+  /** What the scan of a draft would cost, and every fault that making it a rig would be refused with. */
+  budget(draft: RigDraft): ScanBudget {
+    return scanBudgetOf(draft, this.adapters);
   }
 
   private toDocument({ id, revision, content }: RigEntity): RigDocument {

@@ -69,6 +69,8 @@ export const hostCommandSchema = z.discriminatedUnion('type', [
     fault: wireFaultSchema.nullable(),
     by: z.string(),
   }),
+  /** Live test of one channel; the reply carries a `ChannelProbe` as its data. */
+  z.object({ type: z.literal('probe'), channel: z.string() }),
   /** Stops in order, brings the rig to rest, closes the wire and ends the process. */
   z.object({ type: z.literal('shut-down') }),
 ]);
@@ -88,7 +90,13 @@ const errorRecordSchema = z.custom<ErrorRecord>(
 export const fromHostSchema = z.discriminatedUnion('type', [
   /** The program runs and waits for `configure`. */
   z.object({ type: z.literal('ready'), pid: z.int() }),
-  z.object({ type: z.literal('reply'), requestId: z.int(), error: errorRecordSchema.nullable() }),
+  z.object({
+    type: z.literal('reply'),
+    requestId: z.int(),
+    error: errorRecordSchema.nullable(),
+    /** What the command was to find out; left out where it found nothing. */
+    data: z.unknown().optional(),
+  }),
   /** On every change and once a second; also the sign that the host lives. */
   z.object({ type: z.literal('status'), status: rigStatusSchema }),
   z.object({ type: z.literal('telemetry'), telemetry: telemetrySchema }),

@@ -87,9 +87,10 @@ export class HostLife {
   /**
    * Sends a command and waits for its reply.
    *
+   * @returns what the reply carries; undefined for most commands
    * @throws host.unavailable, host.timeout, or whatever the host answers
    */
-  async request(command: HostCommand, timeoutMs = this.timing.requestMs): Promise<void> {
+  async request(command: HostCommand, timeoutMs = this.timing.requestMs): Promise<unknown> {
     if (this.stage !== 'ready') throw new DomainError('host.unavailable');
     const { requestId, reply } = this.requests.open(command.type, timeoutMs);
     this.send({ type: 'command', requestId, command });
@@ -161,7 +162,7 @@ export class HostLife {
     this.lastHeardMs = performance.now();
     const { message } = checked;
     if (message.type === 'ready') this.becomeReady();
-    else if (message.type === 'reply') this.requests.settle(message.requestId, message.error);
+    else if (message.type === 'reply') this.requests.settle(message.requestId, message.error, message.data);
     else this.listener.onMessage(message);
   }
 

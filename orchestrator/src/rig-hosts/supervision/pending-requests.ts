@@ -1,7 +1,7 @@
 import { DomainError, type ErrorRecord } from '@cresthold/shared';
 
 interface Pending {
-  resolve: () => void;
+  resolve: (data: unknown) => void;
   reject: (error: DomainError) => void;
   timer: NodeJS.Timeout;
 }
@@ -12,12 +12,12 @@ export class PendingRequests {
   private nextId = 1;
 
   /**
-   * @returns the id to send, and a promise that follows the reply
+   * @returns the id to send, and a promise that follows the reply and gives its data
    * @throws host.timeout (the promise) when no reply came within `timeoutMs`
    */
-  open(what: string, timeoutMs: number): { requestId: number; reply: Promise<void> } {
+  open(what: string, timeoutMs: number): { requestId: number; reply: Promise<unknown> } {
     const requestId = this.nextId++;
-    const reply = new Promise<void>((resolve, reject) => {
+    const reply = new Promise<unknown>((resolve, reject) => {
       const timer = setTimeout(() => {
         this.pending.delete(requestId);
         const text = `The rig host did not answer "${what}" within ${timeoutMs} ms.`;
@@ -29,13 +29,13 @@ export class PendingRequests {
   }
 
   /** A reply that nobody waits for any more is late, not wrong: it is dropped. */
-  settle(requestId: number, error: ErrorRecord | null): void {
+  settle(requestId: number, error: ErrorRecord | null, data?: unknown): void {
     const pending = this.pending.get(requestId);
     if (!pending) return;
     this.pending.delete(requestId);
     clearTimeout(pending.timer);
     if (error) pending.reject(DomainError.fromRecord(error));
-    else pending.resolve();
+    else pending.resolve(data);
   }
 
   /** The host is gone: every request that still waits fails with this. */

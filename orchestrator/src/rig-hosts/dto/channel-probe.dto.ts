@@ -1,0 +1,3 @@
+import { channelProbeSchema } from '@cresthold/shared';
+
+export const channelProbeDtoSchema = channelProbeSchema.meta({ id: 'ChannelProbe' });
