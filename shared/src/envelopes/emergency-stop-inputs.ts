@@ -12,14 +12,18 @@ export class EmergencyStopInputs {
     this.indexes = inputs.map(({ channel }) => readings.indexOf(channel));
   }
 
+  /** Whether any input is not released: reads pressed, or is not known. @realtime safe: allocates nothing */
+  get isAnyNotReleased(): boolean {
+    for (let i = 0; i < this.inputs.length; i += 1) if (this.isNotReleased(i)) return true;
+    return false;
+  }
+
   /** Calls back for each input that reads pressed, and for each that is not known, in the envelope's order. */
   forEachNotReleased(visit: (input: EmergencyStopInput, isKnown: boolean) => void): void {
     for (let i = 0; i < this.inputs.length; i += 1) {
       const input = this.inputs[i];
       if (!input) continue;
-      const value = this.readings.goodValue(this.indexes[i] ?? -1);
-      const isKnown = !Number.isNaN(value);
-      if (!isKnown || (value === 0) === (input.pressedWhen === 'zero')) visit(input, isKnown);
+      if (this.isNotReleased(i)) visit(input, this.readings.isGood(this.indexes[i] ?? -1));
     }
   }
 
@@ -30,5 +34,10 @@ export class EmergencyStopInputs {
       if (input.channel === channel) isFound = true;
     });
     return isFound;
+  }
+
+  private isNotReleased(i: number): boolean {
+    const value = this.readings.goodValue(this.indexes[i] ?? -1);
+    return Number.isNaN(value) || (value === 0) === (this.inputs[i]?.pressedWhen === 'zero');
   }
 }

@@ -81,7 +81,7 @@ function judge(engine: EngineState, input: ScanInput): void {
   const { fitted, log } = engine;
   if (!fitted) return;
   const { interlocks, staleness } = fitted;
-  watchEmergencyStops(engine, fitted, input.atMs);
+  if (fitted.emergencyStops.isAnyNotReleased) watchEmergencyStops(engine, fitted, input.atMs);
   interlocks.judge(input.tS);
   staleness.judge(engine.readings, input.tS);
   if (interlocks.hasChanged) engine.isStatusChanged = true;
