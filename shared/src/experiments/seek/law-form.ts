@@ -11,7 +11,8 @@ export interface LawField {
   title: string;
   unit: string;
   help: string;
-  type: 'number' | 'choice' | 'group';
+  /** A list is given as the law's schema says it, numbers only; it has no place in a form. */
+  type: 'number' | 'choice' | 'group' | 'list';
   /** A group may be left out, a number may be empty. */
   isNullable: boolean;
   /** Its value where none is given; undefined where one must be given. */
@@ -95,13 +96,19 @@ function fieldOf(name: string, schema: z.ZodType): LawField {
     title: String(title),
     unit: String(unit),
     help: String(description),
-    type: inner instanceof z.ZodObject ? 'group' : inner instanceof z.ZodEnum ? 'choice' : 'number',
+    type: typeOf(inner),
     isNullable,
     initial,
     options: inner instanceof z.ZodEnum ? (inner.options as string[]) : [],
     fields: inner instanceof z.ZodObject ? fieldsOf(inner) : [],
     schema,
   };
+}
+
+function typeOf(inner: z.ZodType): LawField['type'] {
+  if (inner instanceof z.ZodObject) return 'group';
+  if (inner instanceof z.ZodArray) return 'list';
+  return inner instanceof z.ZodEnum ? 'choice' : 'number';
 }
 
 interface Unwrapped {

@@ -7,7 +7,8 @@ import { numericParameterSchema, type NumericParameter } from '../numeric-parame
 import { fieldsOf, lawFields, seekingLawIds, stepObjectOf } from './law-form.js';
 
 /** A parameter of a law in a step: as in the law's own schema, any number also as an expression. */
-export type LawParameter = NumericParameter | string | null | { [name: string]: LawParameter };
+export type LawParameter =
+  NumericParameter | string | null | readonly LawParameter[] | { [name: string]: LawParameter };
 
 /** The law of a Seek, with what it takes beside its actuators. */
 export interface SeekLaw {

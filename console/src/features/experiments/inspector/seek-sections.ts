@@ -28,6 +28,7 @@ function fieldsOfLaw(
   actuator: ParameterPath,
 ): StepField[] {
   const { type, title, help, isNullable, options, fields } = field;
+  if (type === 'list') return [];
   if (type === 'choice') {
     return [of('choice', path, title, { help, options: options.map((value) => ({ value, label: value })) })];
   }
