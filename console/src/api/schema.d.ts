@@ -1550,9 +1550,7 @@ export interface components {
                                  * @description First guess of the second derivatives between two actuators, sign turned, from a survey: one row for each actuator but the first, with those before it. Empty where nothing is known.
                                  * @default []
                                  */
-                                crossCurvatures?: number[][] | {
-                                    expression: string;
-                                };
+                                crossCurvatures?: number[][];
                                 /**
                                  * Rate of the inverse Hessian
                                  * @description How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.
@@ -2387,9 +2385,7 @@ export interface components {
                                  * Cross curvatures
                                  * @description First guess of the second derivatives between two actuators, sign turned, from a survey: one row for each actuator but the first, with those before it. Empty where nothing is known.
                                  */
-                                crossCurvatures: number[][] | {
-                                    expression: string;
-                                };
+                                crossCurvatures: number[][];
                                 /**
                                  * Rate of the inverse Hessian
                                  * @description How fast the inverse of the Hessian follows its estimate; of the order of the convergence rate.
