@@ -4,8 +4,8 @@ import { parseArgs } from 'node:util';
 const usage = `Usage: npm run demo -- [options]
   --data DIR         data folder (default data/demo)
   --port N           port of console and API (default 4380)
-  --bench-port N     port of the burner bench (default 15020)
-  --bench-log FILE   what the bench itself saw, as JSON lines: writes, watchdog, truth
+  --bench-port N     port of the burner bench (default 15020); the others take the next free ones
+  --bench-log FILE   what the burner bench itself saw, as JSON lines: writes, watchdog, truth
   --as-built         run what is built already: install and build nothing
   --new              begin anew with new passwords; the earlier data are kept beside it`;
 
