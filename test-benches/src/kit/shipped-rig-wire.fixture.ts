@@ -11,14 +11,23 @@ export interface OpenedRig {
   write(id: string, value: number): Promise<void>;
 }
 
-/** @throws DomainError naming what the adapter does not take of the rig's document */
-export async function openShippedRig(input: RigInput): Promise<OpenedRig> {
+/**
+ * @param patience times of the adapter's configuration that a busy machine keeps, in place of the rig's own
+ * @throws DomainError naming what the adapter does not take of the rig's document
+ */
+export async function openShippedRig(
+  input: RigInput,
+  patience: Readonly<Record<string, number>>,
+): Promise<OpenedRig> {
   const rig = rigSchema.parse(input);
   const [connection] = rig.connections;
   if (!connection) throw new Error('The rig has no connection.');
   const adapter = new AdapterRegistry(shippedAdapters).find(connection.adapter);
   const { manifest } = adapter;
-  const configuration = manifest.configurationSchema.parse(connection.configuration);
+  const configuration = manifest.configurationSchema.parse({
+    ...connection.configuration,
+    ...patience,
+  });
   const session = await adapter.open(configuration, new AbortController().signal);
   const wired = rig.channels.filter((channel): channel is WiredChannel => channel.kind !== 'derived');
   const addresses = wired.map(({ address }) => manifest.addressSchema.parse(address));

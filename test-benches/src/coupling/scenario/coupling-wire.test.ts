@@ -13,7 +13,7 @@ let rig: OpenedRig;
 
 beforeAll(async () => {
   bench = await forkBench('coupling', ['--pty', join(folder, 'line'), '--noise', 'off']);
-  rig = await openShippedRig(couplingRig({ path: bench.path }));
+  rig = await openShippedRig(couplingRig({ path: bench.path }), { unitTimeoutMs: 4000, timeoutMs: 8000 });
 }, 30_000);
 
 afterAll(async () => {

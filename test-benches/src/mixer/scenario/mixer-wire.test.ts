@@ -9,7 +9,7 @@ let rig: OpenedRig;
 
 beforeAll(async () => {
   bench = await forkBench('mixer', ['--noise', 'off']);
-  rig = await openShippedRig(mixerRig({ host: '127.0.0.1', port: bench.port }));
+  rig = await openShippedRig(mixerRig({ host: '127.0.0.1', port: bench.port }), { timeoutMs: 8000 });
 }, 30_000);
 
 afterAll(async () => {

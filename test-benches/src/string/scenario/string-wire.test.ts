@@ -14,7 +14,7 @@ let rig: OpenedRig;
 beforeAll(async () => {
   const line = ['--pty', join(folder, 'line'), '--profile', 'steady', '--noise', 'off'];
   bench = await forkBench('string', line);
-  rig = await openShippedRig(stringRig({ path: bench.path }));
+  rig = await openShippedRig(stringRig({ path: bench.path }), { replyTimeoutMs: 4000, timeoutMs: 8000 });
 }, 30_000);
 
 afterAll(async () => {
