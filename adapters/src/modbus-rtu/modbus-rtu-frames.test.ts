@@ -140,7 +140,9 @@ describe('the frames of the examples, on a pseudo-terminal', () => {
     for (const count of [10, 2]) {
       await readOne(run('holding-register', 0, count).map((address) => ({ ...address, unit: 1 })));
     }
-    expect(line.requests.map(text)).toEqual(['01030000000AC5CD', '010300000002C40B']);
+    await expect
+      .poll(() => line.requests.map(text), { timeout: 4000, interval: 2 })
+      .toEqual(['01030000000AC5CD', '010300000002C40B']);
   });
 
   it('understands an exception and says where and why', async () => {
@@ -177,7 +179,7 @@ describe('what is no answer', () => {
     line.respond = (_, send) => {
       send(other);
     };
-    await open({ unitTimeoutMs: 150 });
+    await open({ unitTimeoutMs: 600 });
     expect((await readOne(three)).codes).toEqual(Array(3).fill('adapter.timeout'));
     line.respond = (_, send) => {
       send(Buffer.concat([other, good]));
@@ -209,9 +211,11 @@ describe('what is no answer', () => {
         send(hex('11 03 06 AE 41 56 52 43 40 49 AD'));
       });
     };
-    await open({ unitTimeoutMs: 100 });
+    await open({ unitTimeoutMs: 600 });
     expect((await readOne(three)).codes).toEqual(Array(3).fill('adapter.timeout'));
     for (const release of late) release();
+    // It comes in while nothing is asked; two programs pass it on, which takes a moment.
+    await new Promise((resolve) => setTimeout(resolve, 300));
     line.respond = (_, send) => {
       send(good);
     };
@@ -246,7 +250,7 @@ describe('a line with an echo', () => {
     line.respond = (frame, send) => {
       send(frame);
     };
-    await open({ hasEcho: true, unitTimeoutMs: 150 });
+    await open({ hasEcho: true, unitTimeoutMs: 600 });
     const outcome = await session.write([at('holding-register', 1)], [3]);
     expect(outcome.faults[0]?.code).toBe('adapter.timeout');
   });

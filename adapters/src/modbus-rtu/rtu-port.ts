@@ -31,7 +31,7 @@ export interface RtuPortOptions extends SilentIntervals {
 const gatheringMs = 15;
 
 /** Least silence, after an answer that stayed away, before the next request: what comes in meanwhile is dropped. */
-const drainMs = 20;
+const drainMs = 40;
 
 /**
  * Frames of Modbus RTU over a serial port, for the library's client.
