@@ -5,15 +5,10 @@ const dayS = 86_400;
 
 /** When a fault strikes, and whom. */
 const strikes = {
-  probability: z
-    .number()
-    .min(0)
-    .max(1)
-    .default(1)
-    .meta({
-      title: 'Probability',
-      description: 'Share of reads and writes that are hit, drawn anew for each.',
-    }),
+  probability: z.number().min(0).max(1).default(1).meta({
+    title: 'Probability',
+    description: 'Share of reads and writes that are hit, drawn anew for each.',
+  }),
   seed: z.int().default(1).meta({ title: 'Seed', description: 'Same seed, same calls hit.' }),
   fromS: z
     .number()
@@ -101,13 +96,10 @@ export const wireFaultSchema = z
       text: z.string().trim().min(1).max(200).default('illegal data address').meta({ title: 'Its words' }),
     }),
     fault('disconnect', 'Disconnect', 'The connection is lost.', {
-      canReconnect: z
-        .boolean()
-        .default(true)
-        .meta({
-          title: 'Can be made again',
-          description: 'Off: it stays down until the fault is taken off.',
-        }),
+      canReconnect: z.boolean().default(true).meta({
+        title: 'Can be made again',
+        description: 'Off: it stays down until the fault is taken off.',
+      }),
     }),
   ])
   .refine(({ fromS, untilS }) => untilS === null || untilS > fromS, {
