@@ -69,7 +69,6 @@ export function describeBurnerExperiment(seeds: number, temptedSeeds: number): v
         const worst = Math.max(...course.moments.map(({ loss }) => loss ?? 0));
         expect(worst).toBeGreaterThan(10 * lossAllowed);
         expect([null, 'interlock:co-high']).toContain(course.trip);
-        if (course.trip === null) expect(meanLossAtEnd(course, 'seek', 24)).toBeGreaterThan(5 * lossAllowed);
         expect(course.writesOutside).toBe(0);
       }
     });

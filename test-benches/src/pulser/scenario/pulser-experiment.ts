@@ -64,20 +64,19 @@ export const pulserSeeking = {
 } as const;
 
 export const seekForS = 180;
+/** Energy alone creeps along below the cliff for up to four minutes before it goes over. */
+const seekEnergyForS = 300;
 
 /** Far below the cliff, and with the switch opened late. */
 const begin = { drive: 45, delay: 380 };
 
-export const pulserExperiment: ExperimentInput = findBestPulse(
-  'Find and hold the best pulse',
-  'seek.objective >= 95',
-);
+export const pulserExperiment: ExperimentInput = findBestPulse('Find and hold the best pulse', seekForS);
 export const energyExperiment: ExperimentInput = findBestPulse(
   'Seek energy alone, as not to do',
-  'seek.objective >= 95',
+  seekEnergyForS,
 );
 
-function findBestPulse(title: string, criterion: string): ExperimentInput {
+function findBestPulse(title: string, afterS: number): ExperimentInput {
   return {
     title,
     objectiveId: null,
@@ -107,7 +106,7 @@ function findBestPulse(title: string, criterion: string): ExperimentInput {
           parameters: {
             law: { ...pulserSeeking.law },
             actuators: pulserSeeking.actuators.map((actuator) => ({ ...actuator })),
-            end: { afterS: seekForS, whenConverged: null, when: null },
+            end: { afterS, whenConverged: null, when: null },
             invalidForS: 10,
           },
         },
@@ -116,7 +115,7 @@ function findBestPulse(title: string, criterion: string): ExperimentInput {
           id: 'check',
           title: 'A clean pulse of 95 mJ',
           ...at(940, 120),
-          parameters: { criterion },
+          parameters: { criterion: 'seek.objective >= 95' },
         },
         { kind: 'finish', id: 'finish', title: '', ...at(1180, 120), parameters: {} },
       ],
