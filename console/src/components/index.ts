@@ -3,6 +3,7 @@ export { Empty } from './empty.js';
 export { alignNumber, formatNumber, missing, plainNumber } from './format-quantity.js';
 export { formatClock, formatInstant, formatMoment } from './format-time.js';
 export { GatedButton } from './gated-button.js';
+export { beginHistory, record, redo, undo, type History } from './history.js';
 export { Loading } from './loading.js';
 export { Notice, type NoticeKind } from './notice.js';
 export { Page } from './page.js';

@@ -1,6 +1,6 @@
 import { Injectable } from '@nestjs/common';
 import { AdapterRegistry } from '@cresthold/adapters';
-import { DomainError, type Rig } from '@cresthold/shared';
+import { changesMeaning, DomainError, type Rig } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
 import { UnfitCalibrations } from '../calibrations/unfit-calibrations.js';
 import { insertRow, updateRow } from '../database/rows.js';
@@ -17,7 +17,6 @@ import type { RigDraft, ScanBudget } from './dto/scan-budget.dto.js';
 import { scanBudgetOf } from './scan-budget.js';
 import { requireResting } from './rig-phase.js';
 import { RigStore } from './rig-store.js';
-import { changesMeaning } from './wiring-change.js';
 
 @Injectable()
 export class RigsService {

@@ -1,4 +1,4 @@
-import { changesMeaning } from '../../src/rigs/wiring-change.js';
+import { changesMeaning } from '@cresthold/shared';
 import { testRig } from '../rig-host/test-rig.js';
 
 describe('a change of wiring', () => {

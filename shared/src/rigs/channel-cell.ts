@@ -42,9 +42,8 @@ export function readCell(column: ChannelColumn, text: string, hasDecimalComma: b
 export function writeCell(column: ChannelColumn, value: unknown): string {
   if (value === undefined || value === null) return '';
   if (column.kind === 'json') return jsonText(value);
-  if (typeof value === 'string' && column.kind === 'text')
-    return isPlain(value) ? value : JSON.stringify(value);
-  return typeof value === 'object' ? JSON.stringify(value) : String(value as string | number | boolean);
+  if (typeof value !== 'string') return JSON.stringify(value);
+  return column.kind === 'text' && !isPlain(value) ? JSON.stringify(value) : value;
 }
 
 /** A text that is empty, or that a spreadsheet would trim or split, is written as JSON has it, in quotes. */

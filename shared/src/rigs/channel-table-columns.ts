@@ -93,7 +93,7 @@ function textOf(value: unknown): string {
 function onlyChoice(schema: AddressSchema): AddressSchema {
   const given = schema.anyOf?.filter(({ type }) => type !== 'null') ?? [];
   const [first] = given;
-  if (given.length === 1 && first) return { ...first, ...schema, anyOf: undefined } as AddressSchema;
+  if (given.length === 1 && first) return { ...first, ...schema, anyOf: undefined };
   if (given.length > 0 && given.every((one) => 'const' in one)) {
     return { ...schema, enum: given.map((one) => one.const) };
   }

@@ -1,6 +1,6 @@
 import { useReducer } from 'react';
 import type { ExperimentContent, ExperimentGraph } from '@cresthold/shared';
-import { beginHistory, record, redo, undo, type History } from '../graph/history.js';
+import { beginHistory, record, redo, undo, type History } from '../../../components/index.js';
 
 interface DraftState {
   history: History<ExperimentContent>;

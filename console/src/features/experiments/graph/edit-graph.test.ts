@@ -1,7 +1,7 @@
 import { experimentGraphSchema, type ExperimentGraph, type Rig, type StepKind } from '@cresthold/shared';
 import { describe, expect, it } from 'vitest';
 import { addStep, connect, duplicate, remove, renameStep } from './edit-graph.js';
-import { beginHistory, record, redo, undo } from './history.js';
+import { beginHistory, record, redo, undo } from '../../../components/index.js';
 import { layoutGraph } from './layout-graph.js';
 import { newStep } from './new-step.js';
 
