@@ -3521,6 +3521,11 @@ export interface components {
                 /** @enum {string} */
                 state: "clear" | "pending" | "acted" | "latched";
                 isBypassed: boolean;
+                bypass: {
+                    by: string;
+                    reason: string;
+                    untilAt: string;
+                } | null;
                 isForced: boolean;
             }[];
             armingObstacles: string[];

@@ -51,7 +51,7 @@ export const demoStatus: RigStatus = {
   envelopeVersion: 3,
   connections: [{ id: 'plc', isConnected: true, error: null, injectedFault: null }],
   channelFaults: [],
-  interlocks: [{ id: 'co-high', state: 'clear', isBypassed: false, isForced: false }],
+  interlocks: [{ id: 'co-high', state: 'clear', isBypassed: false, bypass: null, isForced: false }],
   armingObstacles: [],
   bestPoint: {},
   scan: { count: 100, overruns: 0, latenessP99Ms: 0.4, wireMeanMs: 1.2 },

@@ -194,7 +194,9 @@ describe('a bypassed interlock', () => {
     judgeScan(judge, 0, 95);
     judge.find('lock-0')?.bypassUntil(0.25);
     judgeScan(judge, 0.1, 95);
-    expect(judge.status()).toEqual([{ id: 'lock-0', state: 'pending', isBypassed: true, isForced: false }]);
+    expect(judge.status()).toEqual([
+      { id: 'lock-0', state: 'pending', isBypassed: true, bypass: null, isForced: false },
+    ]);
     expect([actedIds(judge), violated(judge), judge.firstActed('pause')]).toEqual([[], [], null]);
   });
 

@@ -1,4 +1,5 @@
 import type { CompiledExpression, ValueSource } from '../expressions/expression.types.js';
+import type { InterlockBypass } from '../live/rig-status.schema.js';
 import type { Interlock, InterlockAction } from './envelope.schema.js';
 import { JudgedInterlock, type InterlockState } from './judged-interlock.js';
 
@@ -16,6 +17,8 @@ export interface InterlockView {
   id: string;
   state: InterlockState;
   isBypassed: boolean;
+  /** Who bypasses it, why and until when; null where nobody does. */
+  bypass: InterlockBypass | null;
   /** A proof test takes its condition as true. */
   isForced: boolean;
 }
@@ -105,11 +108,20 @@ export class InterlockJudge {
     }
   }
 
+  /** Calls back for each interlock that is bypassed, in the envelope's order. */
+  forEachBypassed(visit: (judged: JudgedInterlock, bypass: InterlockBypass) => void): void {
+    for (const judged of this.judged) {
+      const bypass = judged.bypassAt(this.nowS);
+      if (bypass) visit(judged, bypass);
+    }
+  }
+
   status(): InterlockView[] {
     return this.judged.map((judged) => ({
       id: judged.interlock.id,
       state: judged.state,
       isBypassed: judged.isBypassedAt(this.nowS),
+      bypass: judged.bypassAt(this.nowS),
       isForced: judged.isForcedAt(this.nowS),
     }));
   }

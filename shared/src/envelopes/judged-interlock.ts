@@ -1,3 +1,4 @@
+import type { InterlockBypass } from '../live/rig-status.schema.js';
 import type { Interlock } from './envelope.schema.js';
 
 /**
@@ -20,6 +21,7 @@ export class JudgedInterlock {
   /** Since when it could be clear again, s; NaN while it could not. */
   private safeSinceS = NaN;
   private bypassedUntilS = -Infinity;
+  private bypass: InterlockBypass | null = null;
   private forcedUntilS = -Infinity;
 
   /**
@@ -56,9 +58,15 @@ export class JudgedInterlock {
   }
 
   /** While bypassed it is judged and shown, and does not act; afterwards it acts at once where it still must. */
-  bypassUntil(untilS: number): void {
+  bypassUntil(untilS: number, bypass: InterlockBypass | null = null): void {
     this.bypassedUntilS = untilS;
+    this.bypass = bypass;
     if (this.state === 'acted' || this.state === 'latched') this.state = 'pending';
+  }
+
+  /** Who bypasses it and why; null where nobody does. */
+  bypassAt(tS: number): InterlockBypass | null {
+    return this.isBypassedAt(tS) ? this.bypass : null;
   }
 
   endBypass(): void {

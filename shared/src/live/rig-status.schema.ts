@@ -19,10 +19,21 @@ export const tripSchema = z.object({
 });
 export type Trip = z.infer<typeof tripSchema>;
 
+/** A bypass that is going on. */
+export const interlockBypassSchema = z.object({
+  by: z.string(),
+  reason: z.string(),
+  /** When it ends by itself, ISO 8601; the rig's own count of time decides. */
+  untilAt: z.string(),
+});
+export type InterlockBypass = z.infer<typeof interlockBypassSchema>;
+
 export const interlockStatusSchema = z.object({
   id: z.string(),
   state: z.enum(['clear', 'pending', 'acted', 'latched']),
   isBypassed: z.boolean(),
+  /** Null where it is not bypassed. */
+  bypass: interlockBypassSchema.nullable(),
   /** A proof test takes its condition as true. */
   isForced: z.boolean(),
 });

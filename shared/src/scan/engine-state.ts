@@ -44,6 +44,8 @@ export interface EngineState {
   serverSilentS: number;
   /** Time of the last scan, s; 0 before the first. */
   lastScanS: number;
+  /** Wall time of the last scan, ms since 1970; for what people are told only. */
+  lastScanAtMs: number;
   isStatusChanged: boolean;
 }
 
@@ -80,6 +82,7 @@ export function createEngineState(configuration: ScanEngineConfiguration): Engin
     consecutiveOverruns: 0,
     serverSilentS: 0,
     lastScanS: 0,
+    lastScanAtMs: 0,
     isStatusChanged: true,
   };
 }

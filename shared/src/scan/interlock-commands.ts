@@ -2,6 +2,7 @@ import type { JudgedInterlock } from '../envelopes/judged-interlock.js';
 import { motionOf } from '../envelopes/rig-moves.js';
 import { DomainError } from '../errors/domain-error.js';
 import type { EngineState } from './engine-state.js';
+import { isoTime } from './wall-time.js';
 
 /** Longest time for which a proof test may take a condition as true, s. */
 const forceAtMostS = 600;
@@ -28,7 +29,8 @@ export function bypassInterlock(
     details.push({ field: 'forS', message: `The envelope allows at most ${bypassAtMostS} s: give less.` });
   }
   if (details.length > 0) throw new DomainError('request.invalid', undefined, details);
-  judged.bypassUntil(engine.lastScanS + order.forS);
+  const untilAt = isoTime(engine.lastScanAtMs + 1000 * order.forS);
+  judged.bypassUntil(engine.lastScanS + order.forS, { by: order.by, reason: order.reason, untilAt });
   engine.log.add({ type: 'interlock.bypassed', ...order });
   engine.isStatusChanged = true;
 }
@@ -80,4 +82,17 @@ function required(engine: EngineState, id: string): JudgedInterlock {
     throw new DomainError('interlock.not-found', `The envelope in force has no interlock "${id}".`);
   }
   return judged;
+}
+
+/** A run's record says which interlocks were bypassed when it began. */
+export function noteBypasses({ fitted, lastScanS, log }: EngineState): void {
+  fitted?.interlocks.forEachBypassed(({ interlock, bypassEndS }, { by, reason }) => {
+    log.add({
+      type: 'interlock.bypassed',
+      interlock: interlock.id,
+      by,
+      reason,
+      forS: bypassEndS - lastScanS,
+    });
+  });
 }

@@ -27,6 +27,7 @@ import { watch } from './watchdogs.js';
 export function runScan(engine: EngineState, input: ScanInput): ScanOutput {
   const { output, run, log } = engine;
   engine.lastScanS = input.tS;
+  engine.lastScanAtMs = input.atMs;
   output.writes.length = 0;
   output.row = null;
   output.runEnded = null;

@@ -6,6 +6,7 @@ import type { Sequencer, SequencerContext } from '../experiments/sequencer.types
 import type { RunOrder } from '../live/host-message.schema.js';
 import type { RunColumn } from '../runs/run-columns.js';
 import { actuatorsOf, applyRigEvent, type EngineState, requireRigEvent } from './engine-state.js';
+import { noteBypasses } from './interlock-commands.js';
 import { RunKeeper } from './run-keeper.js';
 
 /** What the engine needs of experiments; replaced in tests by scripted ones. */
@@ -36,6 +37,7 @@ export function startRun(engine: EngineState, order: RunOrder, parts: Experiment
   engine.run = run;
   engine.log.beginRun(fitted.actuators);
   engine.log.add({ type: 'run.started', by: order.by });
+  noteBypasses(engine);
   return run.columns;
 }
 

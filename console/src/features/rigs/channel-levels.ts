@@ -1,6 +1,5 @@
-import type { EnvelopeContent } from '@cresthold/shared';
+import { simpleThreshold, type EnvelopeContent } from '@cresthold/shared';
 import type { ChartLevel } from '../../components/strip-chart/index.js';
-import { simpleThreshold } from '../envelopes/index.js';
 
 /** The lines across the chart of a channel: limits of an actuator, thresholds of interlocks. */
 export function channelLevels(channelId: string, envelope: EnvelopeContent | undefined): ChartLevel[] {

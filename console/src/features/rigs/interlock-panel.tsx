@@ -1,8 +1,15 @@
 import Box from '@mui/material/Box';
-import type { EnvelopeContent, Interlock, Rig, RigStatus } from '@cresthold/shared';
+import {
+  marginTo,
+  simpleThreshold,
+  type EnvelopeContent,
+  type Interlock,
+  type Rig,
+  type RigStatus,
+  type SimpleThreshold,
+} from '@cresthold/shared';
 import { Panel, plainNumber, Quantity } from '../../components/index.js';
 import { useIsStale, useLatestValue, type RigSamples } from '../../live/index.js';
-import { marginTo, simpleThreshold, type SimpleThreshold } from '../envelopes/index.js';
 
 type InterlockState = RigStatus['interlocks'][number]['state'];
 

@@ -1,0 +1,3 @@
+import { testSameEnvelope } from './same-envelope.property.fixture.js';
+
+testSameEnvelope(60);
