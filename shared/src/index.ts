@@ -94,6 +94,7 @@ export * from './scan/derived-channels.js';
 export * from './scan/fitted-envelope.js';
 export * from './scan/readings.js';
 export * from './scan/scan-engine.js';
+export * from './scan/held-move.schema.js';
 export * from './scan/scan-engine.types.js';
 export * from './scan/trace-reading.js';
 export { calibrationFaults } from './scan/sensor-calibrations.js';

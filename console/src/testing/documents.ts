@@ -52,6 +52,7 @@ export const demoStatus: RigStatus = {
   connections: [{ id: 'plc', isConnected: true, error: null, injectedFault: null }],
   channelFaults: [],
   interlocks: [{ id: 'co-high', state: 'clear', isBypassed: false, bypass: null, isForced: false }],
+  heldMoves: [],
   armingObstacles: [],
   bestPoint: {},
   scan: { count: 100, overruns: 0, latenessP99Ms: 0.4, wireMeanMs: 1.2 },

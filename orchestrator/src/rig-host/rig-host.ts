@@ -83,9 +83,9 @@ export class RigHost {
     }
     // Nothing changes by a test: no scan is hurried for it.
     if (command.type === 'probe') return session.prober.probe(command.channel);
-    await obey(session, command);
+    const answer = await obey(session, command);
     session.touch();
-    return undefined;
+    return answer;
   }
 
   private async configure(command: Extract<HostCommand, { type: 'configure' }>): Promise<void> {
@@ -143,7 +143,8 @@ export class RigHost {
 
 type SessionCommand = Exclude<HostCommand, { type: 'configure' | 'probe' | 'shut-down' }>;
 
-async function obey(session: RigSession, command: SessionCommand): Promise<void> {
+/** @returns what the command tells beside that it was obeyed; undefined where it tells nothing */
+async function obey(session: RigSession, command: SessionCommand): Promise<unknown> {
   const { engine } = session;
   switch (command.type) {
     case 'set-envelope':
@@ -155,7 +156,9 @@ async function obey(session: RigSession, command: SessionCommand): Promise<void>
     case 'disarm':
       return engine.disarm(command.by);
     case 'move':
-      return engine.move(command.channel, command.value, command.by);
+      return engine.move(command.channel, command.value, command.by, command.hold);
+    case 'release-move':
+      return engine.releaseMove(command.channel, command.holdId);
     case 'start-run':
       return session.startRun(command.order);
     case 'pause':

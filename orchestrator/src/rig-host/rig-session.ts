@@ -13,6 +13,7 @@ import {
   type WireFault,
 } from '@cresthold/shared';
 import { ChannelProber } from './channel-prober.js';
+import { HeldMoveLog } from './held-move-log.js';
 import { PeriodPacer } from './pacer.js';
 import { Publisher } from './publisher.js';
 import type { Recorder } from './recorder.js';
@@ -88,7 +89,7 @@ export class RigSession {
       pacer: this.pacer,
       periodS: rig.periodMs / 1000,
       serverSilentS: link.serverSilentS,
-      sinks: [this.run, this.publisher, traces],
+      sinks: [this.run, this.publisher, traces, new HeldMoveLog(link)],
     });
   }
 

@@ -19,6 +19,7 @@ export function statusWithoutHost(
     connections: [],
     channelFaults: [],
     interlocks: [],
+    heldMoves: [],
     armingObstacles: [obstacle],
     bestPoint: {},
     scan: { count: 0, overruns: 0, latenessP99Ms: 0, wireMeanMs: 0 },

@@ -56,7 +56,7 @@ describe('rig host', () => {
     host = await HostHarness.configured(testRig(device.port));
     await host.untilStatus((s) => s.armingObstacles.length === 0, 'ready to arm');
     await host.ask({ type: 'arm', by: 'technician' });
-    await host.ask({ type: 'move', channel: 'airTrim', value: 3, by: 'technician' });
+    await host.ask({ type: 'move', channel: 'airTrim', value: 3, by: 'technician', hold: null });
     const seen = (value: number | null) => () =>
       host.of('telemetry').findLast(({ telemetry: { columns, rows, runId } }) => {
         const at = columns.indexOf('airTrim.applied');
@@ -118,7 +118,7 @@ describe('rig host', () => {
     expect(ended.status).toBe('tripped');
     expect(device.airTrim).toBe(0);
     expect(await host.reply({ type: 'arm', by: 'engineer' })).toMatchObject({ code: 'rig.tripped' });
-    const move = { type: 'move', channel: 'airTrim', value: 3, by: 'engineer' } as const;
+    const move = { type: 'move', channel: 'airTrim', value: 3, by: 'engineer', hold: null } as const;
     expect(await host.reply(move)).toMatchObject({ code: 'rig.tripped' });
     await host.askUntilTaken({ type: 'reset', by: 'safety', reason: 'Smoke gone.' });
     await host.untilStatus((s) => s.phase === 'idle' && s.trip === null, 'idle');

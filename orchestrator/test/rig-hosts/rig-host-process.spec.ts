@@ -109,7 +109,7 @@ describe('a rig host in good health', () => {
   it('passes on what the host answers', async () => {
     const { host } = supervise('healthy');
     await host.start();
-    const move = host.request({ type: 'move', channel: 'airTrim', value: 1, by: 'engineer' });
+    const move = host.request({ type: 'move', channel: 'airTrim', value: 1, by: 'engineer', hold: null });
     await expect(move).rejects.toMatchObject({ code: 'rig.not-armed', kind: 'not-allowed-now' });
     await expect(host.request({ type: 'disarm', by: 'engineer' })).resolves.toBeUndefined();
   });

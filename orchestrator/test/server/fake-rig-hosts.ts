@@ -44,6 +44,7 @@ function statusOf(rigId: string, phase: RigPhase): RigStatus {
     connections: [],
     channelFaults: [],
     interlocks: [],
+    heldMoves: [],
     armingObstacles: [],
     bestPoint: {},
     scan: { count: 0, overruns: 0, latenessP99Ms: 0, wireMeanMs: 0 },

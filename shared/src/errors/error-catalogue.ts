@@ -112,6 +112,18 @@ export const errorCatalogue = {
     'not-allowed-now',
     'This actuator has no approved limit, so it cannot be written.',
   ),
+  'move.hold-ended': entry(
+    'not-allowed-now',
+    'This press of hold-to-move is over: let go, and press again to move on.',
+  ),
+  'move.held-by-another': entry('conflict', 'Somebody else holds this actuator: wait until it is released.'),
+  'lockout.not-found': entry('not-found', 'The rig has no such lockout: it may have been lifted already.'),
+  'lockout.not-yours': entry(
+    'forbidden',
+    'A lockout is lifted by the person who set it, or by those named on it.',
+  ),
+  'lockout.exists': entry('conflict', 'You hold this rig already: lift your lockout before you set another.'),
+  'trip.not-found': entry('not-found', 'No such trip of this rig.'),
   'objective.not-found': entry('not-found', 'No such objective.'),
   'expression.invalid': entry('invalid', 'The expression cannot be understood.'),
   'analysis.invalid-input': entry(

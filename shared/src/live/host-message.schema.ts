@@ -6,6 +6,7 @@ import { experimentGraphSchema } from '../experiments/experiment.schema.js';
 import { objectiveContentSchema } from '../objectives/objective.schema.js';
 import { rigSchema } from '../rigs/rig.schema.js';
 import { wireFaultSchema } from '../rigs/wire-fault.schema.js';
+import { moveHoldSchema } from '../scan/held-move.schema.js';
 import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
 import { liveTraceSchema } from './live-trace.schema.js';
 import { rigStatusSchema, tripSchema } from './rig-status.schema.js';
@@ -45,7 +46,15 @@ export const hostCommandSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('set-lockout'), isLockedOut: z.boolean() }),
   z.object({ type: z.literal('arm'), by: z.string() }),
   z.object({ type: z.literal('disarm'), by: z.string() }),
-  z.object({ type: z.literal('move'), channel: z.string(), value: z.number(), by: z.string() }),
+  z.object({
+    type: z.literal('move'),
+    channel: z.string(),
+    value: z.number(),
+    by: z.string(),
+    /** Null for a move that goes on by itself. */
+    hold: moveHoldSchema.nullable(),
+  }),
+  z.object({ type: z.literal('release-move'), channel: z.string(), holdId: z.string() }),
   z.object({ type: z.literal('start-run'), order: runOrderSchema }),
   z.object({ type: z.literal('pause'), by: z.string(), reason: z.string() }),
   z.object({ type: z.literal('resume'), by: z.string() }),

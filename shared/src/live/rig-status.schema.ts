@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { heldMoveSchema } from '../scan/held-move.schema.js';
 import { injectedFaultSchema } from '../rigs/wire-fault.schema.js';
 
 /** Where a rig is; lockout is beside it, not among it. */
@@ -59,6 +60,8 @@ export const rigStatusSchema = z.object({
   /** Channels that their connection does not deliver although it is up, and why. */
   channelFaults: z.array(z.object({ channel: z.string(), code: z.string(), message: z.string() })),
   interlocks: z.array(interlockStatusSchema),
+  /** Manual moves that go on only while somebody holds them. */
+  heldMoves: z.array(heldMoveSchema),
   /** What forbids arming, in words; empty where nothing does. */
   armingObstacles: z.array(z.string()),
   /**

@@ -85,6 +85,8 @@ export const runEventBodySchema = z.discriminatedUnion('type', [
   /** A proof test takes its condition as true. */
   event('interlock.forced', { interlock: z.string(), by: z.string() }),
   event('connection.lost', { connection: z.string(), code: z.string(), message: z.string() }),
+  /** A manual move that must be held was not renewed in time, and stopped where it was. */
+  event('move.hold-timed-out', { channel: z.string() }),
   event('connection.restored', { connection: z.string() }),
   /** A fault was put on a connection of the bench, or was there when the run began. */
   event('connection.fault-injected', { connection: z.string(), fault: wireFaultSchema, by: z.string() }),

@@ -1,6 +1,7 @@
 import type { ActuatorLimit } from '../envelopes/envelope.schema.js';
 import { createGuardedActuator, type GuardedActuator, takeOver, useGrid } from '../envelopes/guard.js';
 import type { Rig, WiredChannel } from '../rigs/rig.schema.js';
+import { dropMove, type Grip } from './held-move.js';
 import type { Readings } from './readings.js';
 import type { ValueGrid } from './scan-engine.types.js';
 
@@ -17,6 +18,12 @@ export interface HeldActuator {
   base: number;
   /** Goal of a manual move, channel unit; NaN where there is none. */
   target: number;
+  /** Who holds the move; null where it is none that must be held. */
+  grip: Grip | null;
+  /** Where the held move leads, channel unit; of no meaning without a grip. */
+  heldTowards: number;
+  /** Names of the presses that are over, the latest last. */
+  readonly pressesOver: string[];
   /** Base that is asked for in this scan, before the guard. */
   requestedBase: number;
   /** Signed dither that is asked for in this scan, before the guard. */
@@ -59,6 +66,9 @@ export function createActuatorBank(
       write: { channel: limit.channel, value: NaN },
       base: NaN,
       target: NaN,
+      grip: null,
+      heldTowards: NaN,
+      pressesOver: [],
       requestedBase: NaN,
       requestedDither: 0,
       isHolding: true,
@@ -90,7 +100,7 @@ export function releaseAll(actuators: readonly HeldActuator[]): void {
   for (const actuator of actuators) {
     actuator.isTaken = false;
     actuator.base = NaN;
-    actuator.target = NaN;
+    dropMove(actuator);
     actuator.mismatchSinceS = NaN;
   }
 }

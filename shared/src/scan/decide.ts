@@ -9,6 +9,7 @@ import {
   orderStop,
   tripIfInMotion,
 } from './engine-state.js';
+import { endWhereNotRenewed } from './held-move.js';
 import type { RunKeeper } from './run-keeper.js';
 import type { ScanInput } from './scan-engine.types.js';
 import { isStopComplete, noteStopped, stepStopAction } from './stop-action.js';
@@ -25,7 +26,7 @@ export function decide(engine: EngineState, input: ScanInput): void {
     actuator.isHolding = true;
   }
   if (engine.rigState.phase === 'running') ask(engine, input);
-  if (engine.rigState.phase === 'armed') followTargets(actuators, input.dtS);
+  if (engine.rigState.phase === 'armed') followTargets(engine, actuators, input);
   switch (engine.rigState.phase) {
     case 'armed':
     case 'running':
@@ -75,6 +76,11 @@ function ask(engine: EngineState, input: ScanInput): void {
   }
 }
 
+function noteHoldTimedOut(engine: EngineState, { channel }: HeldActuator): void {
+  engine.isStatusChanged = true;
+  engine.log.add({ type: 'move.hold-timed-out', channel });
+}
+
 function stepSafely(engine: EngineState, run: RunKeeper, input: ScanInput): SequencerOutput | null {
   try {
     return run.step(input.dtS);
@@ -90,9 +96,17 @@ function stepSafely(engine: EngineState, run: RunKeeper, input: ScanInput): Sequ
   }
 }
 
-/** Manual moves: from where the actuator is to the target at the slew limit. */
-function followTargets(actuators: readonly HeldActuator[], dtS: number): void {
+/**
+ * Manual moves: from where the actuator is to the target at the slew limit. One that must be held and was not
+ * renewed in time goes no further.
+ */
+function followTargets(
+  engine: EngineState,
+  actuators: readonly HeldActuator[],
+  { tS, dtS }: ScanInput,
+): void {
   for (const actuator of actuators) {
+    if (endWhereNotRenewed(actuator, tS)) noteHoldTimedOut(engine, actuator);
     if (actuator.base === actuator.target) actuator.target = NaN;
     if (Number.isNaN(actuator.target)) continue;
     const { guarded, target } = actuator;

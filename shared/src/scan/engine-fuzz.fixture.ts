@@ -2,13 +2,15 @@ import fc from 'fast-check';
 import { DomainError } from '../errors/domain-error.js';
 import type { ActuatorRequest } from '../experiments/sequencer.types.js';
 import { FakePlant, plantEnvelope, plantOrder, plantRig, scriptedSequencer } from './fake-plant.fixture.js';
+import type { MoveHold } from './held-move.schema.js';
 import type { ScanOutput } from './scan-engine.types.js';
 
 /** What can happen to a rig between two scans. */
 export type FuzzAction =
   | { do: 'scan'; count: number; dtS: number }
   | { do: 'arm' | 'disarm' | 'start' | 'pause' | 'resume' | 'stop' | 'emergency-stop' | 'reset' | 'heal' }
-  | { do: 'move'; channel: string; value: number }
+  | { do: 'move'; channel: string; value: number; hold: MoveHold | null }
+  | { do: 'release'; channel: string; holdId: string }
   | { do: 'lose' | 'restore'; connection: string }
   | { do: 'spoil' | 'stick'; channel: string }
   | { do: 'read'; temp: number }
@@ -25,6 +27,9 @@ const number = fc.oneof(
   { weight: 1, arbitrary: fc.constantFrom(NaN, Infinity, -Infinity, 1e300) },
 );
 
+const press = fc.constantFrom('a', 'b', 'c');
+const hold = fc.option(fc.record({ id: press, forS: fc.constantFrom(0.1, 0.5, 2) }));
+
 const scan = fc.record({
   do: fc.constant('scan' as const),
   count: fc.integer({ min: 1, max: 12 }),
@@ -38,7 +43,8 @@ const fuzzAction: fc.Arbitrary<FuzzAction> = fc.oneof(
     weight: 2,
     arbitrary: fc.record({ do: fc.constantFrom('disarm', 'pause', 'resume', 'stop', 'emergency-stop') }),
   },
-  { weight: 2, arbitrary: fc.record({ do: fc.constant('move'), channel: actuator, value: number }) },
+  { weight: 2, arbitrary: fc.record({ do: fc.constant('move'), channel: actuator, value: number, hold }) },
+  { weight: 1, arbitrary: fc.record({ do: fc.constant('release'), channel: actuator, holdId: press }) },
   { weight: 1, arbitrary: fc.record({ do: fc.constantFrom('lose', 'restore'), connection }) },
   { weight: 1, arbitrary: fc.record({ do: fc.constantFrom('spoil', 'stick'), channel: actuator }) },
   { weight: 1, arbitrary: fc.record({ do: fc.constant('read'), temp: number }) },
@@ -182,7 +188,9 @@ function act(plant: FakePlant, action: Exclude<FuzzAction, { do: 'scan' | 'envel
     case 'heal':
       return plant.heal();
     case 'move':
-      return engine.move(action.channel, action.value, 't');
+      return void engine.move(action.channel, action.value, 't', action.hold);
+    case 'release':
+      return engine.releaseMove(action.channel, action.holdId);
     case 'lose':
       return void plant.lost.push(action.connection);
     case 'restore':

@@ -2,7 +2,7 @@ import type { EnvelopeInForce } from '../envelopes/envelope.schema.js';
 import { isInsideRange } from '../envelopes/guard.js';
 import { DomainError } from '../errors/domain-error.js';
 import type { RunEnd } from './run-keeper.js';
-import { takeOverFromReadBack } from './actuator-bank.js';
+import { type HeldActuator, takeOverFromReadBack } from './actuator-bank.js';
 import { checkArming } from './arming-checklist.js';
 import {
   actuatorsOf,
@@ -12,9 +12,19 @@ import {
   orderStop,
   requireRigEvent,
 } from './engine-state.js';
+import { grip, release, requireNotHeldByAnother } from './held-move.js';
+import type { MoveAnswer, MoveHold } from './held-move.schema.js';
 import { fitEnvelope } from './fitted-envelope.js';
 import { presentCauses } from './present-causes.js';
 import { beginStopAction } from './stop-action.js';
+
+/** A manual move, and who holds it; without a hold it goes on by itself. */
+export interface MoveOrder {
+  channel: string;
+  value: number;
+  by: string;
+  hold: MoveHold | null;
+}
 
 /**
  * Puts an envelope in force. While a trip is latched the stop action goes on with the new limits. A run is
@@ -35,6 +45,7 @@ export function setEnvelope(engine: EngineState, envelope: EnvelopeInForce): voi
     if (!known) continue;
     actuator.guarded.applied = known.guarded.applied;
     actuator.isTaken = known.isTaken;
+    actuator.pressesOver.push(...known.pressesOver);
   }
   beginStopAction(fitted.actuators);
   engine.fitted = fitted;
@@ -66,20 +77,42 @@ export function disarm(engine: EngineState, by: string): void {
 /**
  * @throws rig.not-armed, rig.busy, rig.offline, rig.tripped by the rig's phase
  * @throws channel.not-found, channel.no-limit, request.invalid by the channel and value
+ * @throws move.hold-ended, move.held-by-another by who holds the actuator
  */
-export function move(engine: EngineState, channel: string, value: number): void {
+export function move(engine: EngineState, order: MoveOrder): MoveAnswer {
   requireRigEvent(engine, { type: 'manual-move' });
-  const kind = engine.rig.channels.find(({ id }) => id === channel)?.kind;
-  if (kind !== 'actuator')
-    throw new DomainError('channel.not-found', `The rig has no actuator "${channel}".`);
-  const actuator = actuatorsOf(engine).find((held) => held.channel === channel);
-  if (!actuator) throw new DomainError('channel.no-limit');
+  const { value, hold, by } = order;
+  const actuator = limitedActuator(engine, order.channel);
   const { limit } = actuator;
   if (!isInsideRange(limit, value)) {
     const message = `Give a value from ${limit.min} to ${limit.max}: these are the approved limits.`;
     throw new DomainError('request.invalid', undefined, [{ field: 'value', message }]);
   }
+  if (hold === null) requireNotHeldByAnother(actuator, null);
+  const answer = hold === null ? { isRenewal: false } : grip(actuator, hold, by, engine.lastScanS);
+  if (!answer.isRenewal) engine.isStatusChanged = true;
   actuator.target = value;
+  actuator.heldTowards = value;
+  return answer;
+}
+
+/**
+ * Ends a held move at once; accepted in every phase, because a press is over when it is over.
+ *
+ * @throws channel.not-found, channel.no-limit
+ */
+export function releaseMove(engine: EngineState, channel: string, holdId: string): void {
+  release(limitedActuator(engine, channel), holdId);
+  engine.isStatusChanged = true;
+}
+
+function limitedActuator(engine: EngineState, channel: string): HeldActuator {
+  const kind = engine.rig.channels.find(({ id }) => id === channel)?.kind;
+  if (kind !== 'actuator')
+    throw new DomainError('channel.not-found', `The rig has no actuator "${channel}".`);
+  const actuator = actuatorsOf(engine).find((held) => held.channel === channel);
+  if (!actuator) throw new DomainError('channel.no-limit');
+  return actuator;
 }
 
 /** @throws run.not-running, rig.tripped */

@@ -5,6 +5,7 @@ import type { RigStatus, Trip } from '../live/rig-status.schema.js';
 import type { Rig } from '../rigs/rig.schema.js';
 import type { RunColumn } from '../runs/run-columns.js';
 import type { RunEventBody, RunStatus, Verdict } from '../runs/run-event.schema.js';
+import type { MoveAnswer, MoveHold } from './held-move.schema.js';
 import type { Readings } from './readings.js';
 
 /** The grid of values that an actuator's wire can carry; `step` 0 where it is continuous. */
@@ -81,8 +82,13 @@ export interface ScanEngine {
   setLockout(isLockedOut: boolean): void;
   arm(by: string): void;
   disarm(by: string): void;
-  /** A manual move: ramps the actuator to `value` at its slew limit. */
-  move(channel: string, value: number, by: string): void;
+  /**
+   * A manual move: ramps the actuator to `value` at its slew limit. With a hold it must be renewed within
+   * `hold.forS`, else the actuator stops where it is; without one (the default) it goes on by itself.
+   */
+  move(channel: string, value: number, by: string, hold?: MoveHold | null): MoveAnswer;
+  /** Ends a held move at once, where it is; accepted in every phase. */
+  releaseMove(channel: string, holdId: string): void;
   /** @returns the columns of the run's rows, in order */
   startRun(order: RunOrder): readonly RunColumn[];
   pause(by: string, reason: string): void;

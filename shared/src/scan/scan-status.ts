@@ -1,6 +1,7 @@
 import type { RigStatus } from '../live/rig-status.schema.js';
 import { checkArming } from './arming-checklist.js';
 import { bestPoint } from './best-point.js';
+import { heldMovesOf } from './held-move.js';
 import type { EngineState } from './engine-state.js';
 
 /** All of the rig's status that the engine knows. */
@@ -20,6 +21,7 @@ export function statusOf(engine: EngineState): Omit<RigStatus, 'connections' | '
     isPaused: run?.isPaused ?? false,
     envelopeVersion: fitted?.inForce.version ?? null,
     interlocks: fitted?.interlocks.status() ?? [],
+    heldMoves: heldMovesOf(fitted?.actuators ?? []),
     armingObstacles: obstacles.map(({ message }) => message),
     bestPoint: run ? bestPoint(run.order.experiment.graph, run.sequencer) : { ...engine.lastBestPoint },
   };

@@ -6,6 +6,7 @@ import type { Sequencer, SequencerContext } from '../experiments/sequencer.types
 import type { RunOrder } from '../live/host-message.schema.js';
 import type { RunColumn } from '../runs/run-columns.js';
 import { actuatorsOf, applyRigEvent, type EngineState, requireRigEvent } from './engine-state.js';
+import { dropMove } from './held-move.js';
 import { noteBypasses } from './interlock-commands.js';
 import { RunKeeper } from './run-keeper.js';
 
@@ -33,7 +34,7 @@ export function startRun(engine: EngineState, order: RunOrder, parts: Experiment
   const sequencer = parts.createSequencer(context);
   const run = new RunKeeper(order, sequencer, rig, engine.readings, fitted.actuators);
   applyRigEvent(engine, { type: 'start-run' });
-  for (const actuator of actuatorsOf(engine)) actuator.target = NaN;
+  for (const actuator of actuatorsOf(engine)) dropMove(actuator);
   engine.run = run;
   engine.log.beginRun(fitted.actuators);
   engine.log.add({ type: 'run.started', by: order.by });

@@ -1,5 +1,6 @@
 import { guardJumpToRest, guardRequest, isAppliedAtRest, slewAllowance } from '../envelopes/guard.js';
 import { type HeldActuator, moveTowards, takeOverFromReadBack } from './actuator-bank.js';
+import { dropMove } from './held-move.js';
 import type { Readings } from './readings.js';
 
 /** Begins the stop action anew for every actuator. */
@@ -7,7 +8,7 @@ export function beginStopAction(actuators: readonly HeldActuator[]): void {
   for (const actuator of actuators) {
     actuator.isStopped = false;
     actuator.atRestSinceS = NaN;
-    actuator.target = NaN;
+    dropMove(actuator);
     actuator.mismatchSinceS = NaN;
   }
 }

@@ -44,6 +44,8 @@ export function eventText(body: RunEventBody): string {
       return `Bypass of interlock ${body.interlock} ${body.by === null ? 'ran out' : `ended by ${body.by}`}`;
     case 'interlock.forced':
       return `Proof test by ${body.by}: interlock ${body.interlock} takes its condition as true`;
+    case 'move.hold-timed-out':
+      return `Hold-to-move of ${body.channel} was not renewed in time: stopped where it was`;
     case 'connection.lost':
       return `Connection ${body.connection} lost: ${body.message}`;
     case 'connection.restored':
