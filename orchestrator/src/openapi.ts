@@ -5,7 +5,7 @@ import { NestFactory } from '@nestjs/core';
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { AppModule } from './app.module.js';
 import { parseConfig } from './config/config.schema.js';
-import { apiPrefix } from './http/set-up-http.js';
+import { apiPrefix } from './http/api-prefix.js';
 import { openApiDocument } from './http/open-api.js';
 
 /** Writes the OpenAPI document to a file without listening: `node dist/openapi.js openapi.json`. */

@@ -17,5 +17,10 @@ export type ExperimentSummary = Schemas['Experiment'];
 export type ExperimentVersion = Schemas['ExperimentVersion'];
 export type RunSummary = Schemas['Run'];
 export type AdapterDocument = Schemas['Adapter'];
+export type SerialPort = Schemas['SerialPort'];
+export type ScanBudget = Schemas['ScanBudget'];
+export type CalibrationDocument = Schemas['Calibration'];
+/** A rig as requests carry it. */
+export type RigBody = Schemas['RigInput'];
 /** An experiment as requests carry it. */
 export type ExperimentBody = Schemas['ExperimentContentInput'];

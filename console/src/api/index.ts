@@ -1,14 +1,18 @@
 export { answerOf, client, ifMatch } from './client.js';
 export type {
   AdapterDocument,
+  CalibrationDocument,
   EnvelopeDocument,
   ExperimentBody,
   ExperimentSummary,
   ExperimentVersion,
   ObjectiveDocument,
   Page,
+  RigBody,
   RigDocument,
   RunSummary,
+  ScanBudget,
+  SerialPort,
   Session,
   User,
 } from './documents.js';

@@ -47,7 +47,10 @@ export interface paths {
         };
         get?: never;
         put?: never;
-        /** Signs in: answers who it is and sets the session cookie. */
+        /**
+         * Signs in: answers who it is and sets the session cookie.
+         * @description Where the account has a second factor the answer is auth.code-needed until `code` is sent as well.
+         */
         post: operations["auth_signIn"];
         delete?: never;
         options?: never;
@@ -83,6 +86,130 @@ export interface paths {
         get: operations["auth_session"];
         put?: never;
         post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/reauthenticate": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /**
+         * Takes the password again: for five minutes acts that need it are allowed.
+         * @description Sets a new session cookie. Needed to approve an envelope and to reset a trip; never to stop.
+         */
+        post: operations["auth_reauthenticate"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/password": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Changes one’s own password; ends all other sessions of the account. */
+        post: operations["auth_changePassword"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/sessions": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists where one is signed in. */
+        get: operations["sessions_list"];
+        put?: never;
+        post?: never;
+        /** Ends all one’s sessions but this. */
+        delete: operations["sessions_endOthers"];
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/sessions/{sessionId}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        post?: never;
+        /** Ends one of one’s sessions. */
+        delete: operations["sessions_end"];
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/second-factor": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Says whether one has a second factor. */
+        get: operations["secondFactor_state"];
+        put?: never;
+        /** Begins: answers a new secret, shown this once, which counts after `confirm`. */
+        post: operations["secondFactor_begin"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/second-factor/confirm": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Ends the set-up with a first code; answers recovery codes, shown this once. */
+        post: operations["secondFactor_confirm"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/auth/second-factor/remove": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Removes it, with password and code. */
+        post: operations["secondFactor_remove"];
         delete?: never;
         options?: never;
         head?: never;
@@ -476,6 +603,58 @@ export interface paths {
         head?: never;
         /** Changes an account; a new password or disabling ends its sessions. */
         patch: operations["users_change"];
+        trace?: never;
+    };
+    "/api/v1/users/{account}/sessions": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists where an account is signed in. */
+        get: operations["userAccess_sessions"];
+        put?: never;
+        post?: never;
+        /** Ends all sessions of an account. */
+        delete: operations["userAccess_endSessions"];
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/users/{account}/sessions/{sessionId}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        post?: never;
+        /** Ends one session of an account. */
+        delete: operations["userAccess_endSession"];
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/users/{account}/second-factor/reset": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Takes a lost authenticator away, with a reason; ends all sessions of the account. */
+        post: operations["userAccess_resetSecondFactor"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
         trace?: never;
     };
     "/api/v1/rigs/emergency-stop": {
@@ -949,7 +1128,7 @@ export interface components {
             status: number;
             detail: string;
             /** @enum {string} */
-            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "interlock.not-found" | "interlock.no-bypass" | "interlock.not-bypassed" | "interlock.not-latched" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
+            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.foreign-rig" | "auth.code-needed" | "auth.code-wrong" | "auth.reauthentication-needed" | "auth.second-factor-needed" | "auth.second-factor-exists" | "auth.second-factor-missing" | "auth.session-not-found" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "interlock.not-found" | "interlock.no-bypass" | "interlock.not-bypassed" | "interlock.not-latched" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
             errors: {
                 field: string;
                 message: string;
@@ -970,11 +1149,55 @@ export interface components {
         SignIn: {
             account: string;
             password: string;
+            code?: string;
         };
         Session: {
             account: string;
             title: string;
             roles: ("administrator" | "safety-officer" | "test-engineer" | "technician" | "reader")[];
+            rigLimits: {
+                /** @enum {string} */
+                role: "administrator" | "safety-officer" | "test-engineer" | "technician" | "reader";
+                rigs: string[];
+            }[];
+        };
+        Reauthentication: {
+            password: string;
+            code?: string;
+        };
+        Elevation: {
+            until: string;
+        };
+        PasswordChange: {
+            password: string;
+            code?: string;
+            newPassword: string;
+        };
+        SignedInPlaces: {
+            items: components["schemas"]["SignedInPlace"][];
+        };
+        SignedInPlace: {
+            id: string;
+            userAgent: string;
+            address: string;
+            beganAt: string;
+            lastSeenAt: string;
+            isThis: boolean;
+        };
+        SecondFactor: {
+            isSetUp: boolean;
+            isNeededToApprove: boolean;
+            recoveryCodesLeft: number;
+        };
+        SecondFactorEnrolment: {
+            secret: string;
+            uri: string;
+        };
+        SecondFactorConfirmation: {
+            code: string;
+        };
+        RecoveryCodes: {
+            recoveryCodes: string[];
         };
         CalibrationPage: {
             items: components["schemas"]["Calibration"][];
@@ -3659,6 +3882,11 @@ export interface components {
             account: string;
             title: string;
             roles: ("administrator" | "safety-officer" | "test-engineer" | "technician" | "reader")[];
+            rigLimits: {
+                /** @enum {string} */
+                role: "administrator" | "safety-officer" | "test-engineer" | "technician" | "reader";
+                rigs: string[];
+            }[];
             isEnabled: boolean;
             createdAt: string;
         };
@@ -3670,13 +3898,27 @@ export interface components {
             account: string;
             title: string;
             roles: ("administrator" | "safety-officer" | "test-engineer" | "technician" | "reader")[];
+            rigLimits?: {
+                /** @enum {string} */
+                role: "administrator" | "safety-officer" | "test-engineer" | "technician" | "reader";
+                rigs: string[];
+            }[];
             password: string;
         };
         ChangeUser: {
             title?: string;
             roles?: ("administrator" | "safety-officer" | "test-engineer" | "technician" | "reader")[];
+            rigLimits?: {
+                /** @enum {string} */
+                role: "administrator" | "safety-officer" | "test-engineer" | "technician" | "reader";
+                rigs: string[];
+            }[];
             password?: string;
             isEnabled?: boolean;
+        };
+        ResetSecondFactor: {
+            reason: string;
+            password?: string;
         };
         Move: {
             channel: string;
@@ -4823,7 +5065,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -4869,7 +5111,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -4945,7 +5187,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -4991,7 +5233,435 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    auth_reauthenticate: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["Reauthentication"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Elevation"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    auth_changePassword: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["PasswordChange"];
+            };
+        };
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    sessions_list: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["SignedInPlaces"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    sessions_endOthers: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    sessions_end: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                sessionId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    secondFactor_state: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["SecondFactor"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    secondFactor_begin: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["Reauthentication"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["SecondFactorEnrolment"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    secondFactor_confirm: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["SecondFactorConfirmation"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RecoveryCodes"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    secondFactor_remove: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["Reauthentication"];
+            };
+        };
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5044,7 +5714,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5096,7 +5766,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5144,7 +5814,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5196,7 +5866,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5246,7 +5916,7 @@ export interface operations {
                     "image/jpeg": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5304,7 +5974,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5355,7 +6025,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5407,7 +6077,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5455,7 +6125,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5510,7 +6180,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5558,7 +6228,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5613,7 +6283,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5668,7 +6338,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5718,7 +6388,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5768,7 +6438,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5818,7 +6488,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5866,7 +6536,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5917,7 +6587,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -5969,7 +6639,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6018,7 +6688,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6068,7 +6738,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6118,7 +6788,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6166,7 +6836,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6221,7 +6891,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6270,7 +6940,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6320,7 +6990,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6368,7 +7038,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6423,7 +7093,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6473,7 +7143,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6582,7 +7252,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6632,7 +7302,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6684,7 +7354,198 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    userAccess_sessions: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                account: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["SignedInPlaces"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    userAccess_endSessions: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                account: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    userAccess_endSession: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                account: string;
+                sessionId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    userAccess_resetSecondFactor: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                account: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["ResetSecondFactor"];
+            };
+        };
+        responses: {
+            204: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content?: never;
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6736,7 +7597,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6784,7 +7645,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6832,7 +7693,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6880,7 +7741,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6932,7 +7793,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -6986,7 +7847,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7038,7 +7899,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7090,7 +7951,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7143,7 +8004,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7192,7 +8053,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7243,7 +8104,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7296,7 +8157,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7344,7 +8205,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7396,7 +8257,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7444,7 +8305,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7496,7 +8357,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7544,7 +8405,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7597,7 +8458,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7647,7 +8508,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7695,7 +8556,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7750,7 +8611,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -7799,7 +8660,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -8016,7 +8877,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -8062,7 +8923,7 @@ export interface operations {
                     "application/json": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;
@@ -8120,7 +8981,7 @@ export interface operations {
                     "text/csv": components["schemas"]["ProblemDetails"];
                 };
             };
-            /** @description The role may not. */
+            /** @description The role may not, or not on this rig. */
             403: {
                 headers: {
                     [name: string]: unknown;

@@ -18,6 +18,14 @@ const pages: RouteObject[] = [
     lazy: async () => ({ Component: (await import('../features/envelopes/envelope-page.js')).EnvelopePage }),
   },
   {
+    path: 'rigs/:rigId/wiring',
+    lazy: async () => ({ Component: (await import('../features/wiring/wiring-page.js')).WiringPage }),
+  },
+  {
+    path: 'new-rig',
+    lazy: async () => ({ Component: (await import('../features/wiring/wiring-page.js')).NewRigPage }),
+  },
+  {
     path: 'objectives',
     lazy: async () => ({
       Component: (await import('../features/objectives/objectives-page.js')).ObjectivesPage,

@@ -1,5 +1,6 @@
 import { Injectable } from '@nestjs/common';
 import { DataSource, type SelectQueryBuilder } from 'typeorm';
+import type { RigScope } from '../auth/rig-scope.js';
 import { afterKey, toPage, type Page } from '../paging/page.js';
 import type { AuditFilter, AuditQuery, AuditRecord, AuditVerification } from './dto/audit.dto.js';
 import { AuditEntry } from './entities/audit-entry.entity.js';
@@ -12,10 +13,14 @@ const exportBatch = 500;
 export class AuditReader {
   constructor(private readonly database: DataSource) {}
 
-  /** Newest first. */
-  async list(query: AuditQuery): Promise<Page<AuditRecord>> {
+  /**
+   * Newest first.
+   *
+   * @param visible rigs whose entries may be shown; entries about no rig are for those who reach all
+   */
+  async list(query: AuditQuery, visible: RigScope): Promise<Page<AuditRecord>> {
     const before = afterKey(query);
-    const found = this.filtered(query)
+    const found = this.filtered(query, visible)
       .orderBy('entry.id', 'DESC')
       .take(query.limit + 1);
     if (before !== null) found.andWhere('entry.id < :before', { before: Number(before) });
@@ -23,10 +28,10 @@ export class AuditReader {
   }
 
   /** All entries that match, oldest first, a batch at a time. */
-  async *all(filter: AuditFilter): AsyncGenerator<AuditRecord> {
+  async *all(filter: AuditFilter, visible: RigScope): AsyncGenerator<AuditRecord> {
     let last = 0;
     for (;;) {
-      const batch = await this.filtered(filter)
+      const batch = await this.filtered(filter, visible)
         .andWhere('entry.id > :last', { last })
         .orderBy('entry.id', 'ASC')
         .take(exportBatch)
@@ -41,9 +46,10 @@ export class AuditReader {
     return verifyAudit(this.database);
   }
 
-  private filtered(filter: AuditFilter): SelectQueryBuilder<AuditEntry> {
+  private filtered(filter: AuditFilter, visible: RigScope): SelectQueryBuilder<AuditEntry> {
     const { rigId, account, action, subject, from, to, text } = filter;
     const found = this.database.getRepository(AuditEntry).createQueryBuilder('entry').where('1 = 1');
+    if (visible !== null) found.andWhere('entry.rigId IN (:...visible)', { visible });
     if (rigId !== undefined) found.andWhere('entry.rigId = :rigId', { rigId });
     if (account !== undefined) found.andWhere('entry.account = :account', { account });
     if (action !== undefined)

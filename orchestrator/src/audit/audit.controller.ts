@@ -2,6 +2,7 @@ import { Readable } from 'node:stream';
 import { Controller, Get, Query, StreamableFile } from '@nestjs/common';
 import { ApiOkResponse, ApiOperation, ApiProduces, ApiTags } from '@nestjs/swagger';
 import { Roles } from '../auth/access.decorator.js';
+import { VisibleRigs, type RigScope } from '../auth/rig-scope.js';
 import type { Page } from '../paging/page.js';
 import { auditCsvHeader, auditCsvLine } from './audit-csv.js';
 import { AuditReader } from './audit-reader.service.js';
@@ -25,8 +26,11 @@ export class AuditController {
   @Roles('administrator', 'safety-officer')
   @ApiOperation({ summary: 'Searches the audit log, newest first.' })
   @ApiOkResponse({ standardSchema: auditPageSchema })
-  list(@Query({ schema: auditQuerySchema }) query: AuditQuery): Promise<Page<AuditRecord>> {
-    return this.reader.list(query);
+  list(
+    @Query({ schema: auditQuerySchema }) query: AuditQuery,
+    @VisibleRigs() visible: RigScope,
+  ): Promise<Page<AuditRecord>> {
+    return this.reader.list(query, visible);
   }
 
   @Get('verification')
@@ -46,16 +50,19 @@ export class AuditController {
   @ApiOperation({ summary: 'Exports the entries that match as CSV (RFC 4180), oldest first.' })
   @ApiProduces('text/csv')
   @ApiOkResponse({ content: { 'text/csv': { schema: { type: 'string' } } } })
-  export(@Query({ schema: auditFilterSchema }) filter: AuditFilter): StreamableFile {
+  export(
+    @Query({ schema: auditFilterSchema }) filter: AuditFilter,
+    @VisibleRigs() visible: RigScope,
+  ): StreamableFile {
     const disposition = 'attachment; filename="audit.csv"';
-    return new StreamableFile(Readable.from(this.lines(filter)), {
+    return new StreamableFile(Readable.from(this.lines(filter, visible)), {
       type: 'text/csv; charset=utf-8',
       disposition,
     });
   }
 
-  private async *lines(filter: AuditFilter): AsyncGenerator<string> {
+  private async *lines(filter: AuditFilter, visible: RigScope): AsyncGenerator<string> {
     yield auditCsvHeader;
-    for await (const entry of this.reader.all(filter)) yield auditCsvLine(entry);
+    for await (const entry of this.reader.all(filter, visible)) yield auditCsvLine(entry);
   }
 }

@@ -1,26 +1,34 @@
-import { Injectable, Logger, type ExecutionContext } from '@nestjs/common';
+import { Injectable, Logger, type CanActivate, type ExecutionContext } from '@nestjs/common';
 import { Reflector } from '@nestjs/core';
-import { AuthGuard } from '@nestjs/passport';
 import { DomainError, type Role } from '@cresthold/shared';
 import type { Request } from 'express';
-import { ACCESS, type Access } from './access.decorator.js';
-import { sessionStrategyName } from './session.strategy.js';
+import { ACCESS, EMERGENCY, REAUTHENTICATION, type Access } from './access.decorator.js';
+import { isInScope, rigScopeOf, type RigScope } from './rig-scope.js';
+import { RigsOfRequest } from './rigs-of-request.js';
+import { SessionsService, type LiveSession } from './sessions.service.js';
 import type { SignedInUser } from './signed-in-user.js';
 
-/** Lets a request through only where its route's statement allows its sender; no statement, no way in. */
+/** A page sends it with what it asks for by itself while nobody is at it. */
+export const unattendedHeader = 'x-unattended';
+
+type Authenticated = Request & { user: SignedInUser; rigScope: RigScope };
+
+/**
+ * Lets a request through only where its route's statement allows its sender, on the rigs that it is about;
+ * no statement, no way in.
+ */
 @Injectable()
-export class RolesGuard extends AuthGuard(sessionStrategyName) {
+export class RolesGuard implements CanActivate {
   private readonly logger = new Logger(RolesGuard.name);
 
-  constructor(private readonly reflector: Reflector) {
-    super();
-  }
+  constructor(
+    private readonly reflector: Reflector,
+    private readonly sessions: SessionsService,
+    private readonly rigs: RigsOfRequest,
+  ) {}
 
-  override async canActivate(context: ExecutionContext): Promise<boolean> {
-    const access = this.reflector.getAllAndOverride<Access[] | undefined>(ACCESS, [
-      context.getHandler(),
-      context.getClass(),
-    ]);
+  async canActivate(context: ExecutionContext): Promise<boolean> {
+    const access = this.stated<Access[]>(ACCESS, context);
     if (access === undefined) {
       this.logger.error(`${context.getClass().name}.${context.getHandler().name} states no roles: refused.`);
       throw new DomainError('auth.forbidden');
@@ -28,16 +36,46 @@ export class RolesGuard extends AuthGuard(sessionStrategyName) {
     if (access.includes('anyone')) return true;
     // A socket was authenticated at its handshake and is told apart there.
     if (context.getType() === 'ws') return access.includes('signed-in');
-    await super.canActivate(context);
-    const { user } = context.switchToHttp().getRequest<Request & { user: SignedInUser }>();
-    if (!isAllowed(access, user.roles)) throw new DomainError('auth.forbidden', refusal(access));
+    const request = context.switchToHttp().getRequest<Authenticated>();
+    const isEmergency = this.stated<boolean>(EMERGENCY, context) === true;
+    const session = await this.sessionOf(request, isEmergency);
+    request.user = session.user;
+    if (!isAllowed(access, session.user.roles)) throw new DomainError('auth.forbidden', refusal(access));
+    request.rigScope = rigScopeOf(session.user, access);
+    if (!isEmergency) await this.refuseForeignRigs(request);
+    if (this.stated<boolean>(REAUTHENTICATION, context) === true && !session.isElevated) {
+      throw new DomainError('auth.reauthentication-needed');
+    }
     return true;
   }
 
-  override handleRequest<User>(error: unknown, user: User | false): User {
-    if (error !== null && error !== undefined) throw error as Error;
-    if (user === false) throw new DomainError('auth.required');
-    return user;
+  private stated<T>(key: string, context: ExecutionContext): T | undefined {
+    return this.reflector.getAllAndOverride<T | undefined>(key, [context.getHandler(), context.getClass()]);
+  }
+
+  private async sessionOf(request: Request, isEmergency: boolean): Promise<LiveSession> {
+    const session = await this.sessions.ofCookieHeader(request.headers.cookie);
+    if (session === null) throw new DomainError('auth.required');
+    if (session.isIdle && !isEmergency) {
+      throw new DomainError('auth.required', 'Nobody has acted here for a while: sign in again.');
+    }
+    // A stop pressed at an unattended page wakes no session up.
+    if (!session.isIdle && request.headers[unattendedHeader] === undefined) {
+      this.sessions.touch(session.user.sessionId);
+    }
+    return session;
+  }
+
+  /** @throws auth.foreign-rig */
+  private async refuseForeignRigs(request: Authenticated): Promise<void> {
+    const { rigScope } = request;
+    if (rigScope === null) return;
+    const about = await this.rigs.find(request);
+    if (about === null) {
+      this.logger.error(`The rig of ${request.method} ${request.path} cannot be told: refused.`);
+      throw new DomainError('auth.foreign-rig');
+    }
+    if (about.some((rigId) => !isInScope(rigScope, rigId))) throw new DomainError('auth.foreign-rig');
   }
 }
 

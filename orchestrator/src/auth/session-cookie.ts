@@ -2,20 +2,23 @@ import type { CookieOptions } from 'express';
 
 export const sessionCookieName = 'cresthold_session';
 
-/** A shift and a half: nobody is signed out in the middle of a run's shift. */
-export const sessionLifetimeS = 12 * 3600;
+/** What of the configuration the cookie depends on. */
+export interface CookieConfig {
+  isHttps: boolean;
+  sessionMaxS: number;
+}
 
-export function sessionCookieOptions(isHttps: boolean): CookieOptions {
+export function sessionCookieOptions({ isHttps, sessionMaxS }: CookieConfig): CookieOptions {
   return {
     httpOnly: true,
     sameSite: 'strict',
     secure: isHttps,
     path: '/',
-    maxAge: sessionLifetimeS * 1000,
+    maxAge: sessionMaxS * 1000,
   };
 }
 
-/** The session in a Cookie header; null where there is none. */
+/** The token of the session in a Cookie header; null where there is none. */
 export function readSessionCookie(header: string | undefined): string | null {
   for (const part of (header ?? '').split(';')) {
     const [name, value] = part.trim().split('=', 2);

@@ -25,6 +25,10 @@ const environmentSchema = z.object({
   CRESTHOLD_SMTP_URL: z.url({ protocol: /^smtps?$/ }).optional(),
   CRESTHOLD_MAIL_FROM: z.email().optional(),
   CRESTHOLD_MAIL_TO: addresses.default([]),
+  CRESTHOLD_SESSION_IDLE_MINUTES: z.coerce.number().min(1).max(1440).default(30),
+  CRESTHOLD_SESSION_HOURS: z.coerce.number().min(0.1).max(24).default(12),
+  CRESTHOLD_SECOND_FACTOR: z.enum(['optional', 'approvers']).default('optional'),
+  CRESTHOLD_STATION: z.string().trim().max(200).default(''),
   CRESTHOLD_PLUGINS: z.string().transform(listed).default([]),
 });
 
@@ -50,6 +54,14 @@ export interface Config {
   proxies: number;
   /** Null where no mail is to be sent. */
   mail: MailConfig | null;
+  /** Without an act of the person a session ends after this long, s. */
+  sessionIdleS: number;
+  /** A session ends this long after sign-in, s. */
+  sessionMaxS: number;
+  /** True where whoever approves envelopes or resets trips must have a second factor. */
+  isSecondFactorNeeded: boolean;
+  /** Name of the station; no word of it may make a password. */
+  station: string;
   /** Adapters from outside: absolute paths of folders or files, or names of installed packages. */
   plugIns: string[];
 }
@@ -83,6 +95,10 @@ export function parseConfig(environment: NodeJS.ProcessEnv, defaultConsoleFolder
     isHttps: env.CRESTHOLD_HTTPS === 'on',
     proxies: env.CRESTHOLD_PROXIES,
     mail: mailOf(env),
+    sessionIdleS: env.CRESTHOLD_SESSION_IDLE_MINUTES * 60,
+    sessionMaxS: env.CRESTHOLD_SESSION_HOURS * 3600,
+    isSecondFactorNeeded: env.CRESTHOLD_SECOND_FACTOR === 'approvers',
+    station: env.CRESTHOLD_STATION,
     plugIns: env.CRESTHOLD_PLUGINS.map((plugIn) => (isPath(plugIn) ? resolve(plugIn) : plugIn)),
   };
 }

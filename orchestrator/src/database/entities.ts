@@ -1,4 +1,6 @@
 import { AuditEntry } from '../audit/entities/audit-entry.entity.js';
+import { SecondFactorEntity } from '../auth/entities/second-factor.entity.js';
+import { SessionEntity } from '../auth/entities/session.entity.js';
 import { CalibrationCertificateEntity } from '../calibrations/entities/calibration-certificate.entity.js';
 import { CalibrationEntity } from '../calibrations/entities/calibration.entity.js';
 import { EnvelopeEntity } from '../envelopes/entities/envelope.entity.js';
@@ -22,5 +24,7 @@ export const entities = [
   RigEntity,
   RigStateEntity,
   RunEntity,
+  SecondFactorEntity,
+  SessionEntity,
   UserEntity,
 ];

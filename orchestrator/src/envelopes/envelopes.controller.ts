@@ -1,7 +1,7 @@
 import { Body, Controller, Get, HttpCode, Param, Post, Put, Query, Res } from '@nestjs/common';
 import { ApiCreatedResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
-import { Roles } from '../auth/access.decorator.js';
+import { NeedsReauthentication, Roles } from '../auth/access.decorator.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { ApiIfMatch, IfMatch, OptionalIfMatch, setEtag } from '../documents/etag.js';
 import { setLocation } from '../http/set-location.js';
@@ -92,6 +92,7 @@ export class EnvelopesController {
   @Post('envelopes/:id/approve')
   @HttpCode(200)
   @Roles('safety-officer')
+  @NeedsReauthentication()
   @ApiIfMatch(false)
   @ApiOperation({ summary: 'Puts a submitted envelope in force; never its author.' })
   @ApiOkResponse({ standardSchema: envelopeSchema })

@@ -2,6 +2,7 @@ import { Injectable } from '@nestjs/common';
 import { InjectRepository } from '@nestjs/typeorm';
 import { DomainError } from '@cresthold/shared';
 import { LessThan, MoreThan, type Repository } from 'typeorm';
+import type { RigCondition } from '../auth/rig-scope.js';
 import { ExperimentVersionEntity } from './entities/experiment-version.entity.js';
 import { ExperimentEntity } from './entities/experiment.entity.js';
 
@@ -20,8 +21,8 @@ export class ExperimentStore {
     return experiment;
   }
 
-  /** Experiments in the order of their making, after `afterId`; of one rig where `rigId` is given. */
-  list(rigId: string | undefined, afterId: string, limit: number): Promise<ExperimentEntity[]> {
+  /** Experiments in the order of their making, after `afterId`; of the rigs that `rigId` allows. */
+  list(rigId: RigCondition, afterId: string, limit: number): Promise<ExperimentEntity[]> {
     const after = { id: MoreThan(afterId) };
     return this.experiments.find({
       where: rigId === undefined ? after : { ...after, rigId },

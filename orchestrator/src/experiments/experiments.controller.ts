@@ -2,6 +2,7 @@ import { Body, Controller, Get, HttpCode, Param, Post, Query, Res } from '@nestj
 import { ApiCreatedResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
 import { Roles } from '../auth/access.decorator.js';
+import { VisibleRigs, type RigScope } from '../auth/rig-scope.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { setLocation } from '../http/set-location.js';
 import { pageQuerySchema, type Page, type PageQuery } from '../paging/page.js';
@@ -39,8 +40,11 @@ export class ExperimentsController {
   @Roles('signed-in')
   @ApiOperation({ summary: 'Lists experiments, of one rig or of all.' })
   @ApiOkResponse({ standardSchema: experimentPageSchema })
-  list(@Query({ schema: experimentQuerySchema }) query: ExperimentQuery): Promise<Page<Experiment>> {
-    return this.experiments.list(query);
+  list(
+    @Query({ schema: experimentQuerySchema }) query: ExperimentQuery,
+    @VisibleRigs() visible: RigScope,
+  ): Promise<Page<Experiment>> {
+    return this.experiments.list(query, visible);
   }
 
   @Post()

@@ -2,6 +2,7 @@ import { Injectable } from '@nestjs/common';
 import { DomainError, type ExperimentContent } from '@cresthold/shared';
 import type { EntityManager } from 'typeorm';
 import { AuditService } from '../audit/audit.service.js';
+import { rigCondition, type RigScope } from '../auth/rig-scope.js';
 import { insertRow, updateRow } from '../database/rows.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { refuseFaults } from '../documents/prefix-faults.js';
@@ -31,8 +32,10 @@ export class ExperimentsService {
     private readonly audit: AuditService,
   ) {}
 
-  async list(query: ExperimentQuery): Promise<Page<Experiment>> {
-    const rows = await this.store.list(query.rigId, afterKey(query) ?? '', query.limit + 1);
+  /** @param visible rigs whose documents may be shown */
+  async list(query: ExperimentQuery, visible: RigScope): Promise<Page<Experiment>> {
+    const rigId = rigCondition(query.rigId, visible);
+    const rows = await this.store.list(rigId, afterKey(query) ?? '', query.limit + 1);
     return toPage(rows, query.limit, (row) => row.id, toExperiment);
   }
 

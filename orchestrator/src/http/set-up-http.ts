@@ -1,12 +1,11 @@
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { certificateBytesMax, certificateTypes } from '../calibrations/certificates.service.js';
 import type { Config } from '../config/config.schema.js';
+import { apiPrefix } from './api-prefix.js';
 import { serveOpenApi } from './open-api.js';
 import { refuseElsewhere, serveConsole } from './serve-console.js';
 import { sameOrigin } from './same-origin.js';
 import { securityHeaders } from './security-headers.js';
-
-export const apiPrefix = 'api/v1';
 
 /** A rig of 200 channels or a graph of 300 steps fits many times. */
 const bodyLimit = '4mb';

@@ -1,5 +1,6 @@
 import { toLiveSchema, type FromLive } from '@cresthold/shared';
 import type { WebSocket } from 'ws';
+import { isInScope, type RigScope } from '../auth/rig-scope.js';
 
 /** Bytes waiting in a socket above which telemetry is dropped; its gap shows in its sequence number. */
 const dropAboveBytes = 256 * 1024;
@@ -12,10 +13,14 @@ export class LiveClient {
   isAlive = true;
   private readonly rigIds = new Set<string>();
 
-  /** @param cookieHeader of the handshake: the session is looked at again while the socket is open */
+  /**
+   * @param sessionId session of the handshake, which is looked at again while the socket is open
+   * @param scope rigs that it may hear of
+   */
   constructor(
     private readonly socket: WebSocket,
-    readonly cookieHeader: string | undefined,
+    readonly sessionId: string,
+    public scope: RigScope,
   ) {
     socket.on('pong', () => (this.isAlive = true));
     socket.on('message', (data, isBinary) => this.receive(data, isBinary));
@@ -24,7 +29,11 @@ export class LiveClient {
   }
 
   isSubscribed(rigId: string): boolean {
-    return this.rigIds.has(rigId);
+    return this.rigIds.has(rigId) && this.mayHearOf(rigId);
+  }
+
+  mayHearOf(rigId: string): boolean {
+    return isInScope(this.scope, rigId);
   }
 
   /** Sends what must arrive; a reader too slow for it is disconnected, and comes back to a fresh status. */
@@ -60,7 +69,10 @@ export class LiveClient {
       this.send(JSON.stringify({ type: 'error', message: text } satisfies FromLive));
       return;
     }
-    if (message.type === 'subscribe') this.rigIds.add(message.rigId);
+    if (message.type === 'subscribe' && !this.mayHearOf(message.rigId)) {
+      const text = 'Your role reaches other rigs, not this one.';
+      this.send(JSON.stringify({ type: 'error', message: text } satisfies FromLive));
+    } else if (message.type === 'subscribe') this.rigIds.add(message.rigId);
     else this.rigIds.delete(message.rigId);
   }
 }

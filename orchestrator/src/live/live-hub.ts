@@ -19,9 +19,10 @@ export class LiveHub {
     return [...this.clients];
   }
 
-  toAll(message: FromLive): void {
+  /** To everybody who reaches the rig; never dropped. */
+  toAll(rigId: string, message: FromLive): void {
     const text = JSON.stringify(message);
-    for (const client of this.clients) client.send(text);
+    for (const client of this.clients) if (client.mayHearOf(rigId)) client.send(text);
   }
 
   /** To those who subscribed to the rig; never dropped. */

@@ -18,7 +18,7 @@ export class LiveRelay implements OnModuleInit, OnModuleDestroy {
   onModuleInit(): void {
     const { feed, hub, records } = this;
     this.subscriptions.push(
-      feed.statuses.subscribe((status) => hub.toAll({ type: 'rig-status', status })),
+      feed.statuses.subscribe((status) => hub.toAll(status.rigId, { type: 'rig-status', status })),
       feed.telemetry.subscribe((telemetry) => hub.telemetry(telemetry)),
       feed.traces.subscribe((trace) => hub.trace(trace)),
       feed.runEvents.subscribe(({ rigId, runId, event }) =>

@@ -11,8 +11,10 @@ import {
 import { HttpAdapterHost } from '@nestjs/core';
 import type { FromLive } from '@cresthold/shared';
 import { WebSocketServer, type WebSocket } from 'ws';
+import { rigScopeOf, type RigScope } from '../auth/rig-scope.js';
 import { SessionsService } from '../auth/sessions.service.js';
-import { apiPrefix } from '../http/set-up-http.js';
+import type { SignedInUser } from '../auth/signed-in-user.js';
+import { apiPrefix } from '../http/api-prefix.js';
 import { isFromHere } from '../http/same-origin.js';
 import { RigHostsService } from '../rig-hosts/rig-hosts.service.js';
 import { LiveClient } from './live-client.js';
@@ -66,18 +68,19 @@ export class LiveServer implements OnApplicationBootstrap, OnModuleDestroy {
     }
     const { cookie } = request.headers;
     const isOurPage = isFromHere({ origin: request.headers.origin, host: request.headers.host });
-    const user = isOurPage ? await this.sessions.userOfCookieHeader(cookie) : null;
-    if (user === null) return refuse(socket, '401 Unauthorized');
+    const session = isOurPage ? await this.sessions.ofCookieHeader(cookie) : null;
+    if (session === null || session.isIdle) return refuse(socket, '401 Unauthorized');
     this.sockets.handleUpgrade(request, socket, head, (opened) => {
-      this.open(opened, cookie).catch(() => opened.terminate());
+      this.open(opened, session.user).catch(() => opened.terminate());
     });
   }
 
-  private async open(socket: WebSocket, cookie: string | undefined): Promise<void> {
-    const client = new LiveClient(socket, cookie);
+  private async open(socket: WebSocket, user: SignedInUser): Promise<void> {
+    const client = new LiveClient(socket, user.sessionId, scopeOf(user));
     socket.on('close', () => this.hub.remove(client));
     this.hub.add(client);
     for (const status of await this.hosts.statuses()) {
+      if (!client.mayHearOf(status.rigId)) continue;
       client.send(JSON.stringify({ type: 'rig-status', status } satisfies FromLive));
     }
   }
@@ -86,10 +89,17 @@ export class LiveServer implements OnApplicationBootstrap, OnModuleDestroy {
   private async care(): Promise<void> {
     for (const client of this.hub.all()) {
       if (!client.ping()) continue;
-      const user = await this.sessions.userOfCookieHeader(client.cookieHeader).catch(() => null);
-      if (user === null) client.close(sessionEndedCode, 'The session has ended: sign in again.');
+      const session = await this.sessions.ofId(client.sessionId).catch(() => null);
+      if (session === null || session.isIdle) {
+        client.close(sessionEndedCode, 'The session has ended: sign in again.');
+      } else client.scope = scopeOf(session.user);
     }
   }
+}
+
+/** Whoever is signed in may listen, to the rigs that any of his roles reaches. */
+function scopeOf(user: SignedInUser): RigScope {
+  return rigScopeOf(user, ['signed-in']);
 }
 
 function refuse(socket: Duplex, status: string): void {

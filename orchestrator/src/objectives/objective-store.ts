@@ -2,6 +2,7 @@ import { Injectable } from '@nestjs/common';
 import { InjectRepository } from '@nestjs/typeorm';
 import { DomainError } from '@cresthold/shared';
 import { MoreThan, type Repository } from 'typeorm';
+import type { RigCondition } from '../auth/rig-scope.js';
 import { ObjectiveEntity } from './entities/objective.entity.js';
 
 /** Reads objectives. */
@@ -20,8 +21,8 @@ export class ObjectiveStore {
     return objective;
   }
 
-  /** Objectives in the order of their making, after `afterId`; of one rig where `rigId` is given. */
-  list(rigId: string | undefined, afterId: string, limit: number): Promise<ObjectiveEntity[]> {
+  /** Objectives in the order of their making, after `afterId`; of the rigs that `rigId` allows. */
+  list(rigId: RigCondition, afterId: string, limit: number): Promise<ObjectiveEntity[]> {
     const after = { id: MoreThan(afterId) };
     return this.objectives.find({
       where: rigId === undefined ? after : { ...after, rigId },

@@ -2,6 +2,7 @@ import { Body, Controller, Get, Param, Post, Put, Query, Res } from '@nestjs/com
 import { ApiCreatedResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
 import { Roles } from '../auth/access.decorator.js';
+import { VisibleRigs, type RigScope } from '../auth/rig-scope.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { ApiIfMatch, IfMatch, setEtag } from '../documents/etag.js';
 import { setLocation } from '../http/set-location.js';
@@ -28,8 +29,11 @@ export class ObjectivesController {
   @Roles('signed-in')
   @ApiOperation({ summary: 'Lists objectives, of one rig or of all.' })
   @ApiOkResponse({ standardSchema: objectivePageSchema })
-  list(@Query({ schema: objectiveQuerySchema }) query: ObjectiveQuery): Promise<Page<Objective>> {
-    return this.objectives.list(query);
+  list(
+    @Query({ schema: objectiveQuerySchema }) query: ObjectiveQuery,
+    @VisibleRigs() visible: RigScope,
+  ): Promise<Page<Objective>> {
+    return this.objectives.list(query, visible);
   }
 
   @Get(':id')

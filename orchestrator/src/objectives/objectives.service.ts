@@ -1,6 +1,7 @@
 import { Injectable } from '@nestjs/common';
 import { compileObjective, type FieldFault, type ObjectiveContent, type Rig } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
+import { rigCondition, type RigScope } from '../auth/rig-scope.js';
 import { insertRow, updateRow } from '../database/rows.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { requireRevision } from '../documents/etag.js';
@@ -21,8 +22,10 @@ export class ObjectivesService {
     private readonly audit: AuditService,
   ) {}
 
-  async list(query: ObjectiveQuery): Promise<Page<Objective>> {
-    const rows = await this.store.list(query.rigId, afterKey(query) ?? '', query.limit + 1);
+  /** @param visible rigs whose documents may be shown */
+  async list(query: ObjectiveQuery, visible: RigScope): Promise<Page<Objective>> {
+    const rigId = rigCondition(query.rigId, visible);
+    const rows = await this.store.list(rigId, afterKey(query) ?? '', query.limit + 1);
     return toPage(rows, query.limit, (row) => row.id, toObjective);
   }
 

@@ -3,6 +3,7 @@ import { Inject, Injectable, Logger } from '@nestjs/common';
 import { DomainError, endedStatuses, type RunStatus, type Verdict } from '@cresthold/shared';
 import { Subject } from 'rxjs';
 import { DataSource, IsNull, LessThan, Not, type FindOptionsWhere } from 'typeorm';
+import type { RigCondition } from '../auth/rig-scope.js';
 import { CONFIG } from '../config/config.module.js';
 import type { Config } from '../config/config.schema.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
@@ -20,7 +21,7 @@ export interface RunChange {
 }
 
 export interface RunFilter {
-  rigId?: string | undefined;
+  rigId?: RigCondition;
   status?: RunStatus | undefined;
 }
 

@@ -1,7 +1,7 @@
 import { Body, Controller, Get, HttpCode, Param, Post, Put } from '@nestjs/common';
 import { ApiBody, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { RigStatus } from '@cresthold/shared';
-import { Roles } from '../auth/access.decorator.js';
+import { Emergency, NeedsReauthentication, Roles } from '../auth/access.decorator.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { rigStatusDtoSchema } from '../rigs/dto/rig.dto.js';
 import {
@@ -28,6 +28,7 @@ export class RigCommandsController {
   @Post('emergency-stop')
   @HttpCode(200)
   @Roles('signed-in')
+  @Emergency()
   @ApiOperation({
     summary: 'Stops every rig at once and latches it. A software stop: no substitute for the hard-wired one.',
   })
@@ -79,6 +80,7 @@ export class RigCommandsController {
   @Post(':rigId/emergency-stop')
   @HttpCode(200)
   @Roles('signed-in')
+  @Emergency()
   @ApiOperation({
     summary: 'Stops the rig at once and latches it. A software stop: no substitute for the hard-wired one.',
   })
@@ -95,6 +97,7 @@ export class RigCommandsController {
   @Post(':rigId/reset')
   @HttpCode(200)
   @Roles('safety-officer')
+  @NeedsReauthentication()
   @ApiOperation({ summary: 'Clears a latched trip whose cause is gone; moves nothing.' })
   @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   reset(

@@ -1,7 +1,8 @@
 import { Injectable } from '@nestjs/common';
 import { InjectRepository } from '@nestjs/typeorm';
 import { DomainError, type Rig, type Trip } from '@cresthold/shared';
-import { MoreThan, type Repository } from 'typeorm';
+import { And, In, MoreThan, type Repository } from 'typeorm';
+import type { RigScope } from '../auth/rig-scope.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { RigStateEntity, type Lockout } from './entities/rig-state.entity.js';
 import { RigEntity } from './entities/rig.entity.js';
@@ -32,9 +33,11 @@ export class RigStore {
     return rig;
   }
 
-  /** Rigs in the order of their ids, after `afterId`. */
-  list(afterId: string, limit: number): Promise<RigEntity[]> {
-    return this.rigs.find({ where: { id: MoreThan(afterId) }, order: { id: 'ASC' }, take: limit });
+  /** Rigs in the order of their ids, after `afterId`; of those that are `visible`. */
+  list(afterId: string, limit: number, visible: RigScope = null): Promise<RigEntity[]> {
+    const after = MoreThan(afterId);
+    const id = visible === null ? after : And(after, In([...visible]));
+    return this.rigs.find({ where: { id }, order: { id: 'ASC' }, take: limit });
   }
 
   /** The content of every rig, for whoever starts the hosts. */

@@ -3,6 +3,7 @@ import { ApiCreatedResponse, ApiOkResponse, ApiOperation, ApiTags } from '@nestj
 import type { Rig } from '@cresthold/shared';
 import type { Response } from 'express';
 import { Roles } from '../auth/access.decorator.js';
+import { VisibleRigs, type RigScope } from '../auth/rig-scope.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { ApiIfMatch, IfMatch, setEtag } from '../documents/etag.js';
 import { setLocation } from '../http/set-location.js';
@@ -20,8 +21,11 @@ export class RigsController {
   @Roles('signed-in')
   @ApiOperation({ summary: 'Lists rigs with their status.' })
   @ApiOkResponse({ standardSchema: rigPageSchema })
-  list(@Query({ schema: pageQuerySchema }) query: PageQuery): Promise<Page<RigDocument>> {
-    return this.rigs.list(query);
+  list(
+    @Query({ schema: pageQuerySchema }) query: PageQuery,
+    @VisibleRigs() visible: RigScope,
+  ): Promise<Page<RigDocument>> {
+    return this.rigs.list(query, visible);
   }
 
   @Get(':rigId')

@@ -2,6 +2,7 @@ import { Injectable } from '@nestjs/common';
 import { AdapterRegistry } from '@cresthold/adapters';
 import { changesMeaning, DomainError, type Rig } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
+import type { RigScope } from '../auth/rig-scope.js';
 import { UnfitCalibrations } from '../calibrations/unfit-calibrations.js';
 import { insertRow, updateRow } from '../database/rows.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
@@ -30,8 +31,8 @@ export class RigsService {
     private readonly adapters: AdapterRegistry,
   ) {}
 
-  async list(query: PageQuery): Promise<Page<RigDocument>> {
-    const rows = await this.store.list(afterKey(query) ?? '', query.limit + 1);
+  async list(query: PageQuery, visible: RigScope): Promise<Page<RigDocument>> {
+    const rows = await this.store.list(afterKey(query) ?? '', query.limit + 1, visible);
     return toPage(
       rows,
       query.limit,

@@ -2,6 +2,7 @@ import { Body, Controller, Get, HttpCode, Param, Post, Query, Res } from '@nestj
 import { ApiAcceptedResponse, ApiHeader, ApiOkResponse, ApiOperation, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
 import { Roles } from '../auth/access.decorator.js';
+import { VisibleRigs, type RigScope } from '../auth/rig-scope.js';
 import { CurrentUser, type SignedInUser } from '../auth/signed-in-user.js';
 import { setLocation } from '../http/set-location.js';
 import type { Page } from '../paging/page.js';
@@ -32,8 +33,11 @@ export class RunsController {
   @Roles('signed-in')
   @ApiOperation({ summary: 'List runs, newest first.' })
   @ApiOkResponse({ standardSchema: runPageSchema })
-  list(@Query({ schema: runQuerySchema }) query: RunQuery): Promise<Page<Run>> {
-    return this.runs.list(query);
+  list(
+    @Query({ schema: runQuerySchema }) query: RunQuery,
+    @VisibleRigs() visible: RigScope,
+  ): Promise<Page<Run>> {
+    return this.runs.list(query, visible);
   }
 
   @Get(':id')

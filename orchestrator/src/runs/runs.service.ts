@@ -1,6 +1,7 @@
 import { Injectable } from '@nestjs/common';
 import { DomainError, type HostCommand, type RunColumn, type RunEvent } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
+import { rigCondition, type RigScope } from '../auth/rig-scope.js';
 import { afterKey, toPage, type Page } from '../paging/page.js';
 import type { RunEntity } from '../recordings/entities/run.entity.js';
 import { RunReader } from '../recordings/run-reader.service.js';
@@ -20,9 +21,14 @@ export class RunsService {
     private readonly audit: AuditService,
   ) {}
 
-  /** Newest first. */
-  async list(query: RunQuery): Promise<Page<Run>> {
-    const rows = await this.records.list(query, afterKey(query), query.limit + 1);
+  /**
+   * Newest first.
+   *
+   * @param visible rigs whose runs may be shown
+   */
+  async list(query: RunQuery, visible: RigScope): Promise<Page<Run>> {
+    const filter = { status: query.status, rigId: rigCondition(query.rigId, visible) };
+    const rows = await this.records.list(filter, afterKey(query), query.limit + 1);
     return toPage(rows, query.limit, (run) => run.id, toRun);
   }
 

@@ -3,8 +3,15 @@ import { APP_FILTER, APP_GUARD } from '@nestjs/core';
 import { Test } from '@nestjs/testing';
 import { roles, type Role } from '@cresthold/shared';
 import request from 'supertest';
-import { accessExtension, type Access } from '../../src/auth/access.decorator.js';
+import {
+  accessExtension,
+  emergencyExtension,
+  reauthenticationExtension,
+  type Access,
+} from '../../src/auth/access.decorator.js';
+import { RigsOfRequest } from '../../src/auth/rigs-of-request.js';
 import { RolesGuard } from '../../src/auth/roles.guard.js';
+import { SessionsService } from '../../src/auth/sessions.service.js';
 import { openApiDocument } from '../../src/http/open-api.js';
 import { ProblemDetailsFilter } from '../../src/problem-details/problem-details.filter.js';
 import { createTestServer, type TestServer } from '../server/create-test-server.js';
@@ -16,7 +23,16 @@ const expected: Record<string, Access[]> = {
   'GET /audit': ['administrator', 'safety-officer'],
   'GET /audit/export': ['administrator', 'safety-officer'],
   'GET /audit/verification': ['administrator', 'safety-officer'],
+  'POST /auth/password': ['signed-in'],
+  'POST /auth/reauthenticate': ['signed-in'],
+  'GET /auth/second-factor': ['signed-in'],
+  'POST /auth/second-factor': ['signed-in'],
+  'POST /auth/second-factor/confirm': ['signed-in'],
+  'POST /auth/second-factor/remove': ['signed-in'],
   'GET /auth/session': ['signed-in'],
+  'DELETE /auth/sessions': ['signed-in'],
+  'GET /auth/sessions': ['signed-in'],
+  'DELETE /auth/sessions/{sessionId}': ['signed-in'],
   'POST /auth/sign-in': ['anyone'],
   'POST /auth/sign-out': ['signed-in'],
   'GET /calibrations/{id}': ['signed-in'],
@@ -30,11 +46,11 @@ const expected: Record<string, Access[]> = {
   'POST /envelopes/{id}/submit': ['test-engineer', 'safety-officer'],
   'GET /experiments': ['signed-in'],
   'POST /experiments': ['test-engineer'],
+  'POST /experiments/preflight': ['signed-in'],
   'GET /experiments/{id}': ['signed-in'],
   'GET /experiments/{id}/versions': ['signed-in'],
   'POST /experiments/{id}/versions': ['test-engineer'],
   'GET /experiments/{id}/versions/{version}': ['signed-in'],
-  'POST /experiments/preflight': ['signed-in'],
   'GET /health': ['anyone'],
   'GET /objectives': ['signed-in'],
   'POST /objectives': ['test-engineer'],
@@ -76,6 +92,10 @@ const expected: Record<string, Access[]> = {
   'GET /users': ['administrator'],
   'POST /users': ['administrator'],
   'PATCH /users/{account}': ['administrator'],
+  'POST /users/{account}/second-factor/reset': ['administrator'],
+  'DELETE /users/{account}/sessions': ['administrator'],
+  'GET /users/{account}/sessions': ['administrator'],
+  'DELETE /users/{account}/sessions/{sessionId}': ['administrator'],
 };
 
 const methods = ['get', 'post', 'put', 'patch', 'delete'] as const;
@@ -85,6 +105,7 @@ interface Route {
   method: (typeof methods)[number];
   path: string;
   access: Access[];
+  operation: Record<string, unknown>;
 }
 
 function accessOf(operation: object | undefined): Access[] {
@@ -100,6 +121,7 @@ function routesOfDocument(server: TestServer): Route[] {
         method,
         path: path.replace('{version}', '1').replace(/\{\w+\}/g, 'none'),
         access: accessOf(item[method]),
+        operation: item[method] as unknown as Record<string, unknown>,
       })),
   );
 }
@@ -117,6 +139,20 @@ describe('access', () => {
   it('is stated in the document for every route as the API says', () => {
     const stated = Object.fromEntries(routes.map(({ name, access }) => [name, access]));
     expect(stated).toEqual(expected);
+  });
+
+  it('names the routes that stop, which no limit holds up, and those that need the password again', () => {
+    const marked = (extension: string) =>
+      routes.filter(({ operation }) => operation[extension] === true).map(({ name }) => name);
+    expect(marked(emergencyExtension).sort()).toEqual([
+      'POST /rigs/emergency-stop',
+      'POST /rigs/{rigId}/emergency-stop',
+    ]);
+    expect(marked(reauthenticationExtension).sort()).toEqual([
+      'POST /envelopes/{id}/approve',
+      'POST /rigs/{rigId}/reset',
+      'POST /users/{account}/second-factor/reset',
+    ]);
   });
 
   it('has every route of the server in the document', () => {
@@ -142,14 +178,14 @@ describe('access', () => {
   });
 
   it.each(roles)('lets the role %s do what it may and nothing else', async (role: Role) => {
+    let client = await server.as(`the-${role}`, role);
     for (const { name, method, path, access } of routes) {
       if (access.includes('anyone')) continue;
-      // A session of its own for each: signing out is among the routes.
-      const client = await server.as(`the-${role}`, role);
       const { status, body } = await client[method](path);
       const isAllowed = access.includes('signed-in') || access.includes(role);
       if (isAllowed) expect([name, [401, 403, 500].includes(status)]).toEqual([name, false]);
       else expect([name, status, body.code]).toEqual([name, 403, 'auth.forbidden']);
+      if (name === 'POST /auth/sign-out') client = await server.as(`the-${role}`, role);
     }
   });
 });
@@ -167,6 +203,8 @@ describe('a route that states no roles', () => {
     controllers: [ForgottenController],
     providers: [
       { provide: APP_GUARD, useClass: RolesGuard },
+      { provide: SessionsService, useValue: {} },
+      { provide: RigsOfRequest, useValue: {} },
       { provide: APP_FILTER, useClass: ProblemDetailsFilter },
     ],
   })

@@ -13,9 +13,14 @@ describe('signing in', () => {
 
   it('answers who it is and sets a cookie that no script and no other site can use', async () => {
     const answer = await signIn('engineer', testPassword).expect(200);
-    expect(answer.body).toEqual({ account: 'engineer', title: 'engineer', roles: ['test-engineer'] });
+    expect(answer.body).toEqual({
+      account: 'engineer',
+      title: 'engineer',
+      roles: ['test-engineer'],
+      rigLimits: [],
+    });
     const cookie = answer.headers['set-cookie']?.[0] ?? '';
-    expect(cookie).toMatch(/^cresthold_session=[\w-]+\.[\w-]+\.[\w-]+;/);
+    expect(cookie).toMatch(/^cresthold_session=[\w-]{43};/);
     expect(cookie).toContain('HttpOnly');
     expect(cookie).toContain('SameSite=Strict');
     expect(cookie).not.toContain('Secure');

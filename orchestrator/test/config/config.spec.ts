@@ -20,6 +20,10 @@ describe('the configuration', () => {
       isHttps: false,
       proxies: 0,
       mail: null,
+      sessionIdleS: 1800,
+      sessionMaxS: 43_200,
+      isSecondFactorNeeded: false,
+      station: '',
       plugIns: [],
     });
   });

@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import type { FromLive } from '@cresthold/shared';
 import type { WebSocket } from 'ws';
 import { airTrimRegister } from '../harness/bench-process.js';
-import { Station } from '../harness/station.js';
+import { password, Station } from '../harness/station.js';
 import { storySteps } from '../harness/story.js';
 import { until } from '../harness/until.js';
 import { seekExperiment } from './seek-experiment.js';
@@ -70,6 +70,10 @@ describe('the whole job over HTTP alone, on the real bench', () => {
     ids.envelope = draft.body.id;
     await chief.expect(200, 'POST', `envelopes/${ids.envelope}/submit`);
     const reason = 'Limits as commissioned.';
+    const early = await chief.expect(403, 'POST', `envelopes/${ids.envelope}/approve`, { reason });
+    expect(early.body.code).toBe('auth.reauthentication-needed');
+    await chief.reauthenticate(password);
+    await station.as('officer').reauthenticate(password);
     const own = await chief.expect(403, 'POST', `envelopes/${ids.envelope}/approve`, { reason });
     expect(own.body.code).toBe('envelope.own-draft');
     await station.as('engineer').expect(403, 'POST', `envelopes/${ids.envelope}/approve`, { reason });
@@ -250,6 +254,7 @@ describe('the whole job over HTTP alone, on the real bench', () => {
     expect((await engineer.expect(409, 'POST', `${rigPath}/moves`, move)).body.code).toBe('rig.tripped');
     const reason = 'Smoke came from the toaster.';
     await engineer.expect(403, 'POST', `${rigPath}/reset`, { reason });
+    await station.as('officer').reauthenticate(password);
     await station.as('officer').expect(400, 'POST', `${rigPath}/reset`, {});
     const reset = await until('reset', async () => {
       const answer = await station.as('officer').call('POST', `${rigPath}/reset`, { reason });

@@ -24,6 +24,12 @@ export class ApiClient {
     return client;
   }
 
+  /** Gives the password again: acts that need it are taken for the next minutes. */
+  async reauthenticate(password: string): Promise<void> {
+    const { headers } = await this.expect(200, 'POST', 'auth/reauthenticate', { password });
+    this.cookie = (headers.get('set-cookie') ?? '').split(';')[0] ?? '';
+  }
+
   async call(
     method: string,
     path: string,

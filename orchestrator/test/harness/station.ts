@@ -98,6 +98,7 @@ export class Station {
     const { body } = await this.as('engineer').expect(201, 'POST', path, { content });
     await this.as('engineer').expect(200, 'POST', `envelopes/${body.id}/submit`);
     const reason = 'Limits as commissioned.';
+    await this.as('officer').reauthenticate(password);
     await this.as('officer').expect(200, 'POST', `envelopes/${body.id}/approve`, { reason });
   }
 

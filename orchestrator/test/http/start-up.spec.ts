@@ -49,7 +49,7 @@ describe('the server process', () => {
     try {
       const { code, text } = await failedStart({ CRESTHOLD_DATA: folder, CRESTHOLD_PORT: '0' });
       expect([code, text]).toEqual([1, expect.stringContaining('Another server works on the data folder')]);
-      expect(statSync(join(folder, 'session-secret')).mode & 0o777).toBe(0o600);
+      expect(statSync(join(folder, 'sealing-key')).mode & 0o777).toBe(0o600);
     } finally {
       await first.end('SIGKILL');
     }

@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { seekExperiment } from '../end-to-end/seek-experiment.js';
-import { Station } from '../harness/station.js';
+import { password, Station } from '../harness/station.js';
 import { until } from '../harness/until.js';
 import { benchTimeS, missingMs, safeSinceMs, trimAt, writesOutside } from './bench-facts.js';
 import { runFileFacts } from './run-file-facts.js';
@@ -148,6 +148,7 @@ export class KillStation {
   private async reset(): Promise<void> {
     const path = `rigs/${this.station.rigId}/reset`;
     const reason = 'The test is over.';
+    await this.station.as('officer').reauthenticate(password);
     await until(
       'the trip is reset',
       async () => (await this.station.as('officer').call('POST', path, { reason })).status === 200,

@@ -31,7 +31,7 @@ class SocketDouble extends EventEmitter {
 
 function connect(hub: LiveHub) {
   const socket = new SocketDouble();
-  const client = new LiveClient(socket as unknown as WebSocket, undefined);
+  const client = new LiveClient(socket as unknown as WebSocket, 'session', null);
   hub.add(client);
   return { socket, client };
 }
@@ -43,7 +43,7 @@ describe('a reader of the live connection', () => {
   it('hears the status of every rig unasked, telemetry only where it subscribed', () => {
     const hub = new LiveHub();
     const { socket } = connect(hub);
-    hub.toAll({ type: 'rig-status', status });
+    hub.toAll(status.rigId, { type: 'rig-status', status });
     hub.telemetry(telemetry);
     expect(socket.sent.map((text) => JSON.parse(text).type)).toEqual(['rig-status']);
     socket.receive({ type: 'subscribe', rigId: 'rig-1' });
@@ -71,7 +71,7 @@ describe('a reader of the live connection', () => {
     socket.bufferedAmount = 1024 * 1024;
     hub.telemetry(telemetry);
     expect(socket.sent).toEqual([]);
-    hub.toAll({ type: 'rig-status', status });
+    hub.toAll(status.rigId, { type: 'rig-status', status });
     hub.toSubscribers('rig-1', { type: 'run-changed', runId: 'r', status: 'running', verdict: null });
     expect(socket.sent.map((text) => JSON.parse(text).type)).toEqual(['rig-status', 'run-changed']);
     expect(socket.isTerminated).toBe(false);
@@ -81,7 +81,7 @@ describe('a reader of the live connection', () => {
     const hub = new LiveHub();
     const { socket } = connect(hub);
     socket.bufferedAmount = 5 * 1024 * 1024;
-    hub.toAll({ type: 'rig-status', status });
+    hub.toAll(status.rigId, { type: 'rig-status', status });
     expect(socket.sent).toEqual([]);
     expect(socket.isTerminated).toBe(true);
   });

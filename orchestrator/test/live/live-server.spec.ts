@@ -4,11 +4,12 @@ import type { AddressInfo } from 'node:net';
 import type { HttpAdapterHost } from '@nestjs/core';
 import type { RigStatus } from '@cresthold/shared';
 import { WebSocket } from 'ws';
-import type { SessionsService } from '../../src/auth/sessions.service.js';
+import type { LiveSession, SessionsService } from '../../src/auth/sessions.service.js';
 import { LiveHub } from '../../src/live/live-hub.js';
 import { LiveServer } from '../../src/live/live.server.js';
 import { statusWithoutHost } from '../../src/rig-hosts/offline-status.js';
 import type { RigHostsService } from '../../src/rig-hosts/rig-hosts.service.js';
+import type { RigLimit } from '../../src/users/dto/user.dto.js';
 import { until } from '../harness/until.js';
 
 const good = 'cresthold_session=good';
@@ -18,7 +19,17 @@ let http: Server;
 let live: LiveServer;
 let hub: LiveHub;
 let isSessionGood: boolean;
+let rigLimits: RigLimit[];
 let port: number;
+
+const session = (): LiveSession | null =>
+  isSessionGood
+    ? {
+        user: { account: 'reader', title: 'Reader', roles: ['reader'], rigLimits, sessionId: 'one' },
+        isIdle: false,
+        isElevated: false,
+      }
+    : null;
 
 beforeEach(async () => {
   http = createServer();
@@ -27,11 +38,10 @@ beforeEach(async () => {
   port = (http.address() as AddressInfo).port;
   hub = new LiveHub();
   isSessionGood = true;
+  rigLimits = [];
   const sessions = {
-    userOfCookieHeader: (cookie: string | undefined) =>
-      Promise.resolve(
-        cookie === good && isSessionGood ? { account: 'reader', title: 'Reader', roles: [] } : null,
-      ),
+    ofCookieHeader: (cookie: string | undefined) => Promise.resolve(cookie === good ? session() : null),
+    ofId: () => Promise.resolve(session()),
   };
   const statuses: RigStatus[] = [statusWithoutHost('rig-1', null, false, 'The rig host is starting.')];
   live = new LiveServer(
@@ -86,6 +96,20 @@ describe('the live connection', () => {
       socket.terminate();
     }
     await until('both are forgotten', () => hub.all().length === 0);
+  });
+
+  it('tells of no rig that no role of the session reaches', async () => {
+    rigLimits = [{ role: 'reader', rigs: ['rig-2'] }];
+    const { socket, messages } = await connect('/api/v1/live', { cookie: good });
+    socket.send(JSON.stringify({ type: 'subscribe', rigId: 'rig-1' }));
+    await until('an answer', () => messages.length > 0);
+    expect(messages.map((text) => JSON.parse(text).type)).toEqual(['error']);
+    hub.toAll('rig-1', { type: 'error', message: 'of rig-1' });
+    hub.toSubscribers('rig-1', { type: 'error', message: 'of rig-1' });
+    hub.toAll('rig-2', { type: 'error', message: 'of rig-2' });
+    await until('the second', () => messages.length > 1);
+    expect(messages.slice(1).map((text) => JSON.parse(text).message)).toEqual(['of rig-2']);
+    socket.terminate();
   });
 
   it('ends when the session ends', async () => {

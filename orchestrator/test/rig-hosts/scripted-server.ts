@@ -4,14 +4,13 @@ import { join } from 'node:path';
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { Test } from '@nestjs/testing';
 import { AppModule } from '../../src/app.module.js';
-import type { Config } from '../../src/config/config.schema.js';
 import { setUpHttp } from '../../src/http/set-up-http.js';
 import {
   defaultRigHostSettings,
   RIG_HOST_SETTINGS,
   type RigHostSettings,
 } from '../../src/rig-hosts/rig-host-settings.js';
-import { TestServer } from '../server/create-test-server.js';
+import { testConfig, TestServer } from '../server/create-test-server.js';
 import { envelopeInput, experimentInput, rigInput } from '../server/documents.js';
 import { FakeRigHosts } from '../server/fake-rig-hosts.js';
 import { until } from '../harness/until.js';
@@ -30,16 +29,7 @@ export async function createScriptedServer(
   dataFolder = mkdtempSync(join(tmpdir(), 'cresthold-scripted-')),
   overrides: Partial<RigHostSettings> = {},
 ): Promise<TestServer> {
-  const config: Config = {
-    dataFolder,
-    port: 0,
-    host: '127.0.0.1',
-    consoleFolder: join(dataFolder, 'no-console'),
-    isHttps: false,
-    proxies: 0,
-    mail: null,
-    plugIns: [],
-  };
+  const config = testConfig(dataFolder);
   const module = await Test.createTestingModule({ imports: [AppModule.register(config)] })
     .overrideProvider(RIG_HOST_SETTINGS)
     .useValue({ ...settings, ...overrides })

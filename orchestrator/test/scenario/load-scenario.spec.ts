@@ -62,7 +62,8 @@ describe('loading a scenario', () => {
   it('makes people who can sign in, a rig with its envelope in force, and its documents', async () => {
     const loaded = await load(scenario());
     const { account, password } = loaded.users[0]!;
-    const { session } = await app.get(AuthService).signIn({ account, password }, '127.0.0.1');
+    const place = { userAgent: 'test', address: '127.0.0.1' };
+    const { session } = await app.get(AuthService).signIn({ account, password }, place, undefined);
     expect(session.roles).toEqual(['test-engineer']);
     expect(new Set(loaded.users.map((user) => user.password)).size).toBe(2);
 

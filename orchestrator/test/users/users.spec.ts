@@ -28,6 +28,7 @@ describe('accounts', () => {
       account: 'technician',
       title: 'Technician',
       roles: ['technician'],
+      rigLimits: [],
       isEnabled: true,
       createdAt: expect.stringMatching(/^\d{4}-\d\d-\d\dT/),
     });
@@ -45,11 +46,11 @@ describe('accounts', () => {
   });
 
   it.each([
-    ['short', 'seven77'],
-    ['long', 'x1'.repeat(65)],
-    ['common', 'Password123'],
-    ['one character over and over', 'zzzzzzzzzzzz'],
-    ['the account itself', 'technician'],
+    ['short', 'fourteen chars'],
+    ['long', 'quite long '.repeat(24)],
+    ['common with digits put to it', 'Password1234567'],
+    ['one character over and over', 'zzzzzzzzzzzzzzzz'],
+    ['built from the account', 'technician-2026-12'],
   ])('refuse a password that is %s', async (_, password) => {
     const answer = await administrator
       .post('/api/v1/users')

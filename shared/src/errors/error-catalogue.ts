@@ -43,6 +43,29 @@ export const errorCatalogue = {
   'auth.required': entry('unauthenticated', 'Sign in first.'),
   'auth.failed': entry('unauthenticated', 'Account or password is wrong.'),
   'auth.forbidden': entry('forbidden', 'Your role may not do this.'),
+  'auth.foreign-rig': entry('forbidden', 'Your role reaches other rigs, not this one.'),
+  'auth.code-needed': entry(
+    'unauthenticated',
+    'Give the code of your authenticator as well, or one of your recovery codes.',
+  ),
+  'auth.code-wrong': entry(
+    'unauthenticated',
+    'The code is wrong, too old or was used already: wait for the next one.',
+  ),
+  'auth.reauthentication-needed': entry(
+    'forbidden',
+    'Give your password again first: this act needs it within the last five minutes.',
+  ),
+  'auth.second-factor-needed': entry(
+    'forbidden',
+    'This act needs a second factor at this station: set up an authenticator on the page of your account.',
+  ),
+  'auth.second-factor-exists': entry(
+    'conflict',
+    'The account has a second factor already: remove it first.',
+  ),
+  'auth.second-factor-missing': entry('not-allowed-now', 'The account has no second factor.'),
+  'auth.session-not-found': entry('not-found', 'The account has no such session: it has ended already.'),
   'auth.setup-code': entry(
     'forbidden',
     'The set-up code is wrong: use the one that the server printed at its start.',
@@ -56,7 +79,7 @@ export const errorCatalogue = {
   ),
   'user.weak-password': entry(
     'invalid',
-    'Choose a password of 8 to 128 characters that is not on the list of common passwords.',
+    'Choose a longer password that is neither common nor built from names that belong to the account.',
   ),
   'rig.not-found': entry('not-found', 'No such rig.'),
   'rig.exists': entry('conflict', 'A rig with this id exists already: choose another.'),

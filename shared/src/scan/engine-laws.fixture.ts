@@ -100,7 +100,11 @@ export class WriteLaws {
   }
 
   private checkWayToRest(scan: FuzzScan, channel: string, value: number): void {
-    if (scan.phaseBefore !== 'tripped' || scan.phaseAfter !== 'tripped') return;
+    if (scan.phaseBefore !== 'tripped' || scan.phaseAfter !== 'tripped') {
+      // Reset, armed and tripped anew between two scans: another way begins.
+      this.onItsWay.delete(channel);
+      return;
+    }
     const rest = scan.rest[channel] ?? NaN;
     const distance = Math.abs(value - rest);
     const known = this.onItsWay.get(channel);

@@ -1,6 +1,8 @@
+import { Link } from 'react-router-dom';
 import Box from '@mui/material/Box';
 import { Empty, Loading, Page, ProblemNotice } from '../../components/index.js';
 import type { RigDocument } from '../../api/index.js';
+import { useObstacle } from '../auth/index.js';
 import { useRigs, useShowsRig } from '../rigs/index.js';
 import { RigCard } from './rig-card.js';
 
@@ -9,8 +11,9 @@ export function FloorPage() {
   const rigs = useRigs();
   const onlyRig = rigs.data?.length === 1 ? rigs.data[0]?.id : null;
   useShowsRig(onlyRig);
+  const canWire = useObstacle('rig.wire') === null;
   return (
-    <Page title="Floor">
+    <Page title="Floor" actions={canWire && <Link to="/new-rig">Add a rig</Link>}>
       {rigs.isPending && <Loading what="rigs" />}
       {rigs.error !== null && (
         <ProblemNotice
@@ -28,7 +31,7 @@ function Cards({ rigs }: { rigs: RigDocument[] }) {
   if (rigs.length === 0) {
     return (
       <Empty title="No rig yet">
-        A test engineer adds one by the API (POST /api/v1/rigs), or the server loads a scenario at its start.
+        A test engineer adds one with <em>Add a rig</em>, or the server loads a scenario at its start.
       </Empty>
     );
   }

@@ -10,6 +10,7 @@ function open(path: string, role: Role, more: Record<string, Handler>) {
     'GET /auth/session': () => json(sessionOf(role)),
     'GET /rigs': list(demoRigDocument),
     'GET /rigs/burner-1': () => json(demoRigDocument),
+    'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
     'GET /runs': list(),
     'GET /objectives': list(),

@@ -25,6 +25,7 @@ function openRig(role: Role, isBench: boolean, onPut: Handler = () => json(statu
     'GET /auth/session': () => json(sessionOf(role)),
     'GET /rigs': list(document),
     'GET /rigs/burner-1': () => json(document),
+    'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
     'GET /runs': list(),
     [address]: onPut,

@@ -12,6 +12,7 @@ function openRig(role: Role, status: Partial<RigStatus>, more: Record<string, Ha
     'GET /auth/session': () => json(sessionOf(role)),
     'GET /rigs': list(document),
     'GET /rigs/burner-1': () => json(document),
+    'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
     'GET /runs': list(),
     ...more,

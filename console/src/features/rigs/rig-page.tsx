@@ -4,6 +4,7 @@ import Link from '@mui/material/Link';
 import type { RigDocument } from '../../api/index.js';
 import { Loading, Page, PhaseMark, ProblemNotice } from '../../components/index.js';
 import { useRigSamples, useRigStatus } from '../../live/index.js';
+import { CalibrationSummary } from '../calibrations/index.js';
 import { useEnvelopeInForce } from '../envelopes/index.js';
 import { ActuatorPanel } from './actuator-panel.js';
 import { useRig } from './api/rig-queries.js';
@@ -73,6 +74,7 @@ function RigView({ rig }: { rig: RigDocument }) {
           <ActuatorPanel {...shared} />
           <InterlockPanel {...shared} />
           <ConnectionPanel rig={rig.content} status={status} />
+          <CalibrationSummary rig={rig.content} />
           {rig.content.isBench && <FaultPanel rig={rig.content} status={status} />}
           <RecentRuns rigId={rig.id} />
         </Box>
@@ -102,6 +104,9 @@ function RigLinks({ rigId, runId, envelopeVersion }: RigLinksProps) {
         {envelopeVersion === null
           ? 'Envelope: none in force'
           : `Envelope: version ${envelopeVersion} in force`}
+      </Link>
+      <Link component={RouterLink} to={`/rigs/${rigId}/wiring`}>
+        Wiring and calibration
       </Link>
       {runId !== null && (
         <Link component={RouterLink} to={`/runs/${runId}`}>

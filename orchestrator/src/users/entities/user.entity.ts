@@ -1,5 +1,6 @@
 import type { Role } from '@cresthold/shared';
 import { Column, Entity, PrimaryColumn } from 'typeorm';
+import type { RigLimit } from '../dto/user.dto.js';
 
 @Entity('user')
 export class UserEntity {
@@ -12,13 +13,21 @@ export class UserEntity {
   @Column('simple-json')
   roles!: Role[];
 
+  /** Roles that reach the named rigs only; a role that is not listed here reaches all. */
+  @Column('simple-json', { default: '[]' })
+  rigLimits!: RigLimit[];
+
   @Column('text')
   passwordHash!: string;
+
+  /** True where the password is long enough beside a second factor only. */
+  @Column('boolean', { default: false })
+  isPasswordShort!: boolean;
 
   @Column('boolean', { default: true })
   isEnabled!: boolean;
 
-  /** Part of every session; raising it ends all sessions of the account. */
+  /** Of releases that kept no sessions; raised as before, read no more. */
   @Column('integer', { default: 1 })
   sessionGeneration!: number;
 

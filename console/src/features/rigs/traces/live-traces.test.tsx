@@ -22,6 +22,7 @@ function openRig() {
     'GET /auth/session': () => json(sessionOf('reader')),
     'GET /rigs': list(document),
     'GET /rigs/burner-1': () => json(document),
+    'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
     'GET /runs': list(),
   });

@@ -1,0 +1,2 @@
+export { CalibrationPanel } from './calibration-panel.js';
+export { CalibrationSummary } from './calibration-summary.js';

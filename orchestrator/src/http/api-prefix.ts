@@ -1,0 +1,2 @@
+/** First part of every address of the API. */
+export const apiPrefix = 'api/v1';
