@@ -9,6 +9,7 @@ import { EnvelopesModule } from './envelopes/envelopes.module.js';
 import { ExperimentsModule } from './experiments/experiments.module.js';
 import { HealthModule } from './health/health.module.js';
 import { LiveModule } from './live/live.module.js';
+import { LockoutsModule } from './lockouts/lockouts.module.js';
 import { NotificationsModule } from './notifications/notifications.module.js';
 import { ObjectivesModule } from './objectives/objectives.module.js';
 import { ProblemDetailsModule } from './problem-details/problem-details.module.js';
@@ -18,6 +19,7 @@ import { RigsModule } from './rigs/rigs.module.js';
 import { RunsModule } from './runs/runs.module.js';
 import { ScenarioModule } from './scenario/scenario.module.js';
 import { SetupModule } from './setup/setup.module.js';
+import { TripsModule } from './trips/trips.module.js';
 import { UsersModule } from './users/users.module.js';
 
 /** Documents and people: everything that works without driving a rig. */
@@ -34,7 +36,15 @@ const documentModules = [
 ];
 
 /** What drives rigs and follows them: provides `RigHostsPort`. */
-const drivingModules = [RigHostsModule, RunsModule, LiveModule, HealthModule, NotificationsModule];
+const drivingModules = [
+  RigHostsModule,
+  LockoutsModule,
+  TripsModule,
+  RunsModule,
+  LiveModule,
+  HealthModule,
+  NotificationsModule,
+];
 
 /** The whole server. Each feature is a module of its own and is listed above. */
 @Module({})

@@ -65,6 +65,7 @@ export * from './live/host-message.schema.js';
 export * from './live/live-message.schema.js';
 export * from './live/live-trace.schema.js';
 export * from './live/rig-status.schema.js';
+export * from './live/stop-trajectory.schema.js';
 export * from './live/telemetry.schema.js';
 export * from './metrics/mean-interval.js';
 export * from './metrics/paired-difference.js';

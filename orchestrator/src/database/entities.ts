@@ -8,8 +8,10 @@ import { ExperimentVersionEntity } from '../experiments/entities/experiment-vers
 import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
 import { ObjectiveEntity } from '../objectives/entities/objective.entity.js';
 import { RunEntity } from '../recordings/entities/run.entity.js';
+import { RigLockoutEntity } from '../rigs/entities/rig-lockout.entity.js';
 import { RigStateEntity } from '../rigs/entities/rig-state.entity.js';
 import { RigEntity } from '../rigs/entities/rig.entity.js';
+import { RigTripEntity } from '../trips/entities/rig-trip.entity.js';
 import { UserEntity } from '../users/entities/user.entity.js';
 
 /** Every table of the main database; a new entity is listed here and gets a migration. */
@@ -22,7 +24,9 @@ export const entities = [
   ExperimentVersionEntity,
   ObjectiveEntity,
   RigEntity,
+  RigLockoutEntity,
   RigStateEntity,
+  RigTripEntity,
   RunEntity,
   SecondFactorEntity,
   SessionEntity,

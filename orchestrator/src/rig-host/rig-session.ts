@@ -19,6 +19,7 @@ import { Publisher } from './publisher.js';
 import type { Recorder } from './recorder.js';
 import { RunRecording } from './run-recording.js';
 import { ScanLoop } from './scan-loop.js';
+import { StopRecording } from './stop-recording.js';
 import { TracePublisher } from './trace-publisher.js';
 import type { ServerLink } from './server-link.js';
 import { Wire } from './wire.js';
@@ -38,6 +39,7 @@ export class RigSession {
   private readonly loop: ScanLoop;
   private readonly publisher: Publisher;
   private readonly run: RunRecording;
+  private readonly stops: StopRecording;
   private envelope: EnvelopeInForce | null;
   private readonly grids = new Map<string, ValueGrid>();
   private isLoopDead = false;
@@ -82,6 +84,12 @@ export class RigSession {
       onRunOver: () => useRun(null),
       log: (level, text) => link.log(level, text),
     });
+    this.stops = new StopRecording(rig, readings, trip, {
+      trip: () => this.engine.status().trip,
+      isAtRest: () => this.engine.isAtRest(),
+      envelope: () => this.envelope,
+      send: (message) => link.send(message),
+    });
     this.pacer = new PeriodPacer(rig.periodMs / 1000);
     this.loop = new ScanLoop({
       engine: this.engine,
@@ -89,7 +97,7 @@ export class RigSession {
       pacer: this.pacer,
       periodS: rig.periodMs / 1000,
       serverSilentS: link.serverSilentS,
-      sinks: [this.run, this.publisher, traces, new HeldMoveLog(link)],
+      sinks: [this.run, this.publisher, traces, new HeldMoveLog(link), this.stops],
     });
   }
 
@@ -103,6 +111,7 @@ export class RigSession {
   async end(): Promise<void> {
     this.loop.stop();
     await this.looping.catch(() => undefined);
+    this.stops.finish();
     this.run.interrupt('The rig host ended before the run did.', this.engine.status().trip);
     await this.run.closed();
     await this.wire.close();

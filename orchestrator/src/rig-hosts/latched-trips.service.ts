@@ -1,8 +1,10 @@
 import { isDeepStrictEqual } from 'node:util';
 import { Injectable } from '@nestjs/common';
-import type { Trip } from '@cresthold/shared';
+import type { StopTrajectory, Trip } from '@cresthold/shared';
 import { TransactionQueue } from '../database/transaction-queue.js';
 import { RigStore } from '../rigs/rig-store.js';
+import type { TripReset } from '../trips/trip-history.js';
+import { TripHistory } from '../trips/trip-history.js';
 import { HostFeed } from './host-feed.js';
 
 /** Kept with a trip of what followed it; as much as the trip's own schema allows. */
@@ -13,6 +15,7 @@ const laterMax = 50;
 export class LatchedTrips {
   constructor(
     private readonly rigs: RigStore,
+    private readonly history: TripHistory,
     private readonly queue: TransactionQueue,
     private readonly feed: HostFeed,
   ) {}
@@ -37,17 +40,32 @@ export class LatchedTrips {
   }
 
   /** Clears the trip that was reset; one that came after the reset stays. */
-  async clear(rigId: string, reset: Trip): Promise<void> {
-    const isSame = (trip: Trip | null) => trip?.cause === reset.cause && trip.at === reset.at;
-    await this.change(rigId, (latched) => (isSame(latched) ? null : latched));
+  async clear(rigId: string, trip: Trip, reset: TripReset): Promise<void> {
+    const isSame = (latched: Trip | null) => latched?.cause === trip.cause && latched.at === trip.at;
+    await this.change(rigId, (latched) => (isSame(latched) ? null : latched), reset);
   }
 
-  private async change(rigId: string, decide: (latched: Trip | null) => Trip | null): Promise<void> {
+  /** Keeps how the rig came to rest after a trip, as its host saw it. */
+  async keepTrajectory(
+    rigId: string,
+    trip: Pick<Trip, 'cause' | 'at'>,
+    trajectory: StopTrajectory,
+  ): Promise<void> {
+    await this.history.keepTrajectory(rigId, trip, trajectory);
+  }
+
+  private async change(
+    rigId: string,
+    decide: (latched: Trip | null) => Trip | null,
+    reset?: TripReset,
+  ): Promise<void> {
     const news = await this.queue.transaction(async () => {
       const before = (await this.rigs.state(rigId)).trip;
       const after = decide(before);
       if (isDeepStrictEqual(before, after)) return null;
       await this.rigs.saveTrip(rigId, after);
+      if (after) await this.history.follow(rigId, after);
+      else if (before && reset) await this.history.close(rigId, before, reset);
       return before ? null : after;
     });
     if (news) this.feed.trips.next({ rigId, trip: news });

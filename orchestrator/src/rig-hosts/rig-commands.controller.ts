@@ -7,13 +7,13 @@ import { rigStatusDtoSchema } from '../rigs/dto/rig.dto.js';
 import {
   emergencyStopBody,
   faultChangeSchema,
-  lockoutSchema,
+  moveReleaseSchema,
   moveSchema,
   reasonedSchema,
   rigStatusListSchema,
   type FaultChange,
-  type LockoutChange,
   type Move,
+  type MoveRelease,
   type Reasoned,
 } from './dto/rig-commands.dto.js';
 import { RigCommandsService } from './rig-commands.service.js';
@@ -67,7 +67,11 @@ export class RigCommandsController {
   @Post(':rigId/moves')
   @HttpCode(200)
   @Roles('test-engineer', 'technician')
-  @ApiOperation({ summary: 'Ramps an actuator to a value, inside the envelope.' })
+  @ApiOperation({
+    summary: 'Moves an actuator towards a value, inside the envelope.',
+    description:
+      'With `hold` the move goes on only while the same request is repeated within `hold.forS`; else the actuator stops where it is. `hold: null` is for scripts: the move goes on by itself to its end.',
+  })
   @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
   move(
     @Param('rigId') rigId: string,
@@ -75,6 +79,18 @@ export class RigCommandsController {
     @CurrentUser() user: SignedInUser,
   ): Promise<RigStatus> {
     return this.commands.move(rigId, body, user.account);
+  }
+
+  @Post(':rigId/moves/release')
+  @HttpCode(200)
+  @Roles('test-engineer', 'technician')
+  @ApiOperation({ summary: 'Ends a held move at once: the actuator stops where it is.' })
+  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
+  releaseMove(
+    @Param('rigId') rigId: string,
+    @Body({ schema: moveReleaseSchema }) body: MoveRelease,
+  ): Promise<RigStatus> {
+    return this.commands.releaseMove(rigId, body);
   }
 
   @Post(':rigId/emergency-stop')
@@ -106,18 +122,6 @@ export class RigCommandsController {
     @CurrentUser() user: SignedInUser,
   ): Promise<RigStatus> {
     return this.commands.reset(rigId, body.reason, user.account);
-  }
-
-  @Put(':rigId/lockout')
-  @Roles('safety-officer')
-  @ApiOperation({ summary: 'Locks the rig out or lifts the lockout.' })
-  @ApiOkResponse({ standardSchema: rigStatusDtoSchema })
-  setLockout(
-    @Param('rigId') rigId: string,
-    @Body({ schema: lockoutSchema }) body: LockoutChange,
-    @CurrentUser() user: SignedInUser,
-  ): Promise<RigStatus> {
-    return this.commands.setLockout(rigId, body, user.account);
   }
 
   @Put(':rigId/connections/:connection/fault')

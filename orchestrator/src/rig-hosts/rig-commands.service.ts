@@ -1,8 +1,8 @@
 import { Injectable } from '@nestjs/common';
-import { DomainError, type RigStatus } from '@cresthold/shared';
+import { DomainError, moveAnswerSchema, type RigStatus } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
 import { RigStore } from '../rigs/rig-store.js';
-import type { FaultChange, LockoutChange, Move } from './dto/rig-commands.dto.js';
+import type { FaultChange, Move, MoveRelease } from './dto/rig-commands.dto.js';
 import { RigHostsService } from './rig-hosts.service.js';
 
 /** What people do to a rig by hand; each act is kept with who did it. */
@@ -30,11 +30,20 @@ export class RigCommandsService {
     return status;
   }
 
-  async move(rigId: string, { channel, value }: Move, by: string): Promise<RigStatus> {
-    const status = await this.hosts.commandForStatus(rigId, { type: 'move', channel, value, by });
-    const subject = `${channel} to ${value}`;
+  /** A press of hold-to-move is kept once; its renewals, several a second, are not. */
+  async move(rigId: string, { channel, value, hold }: Move, by: string): Promise<RigStatus> {
+    const command = { type: 'move', channel, value, by, hold } as const;
+    const { data, status } = await this.hosts.commandForAnswer(rigId, command);
+    const answer = moveAnswerSchema.safeParse(data);
+    if (answer.data?.isRenewal === true) return status;
+    const subject = `${channel} to ${value}${hold === null ? '' : ', while held'}`;
     await this.audit.record({ account: by, action: 'rig.moved-by-hand', rigId, subject });
     return status;
+  }
+
+  /** The end of a press; also of one that is over already. */
+  async releaseMove(rigId: string, { channel, holdId }: MoveRelease): Promise<RigStatus> {
+    return this.hosts.commandForStatus(rigId, { type: 'release-move', channel, holdId });
   }
 
   /** The stop comes first, its entry in the audit log after it. */
@@ -69,15 +78,5 @@ export class RigCommandsService {
     const reason = fault ? JSON.stringify(fault) : undefined;
     await this.audit.record({ account: by, action, rigId, subject: connection, reason });
     return status;
-  }
-
-  /** Kept on disk first: a lockout holds even where no host is there to hear of it. */
-  async setLockout(rigId: string, { isLockedOut, reason }: LockoutChange, by: string): Promise<RigStatus> {
-    await this.rigs.get(rigId);
-    const at = new Date().toISOString();
-    await this.rigs.saveLockout(rigId, isLockedOut ? { by, reason, at } : null);
-    const action = isLockedOut ? 'rig.locked-out' : 'rig.lockout-lifted';
-    await this.audit.record({ account: by, action, rigId, reason });
-    return this.hosts.setLockout(rigId, isLockedOut);
   }
 }

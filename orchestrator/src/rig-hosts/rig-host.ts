@@ -55,13 +55,8 @@ export class RigHost implements RigHostOwner {
   /** The host's last word where it is up, else what the server knows by itself. */
   async status(): Promise<RigStatus> {
     if (this.lastStatus && this.process.state.name === 'up') return this.lastStatus;
-    const { trip, lockout } = await this.parts.rigs.state(this.rigId);
-    return statusWithoutHost(
-      this.rigId,
-      trip,
-      lockout !== null,
-      this.process.fault ?? 'The rig host is silent.',
-    );
+    const { trip, isLockedOut } = await this.parts.rigs.state(this.rigId);
+    return statusWithoutHost(this.rigId, trip, isLockedOut, this.process.fault ?? 'The rig host is silent.');
   }
 
   /** The host's last word; null while it is not up. */
@@ -120,14 +115,14 @@ export class RigHost implements RigHostOwner {
   async configuration(): Promise<HostConfiguration> {
     const { rigs, envelopes, calibrations } = this.parts;
     const { content: rig } = await rigs.get(this.rigId);
-    const { trip, lockout } = await rigs.state(this.rigId);
+    const { trip, isLockedOut } = await rigs.state(this.rigId);
     const envelope = await envelopes.inForce(this.rigId);
     return {
       type: 'configure',
       rig,
       envelope,
       trip,
-      isLockedOut: lockout !== null,
+      isLockedOut,
       calibrations: await calibrations.inForce(this.rigId),
     };
   }
@@ -151,6 +146,10 @@ export class RigHost implements RigHostOwner {
           records.end(message.runId, { status, verdict, reason, results, scans }),
         );
       }
+      case 'stop-trajectory':
+        return this.keepInOrder(() =>
+          this.parts.trips.keepTrajectory(this.rigId, message.trip, message.trajectory),
+        );
       case 'log':
         return this.onLog(message.level, message.text);
       case 'ready':

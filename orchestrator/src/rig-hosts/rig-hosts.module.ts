@@ -5,6 +5,7 @@ import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
 import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsPort } from '../rigs/rig-hosts.port.js';
 import { RigStoreModule } from '../rigs/rig-store.module.js';
+import { TripHistoryModule } from '../trips/trip-history.module.js';
 import { HostFeed } from './host-feed.js';
 import { ChannelProbesController } from './channel-probes.controller.js';
 import { LatchedTrips } from './latched-trips.service.js';
@@ -16,7 +17,14 @@ import { RigHostsService } from './rig-hosts.service.js';
 /** Supervises one rig host per rig; the only part of the server that talks to rigs. */
 @Global()
 @Module({
-  imports: [AuditModule, CalibrationStoreModule, EnvelopeStoreModule, RecordingsModule, RigStoreModule],
+  imports: [
+    AuditModule,
+    CalibrationStoreModule,
+    EnvelopeStoreModule,
+    RecordingsModule,
+    RigStoreModule,
+    TripHistoryModule,
+  ],
   controllers: [RigCommandsController, ChannelProbesController],
   providers: [
     HostFeed,

@@ -145,7 +145,7 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
     await host.request({ type: 'reset', by, reason });
     // What the host told before it answered is kept first, so that it cannot come back after the reset.
     await host.settle();
-    if (trip) await this.trips.clear(rigId, trip);
+    if (trip) await this.trips.clear(rigId, trip, { by, reason });
     host.process.forgetDeaths();
     return host.statusAfterCommand();
   }
@@ -160,9 +160,14 @@ export class RigHostsService implements RigHostsPort, OnApplicationBootstrap, Be
 
   /** Sends a command and answers with the status that follows it. */
   async commandForStatus(rigId: string, command: HostCommand): Promise<RigStatus> {
+    return (await this.commandForAnswer(rigId, command)).status;
+  }
+
+  /** As `commandForStatus`, with what the host found out. */
+  async commandForAnswer(rigId: string, command: HostCommand): Promise<{ data: unknown; status: RigStatus }> {
     const host = await this.host(rigId);
-    await host.request(command);
-    return host.statusAfterCommand();
+    const data = await host.request(command);
+    return { data, status: await host.statusAfterCommand() };
   }
 
   /** @throws rig.not-found */

@@ -4,13 +4,14 @@ import { DomainError, type Rig, type Trip } from '@cresthold/shared';
 import { And, In, MoreThan, type Repository } from 'typeorm';
 import type { RigScope } from '../auth/rig-scope.js';
 import { TransactionQueue } from '../database/transaction-queue.js';
-import { RigStateEntity, type Lockout } from './entities/rig-state.entity.js';
+import { RigLockoutEntity } from './entities/rig-lockout.entity.js';
+import { RigStateEntity } from './entities/rig-state.entity.js';
 import { RigEntity } from './entities/rig.entity.js';
 
-/** A rig's latched trip and lockout, which survive every restart. */
+/** A rig's latched trip and whether anybody holds it, which survive every restart. */
 export interface RigState {
   trip: Trip | null;
-  lockout: Lockout | null;
+  isLockedOut: boolean;
 }
 
 /** Reads rigs, and keeps their state; knows nothing of rig hosts. */
@@ -19,6 +20,7 @@ export class RigStore {
   constructor(
     @InjectRepository(RigEntity) private readonly rigs: Repository<RigEntity>,
     @InjectRepository(RigStateEntity) private readonly states: Repository<RigStateEntity>,
+    @InjectRepository(RigLockoutEntity) private readonly lockouts: Repository<RigLockoutEntity>,
     private readonly queue: TransactionQueue,
   ) {}
 
@@ -47,15 +49,11 @@ export class RigStore {
 
   async state(rigId: string): Promise<RigState> {
     const state = await this.states.findOneBy({ rigId });
-    return { trip: state?.trip ?? null, lockout: state?.lockout ?? null };
+    return { trip: state?.trip ?? null, isLockedOut: await this.lockouts.existsBy({ rigId }) };
   }
 
   /** Stores a latched trip, or that it was reset. Resolves when it is on disk. */
   async saveTrip(rigId: string, trip: Trip | null): Promise<void> {
     await this.queue.transaction((manager) => manager.upsert(RigStateEntity, { rigId, trip }, ['rigId']));
-  }
-
-  async saveLockout(rigId: string, lockout: Lockout | null): Promise<void> {
-    await this.queue.transaction((manager) => manager.upsert(RigStateEntity, { rigId, lockout }, ['rigId']));
   }
 }

@@ -250,7 +250,7 @@ describe('the whole job over HTTP alone, on the real bench', () => {
       return row.endedAt === null ? null : row;
     });
     expect(ended).toMatchObject({ status: 'tripped', verdict: 'inconclusive' });
-    const move = { channel: 'airTrim', value: 40 };
+    const move = { channel: 'airTrim', value: 40, hold: null };
     expect((await engineer.expect(409, 'POST', `${rigPath}/moves`, move)).body.code).toBe('rig.tripped');
     const reason = 'Smoke came from the toaster.';
     await engineer.expect(403, 'POST', `${rigPath}/reset`, { reason });
@@ -261,23 +261,43 @@ describe('the whole job over HTTP alone, on the real bench', () => {
       return answer.status === 200 ? answer.body : null;
     });
     expect(reset).toMatchObject({ phase: 'idle', trip: null });
+    const { items } = await station.as('reader').get(`${rigPath}/trips`);
+    expect(items[0]).toMatchObject({
+      trip: { cause: 'emergency-stop' },
+      resetBy: 'officer',
+      resetReason: reason,
+    });
+    const told = await station.as('reader').get(`${rigPath}/trips/${items[0].id}`);
+    expect(told.trajectory.isAtRest).toBe(true);
+    expect(told.timesToRest.every(({ timeS }: { timeS: number | null }) => timeS !== null)).toBe(true);
   });
 
   step('moves by hand inside the envelope only, and not while locked out', async () => {
     const engineer = station.as('engineer');
     const rigPath = `rigs/${station.rigId}`;
     await station.arm('engineer');
-    const unknown = await engineer.expect(400, 'POST', `${rigPath}/moves`, { channel: 'nothing', value: 1 });
+    const unknown = await engineer.expect(400, 'POST', `${rigPath}/moves`, {
+      channel: 'nothing',
+      value: 1,
+      hold: null,
+    });
     expect(unknown.body.code).toBe('channel.not-found');
-    await engineer.expect(200, 'POST', `${rigPath}/moves`, { channel: 'airTrim', value: 60 });
+    await engineer.expect(200, 'POST', `${rigPath}/moves`, {
+      channel: 'airTrim',
+      value: 60,
+      hold: null,
+    });
     await engineer.expect(200, 'POST', `${rigPath}/disarm`);
     await station.untilPhase('idle');
-    const hold = { isLockedOut: true, reason: 'Hands in the burner.' };
-    await engineer.expect(403, 'PUT', `${rigPath}/lockout`, hold);
-    const locked = await station.as('officer').expect(200, 'PUT', `${rigPath}/lockout`, hold);
-    expect(locked.body.isLockedOut).toBe(true);
+    const hold = { reason: 'Hands in the burner.' };
+    await station.as('reader').expect(403, 'POST', `${rigPath}/lockouts`, hold);
+    const { body: lockout } = await station.as('officer').expect(201, 'POST', `${rigPath}/lockouts`, hold);
+    expect(await station.status()).toMatchObject({ isLockedOut: true });
     await engineer.expect(409, 'POST', `${rigPath}/arm`);
-    await station.as('officer').expect(200, 'PUT', `${rigPath}/lockout`, { ...hold, isLockedOut: false });
+    const lift = `${rigPath}/lockouts/${lockout.id}/lift`;
+    await engineer.expect(403, 'POST', lift, { reason: 'In a hurry.' });
+    const left = await station.as('officer').expect(200, 'POST', lift, { reason: 'The work is done.' });
+    expect(left.body).toEqual([]);
   });
 
   step('is in good health', async () => {

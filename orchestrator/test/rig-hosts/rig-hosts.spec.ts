@@ -150,9 +150,9 @@ describe('a rig host that has failed', () => {
 
 describe('a lockout', () => {
   it('outlives the server', async () => {
-    const hold = { isLockedOut: true, reason: 'Hands in the kiln.' };
-    const { body } = await (await officer()).put(`${rigPath}/lockout`).send(hold).expect(200);
-    expect(body.isLockedOut).toBe(true);
+    const hold = { reason: 'Hands in the kiln.' };
+    await (await officer()).post(`${rigPath}/lockouts`).send(hold).expect(201);
+    expect(await statusOf(server)).toMatchObject({ isLockedOut: true });
     await restart();
     expect(await untilPhase(server, 'idle')).toMatchObject({ isLockedOut: true });
   });

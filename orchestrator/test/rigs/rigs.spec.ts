@@ -1,3 +1,5 @@
+import { DataSource } from 'typeorm';
+import { RigLockoutEntity } from '../../src/rigs/entities/rig-lockout.entity.js';
 import { RigStore } from '../../src/rigs/rig-store.js';
 import { createTestServer, type Client, type TestServer } from '../server/create-test-server.js';
 import { envelopeInput, rigInput } from '../server/documents.js';
@@ -178,13 +180,13 @@ describe('rigs', () => {
     const store = server.app.get(RigStore, { strict: false });
     const at = '2026-01-01T00:00:00.000Z';
     const trip = { cause: 'emergency-stop', message: 'Pressed.', at, by: 'technician', later: [] };
-    const lockout = { by: 'officer', reason: 'Work on the burner.', at };
+    const lockout = { id: 'one', rigId: 'kiln-1', by: 'officer', reason: 'Work.', at, mayLift: [] };
     await store.saveTrip('kiln-1', trip);
-    await store.saveLockout('kiln-1', lockout);
-    expect(await store.state('kiln-1')).toEqual({ trip, lockout });
+    await server.app.get(DataSource).getRepository(RigLockoutEntity).insert(lockout);
+    expect(await store.state('kiln-1')).toEqual({ trip, isLockedOut: true });
     await store.saveTrip('kiln-1', null);
-    expect(await store.state('kiln-1')).toEqual({ trip: null, lockout });
-    expect(await store.state('never-seen')).toEqual({ trip: null, lockout: null });
+    expect(await store.state('kiln-1')).toEqual({ trip: null, isLockedOut: true });
+    expect(await store.state('never-seen')).toEqual({ trip: null, isLockedOut: false });
   });
 
   it('say which adapters can be used, and what they must be told', async () => {

@@ -10,6 +10,7 @@ import { moveHoldSchema } from '../scan/held-move.schema.js';
 import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
 import { liveTraceSchema } from './live-trace.schema.js';
 import { rigStatusSchema, tripSchema } from './rig-status.schema.js';
+import { stopTrajectorySchema } from './stop-trajectory.schema.js';
 import { telemetrySchema } from './telemetry.schema.js';
 
 /** What a run needs to be executed; all of it goes into the manifest of its file. */
@@ -120,6 +121,12 @@ export const fromHostSchema = z.discriminatedUnion('type', [
     reason: z.string(),
     results: z.record(z.string(), z.number()),
     scans: z.int(),
+  }),
+  /** Sent once for each trip that the host saw, when the rig has come to rest or the record is full. */
+  z.object({
+    type: z.literal('stop-trajectory'),
+    trip: z.object({ cause: z.string(), at: z.string() }),
+    trajectory: stopTrajectorySchema,
   }),
   z.object({ type: z.literal('log'), level: z.enum(['info', 'warn', 'error']), text: z.string() }),
 ]);

@@ -95,7 +95,8 @@ it('writes no motion later than the timeout after the last renewal, whatever hap
   fc.assert(
     fc.property(heldMoveCases, (heldMoveCase) => {
       for (const { atS, lastRenewalS, change, reach } of liveHeldMoves(heldMoveCase)) {
-        if (change === 0) {
+        // A point of the grid may come out a rounding apart: the wire carries the same number.
+        if (Math.abs(change) < 1e-9) {
           held++;
           continue;
         }

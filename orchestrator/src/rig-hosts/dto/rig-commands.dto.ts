@@ -1,11 +1,11 @@
-import { channelIdSchema, wireFaultSchema } from '@cresthold/shared';
+import { channelIdSchema, moveHoldSchema, wireFaultSchema } from '@cresthold/shared';
 import { z } from 'zod';
 import { rigStatusDtoSchema } from '../../rigs/dto/rig.dto.js';
 
 /** A longer reason for an emergency stop is cut. */
 export const stopReasonLengthMax = 300;
 
-const reasonSchema = z.string().trim().min(1, 'Give a reason.').max(300, 'At most 300 characters.');
+export const reasonSchema = z.string().trim().min(1, 'Give a reason.').max(300, 'At most 300 characters.');
 
 export const rigStatusListSchema = z.array(rigStatusDtoSchema);
 
@@ -14,9 +14,20 @@ export const moveSchema = z
     channel: channelIdSchema,
     /** Where to, in the channel's unit. */
     value: z.number(),
+    /** Who renews it; null for a move that goes on by itself, which a script must say. */
+    hold: moveHoldSchema.nullable(),
   })
   .meta({ id: 'Move' });
 export type Move = z.infer<typeof moveSchema>;
+
+export const moveReleaseSchema = z
+  .object({
+    channel: channelIdSchema,
+    /** `hold.id` of the press that is over. */
+    holdId: moveHoldSchema.shape.id,
+  })
+  .meta({ id: 'MoveRelease' });
+export type MoveRelease = z.infer<typeof moveReleaseSchema>;
 
 /** Described here, judged by nobody: see `StopReason`. */
 export const emergencyStopBody = {
@@ -29,11 +40,6 @@ export const emergencyStopBody = {
 
 export const reasonedSchema = z.object({ reason: reasonSchema }).meta({ id: 'Reasoned' });
 export type Reasoned = z.infer<typeof reasonedSchema>;
-
-export const lockoutSchema = z
-  .object({ isLockedOut: z.boolean(), reason: reasonSchema })
-  .meta({ id: 'LockoutChange' });
-export type LockoutChange = z.infer<typeof lockoutSchema>;
 
 export const faultChangeSchema = z
   .object({

@@ -1,15 +1,7 @@
 import type { Trip } from '@cresthold/shared';
 import { Column, Entity, JoinColumn, ManyToOne, PrimaryColumn } from 'typeorm';
 
-/** A person's hold on a rig. */
-export interface Lockout {
-  by: string;
-  reason: string;
-  /** ISO 8601, UTC. */
-  at: string;
-}
-
-/** What must survive a restart whatever else is lost: the latched trip and the lockout. */
+/** What must survive a restart whatever else is lost: the latched trip. */
 @Entity('rig_state')
 export class RigStateEntity {
   @PrimaryColumn('text')
@@ -17,9 +9,6 @@ export class RigStateEntity {
 
   @Column('simple-json', { nullable: true })
   trip!: Trip | null;
-
-  @Column('simple-json', { nullable: true })
-  lockout!: Lockout | null;
 
   /** Keeps the database from holding a state of a rig that it does not know. */
   @ManyToOne('RigEntity', { nullable: false, onDelete: 'RESTRICT' })
