@@ -5,13 +5,16 @@ import { CalibrationsModule } from './calibrations/calibrations.module.js';
 import { ConfigModule } from './config/config.module.js';
 import type { Config } from './config/config.schema.js';
 import { DatabaseModule } from './database/database.module.js';
+import { EnvelopeReplayModule } from './envelopes/envelope-replay.module.js';
 import { EnvelopesModule } from './envelopes/envelopes.module.js';
 import { ExperimentsModule } from './experiments/experiments.module.js';
 import { HealthModule } from './health/health.module.js';
+import { InterlocksModule } from './interlocks/interlocks.module.js';
 import { LiveModule } from './live/live.module.js';
 import { NotificationsModule } from './notifications/notifications.module.js';
 import { ObjectivesModule } from './objectives/objectives.module.js';
 import { ProblemDetailsModule } from './problem-details/problem-details.module.js';
+import { ProofTestsModule } from './proof-tests/proof-tests.module.js';
 import { RigHostsModule } from './rig-hosts/rig-hosts.module.js';
 import { NoRigHostsModule } from './rigs/no-rig-hosts.module.js';
 import { RigsModule } from './rigs/rigs.module.js';
@@ -34,7 +37,16 @@ const documentModules = [
 ];
 
 /** What drives rigs and follows them: provides `RigHostsPort`. */
-const drivingModules = [RigHostsModule, RunsModule, LiveModule, HealthModule, NotificationsModule];
+const drivingModules = [
+  RigHostsModule,
+  RunsModule,
+  InterlocksModule,
+  ProofTestsModule,
+  EnvelopeReplayModule,
+  LiveModule,
+  HealthModule,
+  NotificationsModule,
+];
 
 /** The whole server. Each feature is a module of its own and is listed above. */
 @Module({})

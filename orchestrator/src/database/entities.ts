@@ -7,6 +7,7 @@ import { EnvelopeEntity } from '../envelopes/entities/envelope.entity.js';
 import { ExperimentVersionEntity } from '../experiments/entities/experiment-version.entity.js';
 import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
 import { ObjectiveEntity } from '../objectives/entities/objective.entity.js';
+import { ProofTestEntity } from '../proof-tests/entities/proof-test.entity.js';
 import { RunEntity } from '../recordings/entities/run.entity.js';
 import { RigStateEntity } from '../rigs/entities/rig-state.entity.js';
 import { RigEntity } from '../rigs/entities/rig.entity.js';
@@ -21,6 +22,7 @@ export const entities = [
   ExperimentEntity,
   ExperimentVersionEntity,
   ObjectiveEntity,
+  ProofTestEntity,
   RigEntity,
   RigStateEntity,
   RunEntity,

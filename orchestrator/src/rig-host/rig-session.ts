@@ -13,6 +13,7 @@ import {
   type WireFault,
 } from '@cresthold/shared';
 import { ChannelProber } from './channel-prober.js';
+import { InterlockStopwatch } from './interlock-stopwatch.js';
 import { PeriodPacer } from './pacer.js';
 import { Publisher } from './publisher.js';
 import type { Recorder } from './recorder.js';
@@ -89,6 +90,9 @@ export class RigSession {
       periodS: rig.periodMs / 1000,
       serverSilentS: link.serverSilentS,
       sinks: [this.run, this.publisher, traces],
+      stopwatch: new InterlockStopwatch(this.engine, (response) =>
+        link.send({ type: 'interlock-response', response }),
+      ),
     });
   }
 

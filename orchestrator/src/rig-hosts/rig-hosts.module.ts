@@ -2,6 +2,7 @@ import { Global, Module } from '@nestjs/common';
 import { AuditModule } from '../audit/audit.module.js';
 import { CalibrationStoreModule } from '../calibrations/calibration-store.module.js';
 import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
+import { ProofTestStoreModule } from '../proof-tests/proof-test-store.module.js';
 import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsPort } from '../rigs/rig-hosts.port.js';
 import { RigStoreModule } from '../rigs/rig-store.module.js';
@@ -16,7 +17,14 @@ import { RigHostsService } from './rig-hosts.service.js';
 /** Supervises one rig host per rig; the only part of the server that talks to rigs. */
 @Global()
 @Module({
-  imports: [AuditModule, CalibrationStoreModule, EnvelopeStoreModule, RecordingsModule, RigStoreModule],
+  imports: [
+    AuditModule,
+    CalibrationStoreModule,
+    EnvelopeStoreModule,
+    ProofTestStoreModule,
+    RecordingsModule,
+    RigStoreModule,
+  ],
   controllers: [RigCommandsController, ChannelProbesController],
   providers: [
     HostFeed,

@@ -130,6 +130,13 @@ export const errorCatalogue = {
     'not-allowed-now',
     'The interlock does not wait to be acknowledged: its condition still holds, or it has not acted.',
   ),
+  'proof-test.not-found': entry('not-found', 'There is no such proof test on this rig.'),
+  'proof-test.not-open': entry('conflict', 'The proof test is signed or was abandoned: begin another one.'),
+  'proof-test.no-response': entry(
+    'not-allowed-now',
+    'The interlock has not acted in this proof test: it cannot be signed as passed.',
+  ),
+  'proof-test.overdue': entry('not-allowed-now', 'Proof tests of this rig are overdue: do them first.'),
   'channel.not-found': entry('invalid', 'The rig has no such channel.'),
   'channel.no-limit': entry(
     'not-allowed-now',

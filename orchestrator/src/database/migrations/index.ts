@@ -3,6 +3,7 @@ import { Runs1796083300000 } from './1796083300000-runs.js';
 import { Calibrations1796083400000 } from './1796083400000-calibrations.js';
 import { AuditChain1796083500000 } from './1796083500000-audit-chain.js';
 import { People1796083550000 } from './1796083550000-people.js';
+import { ProofTests1796083590000 } from './1796083590000-proof-tests.js';
 
 /** Every migration, oldest first; a released one is never changed. */
 export const migrations = [
@@ -11,4 +12,5 @@ export const migrations = [
   Calibrations1796083400000,
   AuditChain1796083500000,
   People1796083550000,
+  ProofTests1796083590000,
 ];
