@@ -9345,7 +9345,7 @@ export interface operations {
             header?: never;
             path: {
                 rigId: string;
-                id: string;
+                testId: string;
             };
             cookie?: never;
         };
@@ -9394,7 +9394,7 @@ export interface operations {
             header?: never;
             path: {
                 rigId: string;
-                id: string;
+                testId: string;
             };
             cookie?: never;
         };

@@ -83,7 +83,7 @@ export class ProofTestsController {
   @Roles('signed-in')
   @ApiOperation({ summary: 'Reads a proof test.' })
   @ApiOkResponse({ standardSchema: proofTestSchema })
-  get(@Param('rigId') rigId: string, @Param('id') id: string): Promise<ProofTest> {
+  get(@Param('rigId') rigId: string, @Param('testId') testId: string): Promise<ProofTest> {
     return this.tests.get(rigId, testId);
   }
 
@@ -95,7 +95,7 @@ export class ProofTestsController {
   @ApiOkResponse({ standardSchema: proofTestSchema })
   sign(
     @Param('rigId') rigId: string,
-    @Param('id') id: string,
+    @Param('testId') testId: string,
     @Body({ schema: proofTestSignatureSchema }) body: ProofTestSignature,
     @CurrentUser() user: SignedInUser,
   ): Promise<ProofTest> {
