@@ -144,7 +144,7 @@ describe('the password given again', () => {
     await server.as('officer', 'safety-officer');
     nowMs = Date.now();
     jest.spyOn(Date, 'now').mockImplementation(() => nowMs);
-    officer = (await server.as('other', 'reader'));
+    officer = await server.as('other', 'reader');
     const body = { account: 'officer', password: testPassword };
     const answer = await server.anyone.post('/api/v1/auth/sign-in').send(body);
     firstCookie = answer.headers['set-cookie']?.[0]?.split(';')[0] ?? '';

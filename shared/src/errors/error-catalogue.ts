@@ -60,10 +60,7 @@ export const errorCatalogue = {
     'forbidden',
     'This act needs a second factor at this station: set up an authenticator on the page of your account.',
   ),
-  'auth.second-factor-exists': entry(
-    'conflict',
-    'The account has a second factor already: remove it first.',
-  ),
+  'auth.second-factor-exists': entry('conflict', 'The account has a second factor already: remove it first.'),
   'auth.second-factor-missing': entry('not-allowed-now', 'The account has no second factor.'),
   'auth.session-not-found': entry('not-found', 'The account has no such session: it has ended already.'),
   'auth.setup-code': entry(
