@@ -50,6 +50,7 @@ beforeAll(async () => {
     runs: '/runs',
     run: `/runs/${run.id}`,
     people: '/people',
+    account: '/account',
     'nothing at this address': '/no/such/page',
   });
 });

@@ -46,6 +46,22 @@ async function windowOf(account: Account): Promise<Page> {
   return opened.page;
 }
 
+/** Answers the question for the password that comes before approving and resetting. */
+async function givePassword(page: Page, password: string): Promise<void> {
+  await page.getByLabel('Your password').fill(password);
+  await page.getByRole('button', { name: 'Go on' }).click();
+}
+
+/** It counts for five minutes, which a quick machine needs only once. */
+async function givePasswordIfAsked(page: Page, password: string): Promise<void> {
+  const field = page.getByLabel('Your password');
+  const isAsked = await field.waitFor({ timeout: 3_000 }).then(
+    () => true,
+    () => false,
+  );
+  if (isAsked) await givePassword(page, password);
+}
+
 /** Waits until the page says it somewhere. */
 async function says(page: Page, text: string | RegExp): Promise<void> {
   await page.getByText(text).first().waitFor();
@@ -179,6 +195,9 @@ describe('the whole job by clicking, on the real server and the real bench', () 
     await says(page, 'Give a reason');
     await page.getByLabel('Reason').fill('As commissioned.');
     await page.getByRole('button', { name: 'Approve', exact: true }).click();
+    await givePassword(page, 'not the password');
+    await says(page, 'Account or password is wrong.');
+    await givePassword(page, passwords.officer);
     await says(page, 'in force');
   });
 
@@ -275,6 +294,7 @@ describe('the whole job by clicking, on the real server and the real bench', () 
     await page.getByRole('button', { name: 'Reset trip …' }).click();
     await page.getByLabel('Reason').fill('Stopped for the test; burner looked at.');
     await page.getByRole('button', { name: 'Reset trip', exact: true }).click();
+    await givePasswordIfAsked(page, passwords.officer);
     await page.getByRole('main').getByText('idle', { exact: true }).first().waitFor();
     expect(
       trimWrites()

@@ -5,14 +5,17 @@ import { CalibrationsModule } from './calibrations/calibrations.module.js';
 import { ConfigModule } from './config/config.module.js';
 import type { Config } from './config/config.schema.js';
 import { DatabaseModule } from './database/database.module.js';
+import { EnvelopeReplayModule } from './envelopes/envelope-replay.module.js';
 import { EnvelopesModule } from './envelopes/envelopes.module.js';
 import { ExperimentsModule } from './experiments/experiments.module.js';
 import { HealthModule } from './health/health.module.js';
+import { InterlocksModule } from './interlocks/interlocks.module.js';
 import { LiveModule } from './live/live.module.js';
 import { LockoutsModule } from './lockouts/lockouts.module.js';
 import { NotificationsModule } from './notifications/notifications.module.js';
 import { ObjectivesModule } from './objectives/objectives.module.js';
 import { ProblemDetailsModule } from './problem-details/problem-details.module.js';
+import { ProofTestsModule } from './proof-tests/proof-tests.module.js';
 import { RigHostsModule } from './rig-hosts/rig-hosts.module.js';
 import { NoRigHostsModule } from './rigs/no-rig-hosts.module.js';
 import { RigsModule } from './rigs/rigs.module.js';
@@ -41,6 +44,9 @@ const drivingModules = [
   LockoutsModule,
   TripsModule,
   RunsModule,
+  InterlocksModule,
+  ProofTestsModule,
+  EnvelopeReplayModule,
   LiveModule,
   HealthModule,
   NotificationsModule,

@@ -62,6 +62,7 @@ export * from './identification/survey-surface.js';
 export * from './identification/two-point-step-response.js';
 export * from './live/channel-probe.schema.js';
 export * from './live/host-message.schema.js';
+export * from './live/interlock-response.schema.js';
 export * from './live/live-message.schema.js';
 export * from './live/live-trace.schema.js';
 export * from './live/rig-status.schema.js';

@@ -1,12 +1,13 @@
 import createClient from 'openapi-fetch';
 import { networkProblem, problemFrom } from './problem.js';
+import { fetchAsking } from './reauthentication.js';
 import type { paths } from './schema.js';
 
 /** The typed client of the API. `fetch` is looked up at each call, so that tests can stand in for the server. */
 export const client = createClient<paths>({
   baseUrl: globalThis.location.origin,
   credentials: 'same-origin',
-  fetch: (request) => globalThis.fetch(request),
+  fetch: fetchAsking,
 });
 
 interface Answer<Data> {

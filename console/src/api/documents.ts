@@ -9,6 +9,8 @@ export interface Page<Item> {
 }
 
 export type Session = Schemas['Session'];
+export type SignedInPlace = Schemas['SignedInPlace'];
+export type SecondFactor = Schemas['SecondFactor'];
 export type User = Schemas['User'];
 export type RigDocument = Schemas['RigDocument'];
 export type EnvelopeDocument = Schemas['Envelope'];

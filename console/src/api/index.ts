@@ -1,3 +1,4 @@
+export { noteAttendance } from './attendance.js';
 export { answerOf, client, ifMatch } from './client.js';
 export type {
   AdapterDocument,
@@ -13,8 +14,11 @@ export type {
   RunSummary,
   ScanBudget,
   SerialPort,
+  SecondFactor,
   Session,
+  SignedInPlace,
   User,
 } from './documents.js';
 export { ApiProblem, asProblem, networkProblem } from './problem.js';
+export { askForPasswordWith } from './reauthentication.js';
 export { createQueryClient, sessionKey } from './query-client.js';

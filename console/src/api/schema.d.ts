@@ -734,8 +734,28 @@ export interface paths {
         };
         get?: never;
         put?: never;
-        /** Ramps an actuator to a value, inside the envelope. */
+        /**
+         * Moves an actuator towards a value, inside the envelope.
+         * @description With `hold` the move goes on only while the same request is repeated within `hold.forS`; else the actuator stops where it is. `hold: null` is for scripts: the move goes on by itself to its end.
+         */
         post: operations["rigCommands_move"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/moves/release": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Ends a held move at once: the actuator stops where it is. */
+        post: operations["rigCommands_releaseMove"];
         delete?: never;
         options?: never;
         head?: never;
@@ -776,23 +796,6 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
-    "/api/v1/rigs/{rigId}/lockout": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        /** Locks the rig out or lifts the lockout. */
-        put: operations["rigCommands_setLockout"];
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
-    };
     "/api/v1/rigs/{rigId}/connections/{connection}/fault": {
         parameters: {
             query?: never;
@@ -824,6 +827,75 @@ export interface paths {
          * @description By the wiring that is saved. The device is asked while the rig is at rest; else the answer is what the scan read last.
          */
         post: operations["channelProbes_probe"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/lockouts": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists who holds the rig, oldest first; empty where nobody does. */
+        get: operations["lockouts_list"];
+        put?: never;
+        /** Locks the rig out: it stops in order, and nobody arms it until all are lifted. */
+        post: operations["lockouts_set"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/lockouts/{lockoutId}/lift": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Lifts a lockout: one’s own, or one that names you. Answers those that remain. */
+        post: operations["lockouts_lift"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/trips": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists the trips of a rig, newest first: first cause, what followed, who reset. */
+        get: operations["trips_list"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/trips/{tripId}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Reads a trip with the trajectory of its stop. */
+        get: operations["trips_get"];
+        put?: never;
+        post?: never;
         delete?: never;
         options?: never;
         head?: never;
@@ -1018,6 +1090,156 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/v1/rigs/{rigId}/interlocks/{interlock}/bypass": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /**
+         * Lets an interlock not act for a time, where the envelope allows it.
+         * @description It is judged and shown all the same, and acts at once at the end where it still must.
+         */
+        post: operations["interlocks_bypass"];
+        /** Ends a bypass early. */
+        delete: operations["interlocks_endBypass"];
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/interlocks/{interlock}/acknowledge": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Clears a latched interlock whose condition is false again. */
+        post: operations["interlocks_acknowledge"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/proof-tests": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Lists the proof tests of a rig, newest first. */
+        get: operations["proofTests_list"];
+        put?: never;
+        /**
+         * Begins the proof test of an interlock; the rig must be armed and without a run.
+         * @description A forced test takes the condition as true at once, and the rig does what follows. The response is measured by the rig host and appears in the test.
+         */
+        post: operations["proofTests_start"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/proof-tests/due": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** When each interlock in force has to be tested. */
+        get: operations["proofTests_due"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/proof-tests/arm": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /**
+         * Arms the rig for proof tests, though they are overdue; moves nothing.
+         * @description No run can be started until they are done.
+         */
+        post: operations["proofTests_arm"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/proof-tests/{testId}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Reads a proof test. */
+        get: operations["proofTests_get"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/proof-tests/{testId}/sign": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Signs a proof test as passed or failed; it cannot be changed afterwards. */
+        post: operations["proofTests_sign"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/v1/rigs/{rigId}/envelopes/replay": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /**
+         * What a draft would have done in recorded runs; saves nothing.
+         * @description On the named runs, or on the last ended ones of the rig.
+         */
+        post: operations["envelopeReplay_replay"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/v1/health": {
         parameters: {
             query?: never;
@@ -1128,7 +1350,7 @@ export interface components {
             status: number;
             detail: string;
             /** @enum {string} */
-            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.foreign-rig" | "auth.code-needed" | "auth.code-wrong" | "auth.reauthentication-needed" | "auth.second-factor-needed" | "auth.second-factor-exists" | "auth.second-factor-missing" | "auth.session-not-found" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "interlock.not-found" | "interlock.no-bypass" | "interlock.not-bypassed" | "interlock.not-latched" | "channel.not-found" | "channel.no-limit" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
+            code: "request.invalid" | "request.media-type" | "request.too-large" | "request.cross-origin" | "request.not-found" | "request.precondition" | "request.too-many" | "auth.required" | "auth.failed" | "auth.forbidden" | "auth.foreign-rig" | "auth.code-needed" | "auth.code-wrong" | "auth.reauthentication-needed" | "auth.second-factor-needed" | "auth.second-factor-exists" | "auth.second-factor-missing" | "auth.session-not-found" | "auth.setup-code" | "auth.setup-done" | "user.not-found" | "user.exists" | "user.last-administrator" | "user.weak-password" | "rig.not-found" | "rig.exists" | "rig.busy" | "rig.offline" | "rig.not-armed" | "rig.cannot-arm" | "rig.tripped" | "rig.not-tripped" | "rig.cause-present" | "rig.locked-out" | "rig.illegal-move" | "rig.not-a-bench" | "connection.not-found" | "envelope.not-found" | "envelope.none-in-force" | "envelope.own-draft" | "envelope.wrong-status" | "calibration.not-found" | "calibration.not-in-force" | "calibration.no-certificate" | "calibration.has-certificate" | "interlock.not-found" | "interlock.no-bypass" | "interlock.not-bypassed" | "interlock.not-latched" | "proof-test.not-found" | "proof-test.not-open" | "proof-test.no-response" | "proof-test.overdue" | "channel.not-found" | "channel.no-limit" | "move.hold-ended" | "move.held-by-another" | "lockout.not-found" | "lockout.not-yours" | "lockout.exists" | "trip.not-found" | "objective.not-found" | "expression.invalid" | "analysis.invalid-input" | "analysis.too-little-data" | "analysis.no-fit" | "experiment.not-found" | "experiment.preflight-failed" | "run.not-found" | "run.ended" | "run.not-running" | "run.no-samples" | "recorder.failed" | "adapter.unknown" | "adapter.timeout" | "adapter.refused" | "adapter.corrupt" | "adapter.disconnected" | "adapter.misconfigured" | "adapter.cancelled" | "plug-in.not-found" | "plug-in.not-loaded" | "plug-in.malformed" | "plug-in.other-contract" | "plug-in.duplicate" | "host.unavailable" | "host.timeout" | "server.unhealthy" | "server.bug";
             errors: {
                 field: string;
                 message: string;
@@ -3751,6 +3973,11 @@ export interface components {
                 } | null;
                 isForced: boolean;
             }[];
+            heldMoves: {
+                channel: string;
+                value: number;
+                by: string;
+            }[];
             armingObstacles: string[];
             bestPoint: {
                 [key: string]: number;
@@ -3923,12 +4150,16 @@ export interface components {
         Move: {
             channel: string;
             value: number;
+            hold: {
+                id: string;
+                forS: number;
+            } | null;
+        };
+        MoveRelease: {
+            channel: string;
+            holdId: string;
         };
         Reasoned: {
-            reason: string;
-        };
-        LockoutChange: {
-            isLockedOut: boolean;
             reason: string;
         };
         FaultChange: {
@@ -4361,6 +4592,77 @@ export interface components {
                 message: string;
             } | null;
         };
+        Lockout: {
+            id: string;
+            rigId: string;
+            by: string;
+            reason: string;
+            at: string;
+            mayLift: string[];
+        };
+        NewLockout: {
+            reason: string;
+            /** @default [] */
+            mayLift: string[];
+        };
+        TripPage: {
+            items: components["schemas"]["TripSummary"][];
+            nextCursor: string | null;
+        };
+        TripSummary: {
+            id: string;
+            rigId: string;
+            trip: {
+                cause: string;
+                message: string;
+                at: string;
+                by: string | null;
+                later: {
+                    cause: string;
+                    at: string;
+                }[];
+            };
+            resetAt: string | null;
+            resetBy: string | null;
+            resetReason: string | null;
+            timesToRest: {
+                channel: string;
+                timeS: number | null;
+            }[] | null;
+        };
+        TripDocument: {
+            id: string;
+            rigId: string;
+            trip: {
+                cause: string;
+                message: string;
+                at: string;
+                by: string | null;
+                later: {
+                    cause: string;
+                    at: string;
+                }[];
+            };
+            resetAt: string | null;
+            resetBy: string | null;
+            resetReason: string | null;
+            timesToRest: {
+                channel: string;
+                timeS: number | null;
+            }[] | null;
+            trajectory: {
+                columns: string[];
+                rows: {
+                    tS: number;
+                    values: (number | null)[];
+                }[];
+                timesToRest: {
+                    channel: string;
+                    timeS: number | null;
+                }[];
+                isAtRest: boolean;
+            } | null;
+        };
         RunPage: {
             items: components["schemas"]["Run"][];
             nextCursor: string | null;
@@ -4534,6 +4836,10 @@ export interface components {
                 connection: string;
                 code: string;
                 message: string;
+            } | {
+                /** @enum {string} */
+                type: "move.hold-timed-out";
+                channel: string;
             } | {
                 /** @enum {string} */
                 type: "connection.restored";
@@ -5001,6 +5307,165 @@ export interface components {
                 /** @description The points as little-endian Float32 in base64, bit for bit those of the run file. */
                 points: string;
             }[];
+        };
+        InterlockBypassOrder: {
+            forS: number;
+            reason: string;
+        };
+        ProofTestPage: {
+            items: components["schemas"]["ProofTest"][];
+            nextCursor: string | null;
+        };
+        ProofTest: {
+            id: string;
+            rigId: string;
+            envelopeVersion: number;
+            interlock: string;
+            title: string;
+            /** @enum {string} */
+            action: "warn" | "pause" | "stop" | "trip";
+            /** @enum {string} */
+            method: "forced" | "made-real";
+            /** @enum {string} */
+            status: "open" | "signed" | "abandoned";
+            startedBy: string;
+            startedAt: string;
+            limitMs: number;
+            conditionAt: string | null;
+            responseMs: number | null;
+            writes: number | null;
+            /** @enum {string|null} */
+            outcome: "pass" | "fail" | null;
+            note: string | null;
+            signedBy: string | null;
+            signedAt: string | null;
+        };
+        ProofTestDue: {
+            interlock: string;
+            title: string;
+            /** @enum {string} */
+            state: "in-date" | "due-soon" | "due" | "overdue" | "failed";
+            lastTest: components["schemas"]["ProofTest"] | null;
+            dueAt: string;
+            forbidsArmingAt: string;
+        };
+        ProofTestStart: {
+            interlock: string;
+            /** @enum {string} */
+            method: "forced" | "made-real";
+        };
+        ProofTestSignature: {
+            /** @enum {string} */
+            outcome: "pass" | "fail";
+            /** @default  */
+            note: string;
+        };
+        EnvelopeReplayOrder: {
+            content: components["schemas"]["EnvelopeContentInput"];
+            runIds?: string[];
+            /** @default 5 */
+            lastRuns: number;
+        };
+        EnvelopeReplay: {
+            runs: {
+                runId: string;
+                title: string;
+                startedAt: string;
+                /** @enum {string} */
+                status: "starting" | "running" | "paused" | "stopping" | "finished" | "stopped" | "tripped" | "interrupted";
+                envelopeVersion: number;
+                report: {
+                    scans: number;
+                    untilTS: number;
+                    firstHalt: {
+                        cause: string;
+                        /** @enum {string} */
+                        action: "stop" | "trip";
+                        tS: number;
+                    } | null;
+                    interlocks: {
+                        id: string;
+                        title: string;
+                        /** @enum {string} */
+                        action: "warn" | "pause" | "stop" | "trip";
+                        whyNotJudged: string | null;
+                        acts: number;
+                        episodes: {
+                            fromTS: number;
+                            durationS: number;
+                            isOpen: boolean;
+                        }[];
+                        totalS: number;
+                        isTrueAtStart: boolean;
+                        nearMisses: number;
+                        longestNearMissS: number;
+                        badScans: number;
+                        leastMargin: {
+                            value: number;
+                            atTS: number;
+                        } | null;
+                        marginChannel: string | null;
+                    }[];
+                    actuators: {
+                        channel: string;
+                        isLimited: boolean;
+                        requests: number;
+                        range: {
+                            clips: number;
+                            leastMargin: {
+                                value: number;
+                                atTS: number;
+                            } | null;
+                        };
+                        slew: {
+                            clips: number;
+                            leastMargin: {
+                                value: number;
+                                atTS: number;
+                            } | null;
+                        };
+                        dither: {
+                            clips: number;
+                            leastMargin: {
+                                value: number;
+                                atTS: number;
+                            } | null;
+                        };
+                        appliedOutside: number;
+                        readBackTrips: number;
+                        readBackLeastMargin: {
+                            value: number;
+                            atTS: number;
+                        } | null;
+                    }[];
+                    staleness: {
+                        channel: string;
+                        trips: number;
+                        firstTS: number | null;
+                        oldestS: number;
+                        oldestAtTS: number;
+                    }[];
+                    emergencyStops: {
+                        channel: string;
+                        title: string;
+                        presses: number;
+                        firstTS: number | null;
+                    }[];
+                    overruns: {
+                        mostInARow: number;
+                        limit: number;
+                        isTrip: boolean;
+                    };
+                    hints: {
+                        /** @enum {string} */
+                        kind: "nuisance" | "missing" | "late";
+                        text: string;
+                    }[];
+                } | null;
+                note: string | null;
+            }[];
+            scans: number;
+            scansMax: number;
         };
         AuditPage: {
             items: components["schemas"]["AuditEntry"][];
@@ -7813,6 +8278,58 @@ export interface operations {
             };
         };
     };
+    rigCommands_releaseMove: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["MoveRelease"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
     rigCommands_emergencyStop: {
         parameters: {
             query?: never;
@@ -7879,58 +8396,6 @@ export interface operations {
         requestBody: {
             content: {
                 "application/json": components["schemas"]["Reasoned"];
-            };
-        };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["RigStatus"];
-                };
-            };
-            /** @description Not signed in. */
-            401: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["ProblemDetails"];
-                };
-            };
-            /** @description The role may not, or not on this rig. */
-            403: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["ProblemDetails"];
-                };
-            };
-            /** @description Problem details. */
-            default: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["ProblemDetails"];
-                };
-            };
-        };
-    };
-    rigCommands_setLockout: {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                rigId: string;
-            };
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["LockoutChange"];
             };
         };
         responses: {
@@ -8042,6 +8507,259 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["ChannelProbe"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    lockouts_list: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Lockout"][];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    lockouts_set: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["NewLockout"];
+            };
+        };
+        responses: {
+            201: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Lockout"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    lockouts_lift: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                lockoutId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["Reasoned"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Lockout"][];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    trips_list: {
+        parameters: {
+            query?: {
+                limit?: number;
+                cursor?: string;
+            };
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["TripPage"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    trips_get: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                tripId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["TripDocument"];
                 };
             };
             /** @description Not signed in. */
@@ -8649,6 +9367,510 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["ScanTraces"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    interlocks_bypass: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                interlock: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["InterlockBypassOrder"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    interlocks_endBypass: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                interlock: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    interlocks_acknowledge: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                interlock: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    proofTests_list: {
+        parameters: {
+            query?: {
+                limit?: number;
+                cursor?: string;
+            };
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProofTestPage"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    proofTests_start: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["ProofTestStart"];
+            };
+        };
+        responses: {
+            201: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProofTest"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    proofTests_due: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProofTestDue"][];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    proofTests_arm: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["RigStatus"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    proofTests_get: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                testId: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProofTest"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    proofTests_sign: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+                testId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["ProofTestSignature"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProofTest"];
+                };
+            };
+            /** @description Not signed in. */
+            401: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description The role may not, or not on this rig. */
+            403: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+            /** @description Problem details. */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["ProblemDetails"];
+                };
+            };
+        };
+    };
+    envelopeReplay_replay: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                rigId: string;
+            };
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                "application/json": components["schemas"]["EnvelopeReplayOrder"];
+            };
+        };
+        responses: {
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["EnvelopeReplay"];
                 };
             };
             /** @description Not signed in. */

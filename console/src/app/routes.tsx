@@ -32,6 +32,10 @@ const pages: RouteObject[] = [
     }),
   },
   {
+    path: 'account',
+    lazy: async () => ({ Component: (await import('../features/auth/account-page.js')).AccountPage }),
+  },
+  {
     path: 'people',
     lazy: async () => ({ Component: (await import('../features/people/people-page.js')).PeoplePage }),
   },

@@ -2,7 +2,12 @@ import { useEffect } from 'react';
 import { Navigate, useLocation } from 'react-router-dom';
 import Box from '@mui/material/Box';
 import { Loading, ProblemNotice } from '../components/index.js';
-import { SessionProvider, useSessionQuery } from '../features/auth/index.js';
+import {
+  ReauthenticationDialog,
+  SessionProvider,
+  useAttendance,
+  useSessionQuery,
+} from '../features/auth/index.js';
 import { useLiveHub } from '../live/index.js';
 import { Shell } from './layout/shell.js';
 
@@ -17,6 +22,7 @@ export function SignedIn() {
     hub.start();
     return () => hub.stop();
   }, [hub, isSignedIn]);
+  useAttendance(isSignedIn);
   if (session.isPending)
     return (
       <Box sx={{ p: 3 }}>
@@ -40,6 +46,7 @@ export function SignedIn() {
   return (
     <SessionProvider session={session.data}>
       <Shell />
+      <ReauthenticationDialog />
     </SessionProvider>
   );
 }

@@ -120,5 +120,5 @@ export const demoEnvelope: EnvelopeDocument = {
 
 export function sessionOf(...roles: Session['roles']): Session {
   const [first = 'reader'] = roles;
-  return { account: first, title: first.replace('-', ' '), roles };
+  return { account: first, title: first.replace('-', ' '), roles, rigLimits: [] };
 }

@@ -7,6 +7,7 @@ import { EnvelopeEntity } from '../envelopes/entities/envelope.entity.js';
 import { ExperimentVersionEntity } from '../experiments/entities/experiment-version.entity.js';
 import { ExperimentEntity } from '../experiments/entities/experiment.entity.js';
 import { ObjectiveEntity } from '../objectives/entities/objective.entity.js';
+import { ProofTestEntity } from '../proof-tests/entities/proof-test.entity.js';
 import { RunEntity } from '../recordings/entities/run.entity.js';
 import { RigLockoutEntity } from '../rigs/entities/rig-lockout.entity.js';
 import { RigStateEntity } from '../rigs/entities/rig-state.entity.js';
@@ -23,6 +24,7 @@ export const entities = [
   ExperimentEntity,
   ExperimentVersionEntity,
   ObjectiveEntity,
+  ProofTestEntity,
   RigEntity,
   RigLockoutEntity,
   RigStateEntity,

@@ -45,7 +45,11 @@ export class RunReader {
     return this.read(runId, (reader) => reader.scanTraces(scan));
   }
 
-  private async read<T>(runId: string, work: (reader: RunFileReader) => Promise<T>): Promise<T> {
+  /** Opens the run's file for `work` and lets it go again.
+   *
+   * @throws run.no-samples
+   */
+  async read<T>(runId: string, work: (reader: RunFileReader) => Promise<T>): Promise<T> {
     const reader = await RunFileReader.open(this.records.file(runId));
     try {
       return await work(reader);

@@ -14,6 +14,7 @@ import {
 } from '@cresthold/shared';
 import { ChannelProber } from './channel-prober.js';
 import { HeldMoveLog } from './held-move-log.js';
+import { InterlockStopwatch } from './interlock-stopwatch.js';
 import { PeriodPacer } from './pacer.js';
 import { Publisher } from './publisher.js';
 import type { Recorder } from './recorder.js';
@@ -98,6 +99,9 @@ export class RigSession {
       periodS: rig.periodMs / 1000,
       serverSilentS: link.serverSilentS,
       sinks: [this.run, this.publisher, traces, new HeldMoveLog(link), this.stops],
+      stopwatch: new InterlockStopwatch(this.engine, (response) =>
+        link.send({ type: 'interlock-response', response }),
+      ),
     });
   }
 

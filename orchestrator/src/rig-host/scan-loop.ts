@@ -1,4 +1,5 @@
 import type { ScanEngine, ScanInput, ScanOutput } from '@cresthold/shared';
+import type { InterlockStopwatch } from './interlock-stopwatch.js';
 import { monotonicS } from './monotonic-clock.js';
 import type { Pacer } from './pacer.js';
 import { ScanStatistics } from './scan-statistics.js';
@@ -17,6 +18,8 @@ export interface ScanLoopParts {
   /** Time since the server was last heard, s. */
   serverSilentS: (nowS: number) => number;
   sinks: readonly ScanSink[];
+  /** Left out where nobody asks how quickly interlocks act. */
+  stopwatch?: InterlockStopwatch;
 }
 
 /**
@@ -53,7 +56,7 @@ export class ScanLoop {
   }
 
   private async scanOnce(latenessS: number): Promise<void> {
-    const { engine, wire, sinks, periodS } = this.parts;
+    const { engine, wire, sinks, periodS, stopwatch } = this.parts;
     const startS = monotonicS();
     await wire.read();
     const readS = monotonicS();
@@ -61,7 +64,9 @@ export class ScanLoop {
     const writeStartS = monotonicS();
     const written = wire.write(output.writes);
     for (const sink of sinks) sink.onScan(this.input, output);
+    stopwatch?.onScan(this.input, output);
     if (written !== null) await written;
+    stopwatch?.onWritten(monotonicS());
     this.statistics.add(latenessS, readS - startS + (monotonicS() - writeStartS), periodS);
   }
 

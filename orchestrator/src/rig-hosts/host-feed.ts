@@ -1,5 +1,13 @@
 import { Injectable } from '@nestjs/common';
-import type { FromHost, LiveTrace, RigStatus, RunEvent, Telemetry, Trip } from '@cresthold/shared';
+import type {
+  FromHost,
+  InterlockResponse,
+  LiveTrace,
+  RigStatus,
+  RunEvent,
+  Telemetry,
+  Trip,
+} from '@cresthold/shared';
 import { Subject } from 'rxjs';
 
 export type RunEnding = Extract<FromHost, { type: 'run-ended' }>;
@@ -11,6 +19,8 @@ export class HostFeed {
   readonly telemetry = new Subject<Telemetry>();
   readonly traces = new Subject<LiveTrace>();
   readonly runEvents = new Subject<{ rigId: string; runId: string; event: RunEvent }>();
+  /** How quickly interlocks acted. */
+  readonly interlockResponses = new Subject<{ rigId: string; response: InterlockResponse }>();
   /** A trip that had not been latched before. */
   readonly trips = new Subject<{ rigId: string; trip: Trip }>();
 }

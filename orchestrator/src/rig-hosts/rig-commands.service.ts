@@ -1,6 +1,7 @@
 import { Injectable } from '@nestjs/common';
 import { DomainError, moveAnswerSchema, type RigStatus } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
+import { ProofTestDues } from '../proof-tests/proof-test-dues.service.js';
 import { RigStore } from '../rigs/rig-store.js';
 import type { FaultChange, Move, MoveRelease } from './dto/rig-commands.dto.js';
 import { RigHostsService } from './rig-hosts.service.js';
@@ -12,13 +13,16 @@ export class RigCommandsService {
     private readonly hosts: RigHostsService,
     private readonly rigs: RigStore,
     private readonly audit: AuditService,
+    private readonly proofTests: ProofTestDues,
   ) {}
 
   status(rigId: string): Promise<RigStatus> {
     return this.hosts.currentStatus(rigId);
   }
 
+  /** @throws proof-test.overdue, and what the rig's host answers */
   async arm(rigId: string, by: string): Promise<RigStatus> {
+    await this.proofTests.requireInDate(rigId);
     const status = await this.hosts.commandForStatus(rigId, { type: 'arm', by });
     await this.audit.record({ account: by, action: 'rig.armed', rigId });
     return status;

@@ -136,6 +136,8 @@ export class RigHost implements RigHostOwner {
         return feed.telemetry.next(message.telemetry);
       case 'trace':
         return feed.traces.next(message.trace);
+      case 'interlock-response':
+        return feed.interlockResponses.next({ rigId: this.rigId, response: message.response });
       case 'run-event':
         return feed.runEvents.next({ rigId: this.rigId, runId: message.runId, event: message.event });
       case 'run-status':

@@ -2,6 +2,7 @@ import { Global, Module } from '@nestjs/common';
 import { AuditModule } from '../audit/audit.module.js';
 import { CalibrationStoreModule } from '../calibrations/calibration-store.module.js';
 import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
+import { ProofTestStoreModule } from '../proof-tests/proof-test-store.module.js';
 import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsPort } from '../rigs/rig-hosts.port.js';
 import { RigStoreModule } from '../rigs/rig-store.module.js';
@@ -21,6 +22,7 @@ import { RigHostsService } from './rig-hosts.service.js';
     AuditModule,
     CalibrationStoreModule,
     EnvelopeStoreModule,
+    ProofTestStoreModule,
     RecordingsModule,
     RigStoreModule,
     TripHistoryModule,

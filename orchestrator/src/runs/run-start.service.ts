@@ -3,6 +3,7 @@ import { DomainError, type RunOrder } from '@cresthold/shared';
 import { AuditService } from '../audit/audit.service.js';
 import { newId } from '../ids/new-id.js';
 import type { RunEntity } from '../recordings/entities/run.entity.js';
+import { ProofTestDues } from '../proof-tests/proof-test-dues.service.js';
 import { RunRecords } from '../recordings/run-records.service.js';
 import { RigHostsService } from '../rig-hosts/rig-hosts.service.js';
 import type { RunStart } from './dto/run.dto.js';
@@ -16,6 +17,7 @@ export class RunStarter {
     private readonly records: RunRecords,
     private readonly hosts: RigHostsService,
     private readonly audit: AuditService,
+    private readonly proofTests: ProofTestDues,
   ) {}
 
   /**
@@ -26,6 +28,8 @@ export class RunStarter {
     const earlier = await this.withKey(by, idempotencyKey);
     if (earlier) return sameRequest(earlier, request);
     const prepared = await this.orders.prepare(request);
+    // A rig that is armed for its proof tests runs nothing until they are done.
+    await this.proofTests.requireInDate(prepared.rigId);
     const run = newRun(prepared, idempotencyKey, by);
     try {
       await this.records.open(run);

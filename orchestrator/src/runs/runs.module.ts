@@ -2,6 +2,7 @@ import { Module } from '@nestjs/common';
 import { AuditModule } from '../audit/audit.module.js';
 import { CalibrationStoreModule } from '../calibrations/calibration-store.module.js';
 import { EnvelopeStoreModule } from '../envelopes/envelope-store.module.js';
+import { ProofTestStoreModule } from '../proof-tests/proof-test-store.module.js';
 import { RecordingsModule } from '../recordings/recordings.module.js';
 import { RigHostsModule } from '../rig-hosts/rig-hosts.module.js';
 import { RigStoreModule } from '../rigs/rig-store.module.js';
@@ -18,6 +19,7 @@ import { RunsService } from './runs.service.js';
     AuditModule,
     CalibrationStoreModule,
     EnvelopeStoreModule,
+    ProofTestStoreModule,
     RecordingsModule,
     RigHostsModule,
     RigStoreModule,

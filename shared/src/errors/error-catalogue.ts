@@ -60,10 +60,7 @@ export const errorCatalogue = {
     'forbidden',
     'This act needs a second factor at this station: set up an authenticator on the page of your account.',
   ),
-  'auth.second-factor-exists': entry(
-    'conflict',
-    'The account has a second factor already: remove it first.',
-  ),
+  'auth.second-factor-exists': entry('conflict', 'The account has a second factor already: remove it first.'),
   'auth.second-factor-missing': entry('not-allowed-now', 'The account has no second factor.'),
   'auth.session-not-found': entry('not-found', 'The account has no such session: it has ended already.'),
   'auth.setup-code': entry(
@@ -130,6 +127,13 @@ export const errorCatalogue = {
     'not-allowed-now',
     'The interlock does not wait to be acknowledged: its condition still holds, or it has not acted.',
   ),
+  'proof-test.not-found': entry('not-found', 'There is no such proof test on this rig.'),
+  'proof-test.not-open': entry('conflict', 'The proof test is signed or was abandoned: begin another one.'),
+  'proof-test.no-response': entry(
+    'not-allowed-now',
+    'The interlock has not acted in this proof test: it cannot be signed as passed.',
+  ),
+  'proof-test.overdue': entry('not-allowed-now', 'Proof tests of this rig are overdue: do them first.'),
   'channel.not-found': entry('invalid', 'The rig has no such channel.'),
   'channel.no-limit': entry(
     'not-allowed-now',

@@ -8,6 +8,7 @@ import { rigSchema } from '../rigs/rig.schema.js';
 import { wireFaultSchema } from '../rigs/wire-fault.schema.js';
 import { moveHoldSchema } from '../scan/held-move.schema.js';
 import { runEventSchema, runStatusSchema, verdictSchema } from '../runs/run-event.schema.js';
+import { interlockResponseSchema } from './interlock-response.schema.js';
 import { liveTraceSchema } from './live-trace.schema.js';
 import { rigStatusSchema, tripSchema } from './rig-status.schema.js';
 import { stopTrajectorySchema } from './stop-trajectory.schema.js';
@@ -111,6 +112,8 @@ export const fromHostSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('status'), status: rigStatusSchema }),
   z.object({ type: z.literal('telemetry'), telemetry: telemetrySchema }),
   z.object({ type: z.literal('trace'), trace: liveTraceSchema }),
+  /** An interlock acted. */
+  z.object({ type: z.literal('interlock-response'), response: interlockResponseSchema }),
   z.object({ type: z.literal('run-event'), runId: z.string(), event: runEventSchema }),
   z.object({ type: z.literal('run-status'), runId: z.string(), status: runStatusSchema }),
   z.object({

@@ -91,7 +91,11 @@ function strayCells(row: ChannelRow, columnsOf: AddressColumnsOf): CellFault[] {
     }));
 }
 
+/** No unit is an empty cell, not an empty text in quotes. */
+const isEmptyUnit = (key: string, value: unknown) => value === '' && (key === 'unit' || key === 'axis.unit');
+
 function put(row: Record<string, string>, column: ChannelColumn, value: unknown): void {
+  if (isEmptyUnit(column.key, value)) return;
   const text = writeCell(column, value);
   if (text !== '') row[column.key] = text;
 }

@@ -78,7 +78,9 @@ export function hasCell(kind: string, key: string): boolean {
 }
 
 function columnOf(key: string, name: string, field: AddressSchema, isRequired: boolean): ChannelColumn {
-  const { title = labelOf(name), description: help = '', default: fallback } = field;
+  const { title: own = labelOf(name), description: help = '', default: fallback } = field;
+  // E.g. the unit number of a device beside the unit of the channel.
+  const title = fixedColumns.some((column) => column.title === own) ? `${own} (address)` : own;
   const options = optionsOf(field);
   const kind = options.length > 0 ? 'choice' : kindOf(field.type);
   const shown = fallback === undefined || fallback === null ? null : textOf(fallback);

@@ -1,3 +1,4 @@
+import { Link } from 'react-router-dom';
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import { roleTitles, useSession, useSignOut } from '../../features/auth/index.js';
@@ -17,7 +18,14 @@ export function AccountMenu() {
           minWidth: 0,
         }}
       >
-        <Box sx={{ fontWeight: 700 }}>{session.title}</Box>
+        <Box
+          component={Link}
+          to="/account"
+          aria-label={`Your account: ${session.title}`}
+          sx={{ fontWeight: 700, color: 'inherit' }}
+        >
+          {session.title}
+        </Box>
         {roleText.toLowerCase() !== session.title.toLowerCase() && (
           <Box sx={{ color: 'text.secondary', display: { xs: 'none', sm: 'block' } }}>{roleText}</Box>
         )}

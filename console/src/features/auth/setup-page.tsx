@@ -32,7 +32,7 @@ const fields: { name: FieldName; label: string; hint: string; props: TextFieldPr
   {
     name: 'password',
     label: 'Password',
-    hint: '8 to 128 characters, and none of the common ones.',
+    hint: 'At least 15 characters: a few words that do not belong together.',
     props: { type: 'password', autoComplete: 'new-password' },
   },
 ];

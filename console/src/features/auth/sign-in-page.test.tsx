@@ -67,3 +67,21 @@ it('goes to the first start where there is no administrator, and shows the fault
   fireEvent.click(screen.getByRole('button', { name: 'Make administrator' }));
   expect(await screen.findByText('Use letters.')).toBeDefined();
 });
+
+it('asks for the code where the account has a second factor', async () => {
+  const seen = serve({
+    'GET /auth/session': nobody,
+    'GET /setup': notNeeded,
+    'POST /auth/sign-in': ({ body }) =>
+      'code' in (body as object)
+        ? problem(401, 'auth.code-wrong', 'The code is wrong.')
+        : problem(401, 'auth.code-needed', 'Give the code as well.'),
+  });
+  renderConsole('/sign-in');
+  await fillIn('technician', 'a password');
+  fireEvent.change(await screen.findByLabelText('Code'), { target: { value: '123 456' } });
+  expect(screen.queryByRole('alert')).toBeNull();
+  fireEvent.click(screen.getByRole('button', { name: 'Sign in' }));
+  expect((await screen.findByRole('alert')).textContent).toContain('The code is wrong.');
+  expect(seen.at(-1)?.body).toEqual({ account: 'technician', password: 'a password', code: '123 456' });
+});

@@ -2,10 +2,12 @@ import { useState, type SubmitEvent } from 'react';
 import { Navigate, useLocation } from 'react-router-dom';
 import Button from '@mui/material/Button';
 import TextField from '@mui/material/TextField';
+import { asProblem } from '../../api/index.js';
 import { Notice, ProblemNotice } from '../../components/index.js';
 import { useSessionQuery } from './api/get-session.js';
 import { useSetupQuery } from './api/setup.js';
 import { useSignIn } from './api/sign-in.js';
+import { CodeField } from './code-field.js';
 import { GatePage } from './gate-page.js';
 
 interface SignInState {
@@ -33,12 +35,18 @@ export function SignInPage() {
 function SignInForm() {
   const [account, setAccount] = useState('');
   const [password, setPassword] = useState('');
+  const [code, setCode] = useState('');
   const [isTried, setTried] = useState(false);
   const signIn = useSignIn();
+  const problem = signIn.error ? asProblem(signIn.error) : null;
+  // Once asked for, the code stays on the form through wrong ones.
+  const [asksCode, setAsksCode] = useState(false);
+  if (!asksCode && problem?.code === 'auth.code-needed') setAsksCode(true);
   const submit = (event: SubmitEvent) => {
     event.preventDefault();
     setTried(true);
-    if (account.trim() !== '' && password !== '') signIn.mutate({ account: account.trim(), password });
+    if (account.trim() === '' || password === '' || (asksCode && code.trim() === '')) return;
+    signIn.mutate({ account: account.trim(), password, ...(asksCode ? { code: code.trim() } : {}) });
   };
   const missing = (value: string, what: string) =>
     isTried && value.trim() === '' ? `Enter your ${what}.` : undefined;
@@ -63,7 +71,10 @@ function SignInForm() {
         error={missing(password, 'password') !== undefined}
         helperText={missing(password, 'password')}
       />
-      {signIn.error !== null && <ProblemNotice title="Not signed in" error={signIn.error} />}
+      {asksCode && <CodeField value={code} onChange={setCode} fault={missing(code, 'code')} />}
+      {problem !== null && problem.code !== 'auth.code-needed' && (
+        <ProblemNotice title="Not signed in" error={problem} />
+      )}
       <Button type="submit" variant="contained" size="medium" disabled={signIn.isPending}>
         Sign in
       </Button>

@@ -1,8 +1,9 @@
 import { useState } from 'react';
 import Box from '@mui/material/Box';
+import Button from '@mui/material/Button';
 import Link from '@mui/material/Link';
 import type { CalibrationDocument } from '../../api/index.js';
-import { formatMoment, GatedButton, ProblemNotice, ReasonDialog } from '../../components/index.js';
+import { formatMoment, ProblemNotice, ReasonDialog } from '../../components/index.js';
 import { certificateAddress, useUpload, useWithdraw } from './api/calibrations.js';
 import { CertificateChoice } from './certificate-choice.js';
 import { conversionText } from './conversion-text.js';
@@ -30,16 +31,18 @@ export function CalibrationRow({ title, calibration, history, obstacle, onCalibr
       </Box>
       <Facts calibration={calibration} />
       <Certificate calibration={calibration} obstacle={obstacle} />
-      <Box sx={{ display: 'flex', gap: 1, flexWrap: 'wrap' }}>
-        <GatedButton obstacle={obstacle} onClick={onCalibrate}>
-          {`Calibrate ${title} anew …`}
-        </GatedButton>
-        {obstacle === null && (
-          <GatedButton obstacle={null} onClick={() => setWithdrawing(true)}>
-            {`Withdraw that of ${title} …`}
-          </GatedButton>
-        )}
-      </Box>
+      {obstacle === null ? (
+        <Box sx={{ display: 'flex', gap: 1, flexWrap: 'wrap' }}>
+          <Button aria-label={`Calibrate ${title} anew`} onClick={onCalibrate}>
+            Calibrate anew …
+          </Button>
+          <Button aria-label={`Withdraw the calibration of ${title}`} onClick={() => setWithdrawing(true)}>
+            Withdraw …
+          </Button>
+        </Box>
+      ) : (
+        <Box sx={{ fontSize: '0.75rem', color: 'text.secondary' }}>{obstacle}</Box>
+      )}
       {history.length > 0 && <History list={history} />}
       {isWithdrawing && (
         <ReasonDialog

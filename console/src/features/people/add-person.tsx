@@ -11,7 +11,7 @@ const empty: NewUser = { account: '', title: '', roles: ['reader'], password: ''
 const texts = [
   { name: 'account', label: 'Account', hint: 'The short name for signing in.', type: 'text' },
   { name: 'title', label: 'Name or role', hint: 'As others see it in records.', type: 'text' },
-  { name: 'password', label: 'First password', hint: '8 to 128 characters.', type: 'password' },
+  { name: 'password', label: 'First password', hint: 'At least 15 characters.', type: 'password' },
 ] as const;
 
 export function AddPerson({ onClose }: { onClose: () => void }) {

@@ -5,16 +5,15 @@ import type { User } from '../../api/index.js';
 import { ProblemNotice } from '../../components/index.js';
 import { roleTitles, useSession } from '../auth/index.js';
 import { useChangeUser } from './api/users.js';
-import { RoleChoice } from './role-choice.js';
+import { PersonAccess } from './person-access.js';
+import { RightsForm } from './rights-form.js';
 
 /** One account: who, which roles, and whether it may sign in. */
 export function PersonRow({ user }: { user: User }) {
-  const [roles, setRoles] = useState<User['roles'] | null>(null);
+  const [open, setOpen] = useState<'roles' | 'access' | null>(null);
   const isSelf = useSession().account === user.account;
   const change = useChangeUser();
-  const save = () => {
-    if (roles) change.mutate({ account: user.account, body: { roles } }, { onSuccess: () => setRoles(null) });
-  };
+  const toggle = (part: 'roles' | 'access') => setOpen(open === part ? null : part);
   return (
     <Box
       component="li"
@@ -27,17 +26,24 @@ export function PersonRow({ user }: { user: User }) {
             {user.account}
           </Box>
           <Box sx={{ fontSize: '0.8125rem' }}>
-            {user.roles.map((role) => roleTitles[role]).join(', ')}
+            {user.roles.map((role) => roleWithRigs(user, role)).join('; ')}
             {!user.isEnabled && <strong> · disabled</strong>}
           </Box>
         </Box>
-        <Box sx={{ display: 'flex', gap: 1, flex: 'none' }}>
+        <Box sx={{ display: 'flex', flexWrap: 'wrap', gap: 1 }}>
           <Button
-            onClick={() => setRoles(roles ? null : user.roles)}
-            aria-expanded={roles !== null}
-            aria-label={roles ? `Cancel the change of ${user.title}` : `Roles … of ${user.title}`}
+            onClick={() => toggle('roles')}
+            aria-expanded={open === 'roles'}
+            aria-label={open === 'roles' ? `Cancel the change of ${user.title}` : `Roles … of ${user.title}`}
           >
-            {roles ? 'Cancel' : 'Roles …'}
+            {open === 'roles' ? 'Cancel' : 'Roles …'}
+          </Button>
+          <Button
+            onClick={() => toggle('access')}
+            aria-expanded={open === 'access'}
+            aria-label={open === 'access' ? `Close the access of ${user.title}` : `Access … of ${user.title}`}
+          >
+            {open === 'access' ? 'Close' : 'Access …'}
           </Button>
           <Button
             disabled={isSelf || change.isPending}
@@ -49,22 +55,17 @@ export function PersonRow({ user }: { user: User }) {
           </Button>
         </Box>
       </Box>
-      {roles && (
-        <Box sx={{ display: 'flex', flexWrap: 'wrap', gap: 1, alignItems: 'end' }}>
-          <RoleChoice
-            label={`Roles of ${user.title}`}
-            roles={roles}
-            onChange={setRoles}
-            fault={roles.length === 0 ? 'Give at least one role.' : undefined}
-          />
-          <Button variant="contained" onClick={save} disabled={roles.length === 0 || change.isPending}>
-            Save roles
-          </Button>
-        </Box>
-      )}
+      {open === 'roles' && <RightsForm user={user} change={change} onDone={() => setOpen(null)} />}
+      {open === 'access' && <PersonAccess user={user} />}
       {change.error !== null && (
         <ProblemNotice title={`${user.title} was not changed`} error={change.error} />
       )}
     </Box>
   );
+}
+
+/** E.g. `technician on burner-1, kiln-2`. */
+function roleWithRigs({ rigLimits }: User, role: User['roles'][number]): string {
+  const limit = rigLimits.find((one) => one.role === role);
+  return limit === undefined ? roleTitles[role] : `${roleTitles[role]} on ${limit.rigs.join(', ')}`;
 }

@@ -39,6 +39,7 @@ export function BudgetPanel({ budget, error, isStale, status }: BudgetPanelProps
             For devices that answer at once; connections are read side by side, so the slowest counts. Writes
             of moving actuators come on top.
             {status !== null &&
+              status.connections.every(({ isConnected }) => isConnected) &&
               status.scan.count > 0 &&
               ` As saved and measured: ${formatNumber(status.scan.wireMeanMs, 1)} ms on the wires of a scan.`}
           </Box>

@@ -41,7 +41,7 @@ export function useWiringEditor(
   const isChanged = savedText === null ? draft !== emptyDraft : JSON.stringify(draft) !== savedText;
   const asked = useSettled(body, budgetAfterMs);
   const budget = useScanBudget(asked);
-  const saving = useSaving({ base, setBase, body, wiring, read });
+  const saving = useSaving({ base, setBase, body, isReadable: own.size === 0, wiring, read });
   const isSettled = asked === body && !budget.isPlaceholderData;
   const faults = joinFaults(own, isSettled ? (budget.data?.faults ?? []) : [], saving.isTried);
   return {
@@ -73,11 +73,13 @@ interface SavingParts {
   base: Base;
   setBase: (base: Base) => void;
   body: Record<string, unknown>;
+  /** Every cell can be read; else there is nothing to send. */
+  isReadable: boolean;
   wiring: ReturnType<typeof useWiringDraft>;
   read: (content: Rig) => ReturnType<typeof draftOf>;
 }
 
-function useSaving({ base, setBase, body, wiring, read }: SavingParts) {
+function useSaving({ base, setBase, body, isReadable, wiring, read }: SavingParts) {
   const [isTried, setTried] = useState(false);
   const save = useSaveRig();
   const navigate = useNavigate();
@@ -99,6 +101,7 @@ function useSaving({ base, setBase, body, wiring, read }: SavingParts) {
     saveError: save.error,
     save: () => {
       setTried(true);
+      if (!isReadable) return;
       save.mutate({ body, revision: base?.revision ?? null }, { onSuccess: onSaved, onError: onFailed });
     },
   };

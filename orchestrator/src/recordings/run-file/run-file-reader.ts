@@ -1,6 +1,7 @@
 import { DomainError, runEventBodySchema, type RunColumn, type RunEvent } from '@cresthold/shared';
 import type { DataSource } from 'typeorm';
 import { runEndSchema, runManifestSchema, type StoredManifest } from './run-file.types.js';
+import { streamScans, type RecordedScan } from './run-file-scans.js';
 import { openRunFileSource } from './run-file-source.js';
 import {
   queryScanTraces,
@@ -88,6 +89,11 @@ export class RunFileReader {
    */
   async samples(query: SamplesQuery): Promise<Samples> {
     return querySamples(this.source, await this.columns(), query);
+  }
+
+  /** Every scan in its order, without holding the run; the scan is reused. */
+  scans(columns: readonly RunColumn[]): AsyncGenerator<RecordedScan> {
+    return streamScans(this.source, columns);
   }
 
   /** The channels whose traces the run records. */

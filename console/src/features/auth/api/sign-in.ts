@@ -4,6 +4,7 @@ import { answerOf, client, sessionKey, type Session } from '../../../api/index.j
 interface Credentials {
   account: string;
   password: string;
+  code?: string;
 }
 
 const signIn = (body: Credentials): Promise<Session> =>

@@ -7,6 +7,8 @@ export const envelopeKeys = { ofRig: (rigId: string) => ['envelopes', rigId] as 
 export const envelopesQuery = (rigId: string) =>
   queryOptions({
     queryKey: envelopeKeys.ofRig(rigId),
+    // A rig that is not made yet has none.
+    enabled: rigId !== '',
     queryFn: async (): Promise<EnvelopeDocument[]> => {
       const params = { path: { rigId }, query: { limit: 200 } };
       return (await answerOf(client.GET('/api/v1/rigs/{rigId}/envelopes', { params }))).items;

@@ -36,7 +36,7 @@ export function useAddUser() {
 
 export interface UserChange {
   account: string;
-  body: { roles?: Role[]; isEnabled?: boolean; password?: string };
+  body: { roles?: Role[]; rigLimits?: User['rigLimits']; isEnabled?: boolean; password?: string };
 }
 
 export function useChangeUser() {

@@ -1,4 +1,5 @@
-import type { ReactNode } from 'react';
+import { Fragment, useState, type ReactNode } from 'react';
+import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import type { ChannelColumn, ChannelRow as Row } from '@cresthold/shared';
 import { CellInput } from './cell-input.js';
@@ -42,44 +43,69 @@ export function ChannelRow(props: ChannelRowProps) {
       />
     );
   };
+  const [isOpen, setOpen] = useState(false);
+  const isShown = isOpen || faults.size > 0 || actions === null;
   return (
-    <tr>
+    <tr className={isShown ? undefined : 'row-folded'}>
       {columns.map((column, at) => {
-        if (at === 0) {
-          return (
-            <th key={column.key} scope="row" data-head={column.title}>
-              {cellOf(column, at)}
-            </th>
-          );
-        }
-        if (!keys.has(column.key)) {
-          return (
-            <td key={column.key} className="cell-none">
-              <span aria-hidden="true">·</span>
-            </td>
-          );
-        }
+        const Cell = at === 0 ? 'th' : 'td';
+        const has = keys.has(column.key);
         return (
-          <td key={column.key} data-head={column.title}>
-            {cellOf(column, at)}
-          </td>
+          <Fragment key={column.key}>
+            <Cell
+              scope={at === 0 ? 'row' : undefined}
+              data-head={column.title}
+              className={has ? (headKeys.has(column.key) ? undefined : 'cell-more') : 'cell-none'}
+            >
+              {has ? cellOf(column, at) : <span aria-hidden="true">·</span>}
+            </Cell>
+            {column.key === 'title' && test}
+          </Fragment>
         );
       })}
-      {test}
-      {actions && <RowButtons index={index} name={name} actions={actions} />}
+      {actions && (
+        <RowButtons
+          index={index}
+          name={name}
+          actions={actions}
+          isOpen={isShown}
+          onFold={() => setOpen((before) => !before)}
+        />
+      )}
     </tr>
   );
 }
 
-function RowButtons({ index, name, actions }: { index: number; name: string; actions: RowActions }) {
+/** What a card shows while it is folded. */
+const headKeys = new Set(['id', 'title']);
+
+interface RowButtonsProps {
+  index: number;
+  name: string;
+  actions: RowActions;
+  isOpen: boolean;
+  onFold: () => void;
+}
+
+function RowButtons({ index, name, actions, isOpen, onFold }: RowButtonsProps) {
   return (
-    <td className="cell-wide" style={{ whiteSpace: 'nowrap' }}>
-      <Button aria-label={`Duplicate ${name}`} onClick={() => actions.duplicate(index)}>
-        Duplicate
-      </Button>{' '}
-      <Button aria-label={`Remove ${name}`} onClick={() => actions.remove(index)}>
-        Remove
-      </Button>
+    <td className="cell-wide">
+      <Box sx={{ display: 'flex', gap: 0.5, flexWrap: { xs: 'wrap', md: 'nowrap' } }}>
+        <Button
+          sx={{ display: { md: 'none' } }}
+          aria-expanded={isOpen}
+          aria-label={`All fields of ${name}`}
+          onClick={onFold}
+        >
+          All fields
+        </Button>
+        <Button aria-label={`Duplicate ${name}`} onClick={() => actions.duplicate(index)}>
+          Duplicate
+        </Button>
+        <Button aria-label={`Remove ${name}`} onClick={() => actions.remove(index)}>
+          Remove
+        </Button>
+      </Box>
     </td>
   );
 }

@@ -1,4 +1,4 @@
-import { useMemo, useState, type ClipboardEvent, type ReactNode } from 'react';
+import { Fragment, useMemo, useState, type ClipboardEvent, type ReactNode } from 'react';
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import TextField from '@mui/material/TextField';
@@ -60,7 +60,12 @@ export function ChannelTable(props: ChannelTableProps) {
           sx={{ maxWidth: '20rem' }}
         />
       )}
-      <Box sx={{ overflowX: 'auto' }} role="region" aria-label="Channels, table" tabIndex={0}>
+      <Box
+        sx={{ overflowX: 'auto', scrollPaddingLeft: '11rem' }}
+        role="region"
+        aria-label="Channels, table"
+        tabIndex={0}
+      >
         <Box
           component="table"
           aria-label="Channels"
@@ -100,11 +105,13 @@ function TableHead({ columns, isReadOnly }: { columns: readonly ChannelColumn[];
     <thead>
       <tr>
         {columns.map(({ key, title, kind, help }) => (
-          <th key={key} scope="col" title={help} style={{ minWidth: widthOf(key, kind) }}>
-            {title}
-          </th>
+          <Fragment key={key}>
+            <th scope="col" title={help} style={{ minWidth: widthOf(key, kind) }}>
+              {title}
+            </th>
+            {key === 'title' && <th scope="col">Live test, as saved</th>}
+          </Fragment>
         ))}
-        <th scope="col">Live test, as saved</th>
         {!isReadOnly && <th scope="col">Row</th>}
       </tr>
     </thead>

@@ -3,11 +3,13 @@ import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import {
   channelRowsMax,
+  columnsOfRow,
   hasTableHead,
   pasteCells,
   tableColumns,
   writeChannelTable,
   type AddressColumnsOf,
+  type ChannelColumn,
   type ChannelRow,
   type Rig,
   type TableSetting,
@@ -42,7 +44,7 @@ export function ChannelsPanel({ wiring, columnsOf, faults, saved, isReadOnly }: 
     () => ({ columnsOf, connections: draft.connections.map(({ id }) => id) }),
     [columnsOf, draft.connections],
   );
-  const columns = useMemo(() => tableColumns(draft.rows, setting), [draft.rows, setting]);
+  const columns = useMemo(() => columnsInUse(draft.rows, setting), [draft.rows, setting]);
   const setRows = (rows: readonly ChannelRow[]) => wiring.change((before) => ({ ...before, rows }));
   const paste = (text: string, at: { row: number; column: number }) => {
     if (hasTableHead(text, setting)) return setPasted(text);
@@ -106,7 +108,7 @@ export function ChannelsPanel({ wiring, columnsOf, faults, saved, isReadOnly }: 
 }
 
 interface TestedTableProps extends ChannelsPanelProps {
-  columns: ReturnType<typeof tableColumns>;
+  columns: readonly ChannelColumn[];
   onPaste: (text: string, at: { row: number; column: number }) => void;
 }
 
@@ -175,6 +177,14 @@ function actionsOf({ setRow, change }: WiringDraft, columnsOf: AddressColumnsOf)
       }),
     remove: (index) => change((draft) => ({ ...draft, rows: draft.rows.toSpliced(index, 1) })),
   };
+}
+
+/** Columns in which any row has a cell, or has something left over. */
+function columnsInUse(rows: readonly ChannelRow[], setting: TableSetting): ChannelColumn[] {
+  const used = new Set(rows.flatMap((row) => columnsOfRow(row, setting.columnsOf).map(({ key }) => key)));
+  return tableColumns(rows, setting).filter(
+    ({ key }) => used.has(key) || rows.some((row) => key.startsWith('address.') && (row[key] ?? '') !== ''),
+  );
 }
 
 function newRow(rows: readonly ChannelRow[], { connections }: TableSetting): ChannelRow {

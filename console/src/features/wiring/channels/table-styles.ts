@@ -4,7 +4,7 @@ import type { Theme } from '@mui/material/styles';
 export const cellWidthPx = {
   text: 150,
   title: 190,
-  choice: 132,
+  choice: 150,
   number: 96,
   boolean: 110,
   json: 150,
@@ -52,7 +52,7 @@ export function channelTableStyles(theme: Theme) {
     '& .cell-none': { color: vars.palette.text.secondary, textAlign: 'center' },
     [theme.breakpoints.down('md')]: {
       '&, & tbody, & tr, & td, & th': { display: 'block' },
-      '& thead, & .cell-none': { display: 'none' },
+      '& thead, & .cell-none, & .row-folded .cell-more': { display: 'none !important' },
       '& tbody tr': {
         border: `1px solid ${vars.palette.paper.outline}`,
         marginBottom: '12px',
