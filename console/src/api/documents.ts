@@ -21,6 +21,9 @@ export type RunSummary = Schemas['Run'];
 export type AdapterDocument = Schemas['Adapter'];
 export type SerialPort = Schemas['SerialPort'];
 export type ScanBudget = Schemas['ScanBudget'];
+export type Lockout = Schemas['Lockout'];
+export type TripSummary = Schemas['TripSummary'];
+export type TripDocument = Schemas['TripDocument'];
 export type CalibrationDocument = Schemas['Calibration'];
 /** A rig as requests carry it. */
 export type RigBody = Schemas['RigInput'];

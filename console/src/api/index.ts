@@ -7,6 +7,7 @@ export type {
   ExperimentBody,
   ExperimentSummary,
   ExperimentVersion,
+  Lockout,
   ObjectiveDocument,
   Page,
   RigBody,
@@ -18,6 +19,8 @@ export type {
   Session,
   SignedInPlace,
   User,
+  TripDocument,
+  TripSummary,
 } from './documents.js';
 export { ApiProblem, asProblem, networkProblem } from './problem.js';
 export { askForPasswordWith } from './reauthentication.js';

@@ -5,7 +5,7 @@ export const permissions = {
   'rig.arm': ['test-engineer', 'technician'],
   'rig.move': ['test-engineer', 'technician'],
   'rig.reset': ['safety-officer'],
-  'rig.lock-out': ['safety-officer'],
+  'rig.lock-out': ['test-engineer', 'technician', 'safety-officer', 'administrator'],
   'rig.inject-fault': ['test-engineer'],
   'rig.wire': ['test-engineer', 'administrator'],
   'rig.test-channel': ['test-engineer', 'technician'],

@@ -4,10 +4,11 @@ import Link from '@mui/material/Link';
 import Typography from '@mui/material/Typography';
 import type { RigStatus } from '@cresthold/shared';
 import type { RigDocument } from '../../api/index.js';
-import { Notice, PanelBoundary, PhaseMark } from '../../components/index.js';
+import { formatInstant, Notice, PanelBoundary, PhaseMark } from '../../components/index.js';
 import { useLinkState, useRigStatus } from '../../live/index.js';
 import { useSession } from '../auth/index.js';
 import { useEnvelopes } from '../envelopes/index.js';
+import { useLockouts } from '../rigs/index.js';
 import { BestPoint } from './best-point.js';
 import { LiveReadings } from './live-readings.js';
 import { needsOf, type Need } from './needs.js';
@@ -35,6 +36,7 @@ export function RigCard({ rig }: { rig: RigDocument }) {
     >
       <PanelBoundary name={rig.content.title}>
         <CardHead rig={rig} status={status} />
+        <Lockouts rigId={rig.id} isLockedOut={status?.isLockedOut ?? false} />
         {status?.trip && (
           <Notice kind="trip" title={`Tripped: ${status.trip.message}`}>
             First cause: {status.trip.cause}
@@ -64,6 +66,21 @@ export function RigCard({ rig }: { rig: RigDocument }) {
         <Needs needs={needs} />
       </PanelBoundary>
     </Box>
+  );
+}
+
+/** Everybody who holds the rig, with the reason. */
+function Lockouts({ rigId, isLockedOut }: { rigId: string; isLockedOut: boolean }) {
+  const lockouts = useLockouts(rigId, isLockedOut);
+  if (!isLockedOut) return null;
+  return (
+    <Notice kind="warn" title="Locked out">
+      {lockouts.data?.map(({ id, by, reason, at }) => (
+        <div key={id}>
+          {by} since {formatInstant(at)}: {reason}
+        </div>
+      ))}
+    </Notice>
   );
 }
 

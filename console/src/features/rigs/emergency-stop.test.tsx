@@ -12,6 +12,7 @@ function open(path: string, role: Role, more: Record<string, Handler>) {
     'GET /rigs/burner-1': () => json(demoRigDocument),
     'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
+    'GET /rigs/burner-1/trips': list(),
     'GET /runs': list(),
     'GET /objectives': list(),
     ...more,
@@ -42,6 +43,13 @@ it('stops every rig from a page that is about none', async () => {
   const seen = open('/objectives', 'technician', { 'POST /rigs/emergency-stop': () => json({ items: [] }) });
   fireEvent.click(await screen.findByRole('button', { name: /^STOP ALL RIGS/ }));
   await expect.poll(() => stopsOf(seen).map(({ path }) => path)).toEqual(['/rigs/emergency-stop']);
+});
+
+it('stops every rig by one press from the page of one', async () => {
+  const seen = open('/rigs/burner-1', 'reader', { 'POST /rigs/emergency-stop': () => json([demoStatus]) });
+  fireEvent.click(await screen.findByRole('button', { name: 'ALL RIGS' }));
+  expect(await screen.findByText(/All rigs: emergency stop accepted/)).toBeDefined();
+  expect(stopsOf(seen).map(({ path }) => path)).toEqual(['/rigs/emergency-stop']);
 });
 
 it('says NOT STOPPED and what to do where the server refuses', async () => {

@@ -27,6 +27,7 @@ function openRig(role: Role, isBench: boolean, onPut: Handler = () => json(statu
     'GET /rigs/burner-1': () => json(document),
     'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
+    'GET /rigs/burner-1/trips': list(),
     'GET /runs': list(),
     [address]: onPut,
   });

@@ -1,33 +1,40 @@
 import { useState } from 'react';
+import TextField from '@mui/material/TextField';
 import { GatedButton, ReasonDialog } from '../../components/index.js';
 import { useObstacle } from '../auth/index.js';
-import { useLockout } from './api/rig-commands.js';
+import { useLockOut } from './api/lockouts.js';
 
-/** A person's hold on a rig: while it is on, nobody can arm. */
-export function LockoutControl({ rigId, isLockedOut }: { rigId: string; isLockedOut: boolean }) {
+/** Sets one's own lockout: while any is on, nobody can arm. */
+export function LockoutControl({ rigId }: { rigId: string }) {
   const [isAsking, setAsking] = useState(false);
+  const [named, setNamed] = useState('');
   const obstacle = useObstacle('rig.lock-out');
-  const lockout = useLockout(rigId);
-  const verb = isLockedOut ? 'Lift lockout' : 'Lock out';
+  const lockOut = useLockOut(rigId);
+  const mayLift = named.split(/[\s,;]+/).filter((account) => account !== '');
   return (
     <>
       <GatedButton obstacle={obstacle} onClick={() => setAsking(true)}>
-        {verb} …
+        Lock out …
       </GatedButton>
       {isAsking && (
         <ReasonDialog
-          title={isLockedOut ? 'Lift the lockout' : 'Lock the rig out'}
-          confirmLabel={verb}
-          error={lockout.error}
-          isBusy={lockout.isPending}
+          title="Lock the rig out"
+          confirmLabel="Lock out"
+          error={lockOut.error}
+          isBusy={lockOut.isPending}
           onClose={() => setAsking(false)}
-          onConfirm={(reason) =>
-            lockout.mutate({ isLockedOut: !isLockedOut, reason }, { onSuccess: () => setAsking(false) })
-          }
+          onConfirm={(reason) => lockOut.mutate({ reason, mayLift }, { onSuccess: () => setAsking(false) })}
         >
-          {isLockedOut
-            ? 'The rig can be armed again afterwards.'
-            : 'Nobody can arm the rig until the lockout is lifted. It replaces no padlock on the supply.'}
+          A rig that moves is stopped in order. Nobody can arm it until every lockout on it is lifted. It
+          replaces no padlock on the supply.
+          <TextField
+            label="Who else may lift it (accounts of safety officers or administrators)"
+            helperText="Left empty: you, and every safety officer and administrator."
+            value={named}
+            onChange={(event) => setNamed(event.target.value)}
+            fullWidth
+            sx={{ mt: 2 }}
+          />
         </ReasonDialog>
       )}
     </>

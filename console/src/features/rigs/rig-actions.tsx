@@ -33,7 +33,7 @@ export function RigActions({ rigId, status }: { rigId: string; status: RigStatus
             Arm
           </GatedButton>
         )}
-        <LockoutControl rigId={rigId} isLockedOut={status?.isLockedOut ?? false} />
+        <LockoutControl rigId={rigId} />
       </Box>
       {arm.error !== null && <ProblemNotice title="Not armed" error={arm.error} />}
       {disarm.error !== null && <ProblemNotice title="Not disarmed" error={disarm.error} />}

@@ -2,7 +2,7 @@ import { fireEvent, screen, within } from '@testing-library/react';
 import { describe, expect, it } from 'vitest';
 import type { RigStatus, Role } from '@cresthold/shared';
 import { demoEnvelope, demoRigDocument, demoStatus, sessionOf } from '../../testing/documents.js';
-import { json, list, problem, serve, type Handler } from '../../testing/fake-server.js';
+import { json, list, problem, serve, type FakeRequest, type Handler } from '../../testing/fake-server.js';
 import { renderConsole } from '../../testing/render-console.js';
 
 /** Serves the rig in a state to a person with a role, and opens its page. */
@@ -14,6 +14,7 @@ function openRig(role: Role, status: Partial<RigStatus>, more: Record<string, Ha
     'GET /rigs/burner-1': () => json(document),
     'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
+    'GET /rigs/burner-1/trips': list(),
     'GET /runs': list(),
     ...more,
   });
@@ -90,23 +91,164 @@ describe('a manual move', () => {
   it('stays inside the limits: the fault stands at the field and nothing is sent', async () => {
     const { seen } = openRig('technician', { phase: 'armed' });
     fireEvent.change(await moveField(), { target: { value: '21' } });
-    fireEvent.click(await button('Move'));
+    fireEvent.pointerDown(await button('Hold to move Air trim'));
     expect(await screen.findByText('Stay within \u22125 to 20 %.')).toBeDefined();
     expect((await moveField()).getAttribute('aria-invalid')).toBe('true');
     expect(seen.some(({ path }) => path.endsWith('/moves'))).toBe(false);
   });
 
-  it('sends the number in the unit of the channel', async () => {
-    const { seen } = openRig(
+  const moving = {
+    'POST /rigs/burner-1/moves': () => json({ ...demoStatus, phase: 'armed' }),
+    'POST /rigs/burner-1/moves/release': () => json({ ...demoStatus, phase: 'armed' }),
+  };
+  const movesOf = (seen: FakeRequest[]) => seen.filter(({ path }) => path.endsWith('/moves'));
+  const releasesOf = (seen: FakeRequest[]) => seen.filter(({ path }) => path.endsWith('/release'));
+  type Held = { channel: string; value: number; hold: { id: string; forS: number } };
+
+  it('goes on while the button is held, by renewals of one press, and ends with it', async () => {
+    const { seen } = openRig('technician', { phase: 'armed' }, moving);
+    fireEvent.change(await moveField(), { target: { value: '12,5' } });
+    const hold = await button('Hold to move Air trim');
+    fireEvent.pointerDown(hold);
+    expect(hold.getAttribute('aria-pressed')).toBe('true');
+    await expect.poll(() => movesOf(seen).length).toBeGreaterThan(1);
+    fireEvent.pointerUp(hold);
+    expect(hold.getAttribute('aria-pressed')).toBe('false');
+    await expect.poll(() => releasesOf(seen).length).toBe(1);
+    const bodies = movesOf(seen).map(({ body }) => body as Held);
+    const [first] = bodies;
+    expect(first).toMatchObject({ channel: 'airTrim', value: 12.5, hold: { forS: 1 } });
+    expect(new Set(bodies.map(({ hold: { id } }) => id)).size).toBe(1);
+    expect(releasesOf(seen)[0]?.body).toEqual({ channel: 'airTrim', holdId: first?.hold.id });
+    const count = movesOf(seen).length;
+    await new Promise((resolve) => setTimeout(resolve, 400));
+    expect(movesOf(seen)).toHaveLength(count);
+  });
+
+  it.each<[string, (target: HTMLElement) => void]>([
+    ['the pointer leaves the button', (target) => fireEvent.pointerLeave(target)],
+    ['the touch is taken away', (target) => fireEvent.pointerCancel(target)],
+    ['another window comes up', () => fireEvent(window, new Event('blur'))],
+    ['the page goes away', () => fireEvent(window, new Event('pagehide'))],
+    ['the network goes', () => fireEvent(window, new Event('offline'))],
+  ])('ends when %s', async (_, happen) => {
+    const { seen } = openRig('technician', { phase: 'armed' }, moving);
+    const hold = await button(/Hold to move Air trim up, at most to 20 %/);
+    fireEvent.pointerDown(hold);
+    await expect.poll(() => movesOf(seen)[0]?.body).toMatchObject({ value: 20 });
+    happen(hold);
+    await expect.poll(() => releasesOf(seen).length).toBe(1);
+    // What is asked for waits while the network is gone.
+    fireEvent(window, new Event('online'));
+  });
+
+  it('works by a held key, and says how it works', async () => {
+    const { seen } = openRig('technician', { phase: 'armed' }, moving);
+    const hold = await button(/Hold to move Air trim down/);
+    const words = document.getElementById(hold.getAttribute('aria-describedby') ?? '')?.textContent;
+    expect(words).toContain('only while a button is held');
+    fireEvent.keyDown(hold, { key: ' ' });
+    fireEvent.keyDown(hold, { key: ' ', repeat: true });
+    await expect.poll(() => movesOf(seen)[0]?.body).toMatchObject({ value: -5 });
+    fireEvent.keyUp(hold, { key: ' ' });
+    await expect.poll(() => releasesOf(seen).length).toBe(1);
+  });
+
+  it('ends, and says why, when a renewal is refused', async () => {
+    openRig(
       'technician',
       { phase: 'armed' },
       {
-        'POST /rigs/burner-1/moves': () => json({ ...demoStatus, phase: 'armed' }),
+        ...moving,
+        'POST /rigs/burner-1/moves': () => problem(409, 'move.held-by-another', 'engineer holds this.'),
       },
     );
-    fireEvent.change(await moveField(), { target: { value: '12,5' } });
-    fireEvent.click(await button('Move'));
-    await expect.poll(() => seen.at(-1)?.body).toEqual({ channel: 'airTrim', value: 12.5 });
+    fireEvent.pointerDown(await button(/Hold to move Air trim up/));
+    expect(await screen.findByText('engineer holds this.')).toBeDefined();
+    expect((await button(/Hold to move Air trim up/)).getAttribute('aria-pressed')).toBe('false');
+  });
+});
+
+describe('a lockout', () => {
+  const lockout = {
+    id: 'one',
+    rigId: 'burner-1',
+    by: 'colleague',
+    reason: 'Hands in the burner',
+    at: '2026-03-01T10:00:00.000Z',
+    mayLift: ['deputy'],
+  };
+
+  it('says who holds the rig, why, and who may lift it; nobody else is offered to', async () => {
+    openRig('technician', { isLockedOut: true }, { 'GET /rigs/burner-1/lockouts': () => json([lockout]) });
+    expect(await screen.findByText('colleague')).toBeDefined();
+    const entries = screen.getByRole('list', { name: 'Lockouts' }).textContent;
+    expect(entries).toContain('Hands in the burner');
+    expect(entries).toContain('Lifted by colleague, or by deputy.');
+    expect(screen.queryByRole('button', { name: /Lift lockout/ })).toBeNull();
+  });
+
+  it('is lifted with a reason by a safety officer where nobody is named', async () => {
+    const { seen } = openRig(
+      'safety-officer',
+      { isLockedOut: true },
+      {
+        'GET /rigs/burner-1/lockouts': () => json([{ ...lockout, mayLift: [] }]),
+        'POST /rigs/burner-1/lockouts/one/lift': () => json([]),
+      },
+    );
+    fireEvent.click(await button('Lift lockout of colleague …'));
+    fireEvent.change(screen.getByLabelText('Reason'), { target: { value: 'Work is done' } });
+    fireEvent.click(await button('Lift lockout'));
+    await expect
+      .poll(() => seen.find(({ path }) => path.endsWith('/lift'))?.body)
+      .toEqual({ reason: 'Work is done' });
+  });
+
+  it('is set by a technician, who names who else may lift it', async () => {
+    const { seen } = openRig('technician', {}, { 'POST /rigs/burner-1/lockouts': () => json(lockout, 201) });
+    fireEvent.click(await button('Lock out …'));
+    fireEvent.change(screen.getByLabelText('Reason'), { target: { value: 'Rewiring' } });
+    fireEvent.change(screen.getByLabelText(/Who else may lift it/), { target: { value: 'officer, deputy' } });
+    fireEvent.click(await button('Lock out'));
+    await expect
+      .poll(() => seen.find(({ method, path }) => method === 'POST' && path.endsWith('/lockouts'))?.body)
+      .toEqual({ reason: 'Rewiring', mayLift: ['officer', 'deputy'] });
+  });
+});
+
+describe('the trips of a rig', () => {
+  it('show how each actuator came to rest', async () => {
+    const summary = {
+      id: 'one',
+      rigId: 'burner-1',
+      trip,
+      resetAt: '2026-03-01T10:05:00.000Z',
+      resetBy: 'officer',
+      resetReason: 'Flame looked at',
+      timesToRest: [{ channel: 'airTrim', timeS: 2.346 }],
+    };
+    const rows = [
+      { tS: 0, values: [10, 10] },
+      { tS: 2.4, values: [0, 0] },
+    ];
+    const trajectory = {
+      columns: ['airTrim', 'airTrim.applied'],
+      rows,
+      timesToRest: summary.timesToRest,
+      isAtRest: true,
+    };
+    openRig(
+      'reader',
+      {},
+      {
+        'GET /rigs/burner-1/trips': list(summary),
+        'GET /rigs/burner-1/trips/one': () => json({ ...summary, trajectory }),
+      },
+    );
+    expect(await screen.findByText(/Reset by officer at .*: Flame looked at/)).toBeDefined();
+    fireEvent.click(await button('Show the stop'));
+    expect(await screen.findByRole('img', { name: 'airTrim: at rest after 2.35 s' })).toBeDefined();
   });
 });
 

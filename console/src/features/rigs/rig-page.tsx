@@ -12,12 +12,14 @@ import { ArmingObstacles } from './arming-obstacles.js';
 import { ConnectionPanel } from './connection-panel.js';
 import { FaultPanel } from './fault-panel.js';
 import { InterlockPanel } from './interlock-panel.js';
+import { LockoutNotice } from './lockout-notice.js';
 import { RecentRuns } from './recent-runs.js';
 import { RigActions } from './rig-actions.js';
 import { RigCharts } from './rig-charts.js';
 import { useShowsRig } from './rig-in-view.js';
 import { LiveTraces } from './traces/live-traces.js';
 import { TripBanner } from './trip-banner.js';
+import { TripHistory } from './trip-history.js';
 
 /** One rig: live charts, actuators, interlocks, arming, trips. */
 export function RigPage() {
@@ -56,6 +58,7 @@ function RigView({ rig }: { rig: RigDocument }) {
       actions={<RigActions rigId={rig.id} status={status} />}
     >
       {status && <TripBanner status={status} />}
+      <LockoutNotice rigId={rig.id} isLockedOut={status?.isLockedOut ?? false} />
       <ArmingObstacles status={status} />
       <RigLinks rigId={rig.id} runId={status?.runId ?? null} envelopeVersion={envelope?.version ?? null} />
       <Box
@@ -77,6 +80,7 @@ function RigView({ rig }: { rig: RigDocument }) {
           <CalibrationSummary rig={rig.content} />
           {rig.content.isBench && <FaultPanel rig={rig.content} status={status} />}
           <RecentRuns rigId={rig.id} />
+          <TripHistory rigId={rig.id} latchedAt={status?.trip?.at ?? null} />
         </Box>
       </Box>
     </Page>

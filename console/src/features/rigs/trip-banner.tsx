@@ -4,13 +4,17 @@ import type { RigStatus, Trip } from '@cresthold/shared';
 import { formatClock, formatInstant, GatedButton, Notice, ReasonDialog } from '../../components/index.js';
 import { useObstacle } from '../auth/index.js';
 import { useReset } from './api/rig-commands.js';
+import { useTrips } from './api/trips.js';
+import { TripTrajectory } from './trip-history.js';
 
 /** A latched trip: what came first, what followed, and the way to its reset. */
 export function TripBanner({ status }: { status: RigStatus }) {
   const [isAsking, setAsking] = useState(false);
   const obstacle = useObstacle('rig.reset');
   const reset = useReset(status.rigId);
+  const trips = useTrips(status.rigId, status.trip?.at ?? null);
   if (!status.trip) return null;
+  const latched = trips.data?.find(({ resetAt }) => resetAt === null);
   return (
     <>
       <Notice
@@ -24,6 +28,7 @@ export function TripBanner({ status }: { status: RigStatus }) {
         }
       >
         <TripFacts trip={status.trip} />
+        <TripTrajectory summary={latched} />
       </Notice>
       {isAsking && (
         <ReasonDialog

@@ -19,22 +19,9 @@ export function useDisarm(rigId: string) {
   return useRigCommand(() => answerOf(client.POST('/api/v1/rigs/{rigId}/disarm', at(rigId))));
 }
 
-/** A manual move through the guard; `value` in the channel's unit. */
-export function useMove(rigId: string) {
-  return useRigCommand((body: { channel: string; value: number }) =>
-    answerOf(client.POST('/api/v1/rigs/{rigId}/moves', { ...at(rigId), body })),
-  );
-}
-
 export function useReset(rigId: string) {
   return useRigCommand((reason: string) =>
     answerOf(client.POST('/api/v1/rigs/{rigId}/reset', { ...at(rigId), body: { reason } })),
-  );
-}
-
-export function useLockout(rigId: string) {
-  return useRigCommand((body: { isLockedOut: boolean; reason: string }) =>
-    answerOf(client.PUT('/api/v1/rigs/{rigId}/lockout', { ...at(rigId), body })),
   );
 }
 

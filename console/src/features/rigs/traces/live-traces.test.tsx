@@ -24,6 +24,7 @@ function openRig() {
     'GET /rigs/burner-1': () => json(document),
     'GET /rigs/burner-1/calibrations': list(),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
+    'GET /rigs/burner-1/trips': list(),
     'GET /runs': list(),
   });
   return renderConsole('/rigs/burner-1');
