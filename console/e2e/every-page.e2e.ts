@@ -44,6 +44,8 @@ beforeAll(async () => {
     floor: '/',
     rig: '/rigs/burner-1',
     envelope: '/rigs/burner-1/envelope',
+    wiring: '/rigs/burner-1/wiring',
+    'new rig': '/new-rig',
     objectives: '/objectives',
     experiments: '/experiments',
     experiment: `/experiments/${experimentId}`,

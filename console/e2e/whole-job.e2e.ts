@@ -48,13 +48,13 @@ async function windowOf(account: Account): Promise<Page> {
 
 /** Answers the question for the password that comes before approving and resetting. */
 async function givePassword(page: Page, password: string): Promise<void> {
-  await page.getByLabel('Your password').fill(password);
+  await page.getByLabel('Your password', { exact: true }).fill(password);
   await page.getByRole('button', { name: 'Go on' }).click();
 }
 
 /** It counts for five minutes, which a quick machine needs only once. */
 async function givePasswordIfAsked(page: Page, password: string): Promise<void> {
-  const field = page.getByLabel('Your password');
+  const field = page.getByLabel('Your password', { exact: true });
   const isAsked = await field.waitFor({ timeout: 3_000 }).then(
     () => true,
     () => false,

@@ -40,13 +40,28 @@ export class RolesGuard implements CanActivate {
     const isEmergency = this.stated<boolean>(EMERGENCY, context) === true;
     const session = await this.sessionOf(request, isEmergency);
     request.user = session.user;
+    try {
+      await this.authorise(request, access, context, session);
+    } catch (error) {
+      if (error instanceof DomainError) this.logger.warn(refused(request, error));
+      throw error;
+    }
+    return true;
+  }
+
+  /** @throws auth.forbidden, auth.foreign-rig or auth.reauthentication-needed */
+  private async authorise(
+    request: Authenticated,
+    access: readonly Access[],
+    context: ExecutionContext,
+    session: LiveSession,
+  ): Promise<void> {
     if (!isAllowed(access, session.user.roles)) throw new DomainError('auth.forbidden', refusal(access));
     request.rigScope = rigScopeOf(session.user, access);
-    if (!isEmergency) await this.refuseForeignRigs(request);
+    if (this.stated<boolean>(EMERGENCY, context) !== true) await this.refuseForeignRigs(request);
     if (this.stated<boolean>(REAUTHENTICATION, context) === true && !session.isElevated) {
       throw new DomainError('auth.reauthentication-needed');
     }
-    return true;
   }
 
   private stated<T>(key: string, context: ExecutionContext): T | undefined {
@@ -77,6 +92,11 @@ export class RolesGuard implements CanActivate {
     }
     if (about.some((rigId) => !isInScope(rigScope, rigId))) throw new DomainError('auth.foreign-rig');
   }
+}
+
+/** For the log: the path is percent-encoded, so that it cannot break a line. */
+function refused({ user, method, path, ip }: Authenticated, { code }: DomainError): string {
+  return `${user.account} from ${ip ?? 'nowhere'} was refused ${method} ${path}: ${code}`;
 }
 
 function isAllowed(access: readonly Access[], roles: readonly Role[]): boolean {

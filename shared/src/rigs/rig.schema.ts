@@ -59,8 +59,8 @@ export const rigSchema = z
     isBench: z.boolean().default(false),
     /** Time between two scans, ms, 1 to 10 000. */
     periodMs: z.number().min(1).max(10_000),
-    connections: z.array(connectionSchema).min(1).max(16),
-    channels: z.array(channelSchema).min(1).max(200),
+    connections: z.array(connectionSchema).min(1, 'Add a connection.').max(16, 'At most 16 connections.'),
+    channels: z.array(channelSchema).min(1, 'Add a channel.').max(200, 'At most 200 channels.'),
   })
   .superRefine((rig, context) => {
     reportDuplicates(rig.connections, 'connections', context);

@@ -51,6 +51,7 @@ export function BudgetPanel({ budget, error, isStale, status }: BudgetPanelProps
 
 function Total({ budget }: { budget: ScanBudget }) {
   const { requests, wireS, periodMs, shareOfPeriod } = budget;
+  if (requests === 0) return <div role="status">Nothing is read yet.</div>;
   const head = requests === 1 ? 'One request a scan' : `${requests} requests a scan`;
   if (wireS === null) return <div role="status">{head}; these wires set no bound on their time.</div>;
   if (periodMs === null || shareOfPeriod === null) {

@@ -53,7 +53,7 @@ export function useWiringEditor(
     isChanged,
     ...saving,
     saved: base && savedRows ? { rig: base.content, rows: savedRows.rows } : null,
-    obstacle: useSaveObstacle(isChanged, status),
+    obstacle: useSaveObstacle(isChanged, base === null, status),
     consequence: useConsequence(base, body),
     /** A revision that somebody else saved since; null where there is none. */
     newer: rig !== null && base !== null && rig.revision > base.revision ? rig : null,
@@ -107,10 +107,10 @@ function useSaving({ base, setBase, body, isReadable, wiring, read }: SavingPart
   };
 }
 
-function useSaveObstacle(isChanged: boolean, status: RigStatus | null): string | null {
+function useSaveObstacle(isChanged: boolean, isNew: boolean, status: RigStatus | null): string | null {
   const roleObstacle = useObstacle('rig.wire');
   if (roleObstacle !== null) return roleObstacle;
-  if (!isChanged) return 'Everything is saved.';
+  if (!isChanged) return isNew ? 'Nothing is entered yet.' : 'Everything is saved.';
   const phase = status?.phase ?? 'offline';
   if (['idle', 'offline', 'tripped'].includes(phase)) return null;
   return `The rig is ${phase}: disarm it or end its run first.`;

@@ -53,6 +53,8 @@ export function bodyOf(draft: RigDraft, columnsOf: AddressColumnsOf): DraftBody 
   const isPeriod = periodMs.trim() !== '' && Number.isFinite(period);
   if (!isPeriod) faults.set('periodMs', 'Give a number.');
   if (rest.id === '') faults.set('id', needed);
+  if (rest.connections.length === 0) faults.set('connections', needed);
+  if (rows.length === 0) faults.set('channels', needed);
   if (rest.title.trim() === '') faults.set('title', needed);
   return { body: { ...rest, periodMs: isPeriod ? period : periodMs, channels }, faults };
 }
