@@ -3,7 +3,7 @@ import { DataSource } from 'typeorm';
 import { accessExtension, emergencyExtension, type Access } from '../../src/auth/access.decorator.js';
 import { openApiDocument } from '../../src/http/open-api.js';
 import { RunRecords } from '../../src/recordings/run-records.service.js';
-import { RigStore } from '../../src/rigs/rig-store.js';
+import { RigLockoutEntity } from '../../src/rigs/entities/rig-lockout.entity.js';
 import type { Client, TestServer } from '../server/create-test-server.js';
 import { envelopeInput, experimentInput, objectiveInput, rigInput } from '../server/documents.js';
 
@@ -72,8 +72,16 @@ export class MatrixStation {
   static async make(server: TestServer): Promise<MatrixStation> {
     const station = new MatrixStation(server);
     for (const rig of rigs) await station.makeRig(rig);
-    const lockout = { by: 'officer', reason: 'Hands in it.', at: new Date().toISOString() };
-    await server.app.get(RigStore).saveLockout('locked', lockout);
+    const at = new Date().toISOString();
+    const lockout = {
+      id: 'lockout',
+      rigId: 'locked',
+      by: 'officer',
+      reason: 'Hands in it.',
+      at,
+      mayLift: [],
+    };
+    await server.app.get(DataSource).getRepository(RigLockoutEntity).insert(lockout);
     return station;
   }
 
