@@ -30,12 +30,15 @@ async function scansWithin(units: readonly number[], dead: readonly number[], sp
   const session = sessionOn(bus);
   const plan = session.planRead(units.map(addressOf));
   let scans = 0;
+  let strays = 0;
   while (bus.nowMs < spanMs) {
     const { faults, values } = await session.read(plan);
     // Where a unit lives it is read in every scan but the first few, in which the dead ones are found out.
     if (faults.every((fault, index) => (fault !== null) === dead.includes(units[index] ?? 0))) scans += 1;
-    faults.forEach((fault, index) => expect(Number.isNaN(values[index])).toBe(fault !== null));
+    faults.forEach((fault, index) => (strays += Number(Number.isNaN(values[index]) !== (fault !== null))));
   }
+  // A value exactly where there is no fault; counted, since an expectation for each would cost seconds.
+  expect(strays).toBe(0);
   return { scans, bus };
 }
 

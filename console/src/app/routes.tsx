@@ -26,6 +26,12 @@ const pages: RouteObject[] = [
     lazy: async () => ({ Component: (await import('../features/wiring/wiring-page.js')).NewRigPage }),
   },
   {
+    path: 'rigs/:rigId/envelope/cause-and-effect',
+    lazy: async () => ({
+      Component: (await import('../features/envelopes/cause-effect/cause-effect-page.js')).CauseEffectPage,
+    }),
+  },
+  {
     path: 'objectives',
     lazy: async () => ({
       Component: (await import('../features/objectives/objectives-page.js')).ObjectivesPage,

@@ -70,6 +70,10 @@ const expected: Record<string, Access[]> = {
   'POST /rigs/{rigId}/emergency-stop': ['signed-in'],
   'GET /rigs/{rigId}/envelopes': ['signed-in'],
   'POST /rigs/{rigId}/envelopes': ['test-engineer', 'safety-officer'],
+  'POST /rigs/{rigId}/envelopes/replay': ['signed-in'],
+  'POST /rigs/{rigId}/interlocks/{interlock}/acknowledge': ['technician', 'test-engineer', 'safety-officer'],
+  'DELETE /rigs/{rigId}/interlocks/{interlock}/bypass': ['technician', 'test-engineer', 'safety-officer'],
+  'POST /rigs/{rigId}/interlocks/{interlock}/bypass': ['safety-officer'],
   'GET /rigs/{rigId}/lockouts': ['signed-in'],
   'POST /rigs/{rigId}/lockouts': ['test-engineer', 'technician', 'safety-officer', 'administrator'],
   'POST /rigs/{rigId}/lockouts/{lockoutId}/lift': [
@@ -80,6 +84,12 @@ const expected: Record<string, Access[]> = {
   ],
   'POST /rigs/{rigId}/moves': ['test-engineer', 'technician'],
   'POST /rigs/{rigId}/moves/release': ['test-engineer', 'technician'],
+  'GET /rigs/{rigId}/proof-tests': ['signed-in'],
+  'POST /rigs/{rigId}/proof-tests': ['technician', 'test-engineer', 'safety-officer'],
+  'POST /rigs/{rigId}/proof-tests/arm': ['test-engineer', 'technician'],
+  'GET /rigs/{rigId}/proof-tests/due': ['signed-in'],
+  'GET /rigs/{rigId}/proof-tests/{testId}': ['signed-in'],
+  'POST /rigs/{rigId}/proof-tests/{testId}/sign': ['technician', 'test-engineer', 'safety-officer'],
   'POST /rigs/{rigId}/reset': ['safety-officer'],
   'GET /rigs/{rigId}/status': ['signed-in'],
   'GET /rigs/{rigId}/trips': ['signed-in'],
@@ -155,6 +165,8 @@ describe('access', () => {
     ]);
     expect(marked(reauthenticationExtension).sort()).toEqual([
       'POST /envelopes/{id}/approve',
+      'POST /rigs/{rigId}/interlocks/{interlock}/bypass',
+      'POST /rigs/{rigId}/proof-tests/{testId}/sign',
       'POST /rigs/{rigId}/reset',
       'POST /users/{account}/second-factor/reset',
     ]);

@@ -20,11 +20,19 @@ export const leastShare = ({ axes }: SizedLoops): number => Math.min(...axes.map
 /** Rate with which the surveyed curvature is corrected, of that of convergence: it is worth more than its estimate. */
 const trust = 0.25;
 
-/** What is lost of the slope is made up for by the rate; the inverse follows no faster than noise permits. */
+/**
+ * What is lost of the slope is made up for by the rate; the inverse follows no faster than noise permits.
+ *
+ * An error ε of the curvature, in units in which each actuator's own is 1, makes one of ε/λ of its inverse, with λ the
+ * smallest eigenvalue in those units. Noise makes such errors, and so does what the law sees away from the best point:
+ * the curvature there, shaken by its own motion. Their variance goes with the rate of the inverse, so that it must be
+ * less by λ² on a ridge: there the survey's curvature is worth more than the law's.
+ */
 export function newtonRates(sized: SizedLoops, rate: number) {
+  const smallest = sized.slowest > 0 ? sized.slowest * sized.coupling : 1;
   return {
     rate: rate / leastShare(sized),
-    inverseRate: Math.min(trust * rate, inverseRateByNoise(sized)),
+    inverseRate: Math.min(trust * rate, inverseRateByNoise(sized)) * smallest ** 2,
     hessianRatio,
   };
 }

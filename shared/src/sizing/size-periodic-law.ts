@@ -24,8 +24,9 @@ import type { CheckedDemands, CheckedPlant } from './sizing-plant.schema.js';
  * - discrete: the same in scans; its washout (z − 1)/(z + h) with h = −(1 − x)/(1 + x), x = ωh·dt/2, is 1 + x times
  *   the washout that the bilinear rule makes.
  * - newton: rate κ/ρ with the smallest ρ; Γ⁻¹ begins at the surveyed curvature, the whole matrix, and follows its
- *   estimate with κ/4, or slower where noise would scatter it by more than a fifth: its own demodulation,
- *   (8/a²)·cos 2ωt, makes a variance of 16σ²·dt·ωr/a⁴ of white noise.
+ *   estimate with κ·λ²/4, or slower where noise would scatter it by more than λ/5: its own demodulation,
+ *   (8/a²)·cos 2ωt, makes a variance of 16σ²·dt·ωr/a⁴ of white noise. λ is the smallest eigenvalue of the curvature in
+ *   units in which each actuator's own is 1; on a ridge an error there makes one 1/λ times as large of the inverse.
  * - least-squares: a memory of one longest period, which cuts noise as a low-pass of the corner 1/(m·T) does.
  * - bounded-rate: cannot make up for a lag, which so costs cos λ. Its phase k·y must stay below half a rad for the
  *   noise and below a rad for the swing of the objective at the distance of the start: κ ≤ a²ωf''/(4σ)·ρ and

@@ -1,5 +1,6 @@
 import { perturbObserveLaw } from '../seeking/perturb-observe-law.js';
 import type { LawPrediction, LawSize } from './law-size.types.js';
+import { inverseDiagonal } from './predict-law.js';
 import { couplingOf } from './size-loops.js';
 import { remarksOn } from './sizing-remarks.js';
 import type { CheckedDemands, CheckedPlant } from './sizing-plant.schema.js';
@@ -10,26 +11,31 @@ const startSteps = 3;
 const scansMin = 2;
 /** Standard deviations by which two means must differ at the best point for a decision. */
 const decisionErrors = 3;
-/** Mean of e² + Δ²/2 over offsets |e| < Δ/2 of the grid, in Δ². */
-const walkShare = 1 / 12 + 1 / 2;
-
 /**
- * Sizes perturb-and-observe. Step Δ: the largest whose loss is allowed, ½f''·(e² + Δ²/2) with the offset e of the
- * grid anywhere within ±Δ/2, so 7/24·f''Δ² on average. Dwell: four time constants, then as many scans as make the
- * difference of two means at the best point, f''Δ²/2, three of its standard deviations √2·σ/√N: N = 72σ²/(f''Δ²)².
+ * Sizes perturb-and-observe. Step Δ: the largest whose loss is allowed. It takes no step that does not pay, so it stops
+ * where each slope is within ±½f_ii·Δ_i. Slopes anywhere in there, and three points walked along each actuator, lose
+ * ½·Σ f_ii·Δ_i²·(s_i/12 + 1/2) on average, with s_i = f_ii·(H⁻¹)_ii; one actuator, or several that are not coupled,
+ * have s = 1 and so 7/24·f''Δ². Along a ridge s is large: there it stops far from the best point, and the step must be
+ * small. Dwell: four time constants, then as many scans as make the difference of two means at the best point,
+ * f''Δ²/2, three of its standard deviations √2·σ/√N: N = 72σ²/(f''Δ²)².
  *
  * @source loss of the walk: derived here, see `perturbObserveLaw`; the three standard deviations are chosen here
  */
 export function sizePerturbObserve(plant: CheckedPlant, demands: CheckedDemands): LawSize<'perturb-observe'> {
   const n = plant.actuators.length;
-  const reaches = triedReaches(plant, demands, 2 * walkShare);
+  const shares = walkShares(plant);
+  const reaches = triedReaches(
+    plant,
+    demands,
+    shares.map((share) => 2 * share),
+  );
   const tries = decisiveTries(plant, reaches);
   const trials = startSteps * n + 1;
   const isCoupled = couplingOf(plant.curvature).coupling > 1 + 1e-9;
   const predicted: LawPrediction = {
     convergenceS: isCoupled ? null : trials * tries.dwellS,
     rippleLoss: reaches.reduce(
-      (sum, { amplitude, curvature }) => sum + (walkShare * curvature * amplitude ** 2) / 2,
+      (sum, { amplitude, curvature }, i) => sum + (shares[i]! * curvature * amplitude ** 2) / 2,
       0,
     ),
     noiseLoss: null,
@@ -60,8 +66,25 @@ export function sizePerturbObserve(plant: CheckedPlant, demands: CheckedDemands)
       gradientNoise: walks,
     },
     margins,
-    remarks: [...remarksOn(known), ...driftRemarks(plant, reaches, n * tries.dwellS)],
+    remarks: [...remarksOn(known), ...ridgeRemarks(plant), ...driftRemarks(plant, reaches, n * tries.dwellS)],
   };
+}
+
+/** s_i = f_ii·(H⁻¹)_ii: how much further than alone it may be off along each actuator; infinite on a flat ridge. */
+function ridgeFactors({ curvature }: CheckedPlant): number[] {
+  return inverseDiagonal(curvature).map((inverse, i) => curvature[i]![i]! * inverse);
+}
+
+/** Mean of e² + Δ²/2 over where it stops, in Δ². */
+function walkShares(plant: CheckedPlant): number[] {
+  return ridgeFactors(plant).map((factor) => (Number.isFinite(factor) ? factor : 1) / 12 + 1 / 2);
+}
+
+function ridgeRemarks(plant: CheckedPlant): string[] {
+  if (ridgeFactors(plant).every(Number.isFinite)) return [];
+  return [
+    'The curvature is not positive in every direction, and the walk may stop anywhere along the flat one: its loss is that of actuators that are not coupled.',
+  ];
 }
 
 const walks =

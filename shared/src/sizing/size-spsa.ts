@@ -27,7 +27,11 @@ const trialsMeant = 200;
  */
 export function sizeSpsa(plant: CheckedPlant, demands: CheckedDemands): LawSize<'spsa'> {
   const tries = evenTries(plant);
-  const reaches = triedReaches(plant, demands, 2);
+  const reaches = triedReaches(
+    plant,
+    demands,
+    plant.actuators.map(() => 2),
+  );
   const { coupling, slowest } = couplingOf(plant.curvature);
   const scatter = reaches.map(({ amplitude }) => tries.meanNoise / (Math.SQRT2 * amplitude));
   const byNoise = (noiseShare * demands.lossAllowed) / lossPerShare(reaches, scatter);

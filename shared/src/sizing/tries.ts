@@ -38,8 +38,12 @@ export interface TriedReach {
   curvature: number;
 }
 
-/** @param lossFactor mean loss of the points tried, over f''a²/4 */
-export function triedReaches(plant: CheckedPlant, demands: CheckedDemands, lossFactor: number): TriedReach[] {
+/** @param lossFactors mean loss of the points tried along each actuator, over f''a²/4 */
+export function triedReaches(
+  plant: CheckedPlant,
+  demands: CheckedDemands,
+  lossFactors: readonly number[],
+): TriedReach[] {
   return plant.actuators.map(({ resolution, amplitudeMax, min, max }, i) => {
     const curvature = plant.curvature[i]![i]!;
     const sized = sizeAmplitude({
@@ -51,7 +55,7 @@ export function triedReaches(plant: CheckedPlant, demands: CheckedDemands, lossF
       // A point is gone to at the slew limit of the guard; the dwell has time for it.
       slewPerS: Infinity,
       periodS: 1,
-      curvature: curvature * lossFactor,
+      curvature: curvature * lossFactors[i]!,
       lossAllowed: demands.lossAllowed / plant.actuators.length,
     });
     return { amplitude: sized.amplitude, limitedBy: sized.limitedBy, curvature };

@@ -34,9 +34,7 @@ export function seekOnBench(bench: SizedBench, lawId: SeekingLawId, seed: number
   });
   const start = identified.best.map((value, i) => {
     const { min, max } = bench.actuators[i] ?? { min: NaN, max: NaN };
-    // Along the valley, where the way is longest and the objective no worse than it must be.
-    const side = i > 0 && (identified.plant.curvature[0]?.[i] ?? 0) > 0 ? -1 : 1;
-    return Math.min(max, Math.max(min, value + side * startAmplitudes * (size.amplitudes[i] ?? NaN)));
+    return Math.min(max, Math.max(min, value + startAmplitudes * (size.amplitudes[i] ?? NaN)));
   });
   drive.goTo(identified.best, start);
   const law = seekingLaws[lawId] as unknown as SeekingLaw<object, SeekingState>;

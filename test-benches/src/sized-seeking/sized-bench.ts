@@ -23,7 +23,7 @@ export interface SizedBench {
   readonly scanS: number;
   readonly actuators: readonly SizedActuator[];
   /** To be made large, from the instruments' readings; the same unit as the loss of the bench's truth. */
-  objective(read: (name: string) => number): number;
+  objective(model: BenchModel): number;
   /** What an operator does by hand meanwhile, e.g. reset a generator. */
   eachScan?(model: BenchModel): void;
   /** Ripple that the plant has by itself, one entry for each actuator, and bands that dithers keep off, Hz. */

@@ -49,10 +49,14 @@ export function SessionList({ sessions, isBusy, onEnd }: SessionListProps) {
   );
 }
 
+const commonNames = new Set(['Mozilla', 'AppleWebKit', 'Gecko', 'Version', 'Mobile', 'Safari']);
+
 /** A short name for what a browser or script calls itself; the whole text stands in the title. */
 function browserOf(userAgent: string): string {
   if (userAgent === '') return 'Unnamed program';
   const system = /\(([^;)]+)/.exec(userAgent)?.[1];
-  const last = userAgent.split(' ').at(-1)?.split('/')[0] ?? userAgent;
-  return system === undefined ? last : `${last} (${system})`;
+  const named = [...userAgent.matchAll(/([A-Za-z]+)\/[\d.]/g)].map(([, name = '']) => name);
+  // Nearly every browser names these beside itself.
+  const name = named.filter((one) => !commonNames.has(one)).at(-1) ?? named.at(-1) ?? userAgent;
+  return system === undefined ? name : `${name} (${system})`;
 }

@@ -18,6 +18,18 @@ describe('the difference between two envelopes', () => {
     ]);
   });
 
+  it('names a change of hysteresis, bypass and of an emergency-stop input in words', () => {
+    const changed = structuredClone(content);
+    const [lock] = changed.interlocks;
+    if (lock) lock.proofTestEveryDays = 30;
+    changed.emergencyStopInputs = [{ channel: 'o2', title: 'At the door', pressedWhen: 'not-zero' }];
+    expect(envelopeDifferences(content, changed, titleOf)).toEqual([
+      { where: 'Interlock co-high · Proof test every', before: 'none', after: '30' },
+      { where: 'Emergency-stop input <o2> · Title', before: null, after: 'At the door' },
+      { where: 'Emergency-stop input <o2> · Pressed when it reads', before: null, after: 'anything but 0' },
+    ]);
+  });
+
   it('shows an interlock that was taken away as leaves without an after', () => {
     const differences = envelopeDifferences(content, { ...content, interlocks: [] }, titleOf);
     expect(differences.length).toBeGreaterThan(0);

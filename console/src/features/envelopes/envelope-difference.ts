@@ -1,6 +1,6 @@
 import type { EnvelopeContent } from '@cresthold/shared';
 import { plainNumber } from '../../components/index.js';
-import { interlockFields, limitFields } from './envelope-fields.js';
+import { emergencyStopFields, interlockFields, limitFields } from './envelope-fields.js';
 
 /** One leaf that differs between two envelopes; null where it is not there. */
 export interface Difference {
@@ -29,8 +29,12 @@ function leaves(content: EnvelopeContent, titleOf: (channel: string) => string):
   }
   for (const { channel, afterS } of content.staleness)
     all.set(`${titleOf(channel)} · oldest allowed, s`, say(afterS));
-  for (const { channel, title, pressedWhen } of content.emergencyStopInputs)
-    all.set(`Emergency stop input ${titleOf(channel)}`, `${title}, pressed when ${pressedWhen}`);
+  for (const input of content.emergencyStopInputs) {
+    for (const { key, label, options } of emergencyStopFields) {
+      const value = options?.find((option) => option.value === input[key])?.label ?? input[key];
+      all.set(`Emergency-stop input ${titleOf(input.channel)} · ${label}`, value);
+    }
+  }
   if (content.heartbeat) {
     all.set('Heartbeat channel', titleOf(content.heartbeat.channel));
     all.set('Heartbeat period, s', say(content.heartbeat.periodS));

@@ -11,7 +11,7 @@ export interface FieldFacts<Key extends string> {
   hint?: string;
   /** `channel` stands for the channel's own unit. */
   unit?: string;
-  options?: readonly { value: string | number; label: string }[];
+  options?: readonly { value: string | number | boolean; label: string }[];
 }
 
 export const stopCategories = [
@@ -51,7 +51,59 @@ export const interlockFields: readonly FieldFacts<keyof Interlock>[] = [
     label: 'Action',
     options: ['warn', 'pause', 'stop', 'trip'].map((value) => ({ value, label: value })),
   },
+  {
+    key: 'protects',
+    label: 'Protects',
+    options: ['people', 'equipment', 'process'].map((value) => ({ value, label: value })),
+    hint: 'A trip that protects people is never bypassed.',
+  },
+  {
+    key: 'clearCondition',
+    label: 'Clears only when',
+    hint: 'Hysteresis, e.g. "co < 350". Empty: as soon as it is no longer unsafe.',
+  },
+  { key: 'clearDelayS', label: 'and that for', unit: 's' },
+  {
+    key: 'isLatching',
+    label: 'Latches',
+    options: [
+      { value: false, label: 'no' },
+      { value: true, label: 'until acknowledged' },
+    ],
+    hint: 'A trip latches in any case.',
+  },
+  { key: 'bypassAtMostS', label: 'Bypass at most', unit: 's', hint: 'Empty: never bypassed.' },
+  { key: 'proofTestEveryDays', label: 'Proof test every', unit: 'days', hint: 'Empty: none asked for.' },
+  {
+    key: 'proofTestGraceDays',
+    label: 'Grace',
+    unit: 'days',
+    hint: 'After that an overdue test forbids arming.',
+  },
   { key: 'message', label: 'What the technician reads' },
+];
+
+/** Fields of an interlock that are numbers. */
+export const interlockNumbers: ReadonlySet<keyof Interlock> = new Set([
+  'delayS',
+  'clearDelayS',
+  'bypassAtMostS',
+  'proofTestEveryDays',
+  'proofTestGraceDays',
+] as const);
+
+/** Fields of an input from a hard-wired emergency stop, beside its channel. */
+export const emergencyStopFields: readonly FieldFacts<'title' | 'pressedWhen'>[] = [
+  { key: 'title', label: 'Title' },
+  {
+    key: 'pressedWhen',
+    label: 'Pressed when it reads',
+    options: [
+      { value: 'zero', label: '0' },
+      { value: 'not-zero', label: 'anything but 0' },
+    ],
+    hint: 'A circuit that reads 0 when pressed also shows a broken wire.',
+  },
 ];
 
 /** The unit of a field, with the channel's own put in. */

@@ -101,3 +101,54 @@ it('is approved by another with the role, with a reason', async () => {
     .poll(() => seen.find(({ path }) => path.endsWith('/approve'))?.body)
     .toEqual({ reason: 'Checked' });
 });
+
+it('edits hysteresis, latching, bypass and proof tests of an interlock; what is left empty is none', async () => {
+  const seen = open(sessionOf('test-engineer'), [draft, demoEnvelope], {
+    'PUT /envelopes/env-4': () => json({ ...draft, revision: 8 }),
+  });
+  const field = (name: string) => screen.findByLabelText<HTMLInputElement>(name);
+  fireEvent.change(await field('Clears only when'), { target: { value: 'co < 350' } });
+  fireEvent.change(await field('and that for'), { target: { value: '1,5' } });
+  fireEvent.change(await field('Latches'), { target: { value: 'true' } });
+  fireEvent.change(await field('Proof test every'), { target: { value: '90' } });
+  fireEvent.click(screen.getByRole('button', { name: 'Oxygen in flue gas is an emergency-stop input' }));
+  fireEvent.click(screen.getByRole('button', { name: 'Save draft' }));
+  await expect.poll(() => seen.find(({ method }) => method === 'PUT')).toBeDefined();
+  const sent = seen.find(({ method }) => method === 'PUT')?.body as { content: EnvelopeDocument['content'] };
+  expect(sent.content.interlocks[0]).toMatchObject({
+    clearCondition: 'co < 350',
+    clearDelayS: 1.5,
+    isLatching: true,
+    bypassAtMostS: null,
+    proofTestEveryDays: 90,
+  });
+  expect(sent.content.emergencyStopInputs).toEqual([
+    { channel: 'o2', title: 'Oxygen in flue gas', pressedWhen: 'zero' },
+  ]);
+});
+
+it('shows all that holds for an interlock in words', async () => {
+  const [lock] = demoEnvelope.content.interlocks;
+  const interlocks = lock
+    ? [{ ...lock, clearCondition: 'co < 350', clearDelayS: 2, proofTestEveryDays: 90 }]
+    : [];
+  open(sessionOf('reader'), [{ ...demoEnvelope, content: { ...demoEnvelope.content, interlocks } }], {
+    'GET /rigs/burner-1/proof-tests/due': () => json([]),
+  });
+  expect(await screen.findByText('clears only when co < 350 for 2 s')).toBeDefined();
+  expect(screen.getByText('never bypassed')).toBeDefined();
+  expect(screen.getByText('proof test every 90 days, 7 days of grace')).toBeDefined();
+});
+
+it('has a cause-and-effect table to print', async () => {
+  open(sessionOf('reader'), [demoEnvelope]);
+  const link = await screen.findByRole('link', { name: 'Cause-and-effect table, to print' });
+  fireEvent.click(link);
+  const table = await screen.findByRole('table', { name: 'Cause and effect' });
+  expect(
+    within(table).getByText('category 1, order 0: ramped to rest, released at 10 %', {
+      selector: 'tr:nth-of-type(2) td',
+    }),
+  ).toBeDefined();
+  expect(screen.getByRole('button', { name: 'Print' })).toBeDefined();
+});

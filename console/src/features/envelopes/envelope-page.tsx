@@ -16,6 +16,8 @@ import { EnvelopeSheet } from './envelope-sheet.js';
 import { EnvelopeVersions } from './envelope-versions.js';
 import { asForm, type DraftForm } from './form/draft-context.js';
 import { NewDraftButton } from './new-draft-button.js';
+import { ProofTestPanel } from './proof-tests/proof-test-panel.js';
+import { ReplayPanel } from './replay/replay-panel.js';
 
 /** The approved limits, interlocks and watches of a rig: in force, in draft, in the past. */
 export function EnvelopePage() {
@@ -92,8 +94,16 @@ function EnvelopeView({ rig, envelope, envelopes }: EnvelopeViewProps) {
         ) : (
           <EnvelopeSheet form={readOnlyForm(rig, envelope.content)} />
         )}
+        {envelope.status === 'in-force' && <ProofTestPanel rig={rig} envelope={envelope} />}
+        <ReplayPanel rig={rig} version={envelope.version} content={content} />
       </Box>
       <Box sx={{ display: 'grid', gap: 2, minWidth: 0 }}>
+        <Link
+          component={RouterLink}
+          to={`/rigs/${rig.id}/envelope/cause-and-effect?version=${envelope.version}`}
+        >
+          Cause-and-effect table, to print
+        </Link>
         {isDifferent && <DifferencePanel rig={rig} inForce={inForce} shown={content} />}
         <EnvelopeVersions envelopes={envelopes} shown={envelope.version} />
       </Box>

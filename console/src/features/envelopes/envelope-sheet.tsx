@@ -1,5 +1,6 @@
 import { Panel } from '../../components/index.js';
 import { DraftProvider, type DraftForm } from './form/draft-context.js';
+import { EmergencyStopsEditor } from './form/emergency-stops-editor.js';
 import { InterlocksEditor } from './form/interlocks-editor.js';
 import { LimitsTable } from './form/limits-table.js';
 import { WatchEditor } from './form/watch-editor.js';
@@ -13,6 +14,9 @@ export function EnvelopeSheet({ form }: { form: DraftForm }) {
       </Panel>
       <Panel title="Interlocks">
         <InterlocksEditor />
+      </Panel>
+      <Panel title="Emergency-stop inputs">
+        <EmergencyStopsEditor />
       </Panel>
       <Panel title="Watches">
         <WatchEditor />

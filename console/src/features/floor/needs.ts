@@ -1,6 +1,7 @@
 import type { RigStatus } from '@cresthold/shared';
-import type { EnvelopeDocument, Session } from '../../api/index.js';
+import type { EnvelopeDocument, ProofTestDue, Session } from '../../api/index.js';
 import { obstacleFor } from '../auth/index.js';
+import { dueText, isPressing } from '../envelopes/index.js';
 
 /** Something on a rig that waits for a person. */
 export interface Need {
@@ -55,4 +56,13 @@ export function needsOf(
   if (!hasAny)
     needs.push({ text: 'Have an envelope approved', to: envelopePage, isYours: may('envelope.draft') });
   return needs;
+}
+
+/** Proof tests that are due or fall due soon. */
+export function proofTestNeeds(rigId: string, dues: readonly ProofTestDue[], session: Session): Need[] {
+  return dues.filter(isPressing).map((due) => ({
+    text: `Proof test of ${due.title}: ${dueText(due)}`,
+    to: `/rigs/${rigId}/envelope`,
+    isYours: obstacleFor('proof-test.do', session.roles) === null,
+  }));
 }

@@ -7,20 +7,23 @@ import type { RigDocument } from '../../api/index.js';
 import { formatInstant, Notice, PanelBoundary, PhaseMark } from '../../components/index.js';
 import { useLinkState, useRigStatus } from '../../live/index.js';
 import { useSession } from '../auth/index.js';
-import { useEnvelopes } from '../envelopes/index.js';
-import { useLockouts } from '../rigs/index.js';
+import { useEnvelopes, useProofTestDues } from '../envelopes/index.js';
+import { BypassBanner, useLockouts } from '../rigs/index.js';
 import { BestPoint } from './best-point.js';
 import { LiveReadings } from './live-readings.js';
-import { needsOf, type Need } from './needs.js';
+import { needsOf, proofTestNeeds, type Need } from './needs.js';
 
 /** One rig on the floor: how it stands, what it does, what it waits for. */
 export function RigCard({ rig }: { rig: RigDocument }) {
   const status = useRigStatus(rig.id, rig.status);
   const session = useSession();
   const envelopes = useEnvelopes(rig.id);
-  const heartbeat = envelopes.data?.find((envelope) => envelope.status === 'in-force')?.content.heartbeat
-    ?.channel;
-  const needs = envelopes.data ? needsOf(rig.id, status, envelopes.data, session) : [];
+  const inForce = envelopes.data?.find((envelope) => envelope.status === 'in-force')?.content;
+  const heartbeat = inForce?.heartbeat?.channel;
+  const dues = useProofTestDues(rig.id, inForce).data ?? [];
+  const needs = envelopes.data
+    ? [...needsOf(rig.id, status, envelopes.data, session), ...proofTestNeeds(rig.id, dues, session)]
+    : [];
   return (
     <Box
       component="article"
@@ -42,6 +45,7 @@ export function RigCard({ rig }: { rig: RigDocument }) {
             First cause: {status.trip.cause}
           </Notice>
         )}
+        <BypassBanner status={status} envelope={inForce} isReadOnly />
         <Box
           sx={{
             flex: 1,

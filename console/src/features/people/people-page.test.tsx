@@ -16,7 +16,7 @@ const technician: User = {
 
 const place: SignedInPlace = {
   id: 'one',
-  userAgent: 'Mozilla/5.0 (X11; Linux) Bench/1.0',
+  userAgent: 'Mozilla/5.0 (X11; Linux) AppleWebKit/537.36 (KHTML, like Gecko) Bench/1.0 Safari/537.36',
   address: '127.0.0.1',
   beganAt: '2026-03-01T08:00:00.000Z',
   lastSeenAt: '2026-03-01T09:00:00.000Z',
@@ -50,6 +50,7 @@ it('ends a session of somebody else', async () => {
   const seen = serve({ ...base, 'DELETE /users/technician/sessions/one': () => json(null) });
   renderConsole('/people');
   fireEvent.click(await screen.findByRole('button', { name: 'Access … of Technician' }));
+  expect(await screen.findByText('Bench (X11)')).toBeDefined();
   fireEvent.click(await screen.findByRole('button', { name: /^End the session since/ }));
   await expect.poll(() => seen.some(({ method }) => method === 'DELETE')).toBe(true);
 });

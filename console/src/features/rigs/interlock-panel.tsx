@@ -4,14 +4,16 @@ import {
   simpleThreshold,
   type EnvelopeContent,
   type Interlock,
+  type InterlockView,
   type Rig,
   type RigStatus,
   type SimpleThreshold,
 } from '@cresthold/shared';
 import { Panel, plainNumber, Quantity } from '../../components/index.js';
 import { useIsStale, useLatestValue, type RigSamples } from '../../live/index.js';
+import { InterlockActions } from './interlock-actions.js';
 
-type InterlockState = RigStatus['interlocks'][number]['state'];
+type InterlockState = InterlockView['state'];
 
 interface InterlockPanelProps {
   rig: Rig;
@@ -35,7 +37,7 @@ export function InterlockPanel({ rig, status, envelope, samples }: InterlockPane
           <InterlockRow
             key={interlock.id}
             interlock={interlock}
-            state={status?.interlocks.find(({ id }) => id === interlock.id)?.state ?? null}
+            view={status?.interlocks.find(({ id }) => id === interlock.id) ?? null}
             rig={rig}
             samples={samples}
           />
@@ -47,12 +49,13 @@ export function InterlockPanel({ rig, status, envelope, samples }: InterlockPane
 
 interface InterlockRowProps {
   interlock: Interlock;
-  state: InterlockState | null;
+  view: InterlockView | null;
   rig: Rig;
   samples: RigSamples;
 }
 
-function InterlockRow({ interlock, state, rig, samples }: InterlockRowProps) {
+function InterlockRow({ interlock, view, rig, samples }: InterlockRowProps) {
+  const state = view?.state ?? null;
   const threshold = simpleThreshold(interlock.condition);
   return (
     <Box component="li" sx={{ p: 1.5, '& + &': { borderTop: 1, borderColor: 'divider' } }}>
@@ -60,7 +63,11 @@ function InterlockRow({ interlock, state, rig, samples }: InterlockRowProps) {
         <Box component="span" sx={{ fontWeight: 700 }}>
           {interlock.title}
         </Box>
-        <StateWord state={state} action={interlock.action} />
+        <span>
+          {view?.isForced && <Mark>proof test</Mark>}
+          {view?.isBypassed && <Mark>bypassed</Mark>}
+          <StateWord state={state} action={interlock.action} />
+        </span>
       </Box>
       <Box
         sx={{
@@ -78,7 +85,24 @@ function InterlockRow({ interlock, state, rig, samples }: InterlockRowProps) {
         </span>
         {threshold && <Margin threshold={threshold} rig={rig} samples={samples} />}
       </Box>
-      {state === 'acted' && <Box sx={{ fontSize: '0.8125rem' }}>{interlock.message}</Box>}
+      {(state === 'acted' || state === 'latched') && (
+        <Box sx={{ fontSize: '0.8125rem' }}>{interlock.message}</Box>
+      )}
+      {view && <InterlockActions rigId={rig.id} interlock={interlock} view={view} />}
+    </Box>
+  );
+}
+
+const stateWords = {
+  pending: '◔ pending',
+  acted: '▲ acted',
+  latched: '▲ latched: waits to be acknowledged',
+} as const;
+
+function Mark({ children }: { children: string }) {
+  return (
+    <Box component="span" sx={{ fontWeight: 700, color: 'paper.warn', mr: 1 }}>
+      {children}
     </Box>
   );
 }
@@ -94,7 +118,7 @@ function StateWord({ state, action }: { state: InterlockState | null; action: In
   const isTrip = state === 'acted' && action === 'trip';
   return (
     <Box component="span" sx={{ fontWeight: 700, color: isTrip ? 'paper.trip' : 'paper.warn' }}>
-      {state === 'pending' ? '◔ pending' : '▲ acted'}
+      {stateWords[state]}
     </Box>
   );
 }

@@ -5,10 +5,11 @@ import type { RigDocument } from '../../api/index.js';
 import { Loading, Page, PhaseMark, ProblemNotice } from '../../components/index.js';
 import { useRigSamples, useRigStatus } from '../../live/index.js';
 import { CalibrationSummary } from '../calibrations/index.js';
-import { useEnvelopeInForce } from '../envelopes/index.js';
+import { ProofTestNotice, useEnvelopeInForce } from '../envelopes/index.js';
 import { ActuatorPanel } from './actuator-panel.js';
 import { useRig } from './api/rig-queries.js';
 import { ArmingObstacles } from './arming-obstacles.js';
+import { BypassBanner } from './bypass-banner.js';
 import { ConnectionPanel } from './connection-panel.js';
 import { FaultPanel } from './fault-panel.js';
 import { InterlockPanel } from './interlock-panel.js';
@@ -59,7 +60,9 @@ function RigView({ rig }: { rig: RigDocument }) {
     >
       {status && <TripBanner status={status} />}
       <LockoutNotice rigId={rig.id} isLockedOut={status?.isLockedOut ?? false} />
+      <BypassBanner status={status} envelope={envelope?.content} />
       <ArmingObstacles status={status} />
+      <ProofTestNotice rigId={rig.id} inForce={envelope?.content} />
       <RigLinks rigId={rig.id} runId={status?.runId ?? null} envelopeVersion={envelope?.version ?? null} />
       <Box
         sx={{

@@ -53,6 +53,7 @@ function open(
     'GET /rigs/burner-1': () => json(document),
     'GET /rigs/burner-1/envelopes': list(demoEnvelope),
     'GET /rigs/burner-1/calibrations': list(),
+    'GET /rigs/burner-1/trips': list(),
     'GET /adapters': list(modbus),
     'POST /rigs/scan-budget': () => json(budget),
     ...more,
@@ -142,6 +143,26 @@ describe('the wiring page', () => {
     fireEvent.paste(at, { clipboardData: { getData: () => 'Gas\r\nAir\r\n' } });
     expect((await cell('Title of Gas')).value).toBe('Gas');
     expect((await cell('Title of Air')).value).toBe('Air');
+  });
+
+  it('keeps channels on their wire when it is renamed, and never mixes two wires', async () => {
+    open();
+    await press('Duplicate connection Burner controller');
+    const [first, second] = screen.getAllByRole('group', { name: /modbus-tcp/ }) as [
+      HTMLElement,
+      HTMLElement,
+    ];
+    const idOf = (card: HTMLElement) => within(card).getByLabelText<HTMLInputElement>(/^Id/);
+    expect(idOf(second).value).toBe('plc-2');
+    type(idOf(second), 'plc');
+    fireEvent.blur(idOf(second));
+    expect(screen.getByText(/Another connection has this id/)).toBeDefined();
+    type(idOf(second), 'other');
+    fireEvent.blur(idOf(second));
+    type(idOf(first), 'main');
+    fireEvent.blur(idOf(first));
+    expect((await cell('Connection of Carbon monoxide')).value).toBe('main');
+    expect(within(second).getByText(/0 channels/)).toBeDefined();
   });
 
   it('goes from row to row by keyboard', async () => {

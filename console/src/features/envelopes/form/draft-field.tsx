@@ -13,7 +13,7 @@ interface DraftFieldProps {
   isLabelShown?: boolean;
   unit?: string;
   hint?: string;
-  options?: readonly { value: string | number; label: string }[];
+  options?: readonly { value: string | number | boolean; label: string }[];
   isNumber?: boolean;
 }
 
@@ -55,8 +55,7 @@ function EnteredField(props: DraftFieldProps & { current: string }) {
   const id = useId();
   const fault = faultAt(path);
   const change = (text: string) => {
-    const isNumeric = options?.some(({ value }) => typeof value === 'number') ?? false;
-    setValue(path, isNumeric ? Number(text) : text);
+    setValue(path, options?.find(({ value }) => String(value) === text)?.value ?? text);
   };
   return (
     <TextField
@@ -93,7 +92,7 @@ function EnteredField(props: DraftFieldProps & { current: string }) {
       }}
     >
       {options?.map((option) => (
-        <option key={option.value} value={option.value}>
+        <option key={String(option.value)} value={String(option.value)}>
           {option.label}
         </option>
       ))}

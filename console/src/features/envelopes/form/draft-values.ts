@@ -17,11 +17,18 @@ const numberKeys = new Set([
   'readBackTolerance',
   'readBackWithinS',
   'delayS',
+  'clearDelayS',
+  'bypassAtMostS',
+  'proofTestEveryDays',
+  'proofTestGraceDays',
   'afterS',
   'periodS',
   'overrunLimit',
   'serverSilenceS',
 ]);
+
+/** Leaves that are left empty to say that there is none. */
+const nullableKeys = new Set(['clearCondition', 'bypassAtMostS', 'proofTestEveryDays']);
 
 /**
  * A path as error messages write it.
@@ -46,7 +53,7 @@ export function valueAt(value: FormValue, path: FieldPath): FormValue | undefine
 /** A leaf as text; empty where there is none. */
 export function textAt(value: FormValue, path: FieldPath): string {
   const leaf = valueAt(value, path);
-  return typeof leaf === 'string' || typeof leaf === 'number' ? String(leaf) : '';
+  return typeof leaf === 'object' || leaf === undefined ? '' : String(leaf);
 }
 
 /** The same document with one leaf or list replaced; nothing else is copied anew. */
@@ -66,7 +73,9 @@ export function withNumbers(value: FormValue, key: string | number = ''): FormVa
   if (typeof value === 'object' && value !== null) {
     return Object.fromEntries(Object.entries(value).map(([name, inner]) => [name, withNumbers(inner, name)]));
   }
-  if (typeof value !== 'string' || !numberKeys.has(String(key))) return value;
+  if (typeof value !== 'string') return value;
+  if (value.trim() === '' && nullableKeys.has(String(key))) return null;
+  if (!numberKeys.has(String(key))) return value;
   const text = value.trim().replace(',', '.').replace('\u2212', '-');
   return text === '' ? NaN : Number(text);
 }

@@ -1,11 +1,27 @@
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
-import { interlockFields } from '../envelope-fields.js';
+import type { Interlock } from '@cresthold/shared';
+import { interlockFields, interlockNumbers } from '../envelope-fields.js';
+import { interlockTerms } from '../interlock-words.js';
 import { useDraft, useDraftList } from './draft-context.js';
 import { DraftField } from './draft-field.js';
 import { textAt, type FormValue } from './draft-values.js';
 
-const newInterlock: FormValue = { id: '', title: '', condition: '', delayS: 0, action: 'trip', message: '' };
+const newInterlock: FormValue = {
+  id: '',
+  title: '',
+  condition: '',
+  delayS: 0,
+  action: 'trip',
+  protects: 'people',
+  clearCondition: null,
+  clearDelayS: 0,
+  isLatching: false,
+  bypassAtMostS: null,
+  proofTestEveryDays: null,
+  proofTestGraceDays: 7,
+  message: '',
+};
 
 /** Every interlock: when it is unsafe, for how long, what is done, what is said. */
 export function InterlocksEditor() {
@@ -63,6 +79,11 @@ function ShownInterlock({ row }: { row: FormValue }) {
         {text('action')} when {text('condition')}
         {text('delayS') !== '0' && ` for ${text('delayS')} s`}
       </div>
+      <Box component="ul" sx={{ m: 0, pl: 2, fontSize: '0.8125rem' }}>
+        {interlockTerms(row as Interlock).map((term) => (
+          <li key={term}>{term}</li>
+        ))}
+      </Box>
       <Box sx={{ color: 'text.secondary', fontSize: '0.8125rem' }}>{text('message')}</Box>
     </Box>
   );
@@ -72,6 +93,11 @@ const widths: Record<string, string> = {
   title: 'span 2',
   id: 'span 2',
   condition: 'span 2',
+  clearCondition: 'span 3',
+  isLatching: 'span 2',
+  bypassAtMostS: 'span 2',
+  proofTestEveryDays: 'span 2',
+  proofTestGraceDays: 'span 2',
   message: 'span 7',
 };
 
@@ -87,7 +113,12 @@ function InterlockFields({ index, onRemove }: { index: number; onRemove: () => v
     >
       {interlockFields.map(({ key, ...field }) => (
         <Box key={key} sx={{ gridColumn: { md: widths[key] } }}>
-          <DraftField path={['interlocks', index, key]} isLabelShown isNumber={key === 'delayS'} {...field} />
+          <DraftField
+            path={['interlocks', index, key]}
+            isLabelShown
+            isNumber={interlockNumbers.has(key)}
+            {...field}
+          />
         </Box>
       ))}
       <Button sx={{ minHeight: 40 }} onClick={onRemove} aria-label={`Remove interlock ${index + 1}`}>

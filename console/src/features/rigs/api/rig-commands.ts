@@ -4,7 +4,7 @@ import { useLiveHub } from '../../../live/index.js';
 import type { RigStatus, WireFault, WireFaultKind } from '@cresthold/shared';
 
 /** A command whose answer is the rig's new status; screens show it at once, ahead of the live link. */
-function useRigCommand<Input>(command: (input: Input) => Promise<RigStatus>) {
+export function useRigCommand<Input>(command: (input: Input) => Promise<RigStatus>) {
   const { statuses } = useLiveHub();
   return useMutation({ mutationFn: command, onSuccess: (status) => statuses.take(status) });
 }

@@ -1,11 +1,12 @@
 import { useMemo, useState } from 'react';
+import { useSearchParams } from 'react-router-dom';
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import MenuItem from '@mui/material/MenuItem';
 import TextField from '@mui/material/TextField';
 import Typography from '@mui/material/Typography';
 import type { ExperimentGraph, Rig, RunColumn } from '@cresthold/shared';
-import { formatNumber, Loading, ProblemNotice } from '../../../components/index.js';
+import { formatNumber, Loading, plainNumber, ProblemNotice } from '../../../components/index.js';
 import { TraceChart } from '../../../components/strip-chart/index.js';
 import { useRunSamples, type RunSamples } from '../api/run-queries.js';
 import { chartGroups, type ChartGroup } from './chart-groups.js';
@@ -13,6 +14,9 @@ import { chartRows } from './chart-rows.js';
 
 const spansS = [10, 60, 300, 1800];
 const wholeRun = 0;
+/** From a little before the moment that a link names to the end. */
+const fromMoment = -1;
+const beforeMomentS = 5;
 
 interface RunChartsProps {
   runId: string;
@@ -26,13 +30,14 @@ interface RunChartsProps {
 
 /** What was recorded, over the whole run or its end; exact where there are few enough samples. */
 export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChartsProps) {
-  const [spanS, setSpanS] = useState(wholeRun);
+  const momentS = useMomentS();
+  const [spanS, setSpanS] = useState(momentS === null ? wholeRun : fromMoment);
   const [isAll, setAll] = useState(false);
   const groups = useMemo(() => chartGroups(columns, rig, graph), [columns, rig, graph]);
   const shown = useMemo(() => shownGroups(groups, isAll), [groups, isAll]);
   const asked = useMemo(() => shown.flatMap((group) => group.traces.map((trace) => trace.column)), [shown]);
   // Whole seconds, so that the address does not change with every sample.
-  const fromS = spanS === wholeRun ? null : Math.max(0, Math.floor(endS) - spanS);
+  const fromS = fromOf(spanS, momentS, endS);
   const samples = useRunSamples(runId, { columns: asked, fromS, points: 600 }, isLive);
   return (
     <Box component="section" aria-labelledby="recorded-heading" sx={{ display: 'grid', gap: 1, minWidth: 0 }}>
@@ -55,6 +60,7 @@ export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChart
           sx={{ width: '9rem' }}
         >
           <MenuItem value={wholeRun}>whole run</MenuItem>
+          {momentS !== null && <MenuItem value={fromMoment}>from {plainNumber(momentS)} s</MenuItem>}
           {spansS.map((span) => (
             <MenuItem key={span} value={span}>
               last {span < 120 ? `${span} s` : `${span / 60} min`}
@@ -85,6 +91,20 @@ export function RunCharts({ runId, rig, graph, columns, endS, isLive }: RunChart
       )}
     </Box>
   );
+}
+
+/** The moment that a link to this run names, s since it began. */
+function useMomentS(): number | null {
+  const [search] = useSearchParams();
+  const text = search.get('atS');
+  const momentS = Number(text);
+  return text === null || !(momentS >= 0) ? null : momentS;
+}
+
+function fromOf(spanS: number, momentS: number | null, endS: number): number | null {
+  if (spanS === wholeRun) return null;
+  const fromS = spanS === fromMoment ? (momentS ?? 0) - beforeMomentS : Math.floor(endS) - spanS;
+  return Math.max(0, fromS);
 }
 
 function GroupChart({ group, samples }: { group: ChartGroup; samples: RunSamples }) {

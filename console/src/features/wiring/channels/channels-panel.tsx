@@ -118,7 +118,8 @@ function TestedTable({ wiring, columnsOf, faults, saved, isReadOnly, columns, on
   const live = useLiveTest(saved?.rig.id ?? '');
   const savedRows = useMemo(() => new Map(saved?.rows.map((row) => [row['id'], row])), [saved]);
   const obstacleOf = (row: ChannelRow): string | null => {
-    if (roleObstacle !== null) return roleObstacle;
+    // Said once above the table, not in every row.
+    if (roleObstacle !== null) return '';
     const known = savedRows.get(row['id'] ?? '');
     if (!known) return 'Save it first.';
     return isSameRow(row, known) ? null : 'Changed: save it first.';
@@ -131,9 +132,11 @@ function TestedTable({ wiring, columnsOf, faults, saved, isReadOnly, columns, on
           Test all
         </Button>
         <Box component="span" sx={{ color: 'text.secondary' }}>
-          {live.isBusy
-            ? 'Testing one after the other …'
-            : 'Reads each channel by itself, as it is saved; writes nothing. While the rig moves, the last scan is shown.'}
+          {roleObstacle !== null
+            ? `Testing ${roleObstacle.charAt(0).toLowerCase()}${roleObstacle.slice(1)}`
+            : live.isBusy
+              ? 'Testing one after the other …'
+              : 'Reads each channel by itself, as it is saved; writes nothing. While the rig moves, the last scan is shown.'}
         </Box>
       </Box>
       <ChannelTable

@@ -1,12 +1,12 @@
 import type { ReactNode } from 'react';
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
-import TextField from '@mui/material/TextField';
 import type { Connection, RigStatus } from '@cresthold/shared';
 import type { AdapterDocument } from '../../../api/index.js';
 import { SchemaForm, type FormValue } from '../../../components/schema-form/index.js';
 import type { DraftFaults } from '../draft/draft-faults.js';
 import type { WiringDraft } from '../draft/use-wiring-draft.js';
+import { NameFields } from './name-fields.js';
 import { SerialPortChoice } from './serial-port-choice.js';
 
 interface ConnectionCardProps {
@@ -112,60 +112,6 @@ function CardHead({
         )}
       </span>
       {children}
-    </Box>
-  );
-}
-
-interface NameFieldsProps extends Pick<
-  ConnectionCardProps,
-  'index' | 'connection' | 'faults' | 'wiring' | 'isReadOnly'
-> {
-  root: string;
-}
-
-function NameFields({ index, connection, faults, wiring, isReadOnly, root }: NameFieldsProps) {
-  const rename = (id: string) =>
-    wiring.change(
-      (draft) => ({
-        ...draft,
-        connections: draft.connections.map((one, at) => (at === index ? { ...one, id } : one)),
-        // Channels stay on the wire whatever it is called.
-        rows: draft.rows.map((row) =>
-          row['connection'] === connection.id ? { ...row, connection: id } : row,
-        ),
-      }),
-      `${root} id`,
-    );
-  const fields = [
-    { key: 'id', label: 'Id', value: connection.id, set: rename },
-    {
-      key: 'title',
-      label: 'Title',
-      value: connection.title,
-      set: (title: string) => wiring.setConnection(index, (one) => ({ ...one, title }), `${root} title`),
-    },
-  ];
-  return (
-    <Box
-      sx={{
-        display: 'grid',
-        gap: 2,
-        gridTemplateColumns: 'repeat(auto-fill, minmax(min(100%, 15rem), 1fr))',
-      }}
-    >
-      {fields.map(({ key, label, value, set }) => (
-        <TextField
-          key={key}
-          label={label}
-          required
-          value={value}
-          disabled={isReadOnly}
-          onChange={(event) => set(event.target.value)}
-          error={faults.at(`${root}.${key}`) !== undefined}
-          helperText={faults.at(`${root}.${key}`)}
-          slotProps={{ htmlInput: { autoComplete: 'off', spellCheck: false } }}
-        />
-      ))}
     </Box>
   );
 }
