@@ -1,20 +1,25 @@
 import { parseArgs } from 'node:util';
 import type { Benchmark, BenchmarkResult } from './benchmark.types.js';
 
-export const benchUsage = `Usage: npm run bench -- NAME… [--json]
+export const benchUsage = `Usage: npm run bench -- NAME… [--json] [--full]
        npm run bench -- --list
   NAME    a benchmark, a group of them ("law-step"), or "all"
   --json  one JSON object a line
+  --full  as many repetitions as a reported figure needs, where that is more
   --list  what there is`;
 
 /** What one call of the command asks for, or why it cannot be done. */
 export type BenchCommand =
   | { kind: 'list' }
-  | { kind: 'run'; chosen: Benchmark[]; isJson: boolean }
+  | { kind: 'run'; chosen: Benchmark[]; isJson: boolean; isFull: boolean }
   | { kind: 'refused'; message: string };
 
 export function parseBenchCommand(args: string[], known: readonly Benchmark[]): BenchCommand {
-  const options = { json: { type: 'boolean' }, list: { type: 'boolean' } } as const;
+  const options = {
+    json: { type: 'boolean' },
+    full: { type: 'boolean' },
+    list: { type: 'boolean' },
+  } as const;
   let parsed;
   try {
     parsed = parseArgs({ args, options, allowPositionals: true });
@@ -33,7 +38,7 @@ export function parseBenchCommand(args: string[], known: readonly Benchmark[]): 
     );
   }
   const chosen = new Set(names.flatMap((name) => known.filter((benchmark) => isMeant(name, benchmark))));
-  return { kind: 'run', chosen: [...chosen], isJson: values.json ?? false };
+  return { kind: 'run', chosen: [...chosen], isJson: values.json ?? false, isFull: values.full ?? false };
 }
 
 /** A benchmark goes by its name, or by that of its group: what stands before the stroke. */

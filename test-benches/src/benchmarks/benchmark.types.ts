@@ -15,5 +15,6 @@ export interface Benchmark {
   readonly name: string;
   /** One line for the list. */
   readonly purpose: string;
-  run(): Promise<BenchmarkResult>;
+  /** @param options `isFull` asks for as many repetitions as a figure needs that is to be reported */
+  run(options?: { isFull?: boolean }): Promise<BenchmarkResult>;
 }

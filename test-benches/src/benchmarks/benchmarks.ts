@@ -4,6 +4,7 @@ import { lawSteps } from './law-step/law-step.benchmark.js';
 import { modbusReads } from './modbus-read/modbus-read.benchmark.js';
 import { objectiveStep } from './objective-step.benchmark.js';
 import { rtuRead } from './rtu-read/rtu-read.benchmark.js';
+import { stopLatency } from './stop-latency/stop-latency.benchmark.js';
 import { scanLoop } from './scan-loop.benchmark.js';
 
 /** Every benchmark that `npm run bench` knows. */
@@ -14,4 +15,5 @@ export const benchmarks: readonly Benchmark[] = [
   ...lawSteps,
   ...modbusReads,
   rtuRead,
+  stopLatency,
 ];

@@ -12,7 +12,7 @@ if (command.kind === 'list') {
 }
 for (const benchmark of command.chosen) {
   try {
-    const result = await benchmark.run();
+    const result = await benchmark.run({ isFull: command.isFull });
     console.log(command.isJson ? JSON.stringify(result) : resultLine(result));
   } catch (error) {
     console.error(`${benchmark.name}: ${error instanceof Error ? error.message : String(error)}`);
