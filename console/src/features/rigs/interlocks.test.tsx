@@ -42,6 +42,7 @@ function open(
       content: { ...demoEnvelope.content, interlocks },
     }),
     'GET /rigs/burner-1/calibrations': list(),
+    'GET /rigs/burner-1/trips': list(),
     'GET /runs': list(),
     ...more,
   });

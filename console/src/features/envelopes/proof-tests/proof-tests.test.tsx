@@ -39,6 +39,7 @@ async function open(
     'GET /rigs/burner-1/envelopes': list(envelope),
     'GET /rigs/burner-1/proof-tests/due': () => json([due]),
     'GET /rigs/burner-1/calibrations': list(),
+    'GET /rigs/burner-1/trips': list(),
     'GET /runs': list(),
     ...more,
   });
