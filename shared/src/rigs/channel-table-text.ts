@@ -75,8 +75,10 @@ function quoted(cell: string): string {
   return isPlain ? cell : `"${cell.replaceAll('"', '""')}"`;
 }
 
+/** Looked for outside quotes, since a quoted cell may have line ends in it. */
 function separatorOf(text: string): TableSeparator {
-  const firstLine = /^[^\r\n]*/.exec(text.replace(/^[\r\n]+/, ''))?.[0].replaceAll(/"[^"]*"?/g, '') ?? '';
+  const unquoted = text.replaceAll(/"[^"]*"?/g, '').replace(/^[\r\n]+/, '');
+  const firstLine = /^[^\r\n]*/.exec(unquoted)?.[0] ?? '';
   if (firstLine.includes('\t')) return '\t';
   return firstLine.includes(';') ? ';' : ',';
 }

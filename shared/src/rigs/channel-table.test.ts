@@ -125,6 +125,10 @@ describe('a channel table', () => {
 });
 
 describe('text with separators', () => {
+  it('finds the separator behind a quoted cell with a line end in it', () => {
+    expect(readTextTable('"\n"\t\r\n').records.map(({ cells }) => cells)).toEqual([['\n', '']]);
+  });
+
   it('gives back what was written, with every separator', () => {
     const cell = fc.string({ unit: 'binary', maxLength: 8 });
     const table = fc.array(fc.array(cell, { minLength: 2, maxLength: 4 }), { minLength: 1, maxLength: 5 });
