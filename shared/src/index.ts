@@ -147,6 +147,7 @@ export * from './sizing/describe-plant.js';
 export * from './sizing/law-size.types.js';
 export { predictSeeking, type PredictionInput, type SeekingPrediction } from './sizing/predict-seeking.js';
 export * from './sizing/size-law.js';
+export type { TimeScaleMargins } from './sizing/loop-margins.js';
 export * from './sizing/size-seeking.js';
 export {
   sizingDemandsSchema,

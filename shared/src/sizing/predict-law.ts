@@ -1,5 +1,5 @@
 import type { LawMargins, LawPrediction } from './law-size.types.js';
-import { complex, lagOf, sampledAnswer } from './plant-answer.js';
+import { loopMargins, type TimeScaleMargins } from './loop-margins.js';
 import { slowRate, type AveragedLoop } from './averaged-loop.js';
 import { newtonConvergence } from './newton-convergence.js';
 import { couplingOf, type AxisLoop, type SizedLoops } from './size-loops.js';
@@ -127,31 +127,18 @@ export function inverseDiagonal(matrix: readonly (readonly number[])[]): number[
   );
 }
 
-/** Margins of a law with periodic dithers that adapts at `rate` along its fastest direction. */
-export function loopMargins({ axes, apartRadPerS }: SizedLoops, rate: number): LawMargins {
-  const each = axes.map(({ loop }) => {
-    const { plant, omegaRadPerS: omega, lowPassRadPerS, scanS } = loop;
-    const lagS = plant.timeConstantsS.reduce((sum, tau) => sum + tau, plant.deadTimeS);
-    const nearby = omega * 1e-3;
-    const lagAt = (w: number) => lagOf(sampledAnswer(plant, 0, scanS, complex(0, w)));
-    const delayS = (lagAt(omega + nearby) - lagAt(omega - nearby)) / (2 * nearby);
-    return {
-      plantOverDither: 1 / (omega * lagS),
-      dither: omega / rate,
-      lowPass: lowPassRadPerS / (4 * rate),
-      delay: delayS > 0 ? Math.PI / 2 / (rate * delayS) : Infinity,
-      scans: (2 * Math.PI) / (omega * scanS),
-    };
-  });
-  const least = (of: (margin: (typeof each)[number]) => number) => Math.min(...each.map(of));
-  const lowPass = least((margin) => margin.lowPass);
+/** Least margins of a law with periodic dithers that adapts at `rate` along its fastest direction. */
+export function leastMargins({ axes, apartRadPerS }: SizedLoops, rate: number): LawMargins {
+  const each = axes.map(({ loop }) => loopMargins(loop, rate));
+  const least = (name: keyof TimeScaleMargins) => Math.min(...each.map((margins) => margins[name]));
+  const lowPass = least('lowPassOverSwing');
   return {
-    plantOverDither: least((margin) => margin.plantOverDither),
-    ditherOverAdaptation: least((margin) => margin.dither),
+    plantOverDither: least('plantOverDither'),
+    ditherOverAdaptation: least('ditherOverAdaptation'),
     lowPassOverSwing: Number.isFinite(lowPass) ? lowPass : null,
     linesOverAdaptation: Number.isFinite(apartRadPerS) ? apartRadPerS / rate : null,
-    delayMargin: least((margin) => margin.delay),
-    scansPerPeriod: least((margin) => margin.scans),
+    delayMargin: least('delayMargin'),
+    scansPerPeriod: least('scansPerPeriod'),
   };
 }
 

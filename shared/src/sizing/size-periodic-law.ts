@@ -5,7 +5,7 @@ import { loopKinds, type PeriodicLawId } from './loop-kinds.js';
 import { newtonRates, periodicParameters, periodOf, type PeriodicCase } from './periodic-parameters.js';
 import {
   inverseDiagonal,
-  loopMargins,
+  leastMargins,
   predictGradientLaw,
   predictNewtonLaw,
   ratesOf,
@@ -54,7 +54,7 @@ export function sizePeriodicLaw<Id extends PeriodicLawId>(
     lawId === 'newton'
       ? predictNewtonLaw(plant, sized, newtonRates(sized, rate))
       : predictGradientLaw(plant, sized, gains, ratesOf(plant, rate));
-  const margins = loopMargins(sized, rate);
+  const margins = leastMargins(sized, rate);
   const remarks = remarksOn({ lawId, plant, demands, sized, predicted, margins });
   const kept = Number.isFinite(predicted.convergenceS) ? predicted : { ...predicted, convergenceS: null };
   return {

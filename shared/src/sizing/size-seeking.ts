@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { sizeAmplitude, type AmplitudeBound } from '../dither/dither-amplitude.js';
 import { lagAtDither, recoveredSlope, washoutAtDither, type AveragedLoop } from './averaged-loop.js';
 import { fastestDither, plantLagAt, plantLagRad } from './choose-dithers.js';
-import { complex, lagOf, sampledAnswer } from './plant-answer.js';
+import { loopMargins, type TimeScaleMargins } from './loop-margins.js';
 import { lowPassRatio, washoutRatio } from './loop-kinds.js';
 import { predictSeeking, type SeekingPrediction } from './predict-seeking.js';
 import { ditherOverAdaptationMin, lowPassOverAdaptationMin, noiseShare, speedShare } from './size-loops.js';
@@ -48,19 +48,6 @@ export interface SeekingSize {
   margins: TimeScaleMargins;
   /** What cannot be kept, with what to do. */
   warnings: string[];
-}
-
-/** How far the time scales lie apart; every one should be well above 1. */
-export interface TimeScaleMargins {
-  /** Corner of the plant over the dither: 1/(ω·τ), with all lags in τ. */
-  plantOverDither: number;
-  /** Dither over adaptation, ω/κ. */
-  ditherOverAdaptation: number;
-  /** Low-pass over the rate at which the loop begins to swing, ωl/(4κ). */
-  lowPassOverSwing: number;
-  /** π/2 over κ·delay, where the delayed loop would become unstable. */
-  delayMargin: number;
-  scansPerPeriod: number;
 }
 
 /**
@@ -114,7 +101,7 @@ export function sizeSeeking(input: SizingRequest): SeekingSize {
     amplitudeLimitedBy: limitedBy,
     gainLimitedBy: byNoise < timeScales ? 'noise' : 'time-scales',
     predicted,
-    margins: marginsOf(loop, rate),
+    margins: loopMargins(loop, rate),
     warnings: warningsOf(request, loop, predicted),
   };
 }
@@ -141,21 +128,6 @@ function noiseLimitedRate(request: Request, amplitude: number, share: number, wa
   const perRate =
     (noise * noise * scanS * washout * washout) / (2 * amplitude * amplitude * curvature * share * share);
   return perRate === 0 ? Infinity : (noiseShare * lossAllowed) / perRate;
-}
-
-function marginsOf(loop: AveragedLoop, rate: number): TimeScaleMargins {
-  const { plant, omegaRadPerS: omega, lowPassRadPerS, scanS } = loop;
-  const lagS = plant.timeConstantsS.reduce((sum, tau) => sum + tau, plant.deadTimeS);
-  const nearby = omega * 1e-3;
-  const lagAt = (w: number) => lagOf(sampledAnswer(plant, 0, scanS, complex(0, w)));
-  const delayS = (lagAt(omega + nearby) - lagAt(omega - nearby)) / (2 * nearby);
-  return {
-    plantOverDither: 1 / (omega * lagS),
-    ditherOverAdaptation: omega / rate,
-    lowPassOverSwing: lowPassRadPerS / (4 * rate),
-    delayMargin: delayS > 0 ? Math.PI / 2 / (rate * delayS) : Infinity,
-    scansPerPeriod: (2 * Math.PI) / (omega * scanS),
-  };
 }
 
 function warningsOf(request: Request, loop: AveragedLoop, predicted: SeekingPrediction): string[] {
